@@ -1,0 +1,1 @@
+"""Items become values, findings, gaps and a verdict."""

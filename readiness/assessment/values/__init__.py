@@ -1,0 +1,1 @@
+"""What each value means and which calculation gives it, one module a subject."""

@@ -1,0 +1,1 @@
+"""Pure calculations: numbers in, numbers out, one subject a module."""

@@ -1,0 +1,1 @@
+"""An assessment is shown: terminal, JSON, gap list, page, binder. Nothing is computed here."""

@@ -1,0 +1,1 @@
+"""A program folder becomes items: bytes in, typed items or located problems out."""
