@@ -1,0 +1,112 @@
+"""Patients at once, sessions and the peak."""
+
+import math
+
+import pytest
+
+from readiness.calculations.patient_flow import (
+    COURSES,
+    WEEKS_PER_YEAR,
+    first_cycle_sessions_per_year,
+    mean_sessions_per_week,
+    patient_weeks_per_year,
+    patients_under_treatment,
+    peak_patients,
+    peak_sessions_per_week,
+    sessions_per_year,
+    total_patients_per_year,
+)
+from readiness.quantities import Table
+
+MIX = Table.of(COURSES, [("long", 5, 36, 2, 4, 10), ("short", 3, 12, 2, 4, 3)])
+
+
+def mix(**change: object) -> Table:
+    """Return a mix of one course with one number changed."""
+    row = dict(zip(COURSES, ("long", 5, 36, 2, 4, 10), strict=True)) | change
+    return Table.of(COURSES, [tuple(row[column] for column in COURSES)])
+
+
+def test_counts_of_a_year_are_sums_over_the_courses():
+    """Five long and three short courses bring 216 sessions, 16 of first cycles, 59 patient weeks, 8 patients."""
+    assert sessions_per_year(courses=MIX) == 5 * 36 + 3 * 12
+    assert first_cycle_sessions_per_year(courses=MIX) == 16
+    assert patient_weeks_per_year(courses=MIX) == 59
+    assert total_patients_per_year(courses=MIX) == 8
+
+
+def test_patients_at_once_follow_littles_law():
+    """A patient every W weeks on courses of W weeks is one patient at once."""
+    assert patients_under_treatment(courses=mix(patients_per_year=WEEKS_PER_YEAR / 10)) == pytest.approx(1)
+    assert patients_under_treatment(courses=MIX) == pytest.approx(59 / WEEKS_PER_YEAR)
+
+
+def test_longer_courses_mean_more_patients_at_once():
+    """A break adds to the patients at once, not to the sessions."""
+    longer = mix(course_weeks=11)
+    assert patients_under_treatment(courses=longer) > patients_under_treatment(courses=mix())
+    assert sessions_per_year(courses=longer) == sessions_per_year(courses=mix())
+
+
+def test_a_program_without_referrals_is_empty():
+    """No patients a year means nobody under treatment and no session."""
+    assert patients_under_treatment(courses=mix(patients_per_year=0)) == 0
+    assert mean_sessions_per_week(courses=mix(patients_per_year=0)) == 0
+    assert peak_patients(mean_patients=0, share_of_time=0.99) == 0
+
+
+@pytest.mark.parametrize(
+    ("mean", "share", "expected"),
+    [(1.0, 0.36, 0), (1.0, 0.73, 1), (1.0, 0.74, 2), (2.0, 0.857, 3), (2.0, 0.858, 4), (5.0, 0.95, 9)],
+)
+def test_peak_is_the_quantile_of_the_poisson_law(mean, share, expected):
+    """P(N <= 1) is 0.7358 at a mean of 1; P(N <= 3) is 0.8571 at 2; P(N <= 8) 0.9319 and P(N <= 9) 0.9682 at 5."""
+    assert expected == peak_patients(mean_patients=mean, share_of_time=share)
+
+
+def test_peak_agrees_with_scipys_poisson_law():
+    """The quantiles agree with an independent library for means up to the largest."""
+    from scipy.stats import poisson
+
+    for mean in (0.05, 0.7, 1.13, 4.4, 30.0, 200.0):
+        for share in (0.5, 0.9, 0.95, 0.999):
+            assert int(poisson.ppf(share, mean)) == peak_patients(mean_patients=mean, share_of_time=share)
+
+
+def test_busiest_week_has_every_place_on_the_most_frequent_course():
+    """Two places on courses of up to five sessions a week need ten sessions."""
+    frequent = Table.of(COURSES, [*MIX.rows, ("daily", 1, 10, 1, 5, 2)])
+    assert peak_sessions_per_week(courses=frequent, places=2) == 10
+    assert peak_sessions_per_week(courses=MIX, places=2) == 8
+
+
+@pytest.mark.parametrize(
+    ("change", "words"),
+    [
+        ({"patients_per_year": -1}, "patients_per_year cannot be -1"),
+        ({"course_weeks": 0}, "course_weeks cannot be 0"),
+        ({"sessions": None}, "sessions is not a number"),
+        ({"sessions": math.nan}, "sessions is not a number"),
+        ({"sessions": True}, "sessions is not a number"),
+    ],
+)
+def test_impossible_courses_are_refused(change, words):
+    """A missing or impossible number is named, never counted as zero."""
+    with pytest.raises(ValueError, match=words):
+        patients_under_treatment(courses=mix(**change))
+
+
+def test_no_course_is_no_program():
+    """An empty mix is refused rather than taken for zero patients."""
+    with pytest.raises(ValueError, match="without a course"):
+        sessions_per_year(courses=Table.of(COURSES, []))
+
+
+def test_impossible_questions_about_the_peak_are_refused():
+    """Certainty, negative means and no place have no answer."""
+    with pytest.raises(ValueError, match="between 0 and 1"):
+        peak_patients(mean_patients=1, share_of_time=1)
+    with pytest.raises(ValueError, match="not a program's number"):
+        peak_patients(mean_patients=-1, share_of_time=0.9)
+    with pytest.raises(ValueError, match="hold no patient"):
+        peak_sessions_per_week(courses=MIX, places=0)
