@@ -5,14 +5,18 @@ This module knows every unit that a field, value or table column may end with, h
 and nothing else: numbers are kept in the unit of their name and never converted silently.
 """
 
-# ending of the name -> printed unit; longer endings are tried first
+# ending of the name -> printed unit; the longest ending that fits counts
 UNITS: dict[str, str] = {
     "cgy_per_mu": "cGy/MU",
     "gy_per_mu": "Gy/MU",
     "usv_per_mu": "µSv/MU",
     "mu_per_min": "MU/min",
+    "mu_per_week": "MU/week",
     "gy_per_week": "Gy/week",
     "gy_m2_per_week": "Gy m²/week",
+    "gy_m2_per_h": "Gy m²/h",
+    "gy_m2": "Gy m²",
+    "gy_per_h": "Gy/h",
     "msv_per_week": "mSv/week",
     "usv_per_week": "µSv/week",
     "usv_per_h": "µSv/h",
@@ -20,6 +24,7 @@ UNITS: dict[str, str] = {
     "msv_per_year": "mSv/year",
     "cm_per_s": "cm/s",
     "mev_per_cm": "MeV/cm",
+    "mev_cm2_per_g": "MeV cm²/g",
     "g_per_cm3": "g/cm³",
     "g_per_cm2": "g/cm²",
     "h_per_week": "h/week",
@@ -30,6 +35,10 @@ UNITS: dict[str, str] = {
     "per_year": "per year",
     "per_day": "per day",
     "per_h": "per hour",
+    "per_cm": "1/cm",
+    "per_cm2_per_gy": "1/(cm² Gy)",
+    "per_100ev": "per 100 eV",
+    "per_s": "per second",
     "working_days": "working days",
     "cm2": "cm²",
     "m2": "m²",
@@ -64,14 +73,14 @@ UNITS: dict[str, str] = {
     "persons": "persons",
     "tvl": "TVL",
 }
-_LONGEST_FIRST = sorted(UNITS, key=lambda ending: -len(ending))
 
 
 def unit_ending(name: str) -> str:
     """Return the unit ending of a name ("cm" for "plane_distance_cm"), or "" if it has none."""
-    last = name.rsplit(".", 1)[-1]
-    for ending in _LONGEST_FIRST:
-        if last == ending or last.endswith("_" + ending):
+    last = name.rsplit(".", 1)[-1].split("_")
+    for start in range(len(last)):
+        ending = "_".join(last[start:])
+        if ending in UNITS:
             return ending
     return ""
 
