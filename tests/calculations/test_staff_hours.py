@@ -1,0 +1,163 @@
+"""Hours and full-time equivalents of a running program and of the project before it."""
+
+import pytest
+
+from readiness.calculations.patient_flow import WEEKS_PER_YEAR
+from readiness.calculations.staff_hours import (
+    PEOPLE,
+    TASKS,
+    role_fte_needed,
+    role_fte_qualified,
+    staffing_balance,
+    task_hours,
+)
+from readiness.errors import OutsideValidity
+from readiness.quantities import Table
+
+ALL = [
+    ("sessions", "therapist", "operate", "session", 60, 2),
+    ("first cycles", "therapist", "operate", "first-cycle session", 60, 3),
+    ("in-vivo placement", "physicist", "operate", "first-cycle session", 120, 1),
+    ("daily checks", "physicist", "operate", "TSE day", 30, 1),
+    ("read-out", "physicist", "operate", "patient", 360, 1),
+    ("chart checks", "physicist", "operate", "patient week", 30, 1),
+    ("monthly checks", "physicist", "operate", "month", 180, 1),
+    ("yearly checks", "physicist", "operate", "year", 1440, 1),
+    ("training", "therapist", "operate", "year", 2880, 1),
+    ("commissioning", "physicist", "commission", "project", 240 * 60, 1),
+]
+CREW = Table.of(
+    PEOPLE,
+    [
+        ("P1", "physicist", 0.10, True),
+        ("P2", "physicist", 0.05, False),
+        ("T1", "therapist", 0.10, True),
+        ("T2", "therapist", 0.10, None),
+    ],
+)
+NO_PHASES = Table.of(("phase", "weeks"), [])
+YEAR = {
+    "sessions_per_year": 216,
+    "first_cycle_sessions_per_year": 16,
+    "tse_days_per_year": 176,
+    "patients_per_year": 8,
+    "patient_weeks_per_year": 59,
+}
+
+
+def hours_of(*tasks: tuple[object, ...]) -> Table:
+    """Return the hours of tasks in the sample year."""
+    return task_hours(tasks=Table.of(TASKS, tasks), **YEAR)
+
+
+def test_hours_of_each_task_close_by_hand():
+    """Times a year by persons by minutes: 216 x 2 x 60 min are 432 h, 59 weeks of half an hour 29.5 h."""
+    expected = [432, 48, 32, 88, 48, 29.5, 36, 24, 48, 240]
+    assert hours_of(*ALL).column("total_h") == pytest.approx(expected)
+
+
+def test_a_week_is_counted_for_the_whole_year():
+    """An hour a week is 52.18 h a year, and 12 months are 12 h."""
+    table = hours_of(("a", "nurse", "operate", "week", 60, 1), ("b", "nurse", "operate", "month", 60, 1))
+    assert table.column("total_h") == pytest.approx([365.25 / 7, 12])
+
+
+def test_therapists_of_the_sample_need_a_third_of_a_person():
+    """432 + 48 + 48 h at 1,650 h per full-time person are 0.32 FTE."""
+    needed = role_fte_needed(hours=hours_of(*ALL), role="therapist", h_per_fte_per_year=1650)
+    assert needed == pytest.approx(528 / 1650)
+
+
+def test_a_role_without_recurring_tasks_needs_nobody():
+    """The project's hours are no part of the running program."""
+    assert role_fte_needed(hours=hours_of(ALL[-1]), role="physicist", h_per_fte_per_year=1650) == 0
+
+
+def test_only_stated_qualifications_count():
+    """A person not trained, or of whom nothing is known, adds no qualified hours."""
+    assert role_fte_qualified(people=CREW, role="physicist") == 0.10
+    assert role_fte_qualified(people=CREW, role="therapist") == 0.10
+    assert role_fte_qualified(people=CREW, role="nurse") == 0
+
+
+def test_balance_compares_needed_with_stated_and_qualified():
+    """The physicists' 257.5 h are 0.156 FTE: 0.15 are stated, 0.10 qualified, 0.056 missing."""
+    balance = staffing_balance(hours=hours_of(*ALL), people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=1650)
+    row = next(row for row in balance.records() if row["role"] == "physicist" and row["phase"] == "operate")
+    assert row["needed_h"] == pytest.approx(257.5)
+    assert row["needed_fte"] == pytest.approx(257.5 / 1650)
+    assert row["stated_fte"] == pytest.approx(0.15)
+    assert row["missing_fte"] == pytest.approx(257.5 / 1650 - 0.10)
+
+
+def test_a_project_phase_needs_its_hours_within_its_weeks():
+    """240 h in 4 weeks, of a person with 1,650 h a year, are 1.9 full-time people; in 40 weeks a tenth of that."""
+    found = []
+    for weeks in (4, 40):
+        phases = Table.of(("phase", "weeks"), [("commission", weeks)])
+        balance = staffing_balance(hours=hours_of(ALL[-1]), people=CREW, phase_weeks=phases, h_per_fte_per_year=1650)
+        found.append(balance.column("needed_fte")[0])
+    assert found[0] == pytest.approx(240 / (1650 * 4 / WEEKS_PER_YEAR))
+    assert found[0] == pytest.approx(10 * found[1])
+
+
+def test_a_phase_of_unknown_length_has_no_fte():
+    """Hours are summed, full-time equivalents stay blank."""
+    balance = staffing_balance(hours=hours_of(ALL[-1]), people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=1650)
+    (row,) = balance.records()
+    assert row["needed_h"] == 240
+    assert row["needed_fte"] is None
+    assert row["missing_fte"] is None
+
+
+def test_enough_people_are_not_missing():
+    """A surplus shows as nobody missing, not as a negative number."""
+    small = hours_of(("checks", "physicist", "operate", "month", 30, 1))
+    (row,) = staffing_balance(
+        hours=small, people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=1650
+    ).records()
+    assert row["missing_fte"] == 0
+
+
+def test_minutes_that_nobody_stated_are_never_zero():
+    """The task is counted as open, nothing is said to be covered, and the role's need is refused."""
+    hours = hours_of(("checks", "physicist", "operate", "month", None, 1))
+    assert hours.column("total_h") == (None,)
+    (row,) = staffing_balance(
+        hours=hours, people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=1650
+    ).records()
+    assert row["tasks_without_minutes"] == 1
+    assert row["missing_fte"] is None
+    with pytest.raises(OutsideValidity, match=r"1 task\(s\) of the physicist are not stated"):
+        role_fte_needed(hours=hours, role="physicist", h_per_fte_per_year=1650)
+
+
+@pytest.mark.parametrize(
+    ("task", "words"),
+    [
+        (("a", "nurse", "operate", "fortnight", 60, 1), "per 'fortnight' is not one of session"),
+        (("a", "nurse", "train", "session", 60, 1), "per session does not belong to phase 'train'"),
+        (("a", "nurse", "operate", "project", 60, 1), "per project does not belong to phase 'operate'"),
+        (("a", "nurse", "operate", "week", -60, 1), "task min of 'a' cannot be -60"),
+        (("a", "nurse", "operate", "week", 60, "two"), "persons of 'a' is not a number"),
+    ],
+)
+def test_impossible_tasks_are_refused(task, words):
+    """A wrong word or amount is named with its task."""
+    with pytest.raises(ValueError, match=words):
+        hours_of(task)
+
+
+def test_impossible_years_and_people_are_refused():
+    """Negative volumes, negative FTE, full-time people without hours and phases without time are slips."""
+    with pytest.raises(ValueError, match="volumes of a year"):
+        task_hours(tasks=Table.of(TASKS, ALL), **YEAR | {"patients_per_year": -8})
+    with pytest.raises(ValueError, match="fte of 'P1' cannot be"):
+        role_fte_qualified(people=Table.of(PEOPLE, [("P1", "physicist", -0.1, True)]), role="physicist")
+    with pytest.raises(ValueError, match="works some hours"):
+        role_fte_needed(hours=hours_of(*ALL), role="nurse", h_per_fte_per_year=0)
+    with pytest.raises(ValueError, match="works some hours"):
+        staffing_balance(hours=hours_of(*ALL), people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=0)
+    phases = Table.of(("phase", "weeks"), [("commission", 0)])
+    with pytest.raises(ValueError, match="phase commission lasts no time"):
+        staffing_balance(hours=hours_of(*ALL), people=CREW, phase_weeks=phases, h_per_fte_per_year=1650)
