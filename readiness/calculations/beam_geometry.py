@@ -123,14 +123,29 @@ def ray_direction(
     Source: iec-61217 (memory).
     """
     angle = radians(gantry_angle_deg)
-    # the gantry's own x axis; it points down at gantry 90 and up at gantry 270
-    across_x, across_z = cos(angle), -sin(angle)
-    if across_z < -1e-12 or (abs(across_z) <= 1e-12 and across_x < 0):
-        across_x, across_z = -across_x, -across_z
-    x = -sin(angle) + upward_tangent * across_x
-    z = -cos(angle) + upward_tangent * across_z
+    across = upward_tangent * upward_sign_of_gantry_x(gantry_angle_deg=gantry_angle_deg)
+    x = -sin(angle) + across * cos(angle)
+    z = -cos(angle) - across * sin(angle)
     length = sqrt(x * x + sideways_tangent * sideways_tangent + z * z)
     return Direction(x / length, sideways_tangent / length, z / length)
+
+
+def upward_sign_of_gantry_x(*, gantry_angle_deg: float) -> int:
+    """
+    Return whether the gantry's own x axis points upward.
+
+    Args:
+        gantry_angle_deg: Gantry angle. [deg]
+
+    Returns:
+        +1 if it points up (gantry 270), -1 if down (gantry 90); +1 at gantry 0 and -1 at 180, where it is
+        level and upward counts as toward +x. [1]
+
+    Source: iec-61217 (memory).
+    """
+    angle = radians(gantry_angle_deg)
+    up, right = -sin(angle), cos(angle)
+    return 1 if up > 1e-12 or (abs(up) <= 1e-12 and right > 0.0) else -1
 
 
 def edge_angle_deg(*, opening_cm: float) -> float:
