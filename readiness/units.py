@@ -9,6 +9,7 @@ and nothing else: numbers are kept in the unit of their name and never converted
 UNITS: dict[str, str] = {
     "cgy_per_mu": "cGy/MU",
     "gy_per_mu": "Gy/MU",
+    "cgy_per_min": "cGy/min",
     "usv_per_mu": "µSv/MU",
     "mu_per_min": "MU/min",
     "mu_per_week": "MU/week",
