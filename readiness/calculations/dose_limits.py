@@ -1,0 +1,193 @@
+"""How the dose behind a barrier stands to what is allowed: in a week, in any one hour, in a year."""
+
+from dataclasses import dataclass
+from math import isfinite
+
+from readiness.calculations.barrier_equations import WEEKS_A_YEAR, hour_from_week_usv
+
+NAMED_ABOVE = 0.25  # of the goal: Monte Carlo layers can give up to 4 times the tabulated transmission (read)
+
+
+@dataclass(frozen=True)
+class AnyHourDose:
+    """Largest dose in 60 consecutive minutes, no occupancy counted, and what it is made of."""
+
+    usv_in_any_hour: float
+    photon_only_usv_in_any_hour: float
+    per_session_usv: float
+    sessions_usv_in_any_hour: float
+    photon_rest_usv_in_any_hour: float
+    governed_by: str
+
+
+@dataclass(frozen=True)
+class GoalMargin:
+    """How a weekly dose stands to its design goal; the share is dose / goal."""
+
+    share_of_goal: float
+    within_goal: bool
+    margin_below_factor_4: bool
+
+
+def goal_margin(*, dose_usv_per_week: float, design_goal_msv_per_week: float) -> GoalMargin:
+    """
+    Return how a weekly dose stands to the design goal.
+
+    Args:
+        dose_usv_per_week: Weekly dose, occupancy counted. [µSv/week]
+        design_goal_msv_per_week: Weekly design goal P. [mSv/week]
+
+    Returns:
+        Dose / goal, whether it is within the goal (the goal itself is), and whether the margin is smaller
+        than the factor 4 by which tabulated layers have been seen to fail.
+
+    Raises:
+        ValueError: If the dose is below zero or the goal not above zero.
+
+    Source: derived; factor 4 as read in Monte Carlo comparisons.
+    """
+    if not (isfinite(dose_usv_per_week) and dose_usv_per_week >= 0.0 and design_goal_msv_per_week > 0.0):
+        raise ValueError("a dose is not below zero and a design goal above zero")
+    share = dose_usv_per_week / (design_goal_msv_per_week * 1e3)
+    return GoalMargin(share, share <= 1.0, share > NAMED_ABOVE)
+
+
+def sessions_in_any_hour(
+    *, room_min_per_session: float, beam_min_per_session: float, sessions_per_day: float
+) -> float:
+    """
+    Return how much beam of how many sessions can fall within any 60 consecutive minutes.
+
+    n = whole turns of the room in 60 min + min(1, rest/beam time): at 40 min each, two fall in one hour
+
+    Args:
+        room_min_per_session: From one session's start to the next one's. [min]
+        beam_min_per_session: From first to last beam of a session. [min]
+        sessions_per_day: Most sessions of a day. [per day]
+
+    Returns:
+        Sessions, with a fraction where the last one is cut by the hour. [1]
+
+    Raises:
+        ValueError: If a time is not above zero, the beam longer than the room time, or sessions below zero.
+
+    Assumes: dose spread evenly from first to last beam; sessions back to back.
+    Source: derived.
+    """
+    if not 0.0 < beam_min_per_session <= room_min_per_session:
+        raise ValueError("the beam time of a session lies above zero and within its time in the room")
+    if not sessions_per_day >= 0.0:
+        raise ValueError(f"sessions of a day must not be below zero, not {sessions_per_day:g}")
+    whole = 60.0 // room_min_per_session
+    rest = 60.0 - whole * room_min_per_session
+    return min(sessions_per_day, whole + min(1.0, rest / beam_min_per_session))
+
+
+def any_hour_dose(
+    *,
+    before_rate_usv_per_week: float,
+    added_rate_usv_per_week: float,
+    cycles_per_week: float,
+    sessions_per_cycle: float,
+    sessions_in_hour: float,
+    room_min_per_session: float | None,
+    busiest_hour_ratio: float,
+) -> AnyHourDose:
+    """
+    Return the largest dose in any one hour, from the sessions that fit into it and photon work beside them.
+
+    R_h = the larger of (M/40) R_w and n H_session + (1 - n t/60) (M/40) R_w
+
+    Args:
+        before_rate_usv_per_week: Existing dose of a week without occupancy, R_w. [µSv/week]
+        added_rate_usv_per_week: Added dose of that week without occupancy. [µSv/week]
+        cycles_per_week: Cycles that the added dose is of, extra MU included. [per week]
+        sessions_per_cycle: Sessions that make a cycle. [1]
+        sessions_in_hour: Sessions that can be delivered in 60 consecutive minutes, n. [1]
+        room_min_per_session: Time for which a session keeps the room from photon work, t; None leaves the
+            whole hour to photon work as well, an upper bound. [min]
+        busiest_hour_ratio: Most photon patients in one hour / mean patients an hour, M. [1]
+
+    Returns:
+        The dose, its parts, and which of both cases governs.
+
+    Raises:
+        ValueError: If a number is outside its meaning.
+
+    Valid for: limits in any one hour, which count no occupancy.
+    Assumes: sessions of equal dose.
+    Source: ncrp-151, Eq. 3.13-3.14 (memory) for the photon part; sessions derived.
+    """
+    if not (cycles_per_week > 0.0 and sessions_per_cycle > 0.0):
+        raise ValueError("cycles a week and sessions a cycle must be above zero")
+    if not (sessions_in_hour >= 0.0 and added_rate_usv_per_week >= 0.0):
+        raise ValueError("sessions in an hour and the added dose must not be below zero")
+    photon = hour_from_week_usv(
+        weekly_rate_usv_per_week=before_rate_usv_per_week, busiest_hour_ratio=busiest_hour_ratio
+    )
+    per_session = added_rate_usv_per_week / cycles_per_week / sessions_per_cycle
+    taken = 0.0 if room_min_per_session is None else sessions_in_hour * room_min_per_session / 60.0
+    rest = photon * max(0.0, 1.0 - taken)
+    sessions = per_session * sessions_in_hour
+    largest = max(photon, sessions + rest)
+    words = "photon work alone" if photon > sessions + rest else "sessions of the added program"
+    return AnyHourDose(largest, photon, per_session, sessions, rest, words)
+
+
+def annual_dose_msv(
+    *,
+    before_usv_per_week: float,
+    added_usv_per_week: float,
+    cycles_per_week: float,
+    cycles_per_year: float | None,
+) -> float:
+    """
+    Return the dose of a year.
+
+    50 (before + added), or 50 before + added per cycle x cycles a year where these are known
+
+    Args:
+        before_usv_per_week: Existing dose of a week. [µSv/week]
+        added_usv_per_week: Added dose of the peak week. [µSv/week]
+        cycles_per_week: Cycles of that week. [per week]
+        cycles_per_year: Cycles of a year; None takes 50 peak weeks, an upper bound. [per year]
+
+    Returns:
+        Dose of a year. [mSv/year]
+
+    Raises:
+        ValueError: If a number is below zero, or no cycles are in the week.
+
+    Source: ncrp-151, 50 weeks a year (read as quoted); cycles derived.
+    """
+    known = (before_usv_per_week, added_usv_per_week, 0.0 if cycles_per_year is None else cycles_per_year)
+    if not (all(isfinite(each) and each >= 0.0 for each in known) and cycles_per_week > 0.0):
+        raise ValueError("doses and cycles must not be below zero, and the week needs cycles")
+    before = WEEKS_A_YEAR * before_usv_per_week
+    if cycles_per_year is None:
+        return (before + WEEKS_A_YEAR * added_usv_per_week) / 1e3
+    return (before + added_usv_per_week / cycles_per_week * cycles_per_year) / 1e3
+
+
+def xray_rate_at_1_m(*, per_cycle_gy_m2: float, mu_per_cycle: float, rate_mu_per_min: float) -> float:
+    """
+    Return the x-ray dose rate at 1 m of one tilted field, as an upper bound.
+
+    D0 = W_x / (MU/2) x MU per minute x 60, as if all x rays of a spot came while its own field is on
+
+    Args:
+        per_cycle_gy_m2: X rays at 1 m per spot and cycle, W_x. [Gy m²]
+        mu_per_cycle: All MU of a cycle, both beams of all dual fields. [MU]
+        rate_mu_per_min: Of the mode. [MU/min]
+
+    Returns:
+        Dose rate at 1 m, D0. [Gy m²/h]
+
+    Raises:
+        ValueError: If MU or their rate are not above zero, or the workload below zero.
+
+    Source: derived.
+    """
+    if not (mu_per_cycle > 0.0 and rate_mu_per_min > 0.0 and per_cycle_gy_m2 >= 0.0):
+        raise ValueError("MU and their rate must be above zero and the workload not below it")
+    return per_cycle_gy_m2 / (mu_per_cycle / 2.0) * rate_mu_per_min * 60.0

@@ -1,0 +1,210 @@
+"""Readings to expect from a survey in the mode, and how a filled survey compares with them."""
+
+from dataclasses import dataclass
+from math import isfinite
+from typing import cast
+
+from readiness.quantities import Scalar, Table
+
+PREDICTED_COLUMNS = ("barrier", "gantry_deg", "field", "patient", "predicted_usv_per_h", "remark")
+COMPARED_COLUMNS = (
+    "barrier",
+    "gantry_deg",
+    "patient",
+    "predicted_usv_per_h",
+    "measured_usv_per_h",
+    "measured_over_predicted",
+)
+SAME_GANTRY_DEG = 1.0
+SPOTS = ("head", "feet", "both", "neither")
+
+
+@dataclass(frozen=True)
+class SurveyComparison:
+    """How a filled survey stands to what was predicted; ratios are measured / predicted."""
+
+    compared_readings: int
+    largest_ratio: float | None
+    largest_reading_usv_per_h: float | None
+    worst_barrier: str
+    missing: tuple[str, ...]
+    not_predicted: tuple[str, ...]
+    rows: Table
+
+
+def predicted_readings(
+    *,
+    barrier: str,
+    contributions: Table,
+    occupancy: float,
+    spot: str,
+    toward_head_deg: float,
+    toward_feet_deg: float,
+    own_field_share: float | None,
+    mu_per_week: float,
+    rate_mu_per_min: float,
+) -> Table:
+    """
+    Return the readings to expect behind one barrier: both tilts, patient's place empty and occupied.
+
+    Rate = weekly contribution without occupancy / MU of the week x MU an hour. The x rays of a spot come by
+    its own field in the share x(0)/(x(0) + x(2t)) and by the other one in the rest, each in half of the MU.
+
+    Args:
+        barrier: Name of the barrier.
+        contributions: As ``weekly_dose`` gives them.
+        occupancy: The occupancy that they count. [1]
+        spot: Field whose axis meets the barrier: ``head``, ``feet``, ``both`` or ``neither``.
+        toward_head_deg: Gantry angle aimed at the head. [deg]
+        toward_feet_deg: Gantry angle aimed at the feet. [deg]
+        own_field_share: x(0)/(x(0) + x(2t)); None, if only a fraction is known, counts all x rays for either
+            field, an upper bound. [1]
+        mu_per_week: All MU that the contributions are of. [MU/week]
+        rate_mu_per_min: Of the mode. [MU/min]
+
+    Returns:
+        Four rows: barrier, gantry, field, patient (empty, occupied), reading, remark.
+
+    Raises:
+        ValueError: If a number or word is outside its meaning.
+
+    Assumes: patient scatter only with the patient's place occupied; no shielding by the patient.
+    Source: derived.
+    """
+    if spot not in SPOTS:
+        raise ValueError(f"a spot is one of {', '.join(SPOTS)}, not {spot!r}")
+    if not (0.0 < occupancy <= 1.0 and mu_per_week > 0.0 and rate_mu_per_min > 0.0):
+        raise ValueError("occupancy, MU of the week and their rate must be above zero")
+    if own_field_share is not None and not 0.0 <= own_field_share <= 1.0:
+        raise ValueError(f"a share lies from 0 to 1, not {own_field_share:g}")
+    per_h = rate_mu_per_min * 60.0 / mu_per_week / occupancy
+    rates = {"primary": 0.0, "leakage": 0.0, "scatter": 0.0}
+    for row in contributions.records():
+        if row["added"]:
+            rates[str(row["radiation"])] += cast(float, row["dose_usv_per_week"]) * per_h
+    rows: list[tuple[Scalar, ...]] = []
+    for field, gantry in (("head", toward_head_deg), ("feet", toward_feet_deg)):
+        xrays = 2.0 * _share(spot, field, own_field_share) * rates["primary"]
+        remark = "upper bound" if own_field_share is None and rates["primary"] > 0.0 else ""
+        for patient in ("empty", "occupied"):
+            scatter = rates["scatter"] if patient == "occupied" else 0.0
+            rows.append((barrier, gantry, field, patient, xrays + rates["leakage"] + scatter, remark))
+    return Table.of(PREDICTED_COLUMNS, rows)
+
+
+def compare_survey(
+    *,
+    predicted: Table,
+    predicted_at_mu_per_min: float,
+    measured: Table,
+    measured_at_mu_per_min: float,
+    background_usv_per_h: float,
+    patient: str,
+) -> SurveyComparison:
+    """
+    Return how a filled survey compares with the predicted readings.
+
+    Args:
+        predicted: Rows of ``predicted_readings`` for all barriers.
+        predicted_at_mu_per_min: MU rate for which they were predicted. [MU/min]
+        measured: barrier, gantry_deg, reading_usv_per_h with background.
+        measured_at_mu_per_min: MU rate during the readings; predictions are brought to it. [MU/min]
+        background_usv_per_h: Reading without beam. [µSv/h]
+        patient: Whether the patient's place was ``empty`` or ``occupied``.
+
+    Returns:
+        The pairs, the largest ratio and reading, what was not measured, and what had not been predicted.
+
+    Raises:
+        ValueError: If a word or number is outside its meaning, or a place was measured twice.
+
+    Assumes: gantry angles within 1 degree are the same; a net reading below zero counts as zero.
+    Source: derived.
+    """
+    if patient not in ("empty", "occupied"):
+        raise ValueError(f"the patient's place is empty or occupied, not {patient!r}")
+    if not (isfinite(background_usv_per_h) and background_usv_per_h >= 0.0):
+        raise ValueError(f"a background must not be below zero, not {background_usv_per_h:g}")
+    if not (predicted_at_mu_per_min > 0.0 and measured_at_mu_per_min > 0.0):
+        raise ValueError("an MU rate must be above zero")
+    scale = measured_at_mu_per_min / predicted_at_mu_per_min
+    wanted = [row for row in predicted.records() if row["patient"] == patient]
+    left = list(measured.records())
+    rows: list[tuple[Scalar, ...]] = []
+    missing: list[str] = []
+    for row in wanted:
+        gantry = float(cast(float, row["gantry_deg"]))
+        here = [each for each in left if each["barrier"] == row["barrier"] and _near(each, gantry)]
+        place = f"{row['barrier']} at gantry {gantry:g}"
+        if len(here) > 1:
+            raise ValueError(f"{place} was measured twice in one survey")
+        if not here:
+            missing.append(place)
+            continue
+        left.remove(here[0])
+        net = max(0.0, float(cast(float, here[0]["reading_usv_per_h"])) - background_usv_per_h)
+        expected = float(cast(float, row["predicted_usv_per_h"])) * scale
+        ratio = net / expected if expected > 0.0 else None
+        rows.append((row["barrier"], gantry, patient, expected, net, ratio))
+    extra = tuple(f"{row['barrier']} at gantry {row['gantry_deg']}" for row in left)
+    ratios = [(cast(float, row[5]), str(row[0])) for row in rows if row[5] is not None]
+    largest = max(ratios, key=lambda each: each[0], default=None)
+    return SurveyComparison(
+        compared_readings=len(rows),
+        largest_ratio=None if largest is None else largest[0],
+        largest_reading_usv_per_h=max((cast(float, row[4]) for row in rows), default=None),
+        worst_barrier="" if largest is None else largest[1],
+        missing=tuple(missing),
+        not_predicted=extra,
+        rows=Table.of(COMPARED_COLUMNS, rows),
+    )
+
+
+def weekly_dose_from_survey(
+    *,
+    head_usv_per_h: float,
+    feet_usv_per_h: float,
+    mu_per_week: float,
+    rate_mu_per_min: float,
+    occupancy: float,
+) -> float:
+    """
+    Return the weekly dose that the added program gives according to a survey.
+
+    H = T (R_head + R_feet)/2 x MU of the week / MU an hour
+
+    Args:
+        head_usv_per_h: Net reading with the field aimed at the head. [µSv/h]
+        feet_usv_per_h: Net reading with the field aimed at the feet. [µSv/h]
+        mu_per_week: All MU of the week. [MU/week]
+        rate_mu_per_min: During the readings. [MU/min]
+        occupancy: Part of the time that a person is there, T. [1]
+
+    Returns:
+        Weekly dose. [µSv/week]
+
+    Raises:
+        ValueError: If a number is outside its meaning.
+
+    Source: derived.
+    """
+    if not (head_usv_per_h >= 0.0 and feet_usv_per_h >= 0.0 and mu_per_week >= 0.0):
+        raise ValueError("readings and MU must not be below zero")
+    if not (rate_mu_per_min > 0.0 and 0.0 < occupancy <= 1.0):
+        raise ValueError("MU rate and occupancy must be above zero, the occupancy at most 1")
+    hours = mu_per_week / (rate_mu_per_min * 60.0)
+    return occupancy * (head_usv_per_h + feet_usv_per_h) / 2.0 * hours
+
+
+def _share(spot: str, field: str, own_field_share: float | None) -> float:
+    """Return which part of the x rays of a spot comes while one field is on; half of the MU belong to it."""
+    if own_field_share is None:
+        return 1.0
+    if spot in ("both", "neither"):
+        return 0.5
+    return own_field_share if spot == field else 1.0 - own_field_share
+
+
+def _near(row: dict[str, Scalar], gantry_deg: float) -> bool:
+    """Return whether a reading was taken at a gantry angle."""
+    return abs(float(cast(float, row["gantry_deg"])) - gantry_deg) <= SAME_GANTRY_DEG
