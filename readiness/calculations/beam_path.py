@@ -59,7 +59,8 @@ def beam_path(
     Return how much of both tilted fields is cut on the way to the patient, by what, and where.
 
     The patient is an upright rectangle in the treatment plane, from the standing surface to the raised hands.
-    Of what one field lights in it, the share is counted whose rays meet an obstruction or a wall first.
+    Electrons scatter far past the edges of a field, so that each field counts for all that both light
+    together; of that, the share is counted whose straight rays from its source meet something first.
 
     Args:
         side_deg: Beam side as gantry angle, 90 or 270. [deg]
@@ -76,15 +77,15 @@ def beam_path(
         patient_width_cm: Of the part of the plane that must be reached, centred on the axis. [cm]
 
     Returns:
-        Larger cut of the two fields, names of what cuts, and a table with field, obstruction, share of the
-        field's lit part of the patient, heights above the floor and y of the part that is cut.
+        Larger cut of the two fields, names of what cuts, and a table with field, obstruction, share of
+        the lit part of the patient, heights above the floor and y of the part that is cut.
 
     Raises:
         ValueError: If the floor polygon has a fault or an argument lies outside its meaning.
-        OutsideValidity: If an edge of an obstruction is not stated, or a field does not light the patient.
+        OutsideValidity: If an edge of an obstruction is not stated, or the fields do not light the patient.
 
     Valid for: upright walls; obstructions as upright boxes.
-    Assumes: straight rays from a point source; the degrader and the stand itself do not count.
+    Assumes: straight rays from two point sources; the degrader and the stand itself do not count.
     Source: derived.
     """
     above_zero("the width of the patient", patient_width_cm)
@@ -101,27 +102,41 @@ def beam_path(
     half = patient_width_cm / 2
     patient = ((-half, low), (half, low), (half, high), (-half, high))
     boxes = [mirrored(one, sign) for one in boxes_of(obstructions=obstructions)]
+    sources, outlines = _fans(
+        tilted_gantry_angles(side_deg=side_deg, tilt_deg=tilt_deg),
+        (source_axis_distance_cm, opening_cm, collimator_angle_deg),
+        sign,
+        plane,
+    )
+    lit = common_area(patient, outlines)
+    if not lit:
+        raise OutsideValidity(f"the two fields do not light the patient at {plane_distance_cm:g} cm")
     rows: list[list[Scalar]] = []
-    worst = 0.0
-    gantry_angles = tilted_gantry_angles(side_deg=side_deg, tilt_deg=tilt_deg)
-    for field, gantry in zip(FIELDS, gantry_angles, strict=True):
-        at = source_position(gantry_angle_deg=gantry, source_axis_distance_cm=source_axis_distance_cm)
-        source = Point(sign * at.x_cm, at.y_cm, at.z_cm)
-        corners = corner_rays(
-            gantry_angle_deg=gantry, opening_cm=opening_cm, collimator_angle_deg=collimator_angle_deg
-        )
-        outline = _on_plane(source, [(sign * ray.x, ray.y, ray.z) for ray in corners], plane)
-        lit = common_area(patient, outline)
-        if not lit:
-            raise OutsideValidity(f"the field {field} does not light the patient at {plane_distance_cm:g} cm")
+    cuts = []
+    for field, source in zip(FIELDS, sources, strict=True):
         shadows = [
             *_wall_shadows(source, floor_polygon_cm, sign, plane, (low, high)),
             *_box_shadows(source, boxes, isocentre_height_cm, plane),
         ]
         rows += _cuts(field, lit, shadows, isocentre_height_cm)
-        worst = max(worst, covered_percent(lit, [shadow.corners for shadow in shadows]))
+        cuts.append(covered_percent(lit, [shadow.corners for shadow in shadows]))
     cut_by = ", ".join(dict.fromkeys(str(row[1]) for row in rows))
-    return BeamPath(worst if rows else 0.0, cut_by, Table.of(CUT_COLUMNS, rows))
+    return BeamPath(max(cuts) if rows else 0.0, cut_by, Table.of(CUT_COLUMNS, rows))
+
+
+def _fans(
+    gantry_angles_deg: Sequence[float], head: tuple[float, float, float], sign: int, plane: float
+) -> tuple[list[Point], list[tuple[float, float]]]:
+    """Return the sources, and the corners of all fields on the plane, with x turned toward the beam side."""
+    source_axis_distance, opening, collimator = head
+    sources: list[Point] = []
+    outlines: list[tuple[float, float]] = []
+    for gantry in gantry_angles_deg:
+        at = source_position(gantry_angle_deg=gantry, source_axis_distance_cm=source_axis_distance)
+        sources.append(Point(sign * at.x_cm, at.y_cm, at.z_cm))
+        rays = corner_rays(gantry_angle_deg=gantry, opening_cm=opening, collimator_angle_deg=collimator)
+        outlines += _on_plane(sources[-1], [(sign * ray.x, ray.y, ray.z) for ray in rays], plane)
+    return sources, outlines
 
 
 def _cuts(field: str, lit: Corners, shadows: Sequence[_Shadow], floor_below_cm: float) -> list[list[Scalar]]:
@@ -139,7 +154,9 @@ def _cuts(field: str, lit: Corners, shadows: Sequence[_Shadow], floor_below_cm: 
     return rows
 
 
-def _on_plane(source: Point, rays: Sequence[tuple[float, float, float]], plane: float) -> Corners:
+def _on_plane(
+    source: Point, rays: Sequence[tuple[float, float, float]], plane: float
+) -> list[tuple[float, float]]:
     """Return where rays meet the plane, as (y, z)."""
     if any(forward <= 0.0 for forward, _, _ in rays) or plane <= source.x_cm:
         raise OutsideValidity("a corner of the field never meets the treatment plane")

@@ -87,6 +87,65 @@ def farthest_plane(
     return _reach(search, source_axis_distance_cm)
 
 
+def what_hinders_plane(
+    *,
+    plane_distance_cm: float,
+    side_deg: float,
+    source_axis_distance_cm: float,
+    floor_polygon_cm: Sequence[tuple[float, float]],
+    obstructions: Table,
+    isocentre_height_cm: float,
+    stand_width_cm: float,
+    stand_depth_cm: float,
+    stand_outline_turns: bool,
+    stand_off_cm: float,
+    access_width_cm: float,
+    access_headroom_cm: float,
+    patient_top_cm: float,
+    door_cm: tuple[float, float] | None = None,
+) -> str:
+    """
+    Return what hinders stand, stand-off or staff access at a treatment plane that has been chosen.
+
+    A plane nearer than the farthest one need not be free: something may stand in between.
+
+    Args:
+        plane_distance_cm: From the nominal source to the plane that is chosen. [cm]
+        side_deg: Beam side as gantry angle, 90 or 270. [deg]
+        source_axis_distance_cm: From the source to the isocentre. [cm]
+        floor_polygon_cm: Corners (x, y) of the floor in order, from the isocentre. [cm]
+        obstructions: Columns name (or id), x_min_cm, x_max_cm, y_min_cm, y_max_cm, bottom_cm, top_cm.
+        isocentre_height_cm: Of the isocentre above the floor. [cm]
+        stand_width_cm: Of the stand across the beam. [cm]
+        stand_depth_cm: Of the stand along the beam. [cm]
+        stand_outline_turns: Whether the whole outline turns, not only a platter within it.
+        stand_off_cm: Between the stand and what is behind it. [cm]
+        access_width_cm: Of the strip beside the stand and of the way to it. [cm]
+        access_headroom_cm: Above the floor; what hangs higher does not hinder staff. [cm]
+        patient_top_cm: Of the raised hands above the floor; what hangs higher does not hinder the stand. [cm]
+        door_cm: Where the way starts (x, y); without it, in the largest open part of the room. [cm]
+
+    Returns:
+        Names of walls and obstructions in the way, or "" if the stand fits there.
+
+    Raises:
+        ValueError: If the floor polygon has a fault, a length is negative or the side is neither 90 nor 270.
+        OutsideValidity: If an edge of an obstruction is not stated.
+
+    Valid for: as farthest_plane.
+    Assumes: as farthest_plane.
+    Source: derived.
+    """
+    above_zero("the plane distance", plane_distance_cm)
+    search = _search(
+        side_deg, floor_polygon_cm, obstructions, isocentre_height_cm, patient_top_cm,
+        (stand_width_cm, stand_depth_cm, stand_outline_turns, stand_off_cm),
+        (access_width_cm, access_headroom_cm, door_cm),
+    )  # fmt: skip
+    above_zero("the source-axis distance", source_axis_distance_cm)
+    return ", ".join(search.hindered_at(plane_distance_cm - source_axis_distance_cm))
+
+
 def what_would_change(
     *,
     wanted_plane_distance_cm: float,

@@ -20,6 +20,7 @@ WAY_STEP_CM = 5.0
 WAY_PRECISION_CM = 0.1
 AWAY, TOWARD = -1, 1  # sign of y
 SIDE_WORDS = {AWAY: "away from the gantry", TOWARD: "toward the gantry"}
+NO_WAY = "no clear way to the stand"
 AXIS_HEIGHTS_CM = 1e-6  # an obstruction that only touches the axis does not stop it
 
 
@@ -67,6 +68,20 @@ class PlaneSearch:
         found = [place for side in (AWAY, TOWARD) if (place := self._beside(side, body, way)) is not None]
         return max(found, key=lambda place: round(place.position_cm, 6), default=None)
 
+    def hindered_at(self, position_cm: float) -> tuple[str, ...]:
+        """Return what hinders stand and staff at one position, in the order body, staff access, way."""
+        body = _covering([*self._stops(), *self._met_by(self.stand.zone, self.patient_top_cm)], position_cm)
+        if body:
+            return body
+        way = WayPlan(self.floor, self._reaching(self.headroom_cm), self.access_width_cm)
+        found: list[str] = []
+        for side in (AWAY, TOWARD):
+            strip = _covering(self._met_by(self._strip(side), self.headroom_cm), position_cm)
+            if not strip and self._with_way(position_cm, position_cm, side, way) is not None:
+                return ()
+            found += [f"staff access at {name}" for name in strip] or [NO_WAY]
+        return tuple(dict.fromkeys(found))
+
     def nowhere(self) -> tuple[str, ...]:
         """Return what stands where the stand would stand, for a room without any place."""
         body = [*self._stops(), *self._met_by(self.stand.zone, self.patient_top_cm)]
@@ -108,7 +123,7 @@ class PlaneSearch:
     ) -> tuple[str, ...]:
         """Return the names of what begins where the stand has to stop."""
         if position < farthest - SAME_PLACE_CM:
-            return ("no clear way to the stand",)
+            return (NO_WAY,)
         here = [one.name for one in body if abs(one.from_cm - position) <= SAME_PLACE_CM]
         beside = [one.name for one in strip if abs(one.from_cm - position) <= SAME_PLACE_CM]
         return tuple(dict.fromkeys(here or beside))
@@ -146,6 +161,17 @@ class PlaneSearch:
             if one.y_min_cm < 0.0 < one.y_max_cm and high_enough and one.x_max_cm > 0.0:
                 stops.append(Hindrance(one.name, one.x_min_cm, inf))
         return stops
+
+
+def _covering(hindrances: Sequence[Hindrance], position_cm: float) -> tuple[str, ...]:
+    """Return the names of what covers a position; touching does not count."""
+    return tuple(
+        dict.fromkeys(
+            one.name
+            for one in hindrances
+            if one.from_cm + SAME_PLACE_CM < position_cm < one.to_cm - SAME_PLACE_CM
+        )
+    )
 
 
 def stand_of(width_cm: float, depth_cm: float, outline_turns: bool, stand_off_cm: float) -> Stand:
