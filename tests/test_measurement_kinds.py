@@ -1,5 +1,6 @@
 """Descriptions of measurement files fit together and fit the rest of the project."""
 
+from functools import cache
 from pathlib import Path
 from typing import Any
 
@@ -24,6 +25,7 @@ WITHOUT_UNIT = {
 }  # fmt: skip
 
 
+@cache
 def kinds_of_items() -> set[str]:
     """Return every kind of item that the fields of a program folder describe, and arrangements."""
     found = {"arrangement"}
