@@ -58,6 +58,7 @@ def file_schema(name: str, description: Description) -> FileSchema:
     _only(description, _FILE_KEYS, name)
     for key in ("file", "title", "meaning"):
         _text(description, key, name)
+    name = name.removesuffix(".yaml") if name.endswith(".csv.yaml") else name
     if description["file"] != name:
         raise CatalogueError(f"{name}: describes {description['file']!r}; name it after that file")
     root = description.get("root", {})
