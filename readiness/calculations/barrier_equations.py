@@ -2,6 +2,8 @@
 
 from math import isfinite
 
+from readiness.calculations.barrier_transmission import wall_transmission
+
 HOURS_A_WEEK = 40.0  # working hours over which a week is averaged (ncrp-151, memory)
 WEEKS_A_YEAR = 50.0  # working weeks of a year (ncrp-151, read as quoted)
 
@@ -180,6 +182,78 @@ def instantaneous_rate_usv_per_h(
         use_factor=1.0,
         occupancy=1.0,
         transmission=transmission,
+        distance_m=distance_m,
+    )
+
+
+def wall_dose_usv(
+    *,
+    workload_gy_m2_per_week: float,
+    use_factor: float,
+    occupancy: float,
+    thickness_cm: float,
+    tvl1_cm: float,
+    tvle_cm: float,
+    distance_m: float,
+) -> float:
+    """
+    Return the weekly dose behind a wall of one material whose tenth-value layers are given.
+
+    H = W U T B(t) / d^2
+
+    Args:
+        workload_gy_m2_per_week: Dose at 1 m from the source, W. [Gy m²/week]
+        use_factor: Part of the workload that comes this way, U. [1]
+        occupancy: Part of the time that a person is there, T. [1]
+        thickness_cm: Of the wall, t. [cm]
+        tvl1_cm: First tenth-value layer. [cm]
+        tvle_cm: Equilibrium tenth-value layer. [cm]
+        distance_m: From the source to 0.3 m beyond the wall, d. [m]
+
+    Returns:
+        Weekly dose H. [µSv/week]
+
+    Raises:
+        ValueError: If a number is outside its meaning.
+
+    Assumes: point source, inverse square; 1 Gy counts as 1 Sv.
+    Source: bunker-thesis, App. B (read), from ncrp-151, Eq. 2.1-2.3.
+    """
+    return weekly_dose_behind_usv(
+        workload_gy_m2_per_week=workload_gy_m2_per_week,
+        use_factor=use_factor,
+        occupancy=occupancy,
+        transmission=wall_transmission(thickness_cm=thickness_cm, tvl1_cm=tvl1_cm, tvle_cm=tvle_cm),
+        distance_m=distance_m,
+    )
+
+
+def wall_rate_usv_per_h(
+    *, dose_rate_gy_m2_per_h: float, thickness_cm: float, tvl1_cm: float, tvle_cm: float, distance_m: float
+) -> float:
+    """
+    Return the dose rate behind a wall of one material while the beam is on.
+
+    IDR = D0 B(t) / d^2
+
+    Args:
+        dose_rate_gy_m2_per_h: At 1 m from the source, D0. [Gy m²/h]
+        thickness_cm: Of the wall, t. [cm]
+        tvl1_cm: First tenth-value layer. [cm]
+        tvle_cm: Equilibrium tenth-value layer. [cm]
+        distance_m: From the source to the point, d. [m]
+
+    Returns:
+        Rate, not averaged over any time. [µSv/h]
+
+    Raises:
+        ValueError: If a number is outside its meaning.
+
+    Source: bunker-thesis, App. B (read).
+    """
+    return instantaneous_rate_usv_per_h(
+        dose_rate_gy_m2_per_h=dose_rate_gy_m2_per_h,
+        transmission=wall_transmission(thickness_cm=thickness_cm, tvl1_cm=tvl1_cm, tvle_cm=tvle_cm),
         distance_m=distance_m,
     )
 
