@@ -125,7 +125,7 @@ def course_calendar(
         days: The treatment days.
         fields: Fields of each session of a cycle, as :func:`field_sets` returns them.
         cycles: Cycles of the course. [1]
-        sessions_per_week: Highest number of sessions in one week. [1]
+        sessions_per_week: Highest number of sessions in one week. [per week]
         dose_per_cycle_gy: Prescribed dose of one complete cycle. [Gy]
         break_after_cycle: Cycle after which the planned break lies; 0 for none. [1]
         break_weeks: Length of the planned break, free of sessions. [weeks]

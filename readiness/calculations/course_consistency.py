@@ -44,7 +44,7 @@ def cycles_per_week(*, sessions_per_cycle: int, sessions_per_week: int) -> int:
 
     Args:
         sessions_per_cycle: Sessions that make one cycle. [1]
-        sessions_per_week: Highest number of sessions in one week. [1]
+        sessions_per_week: Highest number of sessions in one week. [per week]
 
     Returns:
         Whole cycles a week; a cycle is never split over a weekend. [1]
@@ -77,7 +77,7 @@ def undisturbed_weeks(
     Args:
         cycles: Cycles of the course. [1]
         sessions_per_cycle: Sessions that make one cycle. [1]
-        sessions_per_week: Highest number of sessions in one week. [1]
+        sessions_per_week: Highest number of sessions in one week. [per week]
         break_weeks: Length of the planned break; 0 for none. [weeks]
 
     Returns:
@@ -113,7 +113,7 @@ def course_contradictions(
         dose_per_cycle_gy: Stated dose of one complete cycle. [Gy]
         cycles: Stated number of cycles. [1]
         sessions_per_cycle: Sessions that make one cycle. [1]
-        sessions_per_week: Highest number of sessions in one week. [1]
+        sessions_per_week: Highest number of sessions in one week. [per week]
         break_after_cycle: Cycle after which the planned break lies; 0 for none. [1]
 
     Returns:

@@ -25,7 +25,7 @@ def public_holidays(*, country: str, subdivision: str, year: int) -> frozenset[d
     Args:
         country: Two letters, as in ISO 3166-1 ("US").
         subdivision: State or province as in ISO 3166-2 without the country ("CA"), or "".
-        year: Calendar year.
+        year: Calendar year. [1]
 
     Returns:
         The dates.
