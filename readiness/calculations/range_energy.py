@@ -1,212 +1,127 @@
-"""Energies of an electron beam from its depth dose in water."""
+"""Energies from the ranges of a depth dose, and ranges that contradict each other."""
 
-from scipy.optimize import brentq
-
-from readiness.calculations.air_transport import HIGHEST_MEV, LOWEST_MEV, pencil_beam_in_air
 from readiness.errors import OutsideValidity
+from readiness.units import printed
 
-REFERENCE_DISTANCE_CM = 100.0  # where R50 and Rp are measured
-LOWEST_RATIO, HIGHEST_RATIO = 1.15, 1.32  # Rp/R50 of clean beams is 1.21 to 1.25 (practice)
-
-
-def most_probable_energy_mev(*, practical_range_cm: float) -> float:
-    """
-    Return the most probable energy at the surface.
-
-    E_p0 = 0.22 + 1.98 Rp + 0.0025 Rp^2
-
-    Args:
-        practical_range_cm: Practical range Rp in water. [cm]
-
-    Returns:
-        Most probable energy at the surface. [MeV]
-
-    Raises:
-        ValueError: If the range is not positive.
-
-    Valid for: 1 to 50 MeV, broad beams in water.
-    Assumes: range-energy relation of monoenergetic beams.
-    Source: tg-25, icru-35 (memory).
-    """
-    if practical_range_cm <= 0:
-        raise ValueError("a practical range must be positive")
-    return 0.22 + 1.98 * practical_range_cm + 0.0025 * practical_range_cm**2
+LOWEST_R50_CM = 2.0  # 2.33 R50 is meant for 5 MeV and more
+HIGHEST_R50_CM = 13.0
+LARGEST_ENERGY_GAP_MEV = 1.5  # most probable less mean; about 0.5 MeV is usual
+LARGEST_RANGE_RATIO = 1.8  # R_p over R_50; 1.2 to 1.3 at 100 cm, up to 1.7 behind a thick degrader
 
 
 def mean_energy_mev(*, r50_cm: float) -> float:
     """
-    Return the mean energy at the surface of an ordinary beam at 100 cm.
+    Return the mean energy at the surface from the half-value depth.
 
-    E_0 = 2.33 R50
+    E_0 = 2.33 R_50
 
     Args:
-        r50_cm: Depth of half dose R50 in water. [cm]
+        r50_cm: Depth in water at which the dose has fallen to half. [cm]
 
     Returns:
-        Mean energy at the surface. [MeV]
+        Mean energy at the phantom's surface. [MeV]
 
     Raises:
-        ValueError: If the depth is not positive.
-        OutsideValidity: If R50 is below 2 cm, where the relation overestimates.
+        ValueError: If the depth is not more than 0.
+        OutsideValidity: If the depth is outside 2 to 13 cm, where the factor does not hold.
 
-    Valid for: R50 of 2 cm and more; behind a degrader use mean_energy_at_plane_mev or Rp.
-    Assumes: the relation was found for 5 to 30 MeV.
-    Source: tg-25, tg-70, icru-35 (memory).
+    Valid for: depth dose of a broad beam, R50 of 2 to 13 cm.
+    Assumes: the surface at about 100 cm from the source.
+    Source: tg-25, icru-35 (memory).
     """
-    if r50_cm <= 0:
-        raise ValueError("R50 must be positive")
-    if r50_cm < 2.0:
-        raise OutsideValidity(f"2.33 R50 does not hold at R50 = {r50_cm:g} cm; it needs 2 cm or more")
+    _positive(r50_cm)
+    if not LOWEST_R50_CM <= r50_cm <= HIGHEST_R50_CM:
+        raise OutsideValidity(
+            f"2.33 R50 holds for R50 of {LOWEST_R50_CM:g} to {HIGHEST_R50_CM:g} cm, not {printed(r50_cm)} "
+            "cm; use the practical range, or the formula for low energies"
+        )
     return 2.33 * r50_cm
 
 
-def mean_energy_at_plane_mev(*, r50_cm: float) -> float:
+def low_mean_energy_mev(*, r50_cm: float) -> float:
     """
-    Return the mean energy of a beam whose R50 was measured at the treatment plane.
+    Return the mean energy at the surface from a half-value depth that is too small for the factor 2.33.
 
-    E_0 = 0.656 + 2.059 R50 + 0.022 R50^2
+    E_0 = 0.656 + 2.059 R_50 + 0.022 R_50^2
 
     Args:
-        r50_cm: Depth of half dose R50 in water at the plane. [cm]
+        r50_cm: Depth in water at which the dose has fallen to half. [cm]
 
     Returns:
-        Mean energy at the surface. [MeV]
+        Mean energy at the phantom's surface. [MeV]
 
     Raises:
-        ValueError: If the depth is not positive.
+        ValueError: If the depth is not more than 0.
 
-    Valid for: R50 from about 0.8 cm; 2.33 R50 is out of its range there.
-    Assumes: broad beam.
-    Source: icru-35 (memory).
+    Valid for: depth dose, R50 of about 0.5 cm and more.
+    Assumes: the surface at about 100 cm from the source.
+    Source: trs-381 (memory).
     """
-    if r50_cm <= 0:
-        raise ValueError("R50 must be positive")
+    _positive(r50_cm)
     return 0.656 + 2.059 * r50_cm + 0.022 * r50_cm**2
 
 
-def most_probable_energy_at_depth_mev(*, surface_energy_mev: float, depth_cm: float) -> float:
+def most_probable_energy_mev(*, rp_cm: float) -> float:
     """
-    Return the most probable energy at a depth in water.
+    Return the most probable energy at the surface from the practical range.
 
-    E_p(z) = E_p0 (1 - z/Rp)
+    E_p0 = 0.22 + 1.98 R_p + 0.0025 R_p^2
 
     Args:
-        surface_energy_mev: Most probable energy at the surface. [MeV]
-        depth_cm: Depth. [cm]
+        rp_cm: Practical range in water. [cm]
 
     Returns:
-        Most probable energy at the depth. [MeV]
+        Most probable energy at the phantom's surface. [MeV]
 
     Raises:
-        ValueError: If the energy is too low to have a range or the depth is negative.
-        OutsideValidity: If the depth lies beyond the practical range.
+        ValueError: If the range is not more than 0.
 
-    Valid for: depths up to Rp.
-    Assumes: linear loss of energy.
+    Valid for: broad beams of 1 to 50 MeV.
+    Assumes: water.
     Source: tg-25, icru-35 (memory).
     """
-    if depth_cm < 0:
-        raise ValueError("a depth cannot be negative")
-    reach = practical_range_of_energy_cm(surface_energy_mev=surface_energy_mev)
-    if depth_cm > reach:
-        raise OutsideValidity(f"{depth_cm:g} cm lies beyond the practical range of {reach:.2f} cm")
-    return surface_energy_mev * (1 - depth_cm / reach)
+    _positive(rp_cm)
+    return 0.22 + 1.98 * rp_cm + 0.0025 * rp_cm**2
 
 
-def practical_range_of_energy_cm(*, surface_energy_mev: float) -> float:
+def range_contradiction(*, r50_cm: float, rp_cm: float) -> str:
     """
-    Return the practical range in water of a most probable energy.
-
-    Rp = (sqrt(1.98^2 + 4 0.0025 (E_p0 - 0.22)) - 1.98)/(2 0.0025)
+    Return what contradicts between a half-value depth and a practical range, or nothing.
 
     Args:
-        surface_energy_mev: Most probable energy at the surface. [MeV]
+        r50_cm: Depth in water at which the dose has fallen to half. [cm]
+        rp_cm: Practical range in water. [cm]
 
     Returns:
-        Practical range Rp. [cm]
+        "" if both can belong to one beam; otherwise a sentence that names the suspicion.
 
     Raises:
-        ValueError: If the energy is not above 0.22 MeV.
+        ValueError: If a depth is not more than 0.
 
-    Valid for: 1 to 50 MeV.
-    Assumes: the inverse of the range-energy relation.
-    Source: tg-25, icru-35 (memory), solved for Rp (derived).
+    Valid for: electron beams of 2 to 25 MeV, in front of or behind a degrader.
+    Assumes: the most probable energy lies up to 1.5 MeV above the mean.
+    Source: tg-25 (memory) for the energies; the bounds are ours (derived).
     """
-    if surface_energy_mev <= 0.22:
-        raise ValueError("the relation needs more than 0.22 MeV")
-    root: float = (1.98**2 + 4 * 0.0025 * (surface_energy_mev - 0.22)) ** 0.5
-    return (root - 1.98) / (2 * 0.0025)
+    _positive(r50_cm, rp_cm)
+    both = f"R50 {printed(r50_cm)} cm and Rp {printed(rp_cm)} cm"
+    ratio = rp_cm / r50_cm
+    for factor, words in ((10.0, "Rp looks like millimetres"), (0.1, "R50 looks like millimetres")):
+        if factor <= ratio <= LARGEST_RANGE_RATIO * factor:
+            return f"{both} contradict each other: {words} under a name in cm."
+    if ratio <= 1:
+        return f"{both} contradict each other: the practical range is the larger one; were they exchanged?"
+    mean = 2.33 * r50_cm if r50_cm >= LOWEST_R50_CM else low_mean_energy_mev(r50_cm=r50_cm)
+    probable = most_probable_energy_mev(rp_cm=rp_cm)
+    lowest = mean if r50_cm >= LOWEST_R50_CM else 0.0
+    if lowest <= probable <= mean + LARGEST_ENERGY_GAP_MEV and ratio <= LARGEST_RANGE_RATIO:
+        return ""
+    return (
+        f"{both} contradict each other: they give a mean energy of {printed(mean, 3)} MeV and a most "
+        f"probable energy of {printed(probable, 3)} MeV."
+    )
 
 
-def energy_at_source_mev(
-    *, surface_energy_mev: float, pressure_kpa: float, temperature_celsius: float
-) -> float:
-    """
-    Return the energy at the source of a beam whose energy is known at 100 cm: the air's loss added back.
-
-    Args:
-        surface_energy_mev: Energy at 100 cm, mean or most probable; the result is of the same kind. [MeV]
-        pressure_kpa: Air pressure where the depth dose was measured. [kPa]
-        temperature_celsius: Air temperature there. [°C]
-
-    Returns:
-        Energy at the source, about 0.24 MeV more at sea level. [MeV]
-
-    Raises:
-        ValueError: If the energy is not positive.
-        OutsideValidity: If the result lies outside 3 to 13 MeV.
-
-    Valid for: 3 to 13 MeV at the source.
-    Assumes: mean and most probable energy lose the same.
-    Source: icru-37 (memory) for the stopping power; derived.
-    """
-    if surface_energy_mev <= 0:
-        raise ValueError("an energy must be positive")
-
-    def excess(energy: float) -> float:
-        """Return how much a source energy exceeds the wanted one at 100 cm."""
-        beam = pencil_beam_in_air(
-            energy_at_source_mev=energy,
-            path_cm=REFERENCE_DISTANCE_CM,
-            pressure_kpa=pressure_kpa,
-            temperature_celsius=temperature_celsius,
-        )
-        return beam.mean_energy_mev - surface_energy_mev
-
-    if excess(LOWEST_MEV) > 0 or excess(HIGHEST_MEV) < 0:
-        raise OutsideValidity(
-            f"{surface_energy_mev:.3g} MeV at 100 cm is outside the beam model "
-            f"({LOWEST_MEV:g} to {HIGHEST_MEV:g} MeV at the source)"
-        )
-    return float(brentq(excess, LOWEST_MEV, HIGHEST_MEV, xtol=1e-6))
-
-
-def range_contradiction(*, r50_cm: float, practical_range_cm: float) -> str:
-    """
-    Return what is suspicious about R50 and Rp of one beam, or nothing.
-
-    Args:
-        r50_cm: Depth of half dose R50. [cm]
-        practical_range_cm: Practical range Rp. [cm]
-
-    Returns:
-        A sentence that names the suspicion, or an empty text.
-
-    Raises:
-        ValueError: If a depth is not positive.
-
-    Valid for: clinical beams at 100 cm, 4 to 25 MeV, where Rp/R50 is 1.21 to 1.25.
-    Assumes: a ratio outside 1.15 to 1.32 is a mix-up or a wrong reading.
-    Source: common practice (practice).
-    """
-    if r50_cm <= 0 or practical_range_cm <= 0:
-        raise ValueError("R50 and Rp must be positive")
-    ratio = practical_range_cm / r50_cm
-    if ratio < 1:
-        return f"Rp {practical_range_cm:g} cm is smaller than R50 {r50_cm:g} cm: are the two exchanged?"
-    if not LOWEST_RATIO <= ratio <= HIGHEST_RATIO:
-        return (
-            f"Rp/R50 is {ratio:.2f}, {LOWEST_RATIO} to {HIGHEST_RATIO} is expected: "
-            "are both from the same beam, and both in cm?"
-        )
-    return ""
+def _positive(*depths: float) -> None:
+    """Refuse depths that are not more than 0."""
+    if not all(depth > 0 for depth in depths):
+        raise ValueError("a range is more than 0 cm")
