@@ -13,7 +13,7 @@ from shapely.validation import explain_validity
 from readiness.calculations.obstructions import Box
 
 Corners = Sequence[tuple[float, float]]
-SLACK_CM = 0.5  # a way exactly as wide as asked for must survive the narrowing
+SLACK_CM = 0.05  # a way exactly as wide as asked for must survive the narrowing
 
 
 def floor_fault(*, floor_polygon_cm: Corners) -> str:
@@ -75,9 +75,10 @@ class WayPlan:
 
         It comes from the door or, when no door is given, from the largest open part of the room.
         """
-        open_floor = self._floor.difference(Polygon(stand)).buffer(-self._inset_cm, quad_segs=4)
+        open_floor = self._floor.difference(Polygon(stand)).buffer(-self._inset_cm, quad_segs=8)
         parts = [part for part in get_parts(open_floor) if not part.is_empty]
-        here = [part for part in parts if part.distance(Point(beside)) <= SLACK_CM]
+        # a person who touches the point reaches it: between the two nothing can stand
+        here = [part for part in parts if part.distance(Point(beside)) <= self._inset_cm + SLACK_CM]
         if not here:
             return False
         if door is None:
