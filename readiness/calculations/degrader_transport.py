@@ -78,6 +78,7 @@ def beam_behind_degrader(
         path_cm=degrader_thickness_cm,
     )
     energy, own = float(beams.energy_mev), float(beams.own_angle_rad)
+    refuse_stopped_beam(energy_mev=energy)
     transmission = float(beams.transmission)
     total = min(float(np.hypot(own, incoming_angle_rad)), max(LARGEST_ANGLE_RAD, incoming_angle_rad))
     left = csda_range(material="water", energy_mev=energy)
@@ -111,9 +112,10 @@ def beams_behind_degrader(
 
     Raises:
         ValueError: If a path is negative or a material is missing.
-        OutsideValidity: If a path stops the beam or the material is unknown.
+        OutsideValidity: If the material is unknown.
 
-    Valid for: see beam_behind_degrader.
+    Valid for: see beam_behind_degrader; a beam that comes to rest is kept at 0.3 MeV, and its transmission
+        tells how little is left of it.
     Assumes: see beam_behind_degrader.
     Source: eyges-1948, icru-35, ebert-1969 (memory); own-fit (fit).
     """
@@ -139,9 +141,7 @@ def beams_behind_degrader(
     return DegradedBeams(left, own, _transmission(degrader_material, energy, mass))
 
 
-def _through(
-    material: str, energy: Array, angle: Array, path: Array, cut: Array
-) -> tuple[Array, Array]:
+def _through(material: str, energy: Array, angle: Array, path: Array, cut: Array) -> tuple[Array, Array]:
     """Return the energy and the degrader's own angle at the end of the paths for a given cut."""
     density = electron_material(name=material).density_g_per_cm3
     step = path / STEPS
@@ -150,12 +150,12 @@ def _through(
         slope = np.minimum(np.sqrt(own + angle**2), LARGEST_ANGLE_RAD)
         mass = density * step * (1 + slope**2)
         middle = left - 0.5 * mass * total_stopping_power(material=material, energy_mev=np.atleast_1d(left))
-        _refuse_stopped(middle)
+        middle = np.maximum(middle, SLOWEST_MEV)
         own = own + 0.5 * density * step * scattering_power(
             material=material, energy_mev=middle, cut_rad=cut
         )
         left = left - mass * total_stopping_power(material=material, energy_mev=middle)
-        _refuse_stopped(left)
+        left = np.maximum(left, SLOWEST_MEV)
     capped = np.minimum(np.sqrt(own), LARGEST_ANGLE_RAD)
     return left.reshape(path.shape), capped.reshape(path.shape)
 
@@ -198,7 +198,19 @@ def _mean_atomic_number(material: str) -> float:
     return sum(part.weight_fraction * part.atomic_number for part in elements)
 
 
-def _refuse_stopped(energy: Array) -> None:
-    """Refuse paths on which the average electron comes to rest."""
-    if (energy < SLOWEST_MEV).any():
+def refuse_stopped_beam(*, energy_mev: float) -> None:
+    """
+    Refuse a beam that came to rest in its degrader.
+
+    Args:
+        energy_mev: Mean energy behind the degrader. [MeV]
+
+    Raises:
+        OutsideValidity: If nothing but the lowest energy is left.
+
+    Valid for: results of beams_behind_degrader.
+    Assumes: a mean energy of 0.3 MeV means that the average electron has stopped.
+    Source: our own convention.
+    """
+    if energy_mev <= SLOWEST_MEV:
         raise OutsideValidity("the degrader stops the beam: it is thicker than the range of the electrons")
