@@ -36,6 +36,8 @@ UNITS: dict[str, str] = {
     "per_year": "per year",
     "per_day": "per day",
     "per_h": "per hour",
+    "percent_per_cm": "%/cm",
+    "percent_per_deg": "%/°",
     "per_cm": "1/cm",
     "per_cm2_per_gy": "1/(cm² Gy)",
     "per_100ev": "per 100 eV",
