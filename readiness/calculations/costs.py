@@ -1,83 +1,83 @@
 """
-Costs: the department's own low, likely and high figures, summed by remedy and year. No figure is ours.
+Costs: the department's own low, likely and high figures, summed by remedy. No figure is ours.
 
 Lines come as a table with the columns of :data:`LINES`. An amount that nobody stated stays open and is
 counted; it is never taken for zero.
 """
 
 import math
-from collections.abc import Callable
+from dataclasses import dataclass
 
 from readiness.quantities import Scalar, Table, Uncertain
 
-LINES = ("item", "remedy", "year", "low", "likely", "high", "currency")
-SUMS = ("remedy", "year", "low", "likely", "high", "currency", "lines", "lines_without_amount")
+LINES = ("cost", "remedy", "per", "low", "likely", "high")
+SUMS = ("remedy", "paid", "low", "likely", "high", "lines", "lines_without_amount")
+ONCE, EACH_YEAR = "once", "each year"
+ALL = "all remedies"
 
 
-def cost_sums(*, lines: Table) -> Table:
+def cost_sums(*, lines: Table, patients_per_year: float) -> Table:
     """
-    Return the costs summed by remedy and year, by remedy, by year, and over all.
+    Return the costs summed by remedy: what is paid once and what is paid each year of operation.
+
+    each year = per year + per patient * patients a year
 
     Args:
-        lines: What costs how much; columns of LINES. Year is a calendar year.
+        lines: What costs how much; columns of LINES. "per" is "once", "year" or "patient".
+        patients_per_year: Patients treated in a year. [per year]
 
     Returns:
-        One row per remedy and year, then per remedy (year "all"), per year (remedy "all"), and the total;
-        each says how many of its lines have no amount. A sum of which no line has an amount is blank.
+        One row per remedy paid once, then per remedy paid each year, then both over all remedies. Each says
+        how many of its lines have no amount; a sum of which no line has one is blank.
 
     Raises:
-        ValueError: If low, likely and high are not in order or only partly stated, or currencies differ.
+        ValueError: If low, likely and high are not in order or only partly stated, or "per" is not known.
 
     Valid for: money of one currency and one price level.
     Assumes: nothing about how costs move together: a sum of lows is the lowest case, not a likely one.
     Source: definition (derived).
     """
-    checked = _checked(lines)
-    groupings: tuple[Callable[[dict[str, Scalar]], tuple[str, Scalar]], ...] = (
-        lambda row: (str(row["remedy"]), row["year"]),
-        lambda row: (str(row["remedy"]), "all"),
-        lambda row: ("all", row["year"]),
-        lambda row: ("all", "all"),
-    )
+    checked = _checked(lines, patients_per_year)
     rows: list[tuple[Scalar, ...]] = []
-    for grouping in groupings:
-        groups: dict[tuple[str, Scalar], list[dict[str, Scalar]]] = {}
-        for row in checked:
-            groups.setdefault(grouping(row), []).append(row)
-        for remedy, year in sorted(groups, key=lambda key: (key[0], str(key[1]))):
-            members = groups[remedy, year]
-            rows.append((remedy, year, *_sums(members), members[0]["currency"], len(members), _open(members)))
+    for remedies in (sorted({line.remedy for line in checked}), [ALL]):
+        for paid in (ONCE, EACH_YEAR):
+            for remedy in remedies:
+                members = [line for line in checked if line.paid == paid and remedy in (line.remedy, ALL)]
+                if members:
+                    rows.append((remedy, paid, *_sums(members), len(members), _open(members)))
     return Table.of(SUMS, rows)
 
 
-def total_cost(*, lines: Table) -> Uncertain:
+def expected_cost(*, lines: Table, patients_per_year: float, paid: str) -> Uncertain:
     """
-    Return the expected total and its standard deviation, from low, likely and high of each line.
+    Return the expected sum of what is paid once or each year, and its standard deviation.
 
-    mean = (low + likely + high) / 3; variance = (a^2 + b^2 + c^2 - ab - ac - bc) / 18
+    mean = (low + likely + high) / 3; variance = (a^2 + b^2 + c^2 - ab - ac - bc) / 18, for each line
 
     Args:
         lines: What costs how much; columns of LINES.
+        patients_per_year: Patients treated in a year. [per year]
+        paid: "once" or "each year".
 
     Returns:
-        Expected total with its standard deviation, in the currency of the lines.
+        Expected sum with its standard deviation, in the department's currency.
 
     Raises:
-        ValueError: If there is no line, an amount is not stated, or the lines are impossible.
+        ValueError: If no line is paid so, an amount is not stated, or the lines are impossible.
 
     Valid for: lines that are all stated.
     Assumes: that each cost has a triangular distribution and costs move independently; prices that rise
         together spread more.
     Source: moments of the triangular distribution (derived).
     """
-    checked = _checked(lines)
-    if not checked:
-        raise ValueError("there is no cost to add up")
-    if _open(checked):
-        raise ValueError(f"{_open(checked)} cost(s) have no amount; a total without them would be too low")
+    members = [line for line in _checked(lines, patients_per_year) if line.paid == paid]
+    if not members:
+        raise ValueError(f"there is no cost that is paid {paid}")
+    if _open(members):
+        raise ValueError(f"{_open(members)} cost(s) have no amount; a sum without them would be too low")
     mean = variance = 0.0
-    for row in checked:
-        low, likely, high = (float(row[column] or 0.0) for column in ("low", "likely", "high"))
+    for line in members:
+        low, likely, high = line.amounts or (0.0, 0.0, 0.0)
         mean += (low + likely + high) / 3
         variance += (low**2 + likely**2 + high**2 - low * likely - low * high - likely * high) / 18
     return Uncertain(mean, math.sqrt(max(0.0, variance)))
@@ -106,37 +106,59 @@ def cost_per_patient(*, yearly_cost: float, patients_per_year: float) -> float:
     return yearly_cost / patients_per_year
 
 
-def _checked(lines: Table) -> list[dict[str, Scalar]]:
+@dataclass(frozen=True)
+class _Line:
+    """One cost, as a sum that is paid once or each year; amounts are None where nobody stated them."""
+
+    remedy: str
+    paid: str
+    amounts: tuple[float, float, float] | None
+
+
+def _checked(lines: Table, patients_per_year: float) -> list[_Line]:
     """Return the lines once they make sense."""
-    rows = list(lines.records())
-    for row in rows:
-        amounts = [row[column] for column in ("low", "likely", "high")]
-        stated = [amount for amount in amounts if amount is not None]
-        if not stated:
-            continue
-        if any(isinstance(amount, bool | str) or not math.isfinite(amount) for amount in stated):
-            raise ValueError(f"{row['item']}: low, likely and high are numbers")
-        if len(stated) < 3:
-            raise ValueError(f"{row['item']}: state low, likely and high, or none of them")
-        low, likely, high = (float(amount) for amount in stated)
-        if not 0 <= low <= likely <= high:
-            raise ValueError(f"{row['item']}: low {low:g}, likely {likely:g}, high {high:g} are not in order")
-    currencies = sorted({str(row["currency"]) for row in rows})
-    if len(currencies) > 1:
-        raise ValueError(f"costs in {' and '.join(currencies)} cannot be added; state one currency")
-    return rows
+    if patients_per_year < 0:
+        raise ValueError("patients a year cannot be negative")
+    times = {"once": (ONCE, 1.0), "year": (EACH_YEAR, 1.0), "patient": (EACH_YEAR, patients_per_year)}
+    checked = []
+    for row in lines.records():
+        if row["per"] not in times:
+            raise ValueError(f"{row['cost']}: per {row['per']!r} is not one of {', '.join(times)}")
+        paid, factor = times[str(row["per"])]
+        amounts = _amounts(row)
+        scaled = None if amounts is None else (amounts[0] * factor, amounts[1] * factor, amounts[2] * factor)
+        checked.append(_Line(str(row["remedy"]), paid, scaled))
+    return checked
 
 
-def _sums(rows: list[dict[str, Scalar]]) -> tuple[float | None, float | None, float | None]:
-    """Return the sums of low, likely and high over the lines that have amounts."""
-    if _open(rows) == len(rows):
-        return None, None, None
-    low, likely, high = (
-        math.fsum(float(row[column] or 0.0) for row in rows) for column in ("low", "likely", "high")
-    )
+def _amounts(row: dict[str, Scalar]) -> tuple[float, float, float] | None:
+    """Return low, likely and high of a line, None if none of them is stated."""
+    stated: list[float] = []
+    for column in ("low", "likely", "high"):
+        amount = row[column]
+        if isinstance(amount, bool | str) or (amount is not None and not math.isfinite(amount)):
+            raise ValueError(f"{row['cost']}: low, likely and high are numbers")
+        if amount is not None:
+            stated.append(float(amount))
+    if not stated:
+        return None
+    if len(stated) < 3:
+        raise ValueError(f"{row['cost']}: state low, likely and high, or none of them")
+    low, likely, high = stated
+    if not 0 <= low <= likely <= high:
+        raise ValueError(f"{row['cost']}: low {low:g}, likely {likely:g}, high {high:g} are not in order")
     return low, likely, high
 
 
-def _open(rows: list[dict[str, Scalar]]) -> int:
+def _sums(lines: list[_Line]) -> tuple[float | None, float | None, float | None]:
+    """Return the sums of low, likely and high over the lines that have amounts."""
+    stated = [line.amounts for line in lines if line.amounts is not None]
+    if not stated:
+        return None, None, None
+    low, likely, high = (math.fsum(column) for column in zip(*stated, strict=True))
+    return low, likely, high
+
+
+def _open(lines: list[_Line]) -> int:
     """Return how many lines have no amount."""
-    return sum(row["likely"] is None for row in rows)
+    return sum(line.amounts is None for line in lines)

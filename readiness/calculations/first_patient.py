@@ -226,5 +226,3 @@ def _dated(
         float_working_days=when.float_working_days,
         critical=when.critical,
     )
-
-

@@ -100,9 +100,7 @@ def _days(task: Task, hours: dict[str, float], free: dict[str, float]) -> int:
     return days
 
 
-def _first_fit(
-    task: Task, start: int, hours: dict[str, float], free: dict[str, float], used: Used
-) -> int:
+def _first_fit(task: Task, start: int, hours: dict[str, float], free: dict[str, float], used: Used) -> int:
     """Return the first start at which everybody has the hours on each day, and take them."""
     daily = {who: amount / task.working_days for who, amount in hours.items() if amount > 0}
     if not daily:

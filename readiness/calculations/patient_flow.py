@@ -7,13 +7,54 @@ sessions, its sessions a week while it runs, and the weeks for which a patient h
 
 import math
 
-from readiness.quantities import Table
+from readiness.calculations.course_consistency import undisturbed_weeks
+from readiness.quantities import Scalar, Table
 
 WEEKS_PER_YEAR = 365.25 / 7
 COURSES = (
     "course", "patients_per_year", "sessions", "sessions_per_cycle", "sessions_per_week", "course_weeks",
 )  # fmt: skip
+AS_PRESCRIBED = (
+    "course", "patients_per_year", "cycles", "sessions_per_cycle", "sessions_per_week", "break_weeks",
+)  # fmt: skip
 MOST_PATIENTS_AT_ONCE = 200
+
+
+def course_mix(*, courses: Table) -> Table:
+    """
+    Return the mix of courses with the sessions of each and the weeks for which it holds a place.
+
+    Args:
+        courses: The courses as they are prescribed; columns of AS_PRESCRIBED.
+
+    Returns:
+        The mix, with the columns of COURSES.
+
+    Raises:
+        ValueError: If a number is missing or impossible, or a cycle does not fit into a week.
+
+    Valid for: planning; the course calendar gives the days of one patient.
+    Assumes: no holidays and no interruptions; whole cycles in a week; the place is kept during the break.
+    Source: definition (derived).
+    """
+    rows: list[tuple[Scalar, ...]] = []
+    for row in courses.records():
+        counts: dict[str, int] = {}
+        for column in AS_PRESCRIBED[2:5]:
+            number = row[column]
+            if not isinstance(number, int) or isinstance(number, bool):
+                raise ValueError(f"course {row['course']!r}: {column} is not a whole number")
+            counts[column] = number
+        pause = row["break_weeks"]
+        if not isinstance(pause, int | float) or isinstance(pause, bool):
+            raise ValueError(f"course {row['course']!r}: break_weeks is not a number")
+        weeks = undisturbed_weeks(**counts, break_weeks=float(pause))
+        sessions = counts["cycles"] * counts["sessions_per_cycle"]
+        rows.append((
+            row["course"], row["patients_per_year"], sessions, counts["sessions_per_cycle"],
+            counts["sessions_per_week"], weeks,
+        ))  # fmt: skip
+    return Table.of(COURSES, rows)
 
 
 def patients_under_treatment(*, courses: Table) -> float:

@@ -1,14 +1,77 @@
 """Hours of the project inside their weeks: who is wanted for more hours in a week than there are."""
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from datetime import date, timedelta
 
 from readiness.calculations.first_patient import FINISHED, Road, ScheduledTask
+from readiness.calculations.levelling import CAPACITY, WORK
+from readiness.calculations.task_network import Task
 from readiness.calculations.working_days import WorkingDays
 from readiness.quantities import Scalar, Table
 
 SAME_H = 1e-9
 BY_WEEK = ("week_of", "who", "needed_h", "free_h", "missing_h", "tasks")
+
+
+def work_of_phase(*, tasks: Sequence[Task], phase: str, hours: Table) -> Table:
+    """
+    Return hours that are stated for a whole phase as hours of its tasks, in proportion to their working days.
+
+    Args:
+        tasks: The tasks.
+        phase: The phase that the hours belong to ("commission").
+        hours: Columns who and work_h: hours of each person, role or profession in the whole phase.
+
+    Returns:
+        Hours of work by task and by who does it; columns of levelling.WORK.
+
+    Raises:
+        ValueError: If the phase has no task that takes time.
+
+    Valid for: planning, until somebody states the hours of each task.
+    Assumes: that each working day of the phase's tasks takes the same hours of everybody.
+    Source: practice.
+    """
+    members = [task for task in tasks if task.phase == phase]
+    days = sum(task.working_days for task in members)
+    if days == 0:
+        raise ValueError(f"phase {phase!r} has no task that takes time, and hours are stated for it")
+    rows: list[tuple[Scalar, ...]] = []
+    for entry in hours.records():
+        total = float(entry["work_h"] or 0.0)
+        rows += [(task.id, entry["who"], total * task.working_days / days) for task in members]
+    return Table.of(WORK, rows)
+
+
+def daily_capacity(*, people: Table, h_per_fte_per_year: float, working_days_per_year: float) -> Table:
+    """
+    Return the hours that each profession has for the program in a working day.
+
+    h = FTE * hours per FTE and year / working days a year
+
+    Args:
+        people: Who there is; columns of staff_hours.PEOPLE. People without a stated time add nothing.
+        h_per_fte_per_year: Hours that one full-time person works in a year. [h/year]
+        working_days_per_year: Days on which the department works. [per year]
+
+    Returns:
+        Hours a day by profession; columns of levelling.CAPACITY.
+
+    Raises:
+        ValueError: If hours or days of a year are not positive.
+
+    Valid for: time that is spread evenly over the year.
+    Assumes: that everybody listed works in the project, qualified for treatments or not.
+    Source: definition (derived).
+    """
+    if h_per_fte_per_year <= 0 or working_days_per_year <= 0:
+        raise ValueError("a year has working hours and working days")
+    sums: dict[str, float] = {}
+    for row in people.records():
+        name = str(row["profession"])
+        sums[name] = sums.get(name, 0.0) + float(row["fte"] or 0.0)
+    each = h_per_fte_per_year / working_days_per_year
+    return Table.of(CAPACITY, [(name, fte * each) for name, fte in sums.items()])
 
 
 def hours_by_week(*, road: Road, work: Table, capacity: Table, calendar: WorkingDays, as_of: date) -> Table:

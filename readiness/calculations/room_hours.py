@@ -55,9 +55,7 @@ def places_room_holds(
     return math.floor(free_room_h_per_week / needed_h + 1e-9)
 
 
-def free_room_h_left_per_week(
-    *, free_room_h_per_week: float, room_use_h_per_week: float
-) -> float:
+def free_room_h_left_per_week(*, free_room_h_per_week: float, room_use_h_per_week: float) -> float:
     """
     Return the free hours that remain; negative when the room has fewer than the sessions take.
 

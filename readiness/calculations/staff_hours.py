@@ -1,8 +1,8 @@
 """
-Staff hours: what each task takes, summed by role and phase, against the people there are.
+Staff hours: what each task takes, summed by profession and phase, against the people there are.
 
-Tasks come as a table with the columns of :data:`TASKS`, people as a table with the columns of :data:`PEOPLE`.
-Minutes that nobody stated stay blank and are counted; they are never taken for zero.
+Tasks come as a table with the columns of :data:`TASKS`, people with the columns of :data:`PEOPLE`. What
+nobody stated stays blank and is counted; it is never taken for zero.
 """
 
 import math
@@ -11,18 +11,19 @@ from readiness.calculations.patient_flow import WEEKS_PER_YEAR
 from readiness.errors import OutsideValidity
 from readiness.quantities import Scalar, Table
 
-TASKS = ("task", "role", "phase", "per", "task_min", "persons")
-PEOPLE = ("person", "role", "fte", "qualified")
-TASK_HOURS = ("task", "role", "phase", "per", "times", "persons", "task_min", "total_h")
+TASKS = ("task", "profession", "per", "minutes_min", "persons")
+ROLES = ("role", "profession", "available_fte")
+PEOPLE = ("person", "profession", "fte", "qualified")
+TASK_HOURS = ("task", "profession", "phase", "per", "times", "persons", "minutes_min", "total_h")
 BALANCE = (
-    "phase", "role", "needed_h", "tasks_without_minutes", "within_weeks", "needed_fte", "stated_fte",
+    "phase", "profession", "needed_h", "tasks_without_minutes", "within_weeks", "needed_fte", "stated_fte",
     "qualified_fte", "missing_fte",
 )  # fmt: skip
 RECURRING = (
-    "session", "first-cycle session", "TSE day", "patient", "patient week", "week", "month", "year",
+    "session", "first-cycle-session", "treatment-day", "patient", "patient-week", "week", "month", "year",
 )  # fmt: skip
-PROJECT = "project"
-OPERATE = "operate"
+PROJECT = "commissioning"
+COMMISSION, OPERATE = "commission", "operate"
 
 
 def task_hours(
@@ -35,12 +36,13 @@ def task_hours(
     patient_weeks_per_year: float,
 ) -> Table:
     """
-    Return the hours that each task takes: in a year, or once if it belongs to the project.
+    Return the hours that each task takes: in a year, or once if it belongs to commissioning.
 
     hours = times * persons * minutes / 60
 
     Args:
-        tasks: What is done, by whom, how often; columns of TASKS. "per" is one of RECURRING or "project".
+        tasks: What is done, by whom, how often; columns of TASKS. "per" is a word of RECURRING or
+            "commissioning".
         sessions_per_year: Sessions, first cycles included. [per year]
         first_cycle_sessions_per_year: Sessions of first cycles. [per year]
         tse_days_per_year: Days with at least one session. [per year]
@@ -48,10 +50,11 @@ def task_hours(
         patient_weeks_per_year: Weeks under treatment, summed over patients. [per year]
 
     Returns:
-        One row per task, in the order given; hours are blank where minutes or persons are.
+        One row per task, in the order given; hours are blank where minutes or persons are. What recurs
+        belongs to phase operate, commissioning to phase commission.
 
     Raises:
-        ValueError: If a number is negative, "per" is not known, or a recurring task is not in phase operate.
+        ValueError: If a number is negative or "per" is not known.
 
     Valid for: a year with these volumes.
     Assumes: that every week and month of the year is worked.
@@ -69,34 +72,63 @@ def task_hours(
         per = str(row["per"])
         if per not in times:
             raise ValueError(f"task {row['task']!r}: per {per!r} is not one of {', '.join(times)}")
-        if (per == PROJECT) == (row["phase"] == OPERATE):
-            raise ValueError(
-                f"task {row['task']!r}: work per {per} does not belong to phase {row['phase']!r}; "
-                f"phase {OPERATE} holds what recurs, the phases before it hold the project"
-            )
-        minutes, persons = _amount(row, "task_min"), _amount(row, "persons")
+        minutes, persons = _amount(row, "minutes_min"), _amount(row, "persons")
         hours = None if minutes is None or persons is None else times[per] * persons * minutes / 60
-        rows.append((row["task"], row["role"], row["phase"], per, times[per], persons, minutes, hours))
+        phase = COMMISSION if per == PROJECT else OPERATE
+        rows.append((row["task"], row["profession"], phase, per, times[per], persons, minutes, hours))
     return Table.of(TASK_HOURS, rows)
 
 
-def staffing_balance(
-    *, hours: Table, people: Table, phase_weeks: Table, h_per_fte_per_year: float
-) -> Table:
+def people_with_fte(*, roles: Table, people: Table) -> Table:
     """
-    Return hours and full-time equivalents needed against available, by phase and role.
+    Return the people with the time that each has for the program.
+
+    Args:
+        roles: Roles with their professions and full-time equivalents; columns of ROLES.
+        people: Columns person, role and qualified.
+
+    Returns:
+        One row per person, columns of PEOPLE; a role of which nobody is listed has a row without a person.
+
+    Raises:
+        ValueError: If an FTE is negative, or a person has a role that is not listed.
+
+    Valid for: the day for which the qualifications were judged.
+    Assumes: that the people of one role share its time equally; list roles apart where they do not.
+    Source: definition (derived).
+    """
+    members: dict[str, list[dict[str, Scalar]]] = {str(role): [] for role in roles.column("role")}
+    for person in people.records():
+        role_id = str(person["role"])
+        if role_id not in members:
+            raise ValueError(f"person {person['person']!r} has the role {role_id!r}, which is not listed")
+        members[role_id].append(person)
+    rows: list[tuple[Scalar, ...]] = []
+    for role in roles.records():
+        fte, crew = _amount(role, "available_fte"), members[str(role["role"])]
+        share = None if fte is None else fte / max(1, len(crew))
+        rows += [(person["person"], role["profession"], share, person["qualified"]) for person in crew]
+        if not crew:
+            rows.append((None, role["profession"], share, False))
+    return Table.of(PEOPLE, rows)
+
+
+def staffing_balance(*, hours: Table, people: Table, phase_weeks: Table, h_per_fte_per_year: float) -> Table:
+    """
+    Return hours and full-time equivalents needed against available, by phase and profession.
 
     needed = hours / (hours per FTE and year * weeks / weeks of a year)
 
     Args:
         hours: What task_hours returned.
         people: Who there is; columns of PEOPLE. Only people stated as qualified count as qualified.
-        phase_weeks: Columns phase and weeks: how long each phase of the project lasts.
+        phase_weeks: Columns phase and weeks: how long phase commission lasts.
         h_per_fte_per_year: Hours that one full-time person works in a year. [h/year]
 
     Returns:
-        One row per phase and role that has a task, in order of first appearance. Needed FTE is blank where
-        the length of the phase is not known; missing FTE is blank as well where minutes of a task are.
+        One row per phase and profession that has a task, in order of first appearance. Needed FTE is blank
+        where the length of the phase is not known; missing FTE also where minutes of a task or somebody's
+        time are.
 
     Raises:
         ValueError: If an amount is negative or a phase lasts no time.
@@ -107,37 +139,38 @@ def staffing_balance(
     """
     if h_per_fte_per_year <= 0:
         raise ValueError("a full-time person works some hours a year")
-    stated = _fte_by_role(people, qualified_only=False)
-    qualified = _fte_by_role(people, qualified_only=True)
+    stated = _fte_by_profession(people, qualified_only=False)
+    qualified = _fte_by_profession(people, qualified_only=True)
     weeks_of = {str(row["phase"]): _amount(row, "weeks") for row in phase_weeks.records()}
     weeks_of[OPERATE] = WEEKS_PER_YEAR
     rows: list[tuple[Scalar, ...]] = []
-    for (phase, role), (needed_h, blanks) in _hours_by_phase_and_role(hours).items():
+    for (phase, profession), (needed_h, blanks) in _hours_by_phase_and_profession(hours).items():
         weeks = weeks_of.get(phase)
         if weeks == 0:
             raise ValueError(f"phase {phase} lasts no time, and work is planned in it")
         fte = None if weeks is None else needed_h / (h_per_fte_per_year * weeks / WEEKS_PER_YEAR)
-        able = qualified.get(role, 0.0)
-        missing = None if fte is None or blanks else max(0.0, fte - able)
-        rows.append((phase, role, needed_h, blanks, weeks, fte, stated.get(role, 0.0), able, missing))
+        able = qualified.get(profession, 0.0)
+        missing = None if fte is None or able is None or blanks else max(0.0, fte - able)
+        there = stated.get(profession, 0.0)
+        rows.append((phase, profession, needed_h, blanks, weeks, fte, there, able, missing))
     return Table.of(BALANCE, rows)
 
 
-def role_fte_needed(*, hours: Table, role: str, h_per_fte_per_year: float) -> float:
+def profession_fte_needed(*, hours: Table, profession: str, h_per_fte_per_year: float) -> float:
     """
-    Return the full-time equivalents that the running program needs of a role.
+    Return the full-time equivalents that the running program needs of a profession.
 
     Args:
         hours: What task_hours returned.
-        role: The role.
+        profession: The profession.
         h_per_fte_per_year: Hours that one full-time person works in a year. [h/year]
 
     Returns:
-        Full-time equivalents; 0 for a role without a recurring task. [FTE]
+        Full-time equivalents; 0 for a profession without a recurring task. [FTE]
 
     Raises:
         ValueError: If a full-time person works no hours.
-        OutsideValidity: If minutes or persons of one of the role's tasks are not stated.
+        OutsideValidity: If minutes or persons of one of its tasks are not stated.
 
     Valid for: phase operate, averaged over the year.
     Assumes: work spread evenly over the year.
@@ -145,31 +178,35 @@ def role_fte_needed(*, hours: Table, role: str, h_per_fte_per_year: float) -> fl
     """
     if h_per_fte_per_year <= 0:
         raise ValueError("a full-time person works some hours a year")
-    needed_h, blanks = _hours_by_phase_and_role(hours).get((OPERATE, role), (0.0, 0))
+    needed_h, blanks = _hours_by_phase_and_profession(hours).get((OPERATE, profession), (0.0, 0))
     if blanks:
-        raise OutsideValidity(f"minutes or persons of {blanks} task(s) of the {role} are not stated")
+        raise OutsideValidity(f"minutes or persons of {blanks} task(s) of the {profession} are not stated")
     return needed_h / h_per_fte_per_year
 
 
-def role_fte_qualified(*, people: Table, role: str) -> float:
+def profession_fte_qualified(*, people: Table, profession: str) -> float:
     """
-    Return the full-time equivalents of a role whose people are stated to be qualified.
+    Return the full-time equivalents of those of a profession who are stated to be qualified.
 
     Args:
         people: Who there is; columns of PEOPLE.
-        role: The role.
+        profession: The profession.
 
     Returns:
-        Full-time equivalents; 0 if nobody of the role is qualified. [FTE]
+        Full-time equivalents; 0 if nobody of the profession is qualified. [FTE]
 
     Raises:
         ValueError: If an FTE is negative.
+        OutsideValidity: If the time of one of them is not stated.
 
     Valid for: the day for which the qualifications were judged.
     Assumes: that all stated FTE are free for this program; an unknown qualification does not count.
     Source: definition (derived).
     """
-    return _fte_by_role(people, qualified_only=True).get(role, 0.0)
+    fte = _fte_by_profession(people, qualified_only=True).get(profession, 0.0)
+    if fte is None:
+        raise OutsideValidity(f"the time of a qualified {profession} for the program is not stated")
+    return fte
 
 
 def _amount(row: dict[str, Scalar], column: str) -> float | None:
@@ -184,21 +221,23 @@ def _amount(row: dict[str, Scalar], column: str) -> float | None:
     return float(amount)
 
 
-def _hours_by_phase_and_role(hours: Table) -> dict[tuple[str, str], tuple[float, int]]:
-    """Return the sum of the hours, and how many tasks have none, for each phase and role."""
+def _hours_by_phase_and_profession(hours: Table) -> dict[tuple[str, str], tuple[float, int]]:
+    """Return the sum of the hours, and how many tasks have none, for each phase and profession."""
     sums: dict[tuple[str, str], tuple[float, int]] = {}
     for row in hours.records():
-        key = (str(row["phase"]), str(row["role"]))
+        key = (str(row["phase"]), str(row["profession"]))
         total, blanks = sums.get(key, (0.0, 0))
         amount = _amount(row, "total_h")
         sums[key] = (total, blanks + 1) if amount is None else (total + amount, blanks)
     return sums
 
 
-def _fte_by_role(people: Table, *, qualified_only: bool) -> dict[str, float]:
-    """Return the summed FTE of each role; a blank FTE adds nothing."""
-    sums: dict[str, float] = {}
+def _fte_by_profession(people: Table, *, qualified_only: bool) -> dict[str, float | None]:
+    """Return the summed FTE of each profession; None where the time of one of its people is blank."""
+    sums: dict[str, float | None] = {}
     for row in people.records():
         if not qualified_only or row["qualified"] is True:
-            sums[str(row["role"])] = sums.get(str(row["role"]), 0.0) + (_amount(row, "fte") or 0.0)
+            profession, fte = str(row["profession"]), _amount(row, "fte")
+            before = sums.get(profession, 0.0)
+            sums[profession] = None if fte is None or before is None else before + fte
     return sums

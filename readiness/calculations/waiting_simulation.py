@@ -187,9 +187,7 @@ def share_started_in_time(*, courses: Table, places: int, longest_wait_weeks: fl
         raise ValueError("an accepted wait cannot be negative")
     if patients_under_treatment(courses=courses) >= places:
         return 0.0
-    return share_at_rate(
-        courses=courses, places=places, longest_wait_weeks=longest_wait_weeks, multiple=1.0
-    )
+    return share_at_rate(courses=courses, places=places, longest_wait_weeks=longest_wait_weeks, multiple=1.0)
 
 
 @lru_cache(maxsize=512)

@@ -5,8 +5,10 @@ import math
 import pytest
 
 from readiness.calculations.patient_flow import (
+    AS_PRESCRIBED,
     COURSES,
     WEEKS_PER_YEAR,
+    course_mix,
     first_cycle_sessions_per_year,
     mean_sessions_per_week,
     patient_weeks_per_year,
@@ -25,6 +27,25 @@ def mix(**change: object) -> Table:
     """Return a mix of one course with one number changed."""
     row = dict(zip(COURSES, ("long", 5, 36, 2, 4, 10), strict=True)) | change
     return Table.of(COURSES, [tuple(row[column] for column in COURSES)])
+
+
+def test_mix_of_prescribed_courses():
+    """18 cycles of two sessions, four a week, with a week of break, are 36 sessions in 10 weeks; six cycles take 3."""
+    prescribed = Table.of(AS_PRESCRIBED, [("long", 5, 18, 2, 4, 1), ("short", 3, 6, 2, 4, 0)])
+    assert course_mix(courses=prescribed) == MIX
+
+
+def test_a_place_is_held_for_whole_weeks_of_whole_cycles():
+    """With five sessions a week only two cycles of two fit, as with four."""
+    rows = [("long", 5, 18, 2, 5, 0)]
+    assert course_mix(courses=Table.of(AS_PRESCRIBED, rows)).column("course_weeks") == (9,)
+
+
+@pytest.mark.parametrize("row", [("x", 5, None, 2, 4, 0), ("x", 5, 18.5, 2, 4, 0), ("x", 5, 18, 2, 4, None)])
+def test_courses_with_a_blank_or_a_fraction_are_refused(row):
+    """Cycles are whole, and a break that nobody stated is not none."""
+    with pytest.raises(ValueError, match="is not a (whole )?number"):
+        course_mix(courses=Table.of(AS_PRESCRIBED, [row]))
 
 
 def test_counts_of_a_year_are_sums_over_the_courses():

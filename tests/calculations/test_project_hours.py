@@ -6,7 +6,8 @@ import pytest
 
 from readiness.calculations.first_patient import road_to_first_patient
 from readiness.calculations.levelling import CAPACITY, WORK
-from readiness.calculations.project_hours import hours_by_week
+from readiness.calculations.project_hours import daily_capacity, hours_by_week, work_of_phase
+from readiness.calculations.staff_hours import PEOPLE as STAFF
 from readiness.calculations.task_network import Task
 from readiness.calculations.task_progress import Progress
 from readiness.calculations.working_days import working_days
@@ -70,6 +71,31 @@ def test_finished_tasks_want_nobody_and_begun_ones_from_today():
     assert found["2027-03-08", "physicist"]["needed_h"] == pytest.approx(30)
     assert found["2027-03-08", "physicist"]["free_h"] == 6
     assert sum(row["needed_h"] for row in found.values()) == pytest.approx(70)
+
+
+def test_hours_of_a_phase_follow_its_days():
+    """240 h over tasks of 20, 8 and 10 working days are 126.3, 50.5 and 63.2 h; other phases take none."""
+    tasks = [Task("beam", 20, phase="commission"), Task("phantom", 8, phase="commission"),
+             Task("report", 10, phase="commission"), Task("train", 8, phase="train")]  # fmt: skip
+    work = work_of_phase(tasks=tasks, phase="commission", hours=Table.of(("who", "work_h"), [("physicist", 240)]))
+    assert work.column("task") == ("beam", "phantom", "report")
+    assert work.column("work_h") == pytest.approx([240 * 20 / 38, 240 * 8 / 38, 240 * 10 / 38])
+
+
+def test_hours_of_a_phase_without_tasks_are_refused():
+    """Hours cannot be laid on a phase that takes no time."""
+    with pytest.raises(ValueError, match="'build' has no task that takes time"):
+        work_of_phase(tasks=TASKS, phase="build", hours=Table.of(("who", "work_h"), [("physicist", 1)]))
+
+
+def test_capacity_of_a_day():
+    """0.15 FTE of 1,650 h in 250 days are 0.99 h a day, trained or not; a blank adds nothing."""
+    staff = Table.of(STAFF, [("P1", "physicist", 0.10, True), ("P2", "physicist", 0.05, False),
+                             ("N1", "nurse", None, True)])  # fmt: skip
+    found = dict(daily_capacity(people=staff, h_per_fte_per_year=1650, working_days_per_year=250).rows)
+    assert found == {"physicist": pytest.approx(0.99), "nurse": 0}
+    with pytest.raises(ValueError, match="working hours and working days"):
+        daily_capacity(people=staff, h_per_fte_per_year=1650, working_days_per_year=0)
 
 
 def test_impossible_work_is_refused():

@@ -5,9 +5,11 @@ import pytest
 from readiness.calculations.patient_flow import WEEKS_PER_YEAR
 from readiness.calculations.staff_hours import (
     PEOPLE,
+    ROLES,
     TASKS,
-    role_fte_needed,
-    role_fte_qualified,
+    people_with_fte,
+    profession_fte_needed,
+    profession_fte_qualified,
     staffing_balance,
     task_hours,
 )
@@ -15,16 +17,16 @@ from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 ALL = [
-    ("sessions", "therapist", "operate", "session", 60, 2),
-    ("first cycles", "therapist", "operate", "first-cycle session", 60, 3),
-    ("in-vivo placement", "physicist", "operate", "first-cycle session", 120, 1),
-    ("daily checks", "physicist", "operate", "TSE day", 30, 1),
-    ("read-out", "physicist", "operate", "patient", 360, 1),
-    ("chart checks", "physicist", "operate", "patient week", 30, 1),
-    ("monthly checks", "physicist", "operate", "month", 180, 1),
-    ("yearly checks", "physicist", "operate", "year", 1440, 1),
-    ("training", "therapist", "operate", "year", 2880, 1),
-    ("commissioning", "physicist", "commission", "project", 240 * 60, 1),
+    ("sessions", "therapist", "session", 60, 2),
+    ("first cycles", "therapist", "first-cycle-session", 60, 3),
+    ("in-vivo placement", "physicist", "first-cycle-session", 120, 1),
+    ("daily checks", "physicist", "treatment-day", 30, 1),
+    ("read-out", "physicist", "patient", 360, 1),
+    ("chart checks", "physicist", "patient-week", 30, 1),
+    ("monthly checks", "physicist", "month", 180, 1),
+    ("yearly checks", "physicist", "year", 1440, 1),
+    ("training", "therapist", "year", 2880, 1),
+    ("commissioning", "physicist", "commissioning", 240 * 60, 1),
 ]
 CREW = Table.of(
     PEOPLE,
@@ -58,32 +60,65 @@ def test_hours_of_each_task_close_by_hand():
 
 def test_a_week_is_counted_for_the_whole_year():
     """An hour a week is 52.18 h a year, and 12 months are 12 h."""
-    table = hours_of(("a", "nurse", "operate", "week", 60, 1), ("b", "nurse", "operate", "month", 60, 1))
+    table = hours_of(("a", "nurse", "week", 60, 1), ("b", "nurse", "month", 60, 1))
     assert table.column("total_h") == pytest.approx([365.25 / 7, 12])
 
 
 def test_therapists_of_the_sample_need_a_third_of_a_person():
     """432 + 48 + 48 h at 1,650 h per full-time person are 0.32 FTE."""
-    needed = role_fte_needed(hours=hours_of(*ALL), role="therapist", h_per_fte_per_year=1650)
+    needed = profession_fte_needed(hours=hours_of(*ALL), profession="therapist", h_per_fte_per_year=1650)
     assert needed == pytest.approx(528 / 1650)
 
 
 def test_a_role_without_recurring_tasks_needs_nobody():
     """The project's hours are no part of the running program."""
-    assert role_fte_needed(hours=hours_of(ALL[-1]), role="physicist", h_per_fte_per_year=1650) == 0
+    assert profession_fte_needed(hours=hours_of(ALL[-1]), profession="physicist", h_per_fte_per_year=1650) == 0
 
 
 def test_only_stated_qualifications_count():
     """A person not trained, or of whom nothing is known, adds no qualified hours."""
-    assert role_fte_qualified(people=CREW, role="physicist") == 0.10
-    assert role_fte_qualified(people=CREW, role="therapist") == 0.10
-    assert role_fte_qualified(people=CREW, role="nurse") == 0
+    assert profession_fte_qualified(people=CREW, profession="physicist") == 0.10
+    assert profession_fte_qualified(people=CREW, profession="therapist") == 0.10
+    assert profession_fte_qualified(people=CREW, profession="nurse") == 0
+
+
+def test_people_of_a_role_share_its_time():
+    """Four therapists with 0.40 FTE together have 0.10 each; a role without people keeps its time without a person."""
+    roles = Table.of(ROLES, [("therapists", "therapist", 0.40), ("nurse", "nurse", 0.05), ("md", "oncologist", None)])
+    listed = [(f"T{n}", "therapists", n != 4) for n in (1, 2, 3, 4)] + [("O1", "md", True)]
+    crew = people_with_fte(roles=roles, people=Table.of(("person", "role", "qualified"), listed))
+    assert crew.columns == PEOPLE
+    assert crew.rows[:2] == (("T1", "therapist", 0.10, True), ("T2", "therapist", 0.10, True))
+    assert crew.rows[3:] == (
+        ("T4", "therapist", 0.10, False), (None, "nurse", 0.05, False), ("O1", "oncologist", None, True),
+    )  # fmt: skip
+    assert profession_fte_qualified(people=crew, profession="therapist") == pytest.approx(0.30)
+    assert profession_fte_qualified(people=crew, profession="nurse") == 0
+
+
+def test_a_person_of_an_unlisted_role_is_refused():
+    """A slip in a role's id is named."""
+    roles = Table.of(ROLES, [("therapists", "therapist", 0.40)])
+    with pytest.raises(ValueError, match="'T1' has the role 'therapist', which is not listed"):
+        people_with_fte(roles=roles, people=Table.of(("person", "role", "qualified"), [("T1", "therapist", True)]))
+
+
+def test_time_that_nobody_stated_is_not_zero():
+    """With the time of a qualified person blank, neither missing nor qualified FTE is told."""
+    crew = Table.of(PEOPLE, [("P1", "physicist", None, True), ("P2", "physicist", 0.2, True)])
+    (row,) = staffing_balance(
+        hours=hours_of(ALL[2]), people=crew, phase_weeks=NO_PHASES, h_per_fte_per_year=1650
+    ).records()
+    assert row["qualified_fte"] is None
+    assert row["missing_fte"] is None
+    with pytest.raises(OutsideValidity, match="time of a qualified physicist"):
+        profession_fte_qualified(people=crew, profession="physicist")
 
 
 def test_balance_compares_needed_with_stated_and_qualified():
     """The physicists' 257.5 h are 0.156 FTE: 0.15 are stated, 0.10 qualified, 0.056 missing."""
     balance = staffing_balance(hours=hours_of(*ALL), people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=1650)
-    row = next(row for row in balance.records() if row["role"] == "physicist" and row["phase"] == "operate")
+    row = next(row for row in balance.records() if row["profession"] == "physicist" and row["phase"] == "operate")
     assert row["needed_h"] == pytest.approx(257.5)
     assert row["needed_fte"] == pytest.approx(257.5 / 1650)
     assert row["stated_fte"] == pytest.approx(0.15)
@@ -112,7 +147,7 @@ def test_a_phase_of_unknown_length_has_no_fte():
 
 def test_enough_people_are_not_missing():
     """A surplus shows as nobody missing, not as a negative number."""
-    small = hours_of(("checks", "physicist", "operate", "month", 30, 1))
+    small = hours_of(("checks", "physicist", "month", 30, 1))
     (row,) = staffing_balance(
         hours=small, people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=1650
     ).records()
@@ -121,7 +156,7 @@ def test_enough_people_are_not_missing():
 
 def test_minutes_that_nobody_stated_are_never_zero():
     """The task is counted as open, nothing is said to be covered, and the role's need is refused."""
-    hours = hours_of(("checks", "physicist", "operate", "month", None, 1))
+    hours = hours_of(("checks", "physicist", "month", None, 1))
     assert hours.column("total_h") == (None,)
     (row,) = staffing_balance(
         hours=hours, people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=1650
@@ -129,17 +164,15 @@ def test_minutes_that_nobody_stated_are_never_zero():
     assert row["tasks_without_minutes"] == 1
     assert row["missing_fte"] is None
     with pytest.raises(OutsideValidity, match=r"1 task\(s\) of the physicist are not stated"):
-        role_fte_needed(hours=hours, role="physicist", h_per_fte_per_year=1650)
+        profession_fte_needed(hours=hours, profession="physicist", h_per_fte_per_year=1650)
 
 
 @pytest.mark.parametrize(
     ("task", "words"),
     [
-        (("a", "nurse", "operate", "fortnight", 60, 1), "per 'fortnight' is not one of session"),
-        (("a", "nurse", "train", "session", 60, 1), "per session does not belong to phase 'train'"),
-        (("a", "nurse", "operate", "project", 60, 1), "per project does not belong to phase 'operate'"),
-        (("a", "nurse", "operate", "week", -60, 1), "task min of 'a' cannot be -60"),
-        (("a", "nurse", "operate", "week", 60, "two"), "persons of 'a' is not a number"),
+        (("a", "nurse", "fortnight", 60, 1), "per 'fortnight' is not one of session"),
+        (("a", "nurse", "week", -60, 1), "minutes min of 'a' cannot be -60"),
+        (("a", "nurse", "week", 60, "two"), "persons of 'a' is not a number"),
     ],
 )
 def test_impossible_tasks_are_refused(task, words):
@@ -153,9 +186,9 @@ def test_impossible_years_and_people_are_refused():
     with pytest.raises(ValueError, match="volumes of a year"):
         task_hours(tasks=Table.of(TASKS, ALL), **YEAR | {"patients_per_year": -8})
     with pytest.raises(ValueError, match="fte of 'P1' cannot be"):
-        role_fte_qualified(people=Table.of(PEOPLE, [("P1", "physicist", -0.1, True)]), role="physicist")
+        profession_fte_qualified(people=Table.of(PEOPLE, [("P1", "physicist", -0.1, True)]), profession="physicist")
     with pytest.raises(ValueError, match="works some hours"):
-        role_fte_needed(hours=hours_of(*ALL), role="nurse", h_per_fte_per_year=0)
+        profession_fte_needed(hours=hours_of(*ALL), profession="nurse", h_per_fte_per_year=0)
     with pytest.raises(ValueError, match="works some hours"):
         staffing_balance(hours=hours_of(*ALL), people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=0)
     phases = Table.of(("phase", "weeks"), [("commission", 0)])
