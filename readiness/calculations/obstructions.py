@@ -6,12 +6,13 @@ from dataclasses import dataclass
 from readiness.errors import OutsideValidity
 from readiness.quantities import Scalar, Table
 
+LABELS = ("name", "id", "obstruction", "title")
 EDGES = ("x_min_cm", "x_max_cm", "y_min_cm", "y_max_cm", "bottom_cm", "top_cm")
 
 
 @dataclass(frozen=True)
 class Box:
-    """One obstruction: x and y from the isocentre, bottom and top above the floor."""
+    """One obstruction: x and y from the isocentre, bottom and top above the floor; None: nobody said."""
 
     name: str
     x_min_cm: float
@@ -20,6 +21,7 @@ class Box:
     y_max_cm: float
     bottom_cm: float
     top_cm: float
+    movable: bool | None = None
 
     @property
     def corners_cm(self) -> tuple[tuple[float, float], ...]:
@@ -41,7 +43,8 @@ def boxes_of(*, obstructions: Table) -> tuple[Box, ...]:
     Return the obstructions of a table as boxes.
 
     Args:
-        obstructions: Columns name (or id), x_min_cm, x_max_cm, y_min_cm, y_max_cm, bottom_cm, top_cm.
+        obstructions: Columns name (or id, obstruction, title), x_min_cm, x_max_cm, y_min_cm, y_max_cm,
+            bottom_cm, top_cm, and movable where it is known.
 
     Returns:
         One box per row, in the order of the rows.
@@ -52,7 +55,7 @@ def boxes_of(*, obstructions: Table) -> tuple[Box, ...]:
 
     Source: derived.
     """
-    label = "name" if "name" in obstructions.columns else "id"
+    label = next((word for word in LABELS if word in obstructions.columns), "name")
     missing = [column for column in (label, *EDGES) if column not in obstructions.columns]
     if missing:
         raise ValueError(f"the table of obstructions has no column {', '.join(missing)}")
@@ -72,7 +75,8 @@ def _box(name: str, row: Mapping[str, Scalar]) -> Box:
         if isinstance(entry, str | bool):
             raise ValueError(f"{column} of obstruction {name} is not a number")
         edges[column] = float(entry)
-    box = Box(name, **edges)
+    movable = row.get("movable")
+    box = Box(name, **edges, movable=None if movable is None else bool(movable))
     if not (box.x_min_cm < box.x_max_cm and box.y_min_cm < box.y_max_cm and box.bottom_cm < box.top_cm):
         raise ValueError(f"obstruction {name} has an edge beyond its opposite")
     return box

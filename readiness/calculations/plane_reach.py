@@ -17,7 +17,8 @@ from readiness.calculations.room_plan import floor_fault
 from readiness.quantities import Scalar, Table
 
 AS_IT_IS = "as it is"
-WITHOUT_ALL = "without any obstruction"
+WITHOUT_ALL = "without all of these"
+CHANGE_COLUMNS = ("change", "movable", "farthest_plane_distance_cm", "gain_cm", "shortfall_cm", "limited_by")
 
 
 @dataclass(frozen=True)
@@ -183,9 +184,10 @@ def what_would_change(
         door_cm: Where the way starts (x, y); without it, in the largest open part of the room. [cm]
 
     Returns:
-        Columns change, farthest_plane_distance_cm, gain_cm, shortfall_cm (0 where the wanted distance is
-        reached) and limited_by; a blank where the stand fits nowhere. The first row is the room as it is,
-        then one row for each obstruction alone, and the last one is the room without any.
+        Columns change, movable (blank where nobody said), farthest_plane_distance_cm, gain_cm, shortfall_cm
+        (0 where the wanted distance is reached) and limited_by; a blank where the stand fits nowhere. The
+        first row is the room as it is, then one row for each obstruction alone unless it is stated that it
+        cannot be moved, and the last one is the room without all of these.
 
     Raises:
         ValueError: If the floor polygon has a fault, a length is negative or the side is neither 90 nor 270.
@@ -202,19 +204,20 @@ def what_would_change(
         (stand_width_cm, stand_depth_cm, stand_outline_turns, stand_off_cm),
         (access_width_cm, access_headroom_cm, door_cm),
     )  # fmt: skip
-    names = [one.name for one in search.boxes]
-    changes = [(AS_IT_IS, []), *((f"without {name}", [name]) for name in names)]
-    if len(names) > 1:
-        changes.append((WITHOUT_ALL, names))
+    changes: list[tuple[str, bool | None, list[str]]] = [(AS_IT_IS, None, [])]
+    loose = [one for one in search.boxes if one.movable is not False]
+    changes += [(f"without {one.name}", one.movable, [one.name]) for one in loose]
+    if len(loose) > 1:
+        changes.append((WITHOUT_ALL, None, [one.name for one in loose]))
     now = _reach(search, source_axis_distance_cm).farthest_plane_distance_cm
     rows: list[list[Scalar]] = []
-    for words, removed in changes:
+    for words, movable, removed in changes:
         reach = _reach(search.without(removed), source_axis_distance_cm)
         then = reach.farthest_plane_distance_cm
         gain = None if then is None or now is None else then - now
         shortfall = None if then is None else max(0.0, wanted_plane_distance_cm - then)
-        rows.append([words, then, gain, shortfall, reach.limited_by])
-    return Table.of(["change", "farthest_plane_distance_cm", "gain_cm", "shortfall_cm", "limited_by"], rows)
+        rows.append([words, movable, then, gain, shortfall, reach.limited_by])
+    return Table.of(CHANGE_COLUMNS, rows)
 
 
 def _reach(search: PlaneSearch, source_axis_distance_cm: float) -> PlaneReach:

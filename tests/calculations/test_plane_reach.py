@@ -21,6 +21,7 @@ from readiness.calculations.plane_reach import (
     what_would_change,
 )
 from readiness.errors import OutsideValidity
+from readiness.quantities import Table
 
 STAND = {
     "source_axis_distance_cm": 100,
@@ -238,12 +239,12 @@ def test_what_would_change_names_the_one_thing_to_move() -> None:
         wanted_plane_distance_cm=400, side_deg=90, floor_polygon_cm=VAULT_A, obstructions=IN_VAULT_A, **STAND
     )
     assert changes.rows == (
-        ("as it is", 385, 0, 15, "laser box"),
-        ("without gantry stand", 385, 0, 15, "laser box"),
-        ("without parked couch", 385, 0, 15, "laser box"),
-        ("without laser box", 400, 15, 0, "wall at x -365 cm"),
-        ("without cabinet", 385, 0, 15, "laser box"),
-        ("without any obstruction", 400, 15, 0, "wall at x -365 cm"),
+        ("as it is", None, 385, 0, 15, "laser box"),
+        ("without gantry stand", None, 385, 0, 15, "laser box"),
+        ("without parked couch", None, 385, 0, 15, "laser box"),
+        ("without laser box", None, 400, 15, 0, "wall at x -365 cm"),
+        ("without cabinet", None, 385, 0, 15, "laser box"),
+        ("without all of these", None, 400, 15, 0, "wall at x -365 cm"),
     )
 
 
@@ -252,7 +253,24 @@ def test_what_would_change_in_an_empty_room_is_only_the_room() -> None:
     changes = what_would_change(
         wanted_plane_distance_cm=400, side_deg=90, floor_polygon_cm=VAULT_B, obstructions=EMPTY, **STAND
     )
-    assert changes.rows == (("as it is", 288, 0, 112, "wall at x -253 cm"),)
+    assert changes.rows == (("as it is", None, 288, 0, 112, "wall at x -253 cm"),)
+
+
+def test_what_cannot_be_moved_is_not_proposed() -> None:
+    """Obstructions stated as fixed get no row; where nobody said, the row says so by a blank."""
+    rows = [
+        ("pillar", -365, -300, -20, 20, 0, 300, False),
+        ("laser box", -300, -290, -8, 8, 122, 138, True),
+        ("hook", -300, -295, -8, 8, 222, 238, None),
+    ]
+    stated = Table.of([*IN_VAULT_A.columns, "movable"], rows)
+    changes = what_would_change(
+        wanted_plane_distance_cm=400, side_deg=90, floor_polygon_cm=VAULT_A, obstructions=stated, **STAND
+    )
+    expected = ("as it is", "without laser box", "without hook", "without all of these")
+    assert expected == changes.column("change")
+    assert (None, True, None, None) == changes.column("movable")
+    assert (325, 330, 325, 335) == changes.column("farthest_plane_distance_cm")
 
 
 def test_two_things_in_one_place_have_to_go_together() -> None:

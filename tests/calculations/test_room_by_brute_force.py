@@ -126,7 +126,7 @@ def test_cut_is_the_share_of_rays_that_meet_something(seed: int) -> None:
     rows = []
     for number in range(3):
         x, y = sign * random.uniform(100, 240), random.uniform(-18, 10)
-        bottom = random.choice((0, 60, 140))
+        bottom = random.choice((50, 90, 140))
         rows.append((f"box {number}", x, x + 20, y, y + random.uniform(3, 20), bottom, bottom + random.uniform(20, 90)))
     obstructions = table(*rows)
     room = ((-400.0, -400.0), (400.0, -400.0), (400.0, 400.0), (-400.0, 400.0))
