@@ -1,0 +1,397 @@
+"""
+Values of items, worked out when asked for, once, with their descent.
+
+For one value the order is: a measurement that agrees, what the department stated, the calculation,
+a default that nobody stated. What a measurement replaced stays visible.
+"""
+
+from collections.abc import Mapping
+from datetime import date
+from functools import cached_property
+from typing import Any
+
+from readiness.assessment.catalogue import Catalogue
+from readiness.assessment.definition import Definition, Measured, Take
+from readiness.assessment.matching import disagreements, void
+from readiness.assessment.records import Cause, Gone, Got, Input, Ref, Value, weakest
+from readiness.assessment.rounding import settled
+from readiness.errors import OutsideValidity, Place
+from readiness.program.items import Item, Program
+from readiness.quantities import Table, Uncertain
+from readiness.units import unit_of, words_of
+
+_NOWHERE = Place("")
+
+
+class Graph:
+    """All values of one program on one day."""
+
+    def __init__(
+        self,
+        program: Program,
+        made: tuple[Item, ...],
+        catalogue: Catalogue,
+        as_of: date,
+        limits: Mapping[str, Value],
+    ) -> None:
+        """Take the program, the items that the assessment made, and local limits of criteria."""
+        self.program = program
+        self.catalogue = catalogue
+        self.as_of = as_of
+        self._limits = limits
+        self._items: dict[Ref, Item] = {Ref(item.kind, item.id): item for item in (*program.items, *made)}
+        self._children: dict[tuple[str, Ref], list[Ref]] = {}
+        self._known: dict[tuple[str, Ref], Got] = {}
+        self._owners: dict[Ref, dict[str, str]] = {}
+        for ref in self._items:
+            for kind, owner in self.owners(ref).items():
+                self._children.setdefault((ref.kind, Ref(kind, owner)), []).append(ref)
+
+    # -- items ---------------------------------------------------------------------------------
+
+    def item(self, ref: Ref) -> Item | None:
+        """Return an item, or None."""
+        return self._items.get(ref)
+
+    def refs(self, kind: str) -> tuple[Ref, ...]:
+        """Return all items of a kind in their order."""
+        return self._by_kind.get(kind, ())
+
+    @cached_property
+    def _by_kind(self) -> dict[str, tuple[Ref, ...]]:
+        found: dict[str, list[Ref]] = {}
+        for ref in self._items:
+            found.setdefault(ref.kind, []).append(ref)
+        return {kind: tuple(refs) for kind, refs in found.items()}
+
+    def owners(self, ref: Ref) -> dict[str, str]:
+        """Return kind -> id of everything the item belongs to, itself included; the nearest wins."""
+        known = self._owners.get(ref)
+        if known is not None:
+            return known
+        found: dict[str, str] = {}
+        waiting = [ref]
+        while waiting:
+            each = waiting.pop(0)
+            if each.kind in found:
+                continue
+            found[each.kind] = each.id
+            item = self._items.get(each)
+            if item is not None:
+                waiting.extend(Ref(kind, owner) for kind, owner in item.owners.items())
+        found.setdefault("program", "program")
+        self._owners[ref] = found
+        return found
+
+    def list_is_known(self, kind: str, owner: Ref) -> bool:
+        """Return whether the list of a kind is present, so that what is not in it does not exist."""
+        if kind in {"arrangement", "exposure", "document", "measurement"}:
+            return True
+        direct = self.catalogue.kinds.owners(kind)[:1]
+        owner_kind = direct[0] if direct else "program"
+        if owner.kind == owner_kind or owner_kind == "program":
+            return (kind, owner.id if owner.kind == owner_kind else "program") in self.program.known_lists
+        holders = self._children.get((owner_kind, owner), [])
+        return bool(holders) and all((kind, holder.id) in self.program.known_lists for holder in holders)
+
+    # -- values --------------------------------------------------------------------------------
+
+    def supply(self, name: str, item: Ref, value: Any) -> None:
+        """Give a value that only a later step can know (a document's approval)."""
+        self._known[(name, item)] = Value(name, item, value, unit_of(name), "stated")
+
+    def get(self, name: str, asking: Ref) -> Got:
+        """Return a value of an item, or of what it belongs to."""
+        kind = name.partition(".")[0]
+        if kind == "criterion":
+            return self._limit(name)
+        owner = self.owners(asking).get(kind)
+        if owner is None:
+            words = f"{words_of(kind)} for {asking}"
+            return Gone((Cause("item", kind, asking, f"Describe or choose a {words}."),))
+        ref = Ref(kind, owner)
+        key = (name, ref)
+        known = self._known.get(key)
+        if known is None:
+            known = self._known[key] = self._work_out(name, ref)
+        return known
+
+    def values(self) -> tuple[Value, ...]:
+        """Return every value known so far that is fit to be shown, in order of name and item."""
+        shown = [
+            value
+            for (name, _), value in self._known.items()
+            if isinstance(value, Value) and not self._is_internal(name)
+        ]
+        return tuple(sorted(shown, key=lambda value: (value.name, value.item)))
+
+    def _is_internal(self, name: str) -> bool:
+        definition = self.catalogue.definitions.get(name)
+        return bool(definition and definition.internal)
+
+    def _limit(self, name: str) -> Value:
+        if name in self._limits:
+            return self._limits[name]
+        criterion = self.catalogue.criteria[name]
+        return Value(
+            name, Ref("criterion", "criterion"), criterion.value, unit_of(name), "stated",
+            source=criterion.source, known=criterion.known,
+        )  # fmt: skip
+
+    def _work_out(self, name: str, ref: Ref) -> Got:
+        definition = self.catalogue.definitions.get(name)
+        stated = self._stated(name, ref)
+        claim: Got | None = stated
+        if definition is not None and claim is None and (definition.by or definition.of):
+            claim = self._calculated(definition, ref)
+        if claim is None or isinstance(claim, Gone):
+            default = self._assumed(name, ref)
+            claim = default or claim
+        if definition is not None and definition.measured is not None:
+            return self._measured(definition, definition.measured, ref, claim)
+        return claim if claim is not None else self._absent(name, ref)
+
+    def _stated(self, name: str, ref: Ref) -> Value | None:
+        field = name.partition(".")[2]
+        item = self._items.get(ref)
+        if field == "id":
+            return Value(name, ref, ref.id, "", "stated", where=item.place if item else None)
+        if name == "program.as_of_date":
+            return Value(name, ref, self.as_of, "", "stated")
+        stated = item.fields.get(field) if item else None
+        if stated is None:
+            return None
+        return Value(name, ref, stated.value, unit_of(name), "stated", where=stated.place)
+
+    def _assumed(self, name: str, ref: Ref) -> Value | None:
+        field = self.catalogue.kinds.field(name)
+        if field is None or field.assumed is None or ref not in self._items:
+            return None
+        assumed = field.assumed
+        return Value(
+            name, ref, assumed.value, unit_of(name), "assumed", source=assumed.source, known=assumed.known
+        )
+
+    def _absent(self, name: str, ref: Ref) -> Gone:
+        field = self.catalogue.kinds.field(name)
+        what = words_of(name)
+        unit = f" ({unit_of(name)})" if unit_of(name) else ""
+        if field is None:
+            return Gone((Cause("item", name, ref, f"Supply {what}{unit} of {ref}."),))
+        file = self.catalogue.kinds.described.kinds[field.kind].file
+        return Gone((Cause("field", name, ref, f"State {what}{unit} of {ref} in {file}."),))
+
+    # -- calculations --------------------------------------------------------------------------
+
+    def _calculated(self, definition: Definition, ref: Ref) -> Got:
+        if definition.of:
+            whole = self.get(definition.of, ref)
+            if isinstance(whole, Gone):
+                return whole
+            result = getattr(whole.value, definition.part)
+            inputs = whole.inputs if self._is_internal(definition.of) else (
+                Input("record", definition.of, whole.item),
+            )  # fmt: skip
+            return self._value(definition, ref, result, inputs, whole.basis, None)
+        return self._run(definition, definition.by, self.catalogue.takes[definition.name], ref, None)
+
+    def _run(
+        self,
+        definition: Definition,
+        by: Any,
+        takes: tuple[tuple[str, Take], ...],
+        ref: Ref,
+        measurement: Ref | None,
+        part: str = "",
+    ) -> Got:
+        given, inputs, bases, causes = self._gather(takes, ref, measurement)
+        if causes:
+            return Gone(tuple(sorted(set(causes))))
+        try:
+            result = by(**given)
+        except OutsideValidity as outside:
+            return Gone((Cause("validity", definition.name, ref, str(outside)),))
+        except ValueError as contradiction:
+            return Gone((Cause("contradiction", definition.name, ref, f"{contradiction} ({ref})"),))
+        if result is None:
+            return Gone(
+                (Cause("validity", definition.name, ref, f"{definition.meaning} It has no answer here."),)
+            )
+        if part:
+            result = getattr(result, part)
+        basis = "measured" if measurement else weakest(bases + (["predicted"] if definition.model else []))
+        return self._value(definition, ref, result, inputs, basis, measurement)
+
+    def _gather(
+        self, takes: tuple[tuple[str, Take], ...], ref: Ref, measurement: Ref | None
+    ) -> tuple[dict[str, Any], tuple[Input, ...], list[str], list[Cause]]:
+        given: dict[str, Any] = {}
+        inputs: list[Input] = []
+        bases: list[str] = []
+        causes: list[Cause] = []
+        for keyword, take in takes:
+            asking = measurement if measurement is not None and take.kind == "measurement" else ref
+            if take.form == "one":
+                got = self.get(take.name, asking)
+                given[keyword] = self._taken(keyword, take, got, inputs, bases, causes)
+            elif take.form == "each":
+                given[keyword] = self._each(keyword, take, asking, inputs, bases, causes)
+            else:
+                given[keyword] = self._rows(keyword, take, asking, inputs, bases, causes)
+        return given, tuple(inputs), bases, causes
+
+    def _taken(
+        self, keyword: str, take: Take, got: Got, inputs: list[Input], bases: list[str], causes: list[Cause]
+    ) -> Any:
+        if isinstance(got, Gone):
+            if not take.optional:
+                causes.extend(got.causes)
+            return None
+        inputs.append(Input(keyword, got.name, got.item))
+        if not self.catalogue.is_choice(got.name):
+            bases.append(got.basis)
+        return got.value
+
+    def _listed(self, kind: str, ref: Ref) -> tuple[list[Ref], Cause | None]:
+        anchor = self.catalogue.kinds.anchor(ref.kind, kind)
+        owner = Ref(anchor or "program", self.owners(ref).get(anchor or "program", "program"))
+        found = self._children.get((kind, owner), [])
+        if found or self.list_is_known(kind, owner):
+            return found, None
+        file = self.catalogue.kinds.described.kinds[kind].file
+        title = self.catalogue.kinds.described.kinds[kind].title.lower()
+        return [], Cause(
+            "list", kind, owner, f"List every {title} of {owner} in {file}; [] if there is none."
+        )
+
+    def _each(
+        self, keyword: str, take: Take, ref: Ref, inputs: list[Input], bases: list[str], causes: list[Cause]
+    ) -> tuple[Any, ...]:
+        found, unknown = self._listed(take.kind, ref)
+        if unknown:
+            causes.append(unknown)
+        return tuple(
+            self._taken(keyword, take, self.get(take.name, each), inputs, bases, causes) for each in found
+        )
+
+    def _rows(
+        self, keyword: str, take: Take, ref: Ref, inputs: list[Input], bases: list[str], causes: list[Cause]
+    ) -> Table:
+        found, unknown = self._listed(take.name, ref)
+        if unknown:
+            causes.append(unknown)
+        columns = [
+            (column, Take("one", f"{take.name}.{column}", optional)) for column, optional in take.columns
+        ]
+        rows = [
+            tuple(
+                self._taken(keyword, column, self.get(column.name, each), inputs, bases, causes)
+                for _, column in columns
+            )
+            for each in found
+        ]
+        return Table(tuple(name for name, _ in columns), tuple(rows))
+
+    def _value(
+        self,
+        definition: Definition,
+        ref: Ref,
+        result: Any,
+        inputs: tuple[Input, ...],
+        basis: str,
+        measurement: Ref | None,
+    ) -> Value:
+        sd = None
+        if isinstance(result, Uncertain):
+            result, sd = result.value, settled(result.sd)
+        if not definition.internal:
+            result = settled(result)
+        item = self._items.get(measurement) if measurement else None
+        return Value(
+            definition.name, ref, result, unit_of(definition.name), basis, sd, inputs,
+            item.place if item else None, definition.source, definition.known,
+        )  # fmt: skip
+
+    # -- measurements --------------------------------------------------------------------------
+
+    def _measured(self, definition: Definition, measured: Measured, ref: Ref, claim: Got | None) -> Got:
+        found, near = self.measurements(measured, ref)
+        for measurement in reversed(found):
+            got = self._analysed(definition, measured, ref, measurement)
+            if isinstance(got, Value):
+                replaced = claim if isinstance(claim, Value) else None
+                return Value(**{**got.__dict__, "instead_of": replaced})
+            near += got.causes
+        if isinstance(claim, Value):
+            return claim
+        own = claim.causes if claim is not None else ()
+        return Gone(tuple(sorted({*own, *self._wanted(measured, ref, near)})))
+
+    def _analysed(self, definition: Definition, measured: Measured, ref: Ref, measurement: Ref) -> Got:
+        takes = self.catalogue.measured_takes[definition.name]
+        if measured.by is not None:
+            return self._run(definition, measured.by, takes, ref, measurement, measured.part)
+        ((_, take),) = takes
+        got = self.get(take.name, measurement)
+        if isinstance(got, Gone):
+            return got
+        value = getattr(got.value, measured.part) if measured.part else got.value
+        inputs = (Input("measurement", take.name, measurement),)
+        return self._value(definition, ref, value, inputs, "measured", measurement)
+
+    def measurements(self, measured: Measured, ref: Ref) -> tuple[list[Ref], tuple[Cause, ...]]:
+        """Return the measurements that stand for an item, oldest first, and why others do not."""
+        found: list[tuple[date, Ref]] = []
+        near: list[Cause] = []
+        owners = self.owners(ref)
+        for candidate in self.refs("measurement"):
+            item = self._items[candidate]
+            if item.get("kind") != measured.kind:
+                continue
+            reasons = list(disagreements(item, owners, ref, self.get, measured.ignores))
+            invalid = void(item, self.program)
+            if invalid:
+                reasons.append(invalid)
+            done = item.get("date")
+            if not reasons and isinstance(done, date):
+                found.append((done, candidate))
+            elif len(reasons) <= 2:
+                words = f"{item.place.file} does not count for {ref}: {'; '.join(reasons)}."
+                near.append(Cause("measurement", measured.kind, ref, words))
+        found.sort()
+        return [candidate for _, candidate in found], tuple(near)
+
+    def why_not_measured(self, name: str, ref: Ref) -> tuple[Cause, ...]:
+        """Return what is missing for a value to be measured."""
+        definition = self.catalogue.definitions.get(name)
+        owner = Ref(name.partition(".")[0], self.owners(ref).get(name.partition(".")[0], ref.id))
+        if definition is None or definition.measured is None:
+            return (Cause("measurement", name, owner, f"Measure {words_of(name)} of {owner}."),)
+        _, near = self.measurements(definition.measured, owner)
+        return self._wanted(definition.measured, owner, near)
+
+    def _wanted(self, measured: Measured, ref: Ref, near: tuple[Cause, ...]) -> tuple[Cause, ...]:
+        words = f"Measure {measured.kind.replace('-', ' ')} for {ref}."
+        return tuple(sorted({Cause("measurement", measured.kind, ref, words), *near}))
+
+    def assumed_roots(self, name: str, ref: Ref) -> tuple[Cause, ...]:
+        """Return the defaults that a value rests on, as things to state."""
+        found: set[Cause] = set()
+        seen: set[tuple[str, Ref]] = set()
+        waiting = [(name, ref)]
+        while waiting:
+            each = waiting.pop()
+            if each in seen:
+                continue
+            seen.add(each)
+            value = self.get(*each)
+            if not isinstance(value, Value) or value.basis != "assumed":
+                continue
+            if not value.inputs:
+                unit = f" {value.unit}" if value.unit else ""
+                words = f"State {words_of(value.name)} of {value.item}; {value.value}{unit} is only assumed."
+                found.add(Cause("assumed", value.name, value.item, words))
+            waiting.extend(
+                (one.name, one.item) for one in value.inputs if one.name.partition(".")[0] != "criterion"
+            )
+        return tuple(sorted(found))
