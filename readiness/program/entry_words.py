@@ -17,6 +17,16 @@ _ONE = {
     "yes or no": "yes or no",
 }
 
+_SAY_INSTEAD = {  # words of the trade that are not keys here, because they mean two things or are measured
+    "fractions": "a fraction may be a cycle or a session: write cycles and sessions_per_cycle",
+    "dose_per_fraction_gy": "a fraction may be a cycle or a session: write dose_per_cycle_gy",
+    "fractionation": "write dose_per_cycle_gy, cycles and sessions_per_cycle",
+    "energy_mev": "a beam is described by r50_cm and rp_cm",
+    "sad_cm": "write source_axis_distance_cm",
+    "ssd_cm": "write plane_distance_cm in a plan",
+    "name": "write title, or a role instead of a person's name",
+}
+
 
 def words_at(fields: Mapping[str, FieldSchema], path: Path) -> str:
     """Return what stands at a path, in the user's words."""
@@ -58,7 +68,9 @@ def is_blank(node: nodes.Node) -> bool:
 
 def unknown_key(key: str, known: Iterable[str], where: str = "", elsewhere: str = "") -> str:
     """Return the message for a key that nobody reads; ``elsewhere`` says where it would be read."""
-    return f"{shown(key)} is not known{where}{did_you_mean(key, known) or elsewhere}"
+    instead = _SAY_INSTEAD.get(key.casefold())
+    hint = f": {instead}" if instead else did_you_mean(key, known) or elsewhere
+    return f"{shown(key)} is not known{where}{hint}"
 
 
 def one(kind: str) -> str:

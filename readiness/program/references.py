@@ -52,7 +52,7 @@ def dangling(
         ids.setdefault(item.kind, []).append(item.id)
     ids["any"] = [each for named in ids.values() for each in named]
     ids["file"] = [name for name in files if name.startswith(EVIDENCE)]
-    described = [use for use in uses if use.kind in {"any", "file"} or _list_of(use) in known_lists]
+    described = [use for use in uses if _is_complete(use, known_lists, schemas)]
     return [
         Problem(use.place, _not_there(use, ids.get(use.kind, []), schemas), "reference")
         for use in described
@@ -60,10 +60,15 @@ def dangling(
     ]
 
 
-def _list_of(use: Use) -> tuple[str, str]:
-    """Return the list in which the name must stand."""
+def _is_complete(use: Use, known_lists: Collection[tuple[str, str]], schemas: Schemas) -> bool:
+    """Return whether the list in which a name must stand is present."""
+    if use.kind in {"any", "file"}:
+        return True
     owner, _, _ = use.name.rpartition("/")
-    return (use.kind, owner or PROGRAM)
+    described = schemas.kinds.get(use.kind)
+    if not owner and described is not None and described.owner != PROGRAM:  # its owner is not named
+        return any(kind == use.kind for kind, _ in known_lists)
+    return (use.kind, owner or PROGRAM) in known_lists
 
 
 def owner_closure(program: Program, item: Item) -> Mapping[str, str]:

@@ -1,0 +1,33 @@
+"""
+What no single entry shows to be wrong: geometry, dates and numbers that cannot be, or that smell.
+
+One subject a module, one fact a function. What cannot be is a problem; what is odd is a question, which is
+shown but stops nothing.
+"""
+
+from readiness.errors import Problem
+from readiness.program.fields import Schemas
+from readiness.program.items import Program
+from readiness.program.plausibility import courses, equipment, measurements, records, rooms, shielding
+from readiness.program.plausibility.stated import QUESTION, Check
+from readiness.program.plausibility.units import mistaken_units
+
+CHECKS: tuple[Check, ...] = (
+    *rooms.CHECKS,
+    *equipment.CHECKS,
+    *courses.CHECKS,
+    *records.CHECKS,
+    *shielding.CHECKS,
+    *measurements.CHECKS,
+)
+
+
+def implausible(program: Program, schemas: Schemas) -> list[Problem]:
+    """Return everything in a program that cannot be, and everything that is odd."""
+    found = [problem for check in CHECKS for problem in check(program)]
+    return [*found, *mistaken_units(program, schemas)]
+
+
+def is_question(problem: Problem) -> bool:
+    """Return whether a problem is only a question, which stops nothing."""
+    return problem.kind == QUESTION

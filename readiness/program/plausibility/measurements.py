@@ -1,0 +1,78 @@
+"""Readings that contradict their own header."""
+
+from collections.abc import Iterator
+
+from readiness.errors import Problem
+from readiness.program.items import Program
+from readiness.program.plausibility.stated import Check, impossible, number, question, table, word
+from readiness.quantities import Scalar
+from readiness.units import printed
+
+MEASUREMENT = "measurement"
+_PROFILES = {"angle-sweep", "dual-profile", "single-profile", "depth-dose-single", "depth-dose-composite"}
+_POSITIONS = ("tilt_deg", "height_cm", "across_cm", "depth_mm", "angle_deg")
+
+
+def gaps(program: Program) -> Iterator[Problem]:
+    """A degrader hangs between source and plane, and without one there is no gap."""
+    for item in program.of_kind(MEASUREMENT):
+        gap, distance = number(item, "gap_cm"), number(item, "distance_cm")
+        if gap is not None and distance is not None and gap >= distance:
+            message = f"a gap of {printed(gap)} cm reaches the source, {printed(distance)} cm away"
+            yield impossible(item, "gap_cm", message)
+        if gap and word(item, "degrader") == "none":
+            yield impossible(item, "gap_cm", f"there is no degrader, so the gap is 0, not {printed(gap)} cm")
+
+
+def media(program: Program) -> Iterator[Problem]:
+    """There is no depth in air."""
+    for item in program.of_kind(MEASUREMENT):
+        depth = number(item, "depth_mm")
+        if word(item, "medium") == "air" and depth:
+            yield question(item, "depth_mm", f"a depth of {printed(depth)} mm in air; was a phantom used?")
+
+
+def rooms(program: Program) -> Iterator[Problem]:
+    """A machine is measured where it stands."""
+    for item in program.of_kind(MEASUREMENT):
+        machine = program.find("machine", word(item, "machine") or "")
+        stands_in = word(machine, "room") if machine is not None else None
+        room = word(item, "room")
+        if room is not None and stands_in is not None and room != stands_in:
+            message = f"measured in {room}, but {word(item, 'machine')} stands in {stands_in}"
+            yield question(item, "room", message)
+
+
+def positions(program: Program) -> Iterator[Problem]:
+    """A profile has one reading at a position."""
+    for item in program.of_kind(MEASUREMENT):
+        readings = table(item, "table")
+        if readings is None or word(item, "kind") not in _PROFILES:
+            continue
+        at = [readings.columns.index(name) for name in _POSITIONS if name in readings.columns]
+        seen: dict[tuple[Scalar, ...], int] = {}
+        for number_of_row, row in enumerate(readings.rows, 1):
+            position = tuple(row[each] for each in at)
+            first = seen.setdefault(position, number_of_row)
+            if first != number_of_row:
+                message = f"row {number_of_row} has the position of row {first}: which of them counts?"
+                yield question(item, "table", message)
+
+
+def spans(program: Program) -> Iterator[Problem]:
+    """A profile in centimetres spans more than a hand: else its unit was mistaken."""
+    for item in program.of_kind(MEASUREMENT):
+        readings = table(item, "table")
+        if readings is None or word(item, "kind") not in {"angle-sweep", "dual-profile", "single-profile"}:
+            continue
+        widest = 0.0
+        for name in ("height_cm", "across_cm"):
+            if name in readings.columns:
+                found = [each for each in readings.column(name) if isinstance(each, int | float)]
+                widest = max(widest, max(found, default=0) - min(found, default=0))
+        if 0 < widest < 10:
+            message = f"the positions span {printed(widest)} cm; were they read in metres?"
+            yield question(item, "table", message)
+
+
+CHECKS: tuple[Check, ...] = (gaps, media, rooms, positions, spans)
