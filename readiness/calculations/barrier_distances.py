@@ -2,8 +2,15 @@
 
 from dataclasses import dataclass
 from math import isfinite, radians, sin
+from typing import cast
 
-TOWARD = ("90", "270", "across", "above", "below")
+from readiness.errors import OutsideValidity
+from readiness.quantities import Table
+
+BEYOND_CM = 30.0  # from the outer face to the point that is protected (ncrp-151, memory)
+FACED_FROM = {"x-min-wall": 90.0, "x-max-wall": 270.0}  # beam side that faces the wall
+SURFACES = (*FACED_FROM, "y-min-wall", "y-max-wall", "ceiling", "floor")
+SURVEY_ONLY = ("door", "maze", "penetration")
 
 
 @dataclass(frozen=True)
@@ -26,70 +33,99 @@ class BarrierDistances:
 
 def barrier_distances(
     *,
-    toward: str,
-    isocentre_distance_m: float,
+    surface: str,
+    layers: Table,
+    inner_face_cm: float | None,
+    distance_m: float | None,
+    isocentre_distance_m: float | None,
+    leakage_distance_m: float | None,
+    isocentre_height_cm: float | None,
     side_deg: float,
     tilt_deg: float,
     source_axis_distance_cm: float,
     plane_distance_cm: float,
-    stated_head_distance_m: float | None,
 ) -> BarrierDistances:
     """
-    Return all distances to a barrier from one of them, for a beam side.
+    Return all distances to a barrier, for a beam side, from those that are stated or from its inner face.
 
-    For the barrier that the beam faces: source and head at d_iso + SAD, patient at d_iso - (D - SAD). For the
+    For the wall that the beam faces: source and head at d_iso + SAD, patient at d_iso - (D - SAD). For the
     opposite one: head at d_iso - SAD, a metre nearer than the isocentre, patient at d_iso + (D - SAD). Across
     the beam, above and below, the nearest point counts, opposite to head, isocentre or patient; above and
     below the tilted head is nearer by SAD sin t.
 
     Args:
-        toward: Where the barrier stands: where a beam at gantry ``90`` or ``270`` goes, ``across`` it,
-            ``above`` or ``below``.
-        isocentre_distance_m: From the isocentre, at right angles to the barrier, to 0.3 m beyond it. [m]
+        surface: ``x-min-wall`` (faced at gantry 90), ``x-max-wall`` (270), ``y-min-wall``, ``y-max-wall``,
+            ``ceiling`` or ``floor``; doors, mazes and penetrations are for the survey.
+        layers: With thickness_cm, for the distance from the inner face.
+        inner_face_cm: Coordinate of the inner face from the isocentre, for ceiling and floor its height above
+            the floor; None if not stated. [cm]
+        distance_m: From the source through the isocentre to 0.3 m beyond; None if not stated. [m]
+        isocentre_distance_m: From the isocentre to 0.3 m beyond; None if not stated. [m]
+        leakage_distance_m: From the head to 0.3 m beyond, taken where the head is beside the barrier; in
+            line with the beam it follows from the side. None if not stated. [m]
+        isocentre_height_cm: Of the isocentre above the floor, for ceiling and floor; None if not stated. [cm]
         side_deg: Beam side as gantry angle, 90 or 270. [deg]
         tilt_deg: Half angle between the two axes, t. [deg]
         source_axis_distance_cm: From the source to the isocentre, SAD. [cm]
         plane_distance_cm: From the nominal source to the patient's plane, D. [cm]
-        stated_head_distance_m: From the head to the point, if the department measured another one. [m]
 
     Returns:
         The distances and the scattering angle at the patient.
 
     Raises:
-        ValueError: If a word is none of those listed, the side neither 90 nor 270, a distance not above zero,
-            or the point lies before patient or head.
+        ValueError: If a word is none of those listed, an angle or distance is outside its meaning, or the
+            point lies before patient or head.
+        OutsideValidity: For doors, mazes and penetrations, or if no distance is stated and none follows.
 
     Assumes: sources at their nominal place; along the beam the tilt brings them forward by less than 5 cm and
         makes the path longer by more.
     Source: derived; existing leakage from the isocentre as in ncrp-151, sec. 2.2.2 (memory).
     """
-    if toward not in TOWARD:
-        raise ValueError(f"a barrier stands toward one of {', '.join(TOWARD)}, not {toward!r}")
+    _check(surface, side_deg, tilt_deg, (source_axis_distance_cm, plane_distance_cm))
+    axis, beyond = source_axis_distance_cm / 100.0, (plane_distance_cm - source_axis_distance_cm) / 100.0
+    iso = isocentre_distance_m
+    if iso is None and distance_m is not None and surface in FACED_FROM:
+        iso = distance_m - axis
+    if iso is None:
+        iso = _from_inner_face(surface, layers, inner_face_cm, isocentre_height_cm)
+    source = iso + axis if distance_m is None else distance_m
+    faces = FACED_FROM.get(surface) == side_deg
+    if faces:
+        head, patient, angle = source, source - beyond - axis, 0.0
+    elif surface in FACED_FROM:
+        head, patient, angle = iso - axis, iso + beyond, 180.0
+    else:
+        raised = axis * sin(radians(tilt_deg)) if surface in ("ceiling", "floor") else 0.0
+        head = iso - raised if leakage_distance_m is None else leakage_distance_m
+        patient, angle = iso, 90.0
+    if not all(isfinite(each) and each > 0.0 for each in (iso, source, head, patient)):
+        raise ValueError("the point beyond the barrier lies before the isocentre, the head or the patient")
+    return BarrierDistances(faces, source, iso, head, source if faces else None, patient, angle)
+
+
+def _check(surface: str, side_deg: float, tilt_deg: float, distances: tuple[float, ...]) -> None:
+    """Refuse words and numbers outside their meaning."""
+    if surface in SURVEY_ONLY:
+        raise OutsideValidity("doors, mazes and penetrations are not computed: survey in the mode")
+    if surface not in SURFACES:
+        raise ValueError(f"a barrier is one of {', '.join(SURFACES)}, not {surface!r}")
     if side_deg not in (90.0, 270.0):
         raise ValueError(f"a beam side is 90 or 270 degrees, not {side_deg:g}")
     if not 0.0 <= tilt_deg < 90.0:
         raise ValueError(f"a tilt lies from 0 to below 90 degrees, not {tilt_deg:g}")
-    for each in (isocentre_distance_m, source_axis_distance_cm, plane_distance_cm):
+    for each in distances:
         if not (isfinite(each) and each > 0.0):
             raise ValueError(f"a distance must be above zero, not {each:g}")
-    axis, beyond = source_axis_distance_cm / 100.0, (plane_distance_cm - source_axis_distance_cm) / 100.0
-    faces = toward == f"{side_deg:g}"
-    if toward in ("90", "270"):
-        head = isocentre_distance_m + (axis if faces else -axis)
-        patient, angle = isocentre_distance_m + (-beyond if faces else beyond), (0.0 if faces else 180.0)
-    else:
-        raised = axis * sin(radians(tilt_deg)) if toward in ("above", "below") else 0.0
-        head, patient, angle = isocentre_distance_m - raised, isocentre_distance_m, 90.0
-    if stated_head_distance_m is not None:
-        head = stated_head_distance_m
-    if not (head > 0.0 and patient > 0.0):
-        raise ValueError("the point beyond the barrier lies before the head or the patient")
-    return BarrierDistances(
-        faces_beam=faces,
-        primary_distance_m=isocentre_distance_m + axis,
-        isocentre_distance_m=isocentre_distance_m,
-        head_distance_m=head,
-        xray_distance_m=isocentre_distance_m + axis if faces else None,
-        scatter_distance_m=patient,
-        scatter_angle_deg=angle,
-    )
+
+
+def _from_inner_face(surface: str, layers: Table, face_cm: float | None, height_cm: float | None) -> float:
+    """Return the distance from the isocentre to 0.3 m beyond, from the inner face and the thickness."""
+    upright = surface not in ("ceiling", "floor")
+    if face_cm is None or not layers.rows or (height_cm is None and not upright):
+        raise OutsideValidity(
+            "no distance to the barrier is stated, and it does not follow: state it from the isocentre, or "
+            "state the inner face and the layers"
+        )
+    inside = abs(face_cm) if upright else abs(face_cm - cast(float, height_cm))
+    thickness = sum(cast(float, entry) for entry in layers.column("thickness_cm"))
+    return (inside + thickness + BEYOND_CM) / 100.0

@@ -13,7 +13,7 @@ from readiness.calculations.dose_sources import (
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
-ROLES = ("primary", "secondary", "door", "penetration")
+ROLES = ("primary", "secondary", "door", "maze", "penetration")
 SMALLEST_SCATTER_ANGLE_DEG = 15.0  # below it the table of layers ends; the x rays go there unweakened anyway
 NEUTRONS_FROM_MV = 10.0
 COLUMNS = (
@@ -83,11 +83,11 @@ def weekly_dose(
 
     Args:
         layers: From inside outwards: material, thickness_cm, density_g_per_cm3 (blank for steel or lead).
-        role: What the barrier was built as: ``primary``, ``secondary``, ``door`` or ``penetration``.
+        role: What the barrier was built for: ``primary`` or ``secondary``; others are for the survey.
         occupancy: Part of the time that a person is beyond it, T. [1]
         recess_depth_cm: Material missing along the beam: laser recess, niche, conduits. [cm]
         existing: Workloads already there: energy_mv, kind (primary or leakage), workload_gy_per_week at 1 m,
-            use_factor (blank for leakage).
+            use_factor (blank for leakage), distance_m (blank unless it has its own).
         primary_distance_m: From the source of existing primary beams to 0.3 m beyond; None without any. [m]
         isocentre_distance_m: From the isocentre to 0.3 m beyond, for existing leakage; None without any. [m]
         beam_energy_mv: End point of the electron beam's x rays, equal to the electrons' energy. [MV]
@@ -158,11 +158,11 @@ def existing_dose(
 
     Args:
         layers: From inside outwards: material, thickness_cm, density_g_per_cm3 (blank for steel or lead).
-        role: What the barrier was built as: ``primary``, ``secondary``, ``door`` or ``penetration``.
+        role: What the barrier was built for: ``primary`` or ``secondary``; others are for the survey.
         occupancy: Part of the time that a person is beyond it, T. [1]
         recess_depth_cm: Material missing along the beam: laser recess, niche, conduits. [cm]
         existing: Workloads: energy_mv, kind (primary or leakage), workload_gy_per_week at 1 m, use_factor
-            (blank for leakage).
+            (blank for leakage), distance_m (blank unless it has its own).
         primary_distance_m: From the source of existing primary beams to 0.3 m beyond; None without any. [m]
         isocentre_distance_m: From the isocentre to 0.3 m beyond, for existing leakage; None without any. [m]
 
@@ -188,7 +188,7 @@ def _check_barrier(role: str, occupancy: float) -> None:
     """Refuse what is no barrier that can be computed."""
     if role not in ROLES:
         raise ValueError(f"the role of a barrier is one of {', '.join(ROLES)}, not {role!r}")
-    if role in ("door", "penetration"):
+    if role in ("door", "maze", "penetration"):
         raise OutsideValidity("doors, mazes and penetrations are not computed: survey in the mode")
     if not 0.0 < occupancy <= 1.0:
         raise ValueError(f"an occupancy lies above 0 and at most at 1, not {occupancy:g}")

@@ -5,19 +5,19 @@ from dataclasses import dataclass
 from math import cos, radians, sin, sqrt
 from typing import cast
 
+from readiness.calculations.barrier_distances import BEYOND_CM
 from readiness.calculations.beam_geometry import ray_direction, source_position, tilted_gantry_angles
 from readiness.calculations.surface_hit import SurfaceHit, first_surface_hit
 from readiness.errors import OutsideValidity
 from readiness.quantities import Scalar, Table
 
-BEYOND_CM = 30.0  # point of interest behind a barrier, and margin of a belt on each side (ncrp-151, memory)
+BELT_MARGIN_CM = 30.0  # on each side of the beam (ncrp-151, read as quoted)
 RAYS = ("axis", "upper edge", "lower edge", "edge toward gantry", "edge away from gantry")
 SPOT_COLUMNS = (
     "field",
     "gantry_deg",
     "ray",
     "surface",
-    "toward",
     "wall_number",
     "x_cm",
     "y_cm",
@@ -31,8 +31,8 @@ SPOT_COLUMNS = (
 class BeamSpots:
     """Where axes and edges of both tilted fields meet floor, walls and ceiling of the bare room."""
 
-    axes_toward: str
-    edges_toward: str
+    axes_on: str
+    all_on: str
     axes_on_one_wall: bool
     reaches_floor: bool
     reaches_ceiling: bool
@@ -75,7 +75,7 @@ def beam_spots(
         ceiling_height_cm: Of the ceiling above the floor. [cm]
 
     Returns:
-        The spots, the sides of the room they lie on (words as in ``barrier_distances``), the largest
+        The spots, the surfaces they lie on (words as in ``barrier_distances``), the largest
         obliquity of an axis, and the full width of the field where its side edges meet the room.
 
     Raises:
@@ -92,7 +92,7 @@ def beam_spots(
         for ray, upward, sideways in _tangents(opening_cm, collimator_angle_deg):
             hit = _hit(gantry, upward, sideways, source_axis_distance_cm, room)
             found.append((field, gantry, ray, hit))
-    sides = [_toward(hit, floor_polygon_cm) for *_, hit in found]
+    sides = [_surface(hit, floor_polygon_cm) for *_, hit in found]
     axes = [side for side, (_, _, ray, _) in zip(sides, found, strict=True) if ray == "axis"]
     axis_hits = [hit for _, _, ray, hit in found if ray == "axis"]
     across = [hit.point.y_cm for _, _, ray, hit in found if ray.startswith("edge")]
@@ -101,7 +101,6 @@ def beam_spots(
             field,
             gantry,
             ray,
-            hit.surface,
             side,
             hit.wall_index,
             hit.point.x_cm,
@@ -113,40 +112,41 @@ def beam_spots(
         for (field, gantry, ray, hit), side in zip(found, sides, strict=True)
     ]
     return BeamSpots(
-        axes_toward=", ".join(dict.fromkeys(axes)),
-        edges_toward=", ".join(dict.fromkeys(sides)),
+        axes_on=", ".join(dict.fromkeys(axes)),
+        all_on=", ".join(dict.fromkeys(sides)),
         axes_on_one_wall=len({hit.wall_index for hit in axis_hits}) == 1 and axis_hits[0].surface == "wall",
-        reaches_floor="below" in sides,
-        reaches_ceiling="above" in sides,
+        reaches_floor="floor" in sides,
+        reaches_ceiling="ceiling" in sides,
         largest_axis_obliquity_deg=max(hit.obliquity_deg for hit in axis_hits),
         widest_cm=max(across) - min(across),
         spots=Table.of(SPOT_COLUMNS, rows),
     )
 
 
-def nearest_spot_distance_m(*, spots: Table, toward: str, thickness_cm: float) -> float | None:
+def nearest_spot_distance_m(*, spots: Table, surface: str, layers: Table) -> float | None:
     """
-    Return the shortest way of a tilted field through one side of the room to 0.3 m beyond it.
+    Return the shortest way of a tilted field through one surface of the room to 0.3 m beyond it.
 
     d = path + t + 0.3 m, without the lengthening by obliquity, which is the careful choice
 
     Args:
         spots: As ``beam_spots`` gives them.
-        toward: Side of the room: ``90``, ``270``, ``across``, ``above`` or ``below``.
-        thickness_cm: Of the barrier there, t. [cm]
+        surface: Such as ``ceiling`` or ``x-min-wall``; a word that names none of them gives None.
+        layers: Of the barrier there, with thickness_cm.
 
     Returns:
-        Distance from the source, or None where neither axis nor edge meets that side. [m]
+        Distance from the source, or None where neither axis nor edge meets that surface. [m]
 
     Raises:
-        ValueError: If the thickness is below zero.
+        OutsideValidity: If the barrier has no layers.
 
     Source: derived.
     """
-    if not thickness_cm >= 0.0:
-        raise ValueError(f"a thickness must not be below zero, not {thickness_cm:g}")
-    paths = [cast(float, row["path_cm"]) for row in spots.records() if row["toward"] == toward]
-    return (min(paths) + thickness_cm + BEYOND_CM) / 100.0 if paths else None
+    if not layers.rows:
+        raise OutsideValidity("the barrier has no layers: state material, thickness and density of each")
+    thickness = sum(cast(float, entry) for entry in layers.column("thickness_cm"))
+    paths = [cast(float, row["path_cm"]) for row in spots.records() if row["surface"] == surface]
+    return (min(paths) + thickness + BEYOND_CM) / 100.0 if paths else None
 
 
 def primary_belt(*, opening_cm: float, distance_cm: float, belt_width_cm: float | None) -> PrimaryBelt:
@@ -174,7 +174,7 @@ def primary_belt(*, opening_cm: float, distance_cm: float, belt_width_cm: float 
     if belt_width_cm is not None and not belt_width_cm > 0.0:
         raise ValueError(f"a width must be above zero, not {belt_width_cm:g}")
     diagonal = sqrt(2.0) * opening_cm * distance_cm / 100.0
-    needed = diagonal + 2.0 * BEYOND_CM
+    needed = diagonal + 2.0 * BELT_MARGIN_CM
     return PrimaryBelt(diagonal, needed, None if belt_width_cm is None else belt_width_cm - needed)
 
 
@@ -211,11 +211,11 @@ def _hit(
         raise OutsideValidity("the source stands outside the room that is described") from fault
 
 
-def _toward(hit: SurfaceHit, polygon: Sequence[tuple[float, float]]) -> str:
-    """Return the side of the room on which a spot lies."""
+def _surface(hit: SurfaceHit, polygon: Sequence[tuple[float, float]]) -> str:
+    """Return the surface of the room on which a spot lies, walls by the side of the room they belong to."""
     if hit.wall_index is None:
-        return "below" if hit.surface == "floor" else "above"
+        return hit.surface
     (ax, ay), (bx, by) = polygon[hit.wall_index], polygon[(hit.wall_index + 1) % len(polygon)]
     if abs(bx - ax) > abs(by - ay):
-        return "across"
-    return "90" if hit.point.x_cm < 0.0 else "270"
+        return "y-min-wall" if hit.point.y_cm < 0.0 else "y-max-wall"
+    return "x-min-wall" if hit.point.x_cm < 0.0 else "x-max-wall"

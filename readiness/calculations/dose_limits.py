@@ -5,8 +5,6 @@ from math import isfinite
 
 from readiness.calculations.barrier_equations import WEEKS_A_YEAR, hour_from_week_usv
 
-NAMED_ABOVE = 0.25  # of the goal: Monte Carlo layers can give up to 4 times the tabulated transmission (read)
-
 
 @dataclass(frozen=True)
 class AnyHourDose:
@@ -26,20 +24,23 @@ class GoalMargin:
 
     share_of_goal: float
     within_goal: bool
-    margin_below_factor_4: bool
+    margin_is_small: bool
 
 
-def goal_margin(*, dose_usv_per_week: float, design_goal_msv_per_week: float) -> GoalMargin:
+def goal_margin(
+    *, dose_usv_per_week: float, design_goal_msv_per_week: float, survey_margin_ratio: float
+) -> GoalMargin:
     """
     Return how a weekly dose stands to the design goal.
 
     Args:
         dose_usv_per_week: Weekly dose, occupancy counted. [µSv/week]
         design_goal_msv_per_week: Weekly design goal P. [mSv/week]
+        survey_margin_ratio: Part of the goal above which the margin is named as small; 0.25, because Monte
+            Carlo layers can give up to 4 times the tabulated transmission. [1]
 
     Returns:
-        Dose / goal, whether it is within the goal (the goal itself is), and whether the margin is smaller
-        than the factor 4 by which tabulated layers have been seen to fail.
+        Dose / goal, whether it is within the goal (the goal itself is), and whether the margin is small.
 
     Raises:
         ValueError: If the dose is below zero or the goal not above zero.
@@ -49,11 +50,11 @@ def goal_margin(*, dose_usv_per_week: float, design_goal_msv_per_week: float) ->
     if not (isfinite(dose_usv_per_week) and dose_usv_per_week >= 0.0 and design_goal_msv_per_week > 0.0):
         raise ValueError("a dose is not below zero and a design goal above zero")
     share = dose_usv_per_week / (design_goal_msv_per_week * 1e3)
-    return GoalMargin(share, share <= 1.0, share > NAMED_ABOVE)
+    return GoalMargin(share, share <= 1.0, share > survey_margin_ratio)
 
 
 def sessions_in_any_hour(
-    *, room_min_per_session: float, beam_min_per_session: float, sessions_per_day: float
+    *, session_room_min: float, session_beam_min: float, sessions_per_day: float
 ) -> float:
     """
     Return how much beam of how many sessions can fall within any 60 consecutive minutes.
@@ -61,8 +62,8 @@ def sessions_in_any_hour(
     n = whole turns of the room in 60 min + min(1, rest/beam time): at 40 min each, two fall in one hour
 
     Args:
-        room_min_per_session: From one session's start to the next one's. [min]
-        beam_min_per_session: From first to last beam of a session. [min]
+        session_room_min: From one session's start to the next one's. [min]
+        session_beam_min: From first to last beam of a session. [min]
         sessions_per_day: Most sessions of a day. [per day]
 
     Returns:
@@ -74,13 +75,13 @@ def sessions_in_any_hour(
     Assumes: dose spread evenly from first to last beam; sessions back to back.
     Source: derived.
     """
-    if not 0.0 < beam_min_per_session <= room_min_per_session:
+    if not 0.0 < session_beam_min <= session_room_min:
         raise ValueError("the beam time of a session lies above zero and within its time in the room")
     if not sessions_per_day >= 0.0:
         raise ValueError(f"sessions of a day must not be below zero, not {sessions_per_day:g}")
-    whole = 60.0 // room_min_per_session
-    rest = 60.0 - whole * room_min_per_session
-    return min(sessions_per_day, whole + min(1.0, rest / beam_min_per_session))
+    whole = 60.0 // session_room_min
+    rest = 60.0 - whole * session_room_min
+    return min(sessions_per_day, whole + min(1.0, rest / session_beam_min))
 
 
 def any_hour_dose(
@@ -90,7 +91,7 @@ def any_hour_dose(
     cycles_per_week: float,
     sessions_per_cycle: float,
     sessions_in_hour: float,
-    room_min_per_session: float | None,
+    session_room_min: float | None,
     busiest_hour_ratio: float,
 ) -> AnyHourDose:
     """
@@ -104,7 +105,7 @@ def any_hour_dose(
         cycles_per_week: Cycles that the added dose is of, extra MU included. [per week]
         sessions_per_cycle: Sessions that make a cycle. [1]
         sessions_in_hour: Sessions that can be delivered in 60 consecutive minutes, n. [1]
-        room_min_per_session: Time for which a session keeps the room from photon work, t; None leaves the
+        session_room_min: Time for which a session keeps the room from photon work, t; None leaves the
             whole hour to photon work as well, an upper bound. [min]
         busiest_hour_ratio: Most photon patients in one hour / mean patients an hour, M. [1]
 
@@ -126,7 +127,7 @@ def any_hour_dose(
         weekly_rate_usv_per_week=before_rate_usv_per_week, busiest_hour_ratio=busiest_hour_ratio
     )
     per_session = added_rate_usv_per_week / cycles_per_week / sessions_per_cycle
-    taken = 0.0 if room_min_per_session is None else sessions_in_hour * room_min_per_session / 60.0
+    taken = 0.0 if session_room_min is None else sessions_in_hour * session_room_min / 60.0
     rest = photon * max(0.0, 1.0 - taken)
     sessions = per_session * sessions_in_hour
     largest = max(photon, sessions + rest)
@@ -169,7 +170,7 @@ def annual_dose_msv(
     return (before + added_usv_per_week / cycles_per_week * cycles_per_year) / 1e3
 
 
-def xray_rate_at_1_m(*, per_cycle_gy_m2: float, mu_per_cycle: float, rate_mu_per_min: float) -> float:
+def xray_rate_at_1_m(*, per_cycle_gy_m2: float, cycle_mu: float, rate_mu_per_min: float) -> float:
     """
     Return the x-ray dose rate at 1 m of one tilted field, as an upper bound.
 
@@ -177,7 +178,7 @@ def xray_rate_at_1_m(*, per_cycle_gy_m2: float, mu_per_cycle: float, rate_mu_per
 
     Args:
         per_cycle_gy_m2: X rays at 1 m per spot and cycle, W_x. [Gy m²]
-        mu_per_cycle: All MU of a cycle, both beams of all dual fields. [MU]
+        cycle_mu: All MU of a cycle, both beams of all dual fields. [MU]
         rate_mu_per_min: Of the mode. [MU/min]
 
     Returns:
@@ -188,6 +189,6 @@ def xray_rate_at_1_m(*, per_cycle_gy_m2: float, mu_per_cycle: float, rate_mu_per
 
     Source: derived.
     """
-    if not (mu_per_cycle > 0.0 and rate_mu_per_min > 0.0 and per_cycle_gy_m2 >= 0.0):
+    if not (cycle_mu > 0.0 and rate_mu_per_min > 0.0 and per_cycle_gy_m2 >= 0.0):
         raise ValueError("MU and their rate must be above zero and the workload not below it")
-    return per_cycle_gy_m2 / (mu_per_cycle / 2.0) * rate_mu_per_min * 60.0
+    return per_cycle_gy_m2 / (cycle_mu / 2.0) * rate_mu_per_min * 60.0

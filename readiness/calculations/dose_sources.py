@@ -33,7 +33,7 @@ def existing_sources(
     Return the photon work that is there already.
 
     Args:
-        existing: energy_mv, kind (primary or leakage), workload_gy_per_week at 1 m, use_factor.
+        existing: energy_mv, kind (primary or leakage), workload_gy_per_week at 1 m, use_factor, distance_m.
         primary_distance_m: From the source of primary beams to 0.3 m beyond the barrier. [m]
         isocentre_distance_m: From the isocentre to 0.3 m beyond the barrier, for leakage. [m]
 
@@ -53,7 +53,9 @@ def existing_sources(
         if kind not in EXISTING_KINDS:
             raise ValueError(f"an existing workload is primary or leakage, not {kind!r}")
         workload = float(cast(float, row["workload_gy_per_week"]))
-        distance = primary_distance_m if kind == "primary" else isocentre_distance_m
+        own = row.get("distance_m")
+        usual = primary_distance_m if kind == "primary" else isocentre_distance_m
+        distance = usual if own is None else float(cast(float, own))
         if distance is None:
             raise OutsideValidity(f"the distance for the existing {kind} workload is not stated")
         name = f"existing {energy:g} MV {kind}"
@@ -164,6 +166,9 @@ def check_source(*, source: Source) -> None:
 
     Args:
         source: One of those above.
+
+    Returns:
+        Nothing.
 
     Raises:
         ValueError: If its distance is not above zero, its workload below it, or its factor not from 0 to 1.

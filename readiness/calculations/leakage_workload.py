@@ -17,11 +17,11 @@ class LeakageWorkload:
 
 def leakage_workload(
     *,
-    mu_per_cycle: float,
+    cycle_mu: float,
     dose_per_cycle_gy: float,
     output_at_1_m_cgy_per_mu: float,
     cycles_per_week: float,
-    extra_mu_per_week: float,
+    extra_week_mu: float,
 ) -> LeakageWorkload:
     """
     Return the leakage workload of a total skin electron program.
@@ -29,11 +29,11 @@ def leakage_workload(
     W_L = (cycles x MU per cycle + extra MU) x output at 1 m / 100;  C = MU per cycle / (100 x Gy per cycle)
 
     Args:
-        mu_per_cycle: All MU of a cycle, both beams of all dual fields. [MU]
+        cycle_mu: All MU of a cycle, both beams of all dual fields. [MU]
         dose_per_cycle_gy: Skin dose of a cycle. [Gy]
         output_at_1_m_cgy_per_mu: Of the mode at 1 m. [cGy/MU]
         cycles_per_week: Cycles of all patients in the week. [per week]
-        extra_mu_per_week: MU of quality assurance and commissioning in that week. [per week]
+        extra_week_mu: MU of quality assurance and commissioning in that week. [MU]
 
     Returns:
         Workload per cycle and week, and MU per dose C (about 110 at a plane distance of 4 m).
@@ -43,15 +43,15 @@ def leakage_workload(
 
     Source: derived, as ncrp-151, Eq. 3.3-3.5 (memory), for treatment with many MU per dose.
     """
-    for number in (mu_per_cycle, dose_per_cycle_gy, output_at_1_m_cgy_per_mu):
+    for number in (cycle_mu, dose_per_cycle_gy, output_at_1_m_cgy_per_mu):
         if not (isfinite(number) and number > 0.0):
             raise ValueError(f"must be above zero, not {number:g}")
-    for number in (cycles_per_week, extra_mu_per_week):
+    for number in (cycles_per_week, extra_week_mu):
         if not (isfinite(number) and number >= 0.0):
             raise ValueError(f"must not be below zero, not {number:g}")
     per_mu = output_at_1_m_cgy_per_mu / 100.0
     return LeakageWorkload(
-        per_cycle_gy_m2=mu_per_cycle * per_mu,
-        per_week_gy_m2_per_week=(cycles_per_week * mu_per_cycle + extra_mu_per_week) * per_mu,
-        mu_per_dose=mu_per_cycle / (100.0 * dose_per_cycle_gy),
+        per_cycle_gy_m2=cycle_mu * per_mu,
+        per_week_gy_m2_per_week=(cycles_per_week * cycle_mu + extra_week_mu) * per_mu,
+        mu_per_dose=cycle_mu / (100.0 * dose_per_cycle_gy),
     )

@@ -13,7 +13,17 @@ from readiness.resources import schema_file
 
 @cache
 def published_table(name: str) -> Table:
-    """Return the rows of one file under schemas/tables, read once."""
+    """
+    Return the rows of one published table, read once.
+
+    Args:
+        name: Of its file under schemas/tables, without the ending.
+
+    Returns:
+        The rows under their columns.
+
+    Source: each file names its own.
+    """
     text = schema_file("tables", f"{name}.yaml").read_text(encoding="utf-8")
     stored = yaml.safe_load(text)
     return Table.of(stored["columns"], stored["rows"])
@@ -21,7 +31,17 @@ def published_table(name: str) -> Table:
 
 @cache
 def origin_of_table(name: str) -> str:
-    """Return where a table comes from and how its numbers are known, in words for a printed record."""
+    """
+    Return where a table comes from and how its numbers are known, in words for a printed record.
+
+    Args:
+        name: Of its file under schemas/tables, without the ending.
+
+    Returns:
+        Source, place in it, and how it is known.
+
+    Source: each file names its own.
+    """
     stored = yaml.safe_load(schema_file("tables", f"{name}.yaml").read_text(encoding="utf-8"))
     return f"{stored['source']}, {stored['at']} ({stored['known']})"
 

@@ -68,7 +68,7 @@ def cycles_that_fit(
     before_usv_per_week: float,
     added_usv_per_week: float,
     cycles_per_week: float,
-    cycles_per_patient_week: float,
+    patient_cycles_per_week: float,
     design_goal_msv_per_week: float,
 ) -> FittingCycles:
     """
@@ -78,7 +78,7 @@ def cycles_that_fit(
         before_usv_per_week: Existing dose of a week. [µSv/week]
         added_usv_per_week: Added dose of the week that was computed. [µSv/week]
         cycles_per_week: Cycles in that week. [per week]
-        cycles_per_patient_week: Cycles that a patient has in a week. [per week]
+        patient_cycles_per_week: Cycles that a patient has in a week. [per week]
         design_goal_msv_per_week: Weekly design goal. [mSv/week]
 
     Returns:
@@ -91,7 +91,7 @@ def cycles_that_fit(
     """
     if not (before_usv_per_week >= 0.0 and added_usv_per_week >= 0.0):
         raise ValueError("a dose must not be below zero")
-    if not (cycles_per_week > 0.0 and cycles_per_patient_week > 0.0 and design_goal_msv_per_week > 0.0):
+    if not (cycles_per_week > 0.0 and patient_cycles_per_week > 0.0 and design_goal_msv_per_week > 0.0):
         raise ValueError("cycles and design goal must be above zero")
     left = design_goal_msv_per_week * 1e3 - before_usv_per_week
     if left < 0.0:
@@ -99,7 +99,7 @@ def cycles_that_fit(
     if added_usv_per_week == 0.0:
         return FittingCycles(True, None, None)
     cycles = floor(left / (added_usv_per_week / cycles_per_week) + 1e-9)
-    return FittingCycles(True, cycles, floor(cycles / cycles_per_patient_week + 1e-9))
+    return FittingCycles(True, cycles, floor(cycles / patient_cycles_per_week + 1e-9))
 
 
 def _added_cm(contributions: Table, limit: float, material: str) -> float:

@@ -28,9 +28,9 @@ def workload_from_axis_dose(
     axis_cgy_per_mu: float,
     double_tilt_cgy_per_mu: float,
     plane_distance_cm: float,
-    mu_per_cycle: float,
+    cycle_mu: float,
     cycles_per_week: float,
-    extra_mu_per_week: float,
+    extra_week_mu: float,
 ) -> XRayWorkload:
     """
     Return the x-ray workload of one spot from the x-ray dose per MU on the tilted axis and 2t off it.
@@ -41,9 +41,9 @@ def workload_from_axis_dose(
         axis_cgy_per_mu: X-ray dose per MU at the plane on the tilted axis, without water, x(0). [cGy/MU]
         double_tilt_cgy_per_mu: The same at twice the tilt from the axis, x(2t). [cGy/MU]
         plane_distance_cm: From the source to the plane where both were measured, d. [cm]
-        mu_per_cycle: All MU of a cycle, both beams of all dual fields. [MU]
+        cycle_mu: All MU of a cycle, both beams of all dual fields. [MU]
         cycles_per_week: Cycles of all patients in the week. [per week]
-        extra_mu_per_week: MU of quality assurance and commissioning in that week. [per week]
+        extra_week_mu: MU of quality assurance and commissioning in that week. [MU]
 
     Returns:
         Workload per cycle and week, and the steps.
@@ -54,14 +54,14 @@ def workload_from_axis_dose(
     Assumes: both beams get the same MU; inverse square from the plane.
     Source: ncrp-151, sec. 3.2.2 for the far plane (memory); sum over both beams derived.
     """
-    _check(above=(plane_distance_cm, mu_per_cycle), at_least=(axis_cgy_per_mu, double_tilt_cgy_per_mu))
+    _check(above=(plane_distance_cm, cycle_mu), at_least=(axis_cgy_per_mu, double_tilt_cgy_per_mu))
     square = (plane_distance_cm / 100.0) ** 2
-    per_cycle = mu_per_cycle / 2.0 * (axis_cgy_per_mu + double_tilt_cgy_per_mu) / 100.0 * square
-    cycles = _all_cycles(cycles_per_week, extra_mu_per_week, mu_per_cycle)
+    per_cycle = cycle_mu / 2.0 * (axis_cgy_per_mu + double_tilt_cgy_per_mu) / 100.0 * square
+    cycles = _all_cycles(cycles_per_week, extra_week_mu, cycle_mu)
     steps: list[tuple[Scalar, ...]] = [
         ("x rays on the tilted axis", "x(0)", axis_cgy_per_mu, "cGy/MU", "as given", "measurement"),
         ("x rays at twice the tilt", "x(2t)", double_tilt_cgy_per_mu, "cGy/MU", "as given", "measurement"),
-        ("MU of a cycle, both beams", "MU", mu_per_cycle, "MU", "as given", "program"),
+        ("MU of a cycle, both beams", "MU", cycle_mu, "MU", "as given", "program"),
         ("distance of the plane, squared", "d^2", square, "m²", "as given", "program"),
     ]
     return _workload(per_cycle, cycles, 1.0, steps)
@@ -71,9 +71,9 @@ def workload_from_pair_dose(
     *,
     pair_cgy_per_mu: float,
     plane_distance_cm: float,
-    mu_per_cycle: float,
+    cycle_mu: float,
     cycles_per_week: float,
-    extra_mu_per_week: float,
+    extra_week_mu: float,
 ) -> XRayWorkload:
     """
     Return the x-ray workload of one spot from the x-ray dose per MU of the pair at the height of its axis.
@@ -83,9 +83,9 @@ def workload_from_pair_dose(
     Args:
         pair_cgy_per_mu: Highest x-ray dose per MU of the pair over the plane, without water, x. [cGy/MU]
         plane_distance_cm: From the source to the plane where it was measured, d. [cm]
-        mu_per_cycle: All MU of a cycle, both beams of all dual fields. [MU]
+        cycle_mu: All MU of a cycle, both beams of all dual fields. [MU]
         cycles_per_week: Cycles of all patients in the week. [per week]
-        extra_mu_per_week: MU of quality assurance and commissioning in that week. [per week]
+        extra_week_mu: MU of quality assurance and commissioning in that week. [MU]
 
     Returns:
         Workload per cycle and week, and the steps.
@@ -96,30 +96,30 @@ def workload_from_pair_dose(
     Assumes: MU counted as the total of both beams; inverse square from the plane.
     Source: ncrp-151, sec. 3.2.2 for the far plane (memory).
     """
-    _check(above=(plane_distance_cm, mu_per_cycle), at_least=(pair_cgy_per_mu,))
+    _check(above=(plane_distance_cm, cycle_mu), at_least=(pair_cgy_per_mu,))
     square = (plane_distance_cm / 100.0) ** 2
-    cycles = _all_cycles(cycles_per_week, extra_mu_per_week, mu_per_cycle)
+    cycles = _all_cycles(cycles_per_week, extra_week_mu, cycle_mu)
     steps: list[tuple[Scalar, ...]] = [
         ("x rays of the pair", "x", pair_cgy_per_mu, "cGy/MU", "as given", "measurement"),
-        ("MU of a cycle, both beams", "MU", mu_per_cycle, "MU", "as given", "program"),
+        ("MU of a cycle, both beams", "MU", cycle_mu, "MU", "as given", "program"),
         ("distance of the plane, squared", "d^2", square, "m²", "as given", "program"),
     ]
-    return _workload(mu_per_cycle * pair_cgy_per_mu / 100.0 * square, cycles, 1.0, steps)
+    return _workload(cycle_mu * pair_cgy_per_mu / 100.0 * square, cycles, 1.0, steps)
 
 
 def workload_from_fraction(
     *,
-    xray_fraction: float,
+    xray_fraction_percent: float,
     fields: str | None,
-    depth_mm: float | None,
+    depth_cm: float | None,
     dose_per_cycle_gy: float,
     multiple_field_factor: float,
     plane_distance_cm: float,
     water_attenuation_per_cm: float | None,
     lobe_allowance: float | None,
     cycles_per_week: float,
-    extra_mu_per_week: float,
-    mu_per_cycle: float | None,
+    extra_week_mu: float,
+    cycle_mu: float | None,
 ) -> XRayWorkload:
     """
     Return the x-ray workload of one spot from an x-ray fraction, with the three factors that belong to it.
@@ -129,24 +129,24 @@ def workload_from_fraction(
     Left out, the three factors understate the dose behind the wall by about eight.
 
     Args:
-        xray_fraction: X-ray dose / calibration-point dose of one dual field (f1), or / skin dose (F). [1]
+        xray_fraction_percent: X-ray dose as a part of the calibration-point (f1) or skin dose (F). [%]
         fields: ``one-dual`` for f1, ``all-dual`` for F; None if nobody said which.
-        depth_mm: Of water in front of the point where it was measured; None if nobody said. [mm]
+        depth_cm: Of water in front of the point where it was measured; None if nobody said. [cm]
         dose_per_cycle_gy: Skin dose of a cycle, D. [Gy]
         multiple_field_factor: B: skin dose of all six dual fields / calibration-point dose of one. [1]
         plane_distance_cm: From the source to the plane, d. [cm]
         water_attenuation_per_cm: Of the x rays in water, mu; None assumes that of 6 MeV. [1/cm]
         lobe_allowance: X rays on the axis of a lobe / in the body, L; None assumes 2. [1]
         cycles_per_week: Cycles of all patients in the week. [per week]
-        extra_mu_per_week: MU of quality assurance and commissioning in that week. [per week]
-        mu_per_cycle: All MU of a cycle; needed only for extra MU. [MU]
+        extra_week_mu: MU of quality assurance and commissioning in that week. [MU]
+        cycle_mu: All MU of a cycle; needed only for extra MU. [MU]
 
     Returns:
         Workload per cycle and week, the factor over the plain fraction, and the steps.
 
     Raises:
         ValueError: If a number is outside its meaning.
-        OutsideValidity: If depth or definition of the fraction is missing, or it looks like a percentage, or
+        OutsideValidity: If depth or definition of the fraction is missing, or it is not believable, or
             extra MU are given without the MU of a cycle.
 
     Valid for: six standing positions and the rotating platform; attenuation of 6 MeV, careful for more.
@@ -155,34 +155,34 @@ def workload_from_fraction(
     """
     mu = WATER_ATTENUATION_PER_CM if water_attenuation_per_cm is None else water_attenuation_per_cm
     lobe = LOBE_ALLOWANCE if lobe_allowance is None else lobe_allowance
-    if fields is None or depth_mm is None:
+    if fields is None or depth_cm is None:
         raise OutsideValidity(
             "an x-ray fraction says nothing about a wall without the depth at which it was measured and "
             "whether it is of one dual field (f1) or of all of them (F)"
         )
     if fields not in FIELDS:
         raise ValueError(f"the fields of an x-ray fraction are one-dual or all-dual, not {fields!r}")
-    if xray_fraction > 0.2:
-        raise OutsideValidity(f"an x-ray fraction of {xray_fraction:g} looks like a percentage")
-    if xray_fraction == 0.0:
-        raise OutsideValidity("an x-ray fraction of zero is no measurement of one")
-    _check(above=(xray_fraction, dose_per_cycle_gy, multiple_field_factor, plane_distance_cm))
-    _check(above=(lobe,), at_least=(mu, depth_mm))
+    if not 0.05 <= xray_fraction_percent <= 20.0:
+        raise OutsideValidity(
+            f"an x-ray fraction of {xray_fraction_percent:g} % is not believable; air alone gives 0.1 %"
+        )
+    _check(above=(dose_per_cycle_gy, multiple_field_factor, plane_distance_cm))
+    _check(above=(lobe,), at_least=(mu, depth_cm))
     turned = 6.0 / multiple_field_factor if fields == "one-dual" else 1.0
-    water = exp(mu * depth_mm / 10.0)
+    water = exp(mu * depth_cm)
     square = (plane_distance_cm / 100.0) ** 2
-    plain = dose_per_cycle_gy * xray_fraction * square
+    plain = dose_per_cycle_gy * xray_fraction_percent / 100.0 * square
     symbol = "f1" if fields == "one-dual" else "F"
     steps: list[tuple[Scalar, ...]] = [
         ("skin dose of a cycle", "D", dose_per_cycle_gy, "Gy", "as given", "program"),
-        ("x-ray fraction", symbol, xray_fraction, "", "as given", "measurement"),
+        ("x-ray fraction", symbol, xray_fraction_percent, "%", "as given", "measurement"),
         ("six dual fields against the skin dose", "6/B", turned, "", "as given", "derived"),
         ("water in front of it", "exp(mu z)", water, "", _basis(water_attenuation_per_cm), "derived"),
         ("lobes that miss the body", "L", lobe, "", _basis(lobe_allowance), "derived"),
         ("distance of the plane, squared", "d^2", square, "m²", "as given", "program"),
     ]
     factor = turned * water * lobe
-    cycles = _all_cycles(cycles_per_week, extra_mu_per_week, mu_per_cycle)
+    cycles = _all_cycles(cycles_per_week, extra_week_mu, cycle_mu)
     return _workload(plain * factor, cycles, factor, steps)
 
 
@@ -199,15 +199,15 @@ def _workload(
     return XRayWorkload(per_cycle, per_cycle * cycles, cycles, factor, Table.of(STEP_COLUMNS, steps))
 
 
-def _all_cycles(cycles_per_week: float, extra_mu_per_week: float, mu_per_cycle: float | None) -> float:
+def _all_cycles(cycles_per_week: float, extra_week_mu: float, cycle_mu: float | None) -> float:
     """Return the cycles of a week, extra MU counted in cycles."""
-    _check(at_least=(cycles_per_week, extra_mu_per_week))
-    if extra_mu_per_week == 0.0:
+    _check(at_least=(cycles_per_week, extra_week_mu))
+    if extra_week_mu == 0.0:
         return cycles_per_week
-    if mu_per_cycle is None:
+    if cycle_mu is None:
         raise OutsideValidity("MU of quality assurance cannot be counted without the MU of a cycle")
-    _check(above=(mu_per_cycle,))
-    return cycles_per_week + extra_mu_per_week / mu_per_cycle
+    _check(above=(cycle_mu,))
+    return cycles_per_week + extra_week_mu / cycle_mu
 
 
 def _basis(given: float | None) -> str:

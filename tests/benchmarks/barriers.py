@@ -28,17 +28,22 @@ EXISTING = Table.of(
 
 def one_point(number: int) -> WeeklyDose:
     """Return the dose behind one of many different barriers."""
+    layers = Table.of(LAYER_COLUMNS, [("concrete", 80.0 + number / 5.0, 2.35), ("steel", 5.0, None)])
     found = barrier_distances(
-        toward=("90", "270", "across", "above")[number % 4],
+        surface=("x-min-wall", "x-max-wall", "y-min-wall", "ceiling")[number % 4],
+        layers=layers,
+        inner_face_cm=None,
+        distance_m=None,
         isocentre_distance_m=5.0 + number / 200.0,
+        leakage_distance_m=None,
+        isocentre_height_cm=130.0,
         side_deg=90.0,
         tilt_deg=16.0,
         source_axis_distance_cm=100.0,
         plane_distance_cm=400.0,
-        stated_head_distance_m=None,
     )
     return weekly_dose(
-        layers=Table.of(LAYER_COLUMNS, [("concrete", 80.0 + number / 5.0, 2.35), ("steel", 5.0, None)]),
+        layers=layers,
         role="primary" if number % 2 else "secondary",
         occupancy=0.2,
         recess_depth_cm=5.0,
@@ -61,7 +66,9 @@ def one_point(number: int) -> WeeklyDose:
 def judged(number: int) -> None:
     """Compute everything that is asked of one barrier."""
     dose = one_point(number)
-    goal_margin(dose_usv_per_week=dose.after_usv_per_week, design_goal_msv_per_week=0.02)
+    goal_margin(
+        dose_usv_per_week=dose.after_usv_per_week, design_goal_msv_per_week=0.02, survey_margin_ratio=0.25
+    )
     required_thickness(contributions=dose.contributions, limit_usv_per_week=20.0)
     any_hour_dose(
         before_rate_usv_per_week=dose.before_rate_usv_per_week,
@@ -69,7 +76,7 @@ def judged(number: int) -> None:
         cycles_per_week=4.0,
         sessions_per_cycle=2.0,
         sessions_in_hour=2.0,
-        room_min_per_session=30.0,
+        session_room_min=30.0,
         busiest_hour_ratio=1.5,
     )
 

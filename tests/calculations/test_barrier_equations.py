@@ -41,7 +41,9 @@ def test_published_homework_leakage_chain():
         leakage_percent=0.1,
         occupancy=0.2,
     )
-    assert wall_thickness_cm(transmission=allowed, tvl1_cm=34, tvle_cm=29) == pytest.approx(106.0024, abs=1e-4)
+    assert wall_thickness_cm(transmission=allowed, tvl1_cm=34, tvle_cm=29) == pytest.approx(
+        106.0024, abs=1e-4
+    )
 
 
 def test_published_scatter_wall_is_wrong():

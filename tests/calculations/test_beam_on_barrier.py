@@ -6,8 +6,10 @@ import pytest
 
 from readiness.calculations.beam_on_barrier import beam_spots, nearest_spot_distance_m, primary_belt
 from readiness.errors import OutsideValidity
+from readiness.quantities import Table
 
 ROOM = ((-365.0, -420.0), (330.0, -420.0), (330.0, 270.0), (-365.0, 270.0))
+WALL = Table.of(("material", "thickness_cm", "density_g_per_cm3"), [("concrete", 100.0, 2.35)])
 CASE = {
     "side_deg": 90.0,
     "tilt_deg": 16.0,
@@ -37,7 +39,7 @@ def test_axes_meet_the_wall_where_geometry_says():
         assert axis["height_above_floor_cm"] == pytest.approx(130 + sign * 365 * tan(radians(16)))
         assert axis["path_cm"] == pytest.approx(100 + 365 / cos(radians(16)))
         assert axis["obliquity_deg"] == pytest.approx(16.0)
-    assert "90" == found.axes_toward
+    assert "x-min-wall" == found.axes_on
     assert found.axes_on_one_wall
     assert 16.0 == pytest.approx(found.largest_axis_obliquity_deg)
 
@@ -45,8 +47,8 @@ def test_axes_meet_the_wall_where_geometry_says():
 def test_edges_reach_floor_and_ceiling():
     """The edges at 16 + 11.3 degrees reach ceiling and floor, which axes alone would not show."""
     found = spots()
-    assert "above" == row(found, "head", "upper edge")["toward"]
-    assert "below" == row(found, "feet", "lower edge")["toward"]
+    assert "ceiling" == row(found, "head", "upper edge")["surface"]
+    assert "floor" == row(found, "feet", "lower edge")["surface"]
     assert found.reaches_ceiling
     assert found.reaches_floor
     level = spots(tilt_deg=0.0)
@@ -68,9 +70,10 @@ def test_mirror():
     """Side 270 in the mirrored room gives mirrored spots."""
     mirrored = tuple((-x, y) for x, y in reversed(ROOM))
     here, there = spots(), spots(side_deg=270.0, floor_polygon_cm=mirrored)
-    assert "270" == there.axes_toward
+    assert "x-max-wall" == there.axes_on
     for one, other in zip(here.spots.records(), there.spots.records(), strict=True):
-        assert (one["field"], one["ray"], one["surface"]) == (other["field"], other["ray"], other["surface"])
+        assert (one["field"], one["ray"]) == (other["field"], other["ray"])
+        assert one["surface"] == other["surface"].replace("max", "min")
         assert one["x_cm"] == pytest.approx(-other["x_cm"])
         assert one["y_cm"] == pytest.approx(other["y_cm"], abs=1e-9)
         assert one["height_above_floor_cm"] == pytest.approx(other["height_above_floor_cm"])
@@ -92,12 +95,12 @@ def test_a_nearer_wall_takes_the_beam():
 
 
 def test_nearest_spot():
-    """Through the ceiling the shortest way of an edge counts, through a side that no ray meets there is none."""
+    """Through the ceiling the shortest way of an edge counts, through a wall that no ray meets there is none."""
     found = spots()
     path = row(found, "head", "upper edge")["path_cm"]
-    there = nearest_spot_distance_m(spots=found.spots, toward="above", thickness_cm=100.0)
+    there = nearest_spot_distance_m(spots=found.spots, surface="ceiling", layers=WALL)
     assert (path + 130.0) / 100.0 == pytest.approx(there)
-    assert nearest_spot_distance_m(spots=found.spots, toward="270", thickness_cm=100.0) is None
+    assert nearest_spot_distance_m(spots=found.spots, surface="x-max-wall", layers=WALL) is None
 
 
 def test_belt():
@@ -127,5 +130,5 @@ def test_impossible():
         primary_belt(opening_cm=40.0, distance_cm=0.0, belt_width_cm=None)
     with pytest.raises(ValueError, match="width"):
         primary_belt(opening_cm=40.0, distance_cm=100.0, belt_width_cm=0.0)
-    with pytest.raises(ValueError, match="thickness"):
-        nearest_spot_distance_m(spots=spots().spots, toward="90", thickness_cm=-1.0)
+    with pytest.raises(OutsideValidity, match="no layers"):
+        nearest_spot_distance_m(spots=spots().spots, surface="x-min-wall", layers=Table.of(WALL.columns, ()))

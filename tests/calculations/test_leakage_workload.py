@@ -5,11 +5,11 @@ import pytest
 from readiness.calculations.leakage_workload import leakage_workload
 
 CASE = {
-    "mu_per_cycle": 22400.0,
+    "cycle_mu": 22400.0,
     "dose_per_cycle_gy": 2.0,
     "output_at_1_m_cgy_per_mu": 1.0,
     "cycles_per_week": 4.0,
-    "extra_mu_per_week": 10000.0,
+    "extra_week_mu": 10000.0,
 }
 
 
@@ -28,7 +28,7 @@ def test_no_cycles_leave_the_checks():
     )
 
 
-@pytest.mark.parametrize(("name", "number"), [("mu_per_cycle", 0.0), ("cycles_per_week", -1.0)])
+@pytest.mark.parametrize(("name", "number"), [("cycle_mu", 0.0), ("cycles_per_week", -1.0)])
 def test_impossible(name, number):
     """Numbers outside their meaning are refused."""
     with pytest.raises(ValueError, match="zero"):

@@ -13,7 +13,7 @@ FIT = {
     "before_usv_per_week": 4.0,
     "added_usv_per_week": 32.0,
     "cycles_per_week": 8.0,
-    "cycles_per_patient_week": 2.0,
+    "patient_cycles_per_week": 2.0,
     "design_goal_msv_per_week": 0.02,
 }
 

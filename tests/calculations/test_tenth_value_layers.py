@@ -93,7 +93,9 @@ def test_density_of_concrete_must_be_stated():
 
 def test_unknown_material():
     """A material without tenth-value layers is named, with those that have some."""
-    with pytest.raises(OutsideValidity, match="'brick'; only for concrete, heavy-concrete, earth, steel, lead"):
+    with pytest.raises(
+        OutsideValidity, match="'brick'; only for concrete, heavy-concrete, earth, steel, lead"
+    ):
         layers(material="brick")
 
 

@@ -12,25 +12,25 @@ from readiness.calculations.xray_workload import (
 from readiness.errors import OutsideValidity
 
 FRACTION = {
-    "xray_fraction": 0.01,
+    "xray_fraction_percent": 1.0,
     "fields": "one-dual",
-    "depth_mm": 100.0,
+    "depth_cm": 10.0,
     "dose_per_cycle_gy": 2.0,
     "multiple_field_factor": 2.7,
     "plane_distance_cm": 380.0,
     "water_attenuation_per_cm": None,
     "lobe_allowance": None,
     "cycles_per_week": 8.0,
-    "extra_mu_per_week": 0.0,
-    "mu_per_cycle": None,
+    "extra_week_mu": 0.0,
+    "cycle_mu": None,
 }
 AXIS = {
     "axis_cgy_per_mu": 2e-4,
     "double_tilt_cgy_per_mu": 1e-4,
     "plane_distance_cm": 400.0,
-    "mu_per_cycle": 22000.0,
+    "cycle_mu": 22000.0,
     "cycles_per_week": 4.0,
-    "extra_mu_per_week": 0.0,
+    "extra_week_mu": 0.0,
 }
 
 
@@ -51,7 +51,7 @@ def test_pair_dose_is_the_same_number():
 
 def test_extra_mu_count_in_their_week():
     """11,000 MU of quality assurance count as half a cycle more."""
-    assert 4.5 == workload_from_axis_dose(**{**AXIS, "extra_mu_per_week": 11000.0}).cycles_per_week
+    assert 4.5 == workload_from_axis_dose(**{**AXIS, "extra_week_mu": 11000.0}).cycles_per_week
 
 
 def test_three_factors_make_about_eight():
@@ -70,7 +70,7 @@ def test_three_factors_make_about_eight():
 def test_no_water_no_lobes_and_b_of_six_leave_the_plain_fraction():
     """With depth 0, no lobe allowance and B = 6 the three factors vanish."""
     plain = workload_from_fraction(
-        **{**FRACTION, "depth_mm": 0.0, "lobe_allowance": 1.0, "multiple_field_factor": 6.0}
+        **{**FRACTION, "depth_cm": 0.0, "lobe_allowance": 1.0, "multiple_field_factor": 6.0}
     )
     assert 1.0 == plain.factor_over_plain
     assert 2 * 0.01 * 3.8**2 == pytest.approx(plain.per_cycle_gy_m2)
@@ -78,39 +78,40 @@ def test_no_water_no_lobes_and_b_of_six_leave_the_plain_fraction():
 
 def test_fraction_of_all_fields_needs_no_turning_factor():
     """F = (6/B) f1 gives the same workload as f1."""
-    of_all = workload_from_fraction(**{**FRACTION, "fields": "all-dual", "xray_fraction": 0.01 * 6 / 2.7})
+    of_all = workload_from_fraction(
+        **{**FRACTION, "fields": "all-dual", "xray_fraction_percent": 1.0 * 6 / 2.7}
+    )
     assert workload_from_fraction(**FRACTION).per_cycle_gy_m2 == pytest.approx(of_all.per_cycle_gy_m2)
 
 
-@pytest.mark.parametrize("missing", ["fields", "depth_mm"])
+@pytest.mark.parametrize("missing", ["fields", "depth_cm"])
 def test_plain_fraction_refuses(missing):
     """A fraction without depth or definition is not a workload, and says so."""
     with pytest.raises(OutsideValidity, match="without the depth at which it was measured"):
         workload_from_fraction(**{**FRACTION, missing: None})
 
 
-def test_percentage_refuses():
-    """0.9 where a fraction is expected looks like a percentage."""
-    with pytest.raises(OutsideValidity, match="looks like a percentage"):
-        workload_from_fraction(**{**FRACTION, "xray_fraction": 0.9})
-    with pytest.raises(OutsideValidity, match="no measurement"):
-        workload_from_fraction(**{**FRACTION, "xray_fraction": 0.0})
+@pytest.mark.parametrize("percent", [0.0, 0.009, 21.0])
+def test_unbelievable_fraction_refuses(percent):
+    """Zero, a fraction written where per cent are expected, and 21 % are not believed."""
+    with pytest.raises(OutsideValidity, match="is not believable"):
+        workload_from_fraction(**{**FRACTION, "xray_fraction_percent": percent})
 
 
 def test_extra_mu_without_mu_of_a_cycle():
     """MU of quality assurance cannot be weighed if nobody knows the MU of a cycle."""
     with pytest.raises(OutsideValidity, match="without the MU of a cycle"):
-        workload_from_fraction(**{**FRACTION, "extra_mu_per_week": 5000.0})
-    counted = workload_from_fraction(**{**FRACTION, "extra_mu_per_week": 5000.0, "mu_per_cycle": 20000.0})
+        workload_from_fraction(**{**FRACTION, "extra_week_mu": 5000.0})
+    counted = workload_from_fraction(**{**FRACTION, "extra_week_mu": 5000.0, "cycle_mu": 20000.0})
     assert 8.25 == counted.cycles_per_week
 
 
 @pytest.mark.parametrize(
-    ("name", "more"), [("depth_mm", 50.0), ("lobe_allowance", 3.0), ("xray_fraction", 0.02)]
+    ("name", "more"), [("depth_cm", 5.0), ("lobe_allowance", 3.0), ("xray_fraction_percent", 2.0)]
 )
 def test_directions_up(name, more):
     """More water in front, more lobe, more x rays: each raises the workload."""
-    low = {**FRACTION, "depth_mm": 20.0, "lobe_allowance": 2.0}
+    low = {**FRACTION, "depth_cm": 2.0, "lobe_allowance": 2.0}
     assert (
         workload_from_fraction(**{**low, name: more}).per_cycle_gy_m2
         > workload_from_fraction(**low).per_cycle_gy_m2
@@ -130,7 +131,7 @@ def test_larger_b_lowers_it():
     [
         ("multiple_field_factor", 0.0),
         ("plane_distance_cm", -1.0),
-        ("depth_mm", -1.0),
+        ("depth_cm", -1.0),
         ("cycles_per_week", -1.0),
     ],
 )
