@@ -22,6 +22,7 @@ class Task:
     title: str = ""
     owner: str = ""
     phase: str = ""
+    done_when: str = ""
 
 
 @dataclass(frozen=True)
