@@ -45,8 +45,8 @@ def field_setup(
     opening_cm: float,
     collimator_deg: float,
     degrader_material: str | None,
-    degrader_thickness_cm: float,
-    degrader_gap_cm: float,
+    degrader_thickness_cm: float | None,
+    degrader_gap_cm: float | None,
     pressure_kpa: float,
     temperature_celsius: float,
     source_axis_distance_cm: float,
@@ -60,8 +60,8 @@ def field_setup(
         opening_cm: Side of the square field at 100 cm. [cm]
         collimator_deg: Collimator rotation. [°]
         degrader_material: Name of the material, none for no degrader.
-        degrader_thickness_cm: Thickness of the degrader; 0 for none. [cm]
-        degrader_gap_cm: From its exit face to the plane. [cm]
+        degrader_thickness_cm: Thickness of the degrader; none or 0 for no degrader. [cm]
+        degrader_gap_cm: From its exit face to the plane; none for no degrader. [cm]
         pressure_kpa: Air pressure on the site. [kPa]
         temperature_celsius: Air temperature. [°C]
         source_axis_distance_cm: From the source to the isocentre. [cm]
@@ -79,10 +79,11 @@ def field_setup(
     """
     if opening_cm <= 0 or source_axis_distance_cm <= 0:
         raise ValueError("opening and source-axis distance must be positive")
-    if degrader_thickness_cm < 0 or degrader_gap_cm < 0:
+    thickness, gap = degrader_thickness_cm or 0.0, degrader_gap_cm or 0.0
+    if thickness < 0 or gap < 0:
         raise ValueError("a degrader's thickness and gap cannot be negative")
-    if degrader_thickness_cm > 0 and degrader_material is None:
-        raise ValueError("a degrader with a thickness needs a material")
+    if thickness > 0 and (degrader_material is None or degrader_gap_cm is None):
+        raise ValueError("a degrader needs a material and a gap")
     if not NARROWEST_SPREAD <= foil_spread <= WIDEST_SPREAD:
         raise OutsideValidity(
             f"a foil spread is a standard deviation of tangents, 0.15 to 0.25 as a rule, not {foil_spread:g}"
@@ -93,8 +94,8 @@ def field_setup(
         opening_cm=opening_cm,
         collimator_deg=collimator_deg,
         degrader_material=degrader_material,
-        degrader_thickness_cm=degrader_thickness_cm,
-        degrader_gap_cm=degrader_gap_cm,
+        degrader_thickness_cm=thickness,
+        degrader_gap_cm=gap,
         air_density_g_per_cm3=air_density_g_per_cm3(
             pressure_kpa=pressure_kpa, temperature_celsius=temperature_celsius
         ),

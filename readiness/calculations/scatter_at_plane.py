@@ -84,7 +84,13 @@ class ScatterAtPlane:
         return RaysAtPlane(sigma**2, added, self._left(near, secant, grid=False))
 
 
-@lru_cache(maxsize=64)
 def scatter_at_plane(setup: FieldSetup, nearest_cm: float, farthest_cm: float) -> ScatterAtPlane:
-    """Return the rays of a setup; the same request is answered from memory."""
+    """Return the rays of a setup, from memory if asked before; foils and collimator do not matter."""
+    plain = setup.but(foil_spread=1.0, opening_cm=1.0, collimator_deg=0.0)
+    return _remembered(plain, nearest_cm, farthest_cm)
+
+
+@lru_cache(maxsize=64)
+def _remembered(setup: FieldSetup, nearest_cm: float, farthest_cm: float) -> ScatterAtPlane:
+    """Return the rays of a setup."""
     return ScatterAtPlane(setup, nearest_cm, farthest_cm)
