@@ -21,7 +21,7 @@ FIELDS = [
 TYPES = {"text", "word", "number", "whole number", "date", "reference"}
 KEYS = {"type", "words", "to", "or_none", "min", "max", "one_of", "if_outside", "required", "meaning"}
 WITHOUT_UNIT = {
-    "relative_dose", "relative_dose_sd", "mu_ratio", "xray_fraction", "cycle", "day", "point",
+    "relative_dose", "relative_dose_sd", "mu_ratio", "cycle", "day", "point",
 }  # fmt: skip
 
 
