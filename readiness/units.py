@@ -28,8 +28,6 @@ UNITS: dict[str, str] = {
     "mev_cm2_per_g": "MeV cm²/g",
     "g_per_cm3": "g/cm³",
     "g_per_cm2": "g/cm²",
-    "h_per_week": "h/week",
-    "h_per_year": "h/year",
     "h_per_day": "h/day",
     "per_week": "per week",
     "per_month": "per month",

@@ -136,7 +136,7 @@ def capacity_sensitivity(
     *,
     courses: Table,
     stated_places: int,
-    free_room_h_per_week: float,
+    free_room_hours_per_week_h: float,
     session_min: float,
     longest_wait_weeks: float,
     share_in_time: float,
@@ -148,7 +148,7 @@ def capacity_sensitivity(
     Args:
         courses: The mix of courses, with the columns of patient_flow.COURSES.
         stated_places: Patients whom the department means to treat at once. [1]
-        free_room_h_per_week: Hours a week that ordinary patients leave free in the room. [h/week]
+        free_room_hours_per_week_h: Hours a week that ordinary patients leave free in the room. [h]
         session_min: Room time of one session. [min]
         longest_wait_weeks: Wait from referral to the first session that the department accepts. [weeks]
         share_in_time: Share of the patients who must start within it. [1]
@@ -169,7 +169,9 @@ def capacity_sensitivity(
     for words, mix, places_wanted, minutes, wait in cases:
         frequent = max(row[3] for row in checked_courses(courses=mix))
         held = places_room_holds(
-            free_room_h_per_week=free_room_h_per_week, session_min=minutes, course_sessions_per_week=frequent
+            free_room_hours_per_week_h=free_room_hours_per_week_h,
+            session_min=minutes,
+            course_sessions_per_week=frequent,
         )
         places = min(places_wanted, held)
         borne = patients_borne_per_year(

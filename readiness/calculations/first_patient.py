@@ -9,7 +9,15 @@ from dataclasses import dataclass, replace
 from datetime import date
 
 from readiness.calculations.levelling import CAPACITY, WORK, levelled_network
-from readiness.calculations.task_network import Task, Times, checked_network, critical_path, network_times
+from readiness.calculations.network_changes import what_moves_it
+from readiness.calculations.task_network import (
+    Task,
+    Times,
+    checked_network,
+    critical_path,
+    length_working_days,
+    network_times,
+)
 from readiness.calculations.task_progress import Progress, Remaining, remaining_network
 from readiness.calculations.working_days import WorkingDays
 from readiness.quantities import Scalar, Table
@@ -85,8 +93,7 @@ def road_to_first_patient(
     Source: kelley-walker-1959, critical path (memory).
     """
     before = tasks_before_first_patient(tasks=tasks)
-    after = {task.id for task in tasks} - {task.id for task in before}
-    entries = [entry for entry in progress if entry.task not in after]
+    entries = _progress_before_first_patient(tasks, progress)
     left = remaining_network(tasks=before, progress=entries, calendar=calendar, as_of=as_of)
     if work.rows:
         left = _levelled(left, _work_of(tasks, left.tasks, work), capacity)
@@ -104,6 +111,51 @@ def road_to_first_patient(
         out_of_order=left.out_of_order,
         levelled=bool(work.rows),
     )
+
+
+def what_moves_first_patient(
+    *,
+    tasks: Sequence[Task],
+    progress: Sequence[Progress],
+    calendar: WorkingDays,
+    as_of: date,
+    shortened_by_working_days: int,
+) -> Table:
+    """
+    Return, for each critical task, how much earlier the first patient can come if it is shortened.
+
+    Args:
+        tasks: All tasks; those of phase operate are left aside.
+        progress: Actual dates of tasks.
+        calendar: The working days.
+        as_of: The day on which the plan is made.
+        shortened_by_working_days: By how much each task in turn is shortened. [working days]
+
+    Returns:
+        The rows of network_changes.what_moves_it, largest gain first, with the date of the first patient if
+        the task were shortened and if it took no time.
+
+    Raises:
+        ValueError: As road_to_first_patient, or if the shortening is not positive.
+
+    Valid for: one task at a time, by recalculation; a plan that is not levelled.
+    Assumes: whole working days.
+    Source: kelley-walker-1959, critical path (memory).
+    """
+    before = tasks_before_first_patient(tasks=tasks)
+    entries = _progress_before_first_patient(tasks, progress)
+    left = remaining_network(tasks=before, progress=entries, calendar=calendar, as_of=as_of)
+    floors = left.not_before_working_days
+    length = length_working_days(tasks=left.tasks, not_before=floors)
+    movers = what_moves_it(
+        tasks=left.tasks, shortened_by_working_days=shortened_by_working_days, not_before=floors
+    )
+    rows: list[tuple[Scalar, ...]] = []
+    for row in movers.rows:
+        gains = (int(gain or 0) for gain in row[-2:])
+        dates = (calendar.add(as_of, length - gain).isoformat() for gain in gains)
+        rows.append((*row, *dates))
+    return Table.of((*movers.columns, "first_patient_if_shortened", "first_patient_if_no_time"), rows)
 
 
 def tasks_before_first_patient(*, tasks: Sequence[Task]) -> tuple[Task, ...]:
@@ -184,6 +236,12 @@ def phase_weeks(*, road: Road) -> Table:
         spans[row.task.phase] = (min(first, start), max(last, row.finish))
     rows = [(phase, ((last - first).days + 1) / 7) for phase, (first, last) in spans.items()]
     return Table.of(("phase", "weeks"), rows)
+
+
+def _progress_before_first_patient(tasks: Sequence[Task], progress: Sequence[Progress]) -> list[Progress]:
+    """Return the actual dates without those of tasks that come after the first patient."""
+    after = {task.id for task in tasks if task.phase == OPERATE}
+    return [entry for entry in progress if entry.task not in after]
 
 
 def _work_of(tasks: Sequence[Task], left: Sequence[Task], work: Table) -> Table:

@@ -43,7 +43,7 @@ def work_of_phase(*, tasks: Sequence[Task], phase: str, hours: Table) -> Table:
     return Table.of(WORK, rows)
 
 
-def daily_capacity(*, people: Table, h_per_fte_per_year: float, working_days_per_year: float) -> Table:
+def daily_capacity(*, people: Table, hours_per_fte_h: float, working_days_per_year: float) -> Table:
     """
     Return the hours that each profession has for the program in a working day.
 
@@ -51,7 +51,7 @@ def daily_capacity(*, people: Table, h_per_fte_per_year: float, working_days_per
 
     Args:
         people: Who there is; columns of staff_hours.PEOPLE. People without a stated time add nothing.
-        h_per_fte_per_year: Hours that one full-time person works in a year. [h/year]
+        hours_per_fte_h: Hours that one full-time person works in a year. [h]
         working_days_per_year: Days on which the department works. [per year]
 
     Returns:
@@ -64,13 +64,13 @@ def daily_capacity(*, people: Table, h_per_fte_per_year: float, working_days_per
     Assumes: that everybody listed works in the project, qualified for treatments or not.
     Source: definition (derived).
     """
-    if h_per_fte_per_year <= 0 or working_days_per_year <= 0:
+    if hours_per_fte_h <= 0 or working_days_per_year <= 0:
         raise ValueError("a year has working hours and working days")
     sums: dict[str, float] = {}
     for row in people.records():
         name = str(row["profession"])
         sums[name] = sums.get(name, 0.0) + float(row["fte"] or 0.0)
-    each = h_per_fte_per_year / working_days_per_year
+    each = hours_per_fte_h / working_days_per_year
     return Table.of(CAPACITY, [(name, fte * each) for name, fte in sums.items()])
 
 

@@ -3,7 +3,7 @@
 import math
 
 
-def room_h_per_week(*, sessions_per_week: float, session_min: float) -> float:
+def room_hours_per_week(*, sessions_per_week: float, session_min: float) -> float:
     """
     Return the room hours that a number of sessions takes in a week.
 
@@ -12,7 +12,7 @@ def room_h_per_week(*, sessions_per_week: float, session_min: float) -> float:
         session_min: Room time of one session, cleaning and return to normal mode included. [min]
 
     Returns:
-        Room hours. [h/week]
+        Room hours of that week. [h]
 
     Raises:
         ValueError: If a number is negative.
@@ -27,7 +27,7 @@ def room_h_per_week(*, sessions_per_week: float, session_min: float) -> float:
 
 
 def places_room_holds(
-    *, free_room_h_per_week: float, session_min: float, course_sessions_per_week: float
+    *, free_room_hours_per_week_h: float, session_min: float, course_sessions_per_week: float
 ) -> int:
     """
     Return how many patients at once the free hours of the room can treat.
@@ -35,7 +35,7 @@ def places_room_holds(
     places = floor(free hours / (session hours * sessions a week of the most frequent course))
 
     Args:
-        free_room_h_per_week: Hours a week that ordinary patients leave free. [h/week]
+        free_room_hours_per_week_h: Hours a week that ordinary patients leave free. [h]
         session_min: Room time of one session. [min]
         course_sessions_per_week: Sessions a week of one patient, the course with most of them. [per week]
 
@@ -49,22 +49,22 @@ def places_room_holds(
     Assumes: that the hours lie on the days on which the patients come.
     Source: definition (derived).
     """
-    if free_room_h_per_week < 0 or session_min <= 0 or course_sessions_per_week <= 0:
+    if free_room_hours_per_week_h < 0 or session_min <= 0 or course_sessions_per_week <= 0:
         raise ValueError("free hours cannot be negative, and a session takes time every week")
     needed_h = course_sessions_per_week * session_min / 60
-    return math.floor(free_room_h_per_week / needed_h + 1e-9)
+    return math.floor(free_room_hours_per_week_h / needed_h + 1e-9)
 
 
-def free_room_h_left_per_week(*, free_room_h_per_week: float, room_use_h_per_week: float) -> float:
+def free_room_hours_left(*, free_room_hours_per_week_h: float, room_use_per_week_h: float) -> float:
     """
     Return the free hours that remain; negative when the room has fewer than the sessions take.
 
     Args:
-        free_room_h_per_week: Hours a week that ordinary patients leave free. [h/week]
-        room_use_h_per_week: Hours a week that the program takes. [h/week]
+        free_room_hours_per_week_h: Hours a week that ordinary patients leave free. [h]
+        room_use_per_week_h: Hours a week that the program takes. [h]
 
     Returns:
-        Hours left. [h/week]
+        Hours left. [h]
 
     Raises:
         ValueError: If a number of hours is negative.
@@ -73,12 +73,12 @@ def free_room_h_left_per_week(*, free_room_h_per_week: float, room_use_h_per_wee
     Assumes: hours free in blocks that hold whole sessions.
     Source: definition (derived).
     """
-    if free_room_h_per_week < 0 or room_use_h_per_week < 0:
+    if free_room_hours_per_week_h < 0 or room_use_per_week_h < 0:
         raise ValueError("hours cannot be negative")
-    return free_room_h_per_week - room_use_h_per_week
+    return free_room_hours_per_week_h - room_use_per_week_h
 
 
-def displaced_room_h_per_year(
+def displaced_room_hours_per_year(
     *,
     sessions_per_year: float,
     session_min: float,
@@ -86,7 +86,7 @@ def displaced_room_h_per_year(
     first_cycle_extra_min: float,
     tse_days_per_year: float,
     quality_assurance_min: float,
-    other_room_h_per_year: float,
+    other_room_hours_per_year_h: float,
 ) -> float:
     """
     Return the room hours that the program takes from other patients in a year.
@@ -100,10 +100,10 @@ def displaced_room_h_per_year(
         first_cycle_extra_min: Room time that a first-cycle session takes on top. [min]
         tse_days_per_year: Days with at least one session. [per year]
         quality_assurance_min: Room time of the checks on such a day. [min]
-        other_room_h_per_year: Monthly and yearly checks, drills and training in the room. [h/year]
+        other_room_hours_per_year_h: Monthly and yearly checks, drills and training in the room. [h]
 
     Returns:
-        Room hours. [h/year]
+        Room hours of that week. [h]
 
     Raises:
         ValueError: If a number is negative, or first cycles or days outnumber the sessions.
@@ -113,21 +113,21 @@ def displaced_room_h_per_year(
     Source: definition (derived).
     """
     parts = (sessions_per_year, session_min, first_cycle_sessions_per_year, first_cycle_extra_min,
-             tse_days_per_year, quality_assurance_min, other_room_h_per_year)  # fmt: skip
+             tse_days_per_year, quality_assurance_min, other_room_hours_per_year_h)  # fmt: skip
     if min(parts) < 0:
         raise ValueError("sessions, minutes, days and hours cannot be negative")
     if first_cycle_sessions_per_year > sessions_per_year or tse_days_per_year > sessions_per_year:
         raise ValueError("neither first-cycle sessions nor treatment days can outnumber the sessions")
     minutes = sessions_per_year * session_min + first_cycle_sessions_per_year * first_cycle_extra_min
-    return (minutes + tse_days_per_year * quality_assurance_min) / 60 + other_room_h_per_year
+    return (minutes + tse_days_per_year * quality_assurance_min) / 60 + other_room_hours_per_year_h
 
 
-def displaced_appointments_per_year(*, displaced_h_per_year: float, appointment_min: float) -> float:
+def displaced_appointments_per_year(*, displaced_hours_per_year_h: float, appointment_min: float) -> float:
     """
     Return the ordinary appointments that the displaced room hours would have held.
 
     Args:
-        displaced_h_per_year: Room hours that the program takes. [h/year]
+        displaced_hours_per_year_h: Room hours that the program takes. [h]
         appointment_min: Length of an ordinary appointment on that machine. [min]
 
     Returns:
@@ -140,6 +140,6 @@ def displaced_appointments_per_year(*, displaced_h_per_year: float, appointment_
     Assumes: one length of appointment.
     Source: definition (derived).
     """
-    if displaced_h_per_year < 0 or appointment_min <= 0:
+    if displaced_hours_per_year_h < 0 or appointment_min <= 0:
         raise ValueError("hours cannot be negative, and an appointment takes time")
-    return displaced_h_per_year * 60 / appointment_min
+    return displaced_hours_per_year_h * 60 / appointment_min

@@ -113,7 +113,7 @@ def people_with_fte(*, roles: Table, people: Table) -> Table:
     return Table.of(PEOPLE, rows)
 
 
-def staffing_balance(*, hours: Table, people: Table, phase_weeks: Table, h_per_fte_per_year: float) -> Table:
+def staffing_balance(*, hours: Table, people: Table, phase_weeks: Table, hours_per_fte_h: float) -> Table:
     """
     Return hours and full-time equivalents needed against available, by phase and profession.
 
@@ -123,7 +123,7 @@ def staffing_balance(*, hours: Table, people: Table, phase_weeks: Table, h_per_f
         hours: What task_hours returned.
         people: Who there is; columns of PEOPLE. Only people stated as qualified count as qualified.
         phase_weeks: Columns phase and weeks: how long phase commission lasts.
-        h_per_fte_per_year: Hours that one full-time person works in a year. [h/year]
+        hours_per_fte_h: Hours that one full-time person works in a year. [h]
 
     Returns:
         One row per phase and profession that has a task, in order of first appearance. Needed FTE is blank
@@ -137,7 +137,7 @@ def staffing_balance(*, hours: Table, people: Table, phase_weeks: Table, h_per_f
     Assumes: that all stated FTE are free for this program.
     Source: definition (derived).
     """
-    if h_per_fte_per_year <= 0:
+    if hours_per_fte_h <= 0:
         raise ValueError("a full-time person works some hours a year")
     stated = _fte_by_profession(people, qualified_only=False)
     qualified = _fte_by_profession(people, qualified_only=True)
@@ -148,7 +148,7 @@ def staffing_balance(*, hours: Table, people: Table, phase_weeks: Table, h_per_f
         weeks = weeks_of.get(phase)
         if weeks == 0:
             raise ValueError(f"phase {phase} lasts no time, and work is planned in it")
-        fte = None if weeks is None else needed_h / (h_per_fte_per_year * weeks / WEEKS_PER_YEAR)
+        fte = None if weeks is None else needed_h / (hours_per_fte_h * weeks / WEEKS_PER_YEAR)
         able = qualified.get(profession, 0.0)
         missing = None if fte is None or able is None or blanks else max(0.0, fte - able)
         there = stated.get(profession, 0.0)
@@ -156,14 +156,14 @@ def staffing_balance(*, hours: Table, people: Table, phase_weeks: Table, h_per_f
     return Table.of(BALANCE, rows)
 
 
-def profession_fte_needed(*, hours: Table, profession: str, h_per_fte_per_year: float) -> float:
+def profession_fte_needed(*, hours: Table, profession: str, hours_per_fte_h: float) -> float:
     """
     Return the full-time equivalents that the running program needs of a profession.
 
     Args:
         hours: What task_hours returned.
         profession: The profession.
-        h_per_fte_per_year: Hours that one full-time person works in a year. [h/year]
+        hours_per_fte_h: Hours that one full-time person works in a year. [h]
 
     Returns:
         Full-time equivalents; 0 for a profession without a recurring task. [FTE]
@@ -176,12 +176,12 @@ def profession_fte_needed(*, hours: Table, profession: str, h_per_fte_per_year: 
     Assumes: work spread evenly over the year.
     Source: definition (derived).
     """
-    if h_per_fte_per_year <= 0:
+    if hours_per_fte_h <= 0:
         raise ValueError("a full-time person works some hours a year")
     needed_h, blanks = _hours_by_phase_and_profession(hours).get((OPERATE, profession), (0.0, 0))
     if blanks:
         raise OutsideValidity(f"minutes or persons of {blanks} task(s) of the {profession} are not stated")
-    return needed_h / h_per_fte_per_year
+    return needed_h / hours_per_fte_h
 
 
 def profession_fte_qualified(*, people: Table, profession: str) -> float:

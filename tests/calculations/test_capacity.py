@@ -17,7 +17,7 @@ MIX = Table.of(COURSES, [("long", 5, 36, 2, 4, 10), ("short", 3, 12, 2, 4, 3)])
 PROGRAM = {
     "courses": MIX,
     "stated_places": 2,
-    "free_room_h_per_week": 8.0,
+    "free_room_hours_per_week_h": 8.0,
     "session_min": 60.0,
     "longest_wait_weeks": 2.0,
     "share_in_time": 0.8,

@@ -11,6 +11,7 @@ from readiness.calculations.first_patient import (
     road_table,
     road_to_first_patient,
     tasks_before_first_patient,
+    what_moves_first_patient,
 )
 from readiness.calculations.levelling import CAPACITY, WORK
 from readiness.calculations.task_network import Task
@@ -129,6 +130,28 @@ def test_an_approval_a_week_late_costs_a_week():
     road = road_to_first_patient(tasks=sample(), **PLAN | {"progress": done, "as_of": as_of})
     assert road.first_patient == CALENDAR.add(date(2027, 6, 9), 5)
     assert road.late_working_days == 22
+
+
+def test_what_moves_the_first_patient_has_dates():
+    """Five days off the stand bring the patient to 2027-06-02; without the stand, 45 days earlier, to 2027-04-06."""
+    plan = {key: PLAN[key] for key in ("progress", "calendar", "as_of")}
+    first = next(what_moves_first_patient(tasks=sample(), **plan, shortened_by_working_days=5).records())
+    assert first["task"] == "buy-stand"
+    assert first["first_patient_if_shortened"] == "2027-06-02"
+    assert first["first_patient_if_no_time"] == "2027-04-06"
+    assert "2027-04-06" == np.busday_offset(
+        "2026-12-01", 81, holidays=np.array(CLOSED, dtype="datetime64[D]")
+    ).astype(str)
+
+
+def test_what_is_finished_moves_nothing():
+    """Once the approval is given it is no longer among the tasks that could be shortened."""
+    done = (Progress("approve", AS_OF - timedelta(20), AS_OF - timedelta(1)),)
+    table = what_moves_first_patient(
+        tasks=sample(), progress=done, calendar=CALENDAR, as_of=AS_OF, shortened_by_working_days=5
+    )
+    assert "approve" not in table.column("task")
+    assert table.column("task")[0] == "buy-stand"
 
 
 def test_schedule_as_a_table_has_dates_in_words():

@@ -92,10 +92,10 @@ def test_capacity_of_a_day():
     """0.15 FTE of 1,650 h in 250 days are 0.99 h a day, trained or not; a blank adds nothing."""
     staff = Table.of(STAFF, [("P1", "physicist", 0.10, True), ("P2", "physicist", 0.05, False),
                              ("N1", "nurse", None, True)])  # fmt: skip
-    found = dict(daily_capacity(people=staff, h_per_fte_per_year=1650, working_days_per_year=250).rows)
+    found = dict(daily_capacity(people=staff, hours_per_fte_h=1650, working_days_per_year=250).rows)
     assert found == {"physicist": pytest.approx(0.99), "nurse": 0}
     with pytest.raises(ValueError, match="working hours and working days"):
-        daily_capacity(people=staff, h_per_fte_per_year=1650, working_days_per_year=0)
+        daily_capacity(people=staff, hours_per_fte_h=1650, working_days_per_year=0)
 
 
 def test_impossible_work_is_refused():

@@ -4,10 +4,10 @@ import pytest
 
 from readiness.calculations.room_hours import (
     displaced_appointments_per_year,
-    displaced_room_h_per_year,
-    free_room_h_left_per_week,
+    displaced_room_hours_per_year,
+    free_room_hours_left,
     places_room_holds,
-    room_h_per_week,
+    room_hours_per_week,
 )
 
 YEAR = {
@@ -17,14 +17,14 @@ YEAR = {
     "first_cycle_extra_min": 60,
     "tse_days_per_year": 176,
     "quality_assurance_min": 30,
-    "other_room_h_per_year": 60,
+    "other_room_hours_per_year_h": 60,
 }
 
 
 def test_eight_sessions_of_an_hour_take_eight_hours():
     """Room hours are sessions times minutes."""
-    assert room_h_per_week(sessions_per_week=8, session_min=60) == 8
-    assert room_h_per_week(sessions_per_week=0, session_min=60) == 0
+    assert room_hours_per_week(sessions_per_week=8, session_min=60) == 8
+    assert room_hours_per_week(sessions_per_week=0, session_min=60) == 0
 
 
 @pytest.mark.parametrize(
@@ -33,49 +33,49 @@ def test_eight_sessions_of_an_hour_take_eight_hours():
 def test_places_are_whole_patients(free, minutes, expected):
     """Eight free hours hold two patients with four sessions a week of one hour, and a minute more holds one."""
     assert expected == places_room_holds(
-        free_room_h_per_week=free, session_min=minutes, course_sessions_per_week=4
+        free_room_hours_per_week_h=free, session_min=minutes, course_sessions_per_week=4
     )
 
 
 def test_places_do_not_suffer_from_rounding():
     """Ten patients in exactly the hours of ten patients fit, though 0.7 is not a binary number."""
-    assert places_room_holds(free_room_h_per_week=7.0, session_min=42, course_sessions_per_week=1) == 10
+    assert places_room_holds(free_room_hours_per_week_h=7.0, session_min=42, course_sessions_per_week=1) == 10
 
 
 def test_missing_room_hours_are_negative():
     """An unfavourable balance is returned, not refused."""
-    assert free_room_h_left_per_week(free_room_h_per_week=6, room_use_h_per_week=8) == -2
+    assert free_room_hours_left(free_room_hours_per_week_h=6, room_use_per_week_h=8) == -2
 
 
 def test_displaced_hours_of_a_year_close_by_hand():
     """216 h of sessions, 16 h of first cycles, 88 h of daily checks and 60 h of others are 380 h."""
-    assert displaced_room_h_per_year(**YEAR) == 216 + 16 + 88 + 60
+    assert displaced_room_hours_per_year(**YEAR) == 216 + 16 + 88 + 60
 
 
 def test_every_part_displaces_something():
     """Each part that grows makes the displaced hours grow."""
     for name in YEAR:
         grown = YEAR | {name: YEAR[name] + 4}
-        assert displaced_room_h_per_year(**grown) > displaced_room_h_per_year(**YEAR)
+        assert displaced_room_hours_per_year(**grown) > displaced_room_hours_per_year(**YEAR)
 
 
 def test_hours_displace_appointments():
     """An hour holds four appointments of a quarter of an hour."""
-    assert displaced_appointments_per_year(displaced_h_per_year=380, appointment_min=15) == 1520
-    assert displaced_appointments_per_year(displaced_h_per_year=0, appointment_min=15) == 0
+    assert displaced_appointments_per_year(displaced_hours_per_year_h=380, appointment_min=15) == 1520
+    assert displaced_appointments_per_year(displaced_hours_per_year_h=0, appointment_min=15) == 0
 
 
 def test_impossible_numbers_are_refused():
     """Negative hours, sessions without time and more days than sessions are slips."""
     with pytest.raises(ValueError, match="cannot be negative"):
-        room_h_per_week(sessions_per_week=-1, session_min=60)
+        room_hours_per_week(sessions_per_week=-1, session_min=60)
     with pytest.raises(ValueError, match="takes time"):
-        places_room_holds(free_room_h_per_week=8, session_min=0, course_sessions_per_week=4)
+        places_room_holds(free_room_hours_per_week_h=8, session_min=0, course_sessions_per_week=4)
     with pytest.raises(ValueError, match="cannot be negative"):
-        free_room_h_left_per_week(free_room_h_per_week=-1, room_use_h_per_week=0)
+        free_room_hours_left(free_room_hours_per_week_h=-1, room_use_per_week_h=0)
     with pytest.raises(ValueError, match="outnumber the sessions"):
-        displaced_room_h_per_year(**YEAR | {"tse_days_per_year": 217})
+        displaced_room_hours_per_year(**YEAR | {"tse_days_per_year": 217})
     with pytest.raises(ValueError, match="cannot be negative"):
-        displaced_room_h_per_year(**YEAR | {"session_min": -60})
+        displaced_room_hours_per_year(**YEAR | {"session_min": -60})
     with pytest.raises(ValueError, match="takes time"):
-        displaced_appointments_per_year(displaced_h_per_year=1, appointment_min=0)
+        displaced_appointments_per_year(displaced_hours_per_year_h=1, appointment_min=0)

@@ -66,13 +66,13 @@ def test_a_week_is_counted_for_the_whole_year():
 
 def test_therapists_of_the_sample_need_a_third_of_a_person():
     """432 + 48 + 48 h at 1,650 h per full-time person are 0.32 FTE."""
-    needed = profession_fte_needed(hours=hours_of(*ALL), profession="therapist", h_per_fte_per_year=1650)
+    needed = profession_fte_needed(hours=hours_of(*ALL), profession="therapist", hours_per_fte_h=1650)
     assert needed == pytest.approx(528 / 1650)
 
 
 def test_a_role_without_recurring_tasks_needs_nobody():
     """The project's hours are no part of the running program."""
-    assert profession_fte_needed(hours=hours_of(ALL[-1]), profession="physicist", h_per_fte_per_year=1650) == 0
+    assert profession_fte_needed(hours=hours_of(ALL[-1]), profession="physicist", hours_per_fte_h=1650) == 0
 
 
 def test_only_stated_qualifications_count():
@@ -107,7 +107,7 @@ def test_time_that_nobody_stated_is_not_zero():
     """With the time of a qualified person blank, neither missing nor qualified FTE is told."""
     crew = Table.of(PEOPLE, [("P1", "physicist", None, True), ("P2", "physicist", 0.2, True)])
     (row,) = staffing_balance(
-        hours=hours_of(ALL[2]), people=crew, phase_weeks=NO_PHASES, h_per_fte_per_year=1650
+        hours=hours_of(ALL[2]), people=crew, phase_weeks=NO_PHASES, hours_per_fte_h=1650
     ).records()
     assert row["qualified_fte"] is None
     assert row["missing_fte"] is None
@@ -117,7 +117,7 @@ def test_time_that_nobody_stated_is_not_zero():
 
 def test_balance_compares_needed_with_stated_and_qualified():
     """The physicists' 257.5 h are 0.156 FTE: 0.15 are stated, 0.10 qualified, 0.056 missing."""
-    balance = staffing_balance(hours=hours_of(*ALL), people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=1650)
+    balance = staffing_balance(hours=hours_of(*ALL), people=CREW, phase_weeks=NO_PHASES, hours_per_fte_h=1650)
     row = next(row for row in balance.records() if row["profession"] == "physicist" and row["phase"] == "operate")
     assert row["needed_h"] == pytest.approx(257.5)
     assert row["needed_fte"] == pytest.approx(257.5 / 1650)
@@ -130,7 +130,7 @@ def test_a_project_phase_needs_its_hours_within_its_weeks():
     found = []
     for weeks in (4, 40):
         phases = Table.of(("phase", "weeks"), [("commission", weeks)])
-        balance = staffing_balance(hours=hours_of(ALL[-1]), people=CREW, phase_weeks=phases, h_per_fte_per_year=1650)
+        balance = staffing_balance(hours=hours_of(ALL[-1]), people=CREW, phase_weeks=phases, hours_per_fte_h=1650)
         found.append(balance.column("needed_fte")[0])
     assert found[0] == pytest.approx(240 / (1650 * 4 / WEEKS_PER_YEAR))
     assert found[0] == pytest.approx(10 * found[1])
@@ -138,7 +138,7 @@ def test_a_project_phase_needs_its_hours_within_its_weeks():
 
 def test_a_phase_of_unknown_length_has_no_fte():
     """Hours are summed, full-time equivalents stay blank."""
-    balance = staffing_balance(hours=hours_of(ALL[-1]), people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=1650)
+    balance = staffing_balance(hours=hours_of(ALL[-1]), people=CREW, phase_weeks=NO_PHASES, hours_per_fte_h=1650)
     (row,) = balance.records()
     assert row["needed_h"] == 240
     assert row["needed_fte"] is None
@@ -149,7 +149,7 @@ def test_enough_people_are_not_missing():
     """A surplus shows as nobody missing, not as a negative number."""
     small = hours_of(("checks", "physicist", "month", 30, 1))
     (row,) = staffing_balance(
-        hours=small, people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=1650
+        hours=small, people=CREW, phase_weeks=NO_PHASES, hours_per_fte_h=1650
     ).records()
     assert row["missing_fte"] == 0
 
@@ -159,12 +159,12 @@ def test_minutes_that_nobody_stated_are_never_zero():
     hours = hours_of(("checks", "physicist", "month", None, 1))
     assert hours.column("total_h") == (None,)
     (row,) = staffing_balance(
-        hours=hours, people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=1650
+        hours=hours, people=CREW, phase_weeks=NO_PHASES, hours_per_fte_h=1650
     ).records()
     assert row["tasks_without_minutes"] == 1
     assert row["missing_fte"] is None
     with pytest.raises(OutsideValidity, match=r"1 task\(s\) of the physicist are not stated"):
-        profession_fte_needed(hours=hours, profession="physicist", h_per_fte_per_year=1650)
+        profession_fte_needed(hours=hours, profession="physicist", hours_per_fte_h=1650)
 
 
 @pytest.mark.parametrize(
@@ -188,9 +188,9 @@ def test_impossible_years_and_people_are_refused():
     with pytest.raises(ValueError, match="fte of 'P1' cannot be"):
         profession_fte_qualified(people=Table.of(PEOPLE, [("P1", "physicist", -0.1, True)]), profession="physicist")
     with pytest.raises(ValueError, match="works some hours"):
-        profession_fte_needed(hours=hours_of(*ALL), profession="nurse", h_per_fte_per_year=0)
+        profession_fte_needed(hours=hours_of(*ALL), profession="nurse", hours_per_fte_h=0)
     with pytest.raises(ValueError, match="works some hours"):
-        staffing_balance(hours=hours_of(*ALL), people=CREW, phase_weeks=NO_PHASES, h_per_fte_per_year=0)
+        staffing_balance(hours=hours_of(*ALL), people=CREW, phase_weeks=NO_PHASES, hours_per_fte_h=0)
     phases = Table.of(("phase", "weeks"), [("commission", 0)])
     with pytest.raises(ValueError, match="phase commission lasts no time"):
-        staffing_balance(hours=hours_of(*ALL), people=CREW, phase_weeks=phases, h_per_fte_per_year=1650)
+        staffing_balance(hours=hours_of(*ALL), people=CREW, phase_weeks=phases, hours_per_fte_h=1650)
