@@ -7,6 +7,8 @@ import numpy as np
 from numpy.typing import ArrayLike, NDArray
 from scipy.optimize import least_squares
 
+from readiness.calculations.field_setup import FieldSetup
+from readiness.calculations.tilted_field import tilted_fields
 from readiness.calculations.usable_readings import usable_profile
 from readiness.errors import OutsideValidity
 from readiness.quantities import Uncertain
@@ -33,7 +35,7 @@ class FoilSpreadFit:
 
     ``foil_spread`` is the standard deviation of the tangents at the foil; ``centre_shift_cm`` is where the
     profile has its centre; ``residual_percent`` is the root mean square departure of the readings from the
-    fitted curve in per cent of its highest value. Standard deviations come from that scatter alone.
+    fitted curve in per cent of the highest reading. Standard deviations come from that scatter alone.
     """
 
     foil_spread: Uncertain
@@ -77,17 +79,17 @@ def fit_foil_spread(
             f"a foil spread cannot be fitted to {len(places)} readings; at least {FEWEST_POINTS} are needed"
         )
     _refuse_other_unit(places, values, model)
+    unit = float(values.max() / model(np.zeros(1), USUAL_SPREAD)[0])
 
     def departure(guess: Array) -> Array:
         scale, shift, spread = guess
-        return np.asarray(scale * model(places - shift, float(spread)) - values, dtype=float)
+        return np.asarray(scale * model(places - shift, float(spread)) - values / unit, dtype=float)
 
-    at_axis = float(model(np.zeros(1), USUAL_SPREAD)[0])
-    start = np.array([values.max() / at_axis, float(places[np.argmax(values)]) / 2, USUAL_SPREAD])
+    start = np.array([1.0, float(places[np.argmax(values)]) / 2, USUAL_SPREAD])
     reach = float(np.ptp(places))
     bounds = ([0.0, -reach, LOWEST_SPREAD], [np.inf, reach, HIGHEST_SPREAD])
-    scales = np.array([values.max() / at_axis, 10.0, 0.1])
-    fit = least_squares(departure, start, bounds=bounds, x_scale=scales, xtol=1e-12, ftol=1e-12, gtol=1e-12)
+    precise = {"x_scale": np.array([1.0, 10.0, 0.1]), "xtol": 1e-12, "ftol": 1e-12, "gtol": 1e-12}
+    fit = least_squares(departure, start, bounds=bounds, **precise)
     scale, shift, spread = (float(number) for number in fit.x)
     if min(spread - LOWEST_SPREAD, HIGHEST_SPREAD - spread) < 1e-3:
         raise OutsideValidity(
@@ -99,13 +101,63 @@ def fit_foil_spread(
     result = FoilSpreadFit(
         foil_spread=Uncertain(spread, float(sds[2])),
         centre_shift_cm=Uncertain(shift, float(sds[1])),
-        scale=scale,
-        residual_percent=100 * float(np.sqrt(2 * fit.cost / len(places))) / (scale * at_axis),
+        scale=scale * unit,
+        residual_percent=100 * float(np.sqrt(2 * fit.cost / len(places)) * unit / values.max()),
         points=len(places),
         remarks=(),
     )
     remarks = (*usable.remarks, *_remarks(result, places, values))
     return FoilSpreadFit(**{**vars(result), "remarks": remarks})
+
+
+def foil_spread_of_profile(
+    *,
+    positions_cm: ArrayLike,
+    readings: ArrayLike,
+    normalisation: str,
+    direction: str,
+    setup: FieldSetup,
+    plane_distance_cm: float,
+    tilt_deg: float,
+) -> FoilSpreadFit:
+    """
+    Return the foil spread that makes the model of a set-up fit its measured single-field profile.
+
+    Args:
+        positions_cm: Heights from the isocentre, or places across from the beam's vertical plane, (n,). [cm]
+        readings: Relative readings, any normalisation, (n,). [1]
+        normalisation: Where the file says that readings are 1; only compared with them.
+        direction: "vertical" or "horizontal".
+        setup: Beam and room of the measurement, from field_setup; its foil spread is not used.
+        plane_distance_cm: Plane distance of the measurement. [cm]
+        tilt_deg: Tilt of the field during the measurement, negative for the one aimed at the feet. [deg]
+
+    Returns:
+        Foil spread and shift of the centre with standard deviations, and remarks.
+
+    Raises:
+        ValueError: If lengths differ or a number or the direction is impossible.
+        OutsideValidity: If the readings cannot be used or the set-up lies outside the model.
+
+    Valid for: the range of the model in field_at_plane.
+    Assumes: energy, degrader and distance are those of the measurement; their uncertainty is not included.
+    Source: own-fit (fit) for the model; least squares (derived).
+    """
+    if direction not in ("vertical", "horizontal"):
+        raise ValueError(f"a profile is vertical or horizontal, not {direction!r}")
+
+    def model(places: Array, spread: float) -> Array:
+        """Return the dose along the line relative to the field's dose at its middle."""
+        wanted = np.concatenate([[0.0], np.sign(tilt_deg or 1.0) * places])
+        along = (wanted, np.zeros(1)) if direction == "vertical" else (np.zeros(1), wanted)
+        doses = tilted_fields(
+            setup.but(foil_spread=spread), np.array([abs(tilt_deg)]), plane_distance_cm, *along
+        ).ravel()
+        return np.asarray(doses[1:] / doses[0], dtype=float)
+
+    return fit_foil_spread(
+        positions_cm=positions_cm, readings=readings, normalisation=normalisation, model=model
+    )
 
 
 def _refuse_other_unit(places: Array, readings: Array, model: Model) -> None:
