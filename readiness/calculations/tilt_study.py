@@ -51,6 +51,15 @@ def chosen_metric(metric: str, half_range: Array, deviation: Array) -> Array:
     return half_range if metric == HALF_RANGE else deviation
 
 
+def profile_percents(profiles: Array, metric: str) -> Array:
+    """Return the uniformity of profiles, one a row, whose middle entry is the centre."""
+    centre = profiles[:, profiles.shape[1] // 2]
+    if (centre <= 0).any():
+        raise OutsideValidity("no dose reaches mid-height at one of the tilts")
+    deviation = 100 * np.max(np.abs(profiles / centre[:, None] - 1), axis=1)
+    return chosen_metric(metric, _half_range(profiles.max(axis=1), profiles.min(axis=1)), deviation)
+
+
 def tilt_study(
     *,
     setup: FieldSetup,
