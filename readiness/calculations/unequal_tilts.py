@@ -66,14 +66,10 @@ def best_unequal_tilts(
     middle = np.array([0.0])
     upper = tilted_fields(setup, tilts, plane_distance_cm, heights + mid_height_cm, middle)[:, :, 0]
     lower = tilted_fields(setup, tilts, plane_distance_cm, heights - mid_height_cm, middle)[:, ::-1, 0]
-    percent = np.array(
-        [_percents(mu_share_upper * up + (1 - mu_share_upper) * lower, metric) for up in upper]
-    )
-    percent = np.round(percent, 6)
-    ties = np.argwhere(percent == percent.min())
-    head, feet = min(
-        ((int(i), int(j)) for i, j in ties), key=lambda pair: (tilts[pair[0]] + tilts[pair[1]], pair)
-    )
+    pairs = [mu_share_upper * up + (1 - mu_share_upper) * lower for up in upper]
+    percent = np.round([profile_percents(pair, metric) for pair in pairs], 6)
+    ties = [(int(i), int(j)) for i, j in np.argwhere(percent == percent.min())]
+    head, feet = min(ties, key=lambda pair: (tilts[pair[0]] + tilts[pair[1]], pair))
     equal = int(np.argmin(np.diag(percent)))
     return UnequalTilts(
         float(tilts[head]),
