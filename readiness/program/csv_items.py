@@ -6,7 +6,7 @@ from pathlib import PurePosixPath
 from readiness.errors import Place
 from readiness.program import nodes
 from readiness.program.entries import EntryReader, Plain, Sink, Use
-from readiness.program.entry_words import Path, unknown_key
+from readiness.program.entry_words import Path, meaning_of, unknown_key
 from readiness.program.field_schema import PROGRAM, FieldSchema, KindSchema
 from readiness.program.items import Item, Stated
 from readiness.program.limits import check_columns, check_limits
@@ -53,7 +53,7 @@ def read_measurement(csv: nodes.CsvText, sink: Sink) -> Item | None:
 def read_progress(csv: nodes.CsvText, kind: KindSchema, sink: Sink) -> list[Item]:
     """Return one item a row; the first described column is its id."""
     for key, _ in csv.header:
-        sink.add(key.place, f"{shown(key.text)} is not known: this file has no header lines", "unknown key")
+        sink.add(key.place, f"{shown(key.text)} is not known: this file has no header lines", "unknown-key")
     columns = _read_columns(csv, kind.fields, sink)
     named = {column.text: at for at, column in enumerate(csv.columns)}
     identity = next(iter(kind.fields))
@@ -93,7 +93,7 @@ def _read_columns(
     """Return the readings of each known column; None where nothing readable is written."""
     for column in csv.columns:
         if column.text not in fields:
-            sink.add(column.place, unknown_key(column.text, fields, " as a column"), "unknown column")
+            sink.add(column.place, unknown_key(column.text, fields, " as a column"), "unknown-column")
     places: dict[Path, Place] = {}
     found: dict[str, list[Plain | None]] = {}
     reader = EntryReader(fields, sink)
@@ -104,7 +104,7 @@ def _read_columns(
             places.update({(name, row): entry.place for row, entry in enumerate(entries)})
             found[name] = _read_column(entries, field, reader, sink)
         elif field.required:
-            sink.add(csv.place, f"column {name} is missing: {field.meaning}", "missing")
+            sink.add(csv.place, f"column {name} is missing: {meaning_of(field)}", "missing")
     sink.problems.extend(check_columns(found, fields, places))
     return found
 
@@ -121,7 +121,7 @@ def _read_column(
         if field.to and value is not None and not (field.or_none and value == "none"):
             sink.uses.append(Use(field.to, str(value), str(value), what, entry.place))
         if blank and field.required:
-            sink.add(entry.place, f"{what} is empty: {field.meaning}", "empty")
+            sink.add(entry.place, f"{what} is empty: {meaning_of(field)}", "empty")
     return values
 
 

@@ -13,6 +13,7 @@ from readiness.errors import Place, Problem
 from readiness.program import nodes, scalars
 from readiness.program.entry_words import Path, in_words, is_blank, one, unknown_key, words_at
 from readiness.program.field_schema import FieldSchema
+from readiness.program.wording import LONGEST_SHOWN
 
 Plain = Any  # what a YAML library would have loaded, had it known the field
 
@@ -90,7 +91,7 @@ class EntryReader:
             elif key.text not in others:
                 where = f" in {words_at(self.fields, path)}" if path else ""
                 message = unknown_key(key.text, (*fields, *others), where, self.elsewhere(key.text))
-                self.sink.add(key.place, message, "unknown key")
+                self.sink.add(key.place, message, "unknown-key")
         for name, found in plain.items():
             if fields[name].to:
                 plain[name] = self.full_ids(fields[name], found, plain, (*path, name))
@@ -118,7 +119,9 @@ class EntryReader:
         if isinstance(node, nodes.Sequence):
             found = [read(each, schema, (*path, index)) for index, each in enumerate(node.entries)]
             return None if any(each is None for each in found) else found
-        advice = ", also for a single entry: [ ... ]" if schema.type in _ENTRIES else ""
+        advice = ""
+        if schema.type in _ENTRIES and isinstance(node, nodes.Scalar):
+            advice = f": write [{node.text[:LONGEST_SHOWN]}], also for a single entry"
         return self._wrong_shape(node, path, expected, advice, ", [] if there are none")
 
     def _row(self, node: nodes.Node, schema: FieldSchema, path: Path) -> Plain | None:
@@ -141,7 +144,7 @@ class EntryReader:
         self.places[path] = node.place
         kind = "number" if schema.type == "points" else _ENTRIES.get(schema.type, schema.type)
         if not isinstance(node, nodes.Scalar):
-            return self._wrong_shape(node, path, one(kind))
+            return self._wrong_shape(node, path, one(kind, schema.unit))
         what = what or words_at(self.fields, path)
         if kind in {"number", "whole number"}:
             value, problem = scalars.READERS[kind](node, what=what, unit=schema.unit)

@@ -4,9 +4,11 @@ from collections.abc import Iterable, Mapping
 
 from readiness.program import nodes
 from readiness.program.field_schema import FieldSchema
-from readiness.program.wording import did_you_mean, shown
+from readiness.program.wording import a_number, did_you_mean, shown
 
 Path = tuple[str | int, ...]  # keys and positions that lead to an entry: ("layers", 1, "thickness_cm")
+
+MOST_KEYS = 8  # longer lists of known keys are not repeated in a message
 
 _ONE = {
     "word": "one word",
@@ -69,10 +71,21 @@ def is_blank(node: nodes.Node) -> bool:
 def unknown_key(key: str, known: Iterable[str], where: str = "", elsewhere: str = "") -> str:
     """Return the message for a key that nobody reads; ``elsewhere`` says where it would be read."""
     instead = _SAY_INSTEAD.get(key.casefold())
+    known = list(known)
     hint = f": {instead}" if instead else did_you_mean(key, known) or elsewhere
+    if not hint and len(known) <= MOST_KEYS:
+        hint = f"; known are {', '.join(known)}"
     return f"{shown(key)} is not known{where}{hint}"
 
 
-def one(kind: str) -> str:
+def one(kind: str, unit: str = "") -> str:
     """Return a single entry of a type, in the user's words."""
+    if kind in {"number", "whole number"}:
+        return a_number(unit, whole=kind == "whole number")
     return _ONE.get(kind, f"a {kind}")
+
+
+def meaning_of(field: FieldSchema) -> str:
+    """Return what a field means, to stand inside a sentence."""
+    text = field.meaning.removesuffix(".")
+    return text if text[:2].isupper() else text[0].lower() + text[1:]

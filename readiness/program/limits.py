@@ -3,13 +3,13 @@
 from collections.abc import Iterable, Mapping
 from typing import Any
 
-from cerberus import Validator
+from cerberus import TypeDefinition, Validator
 from cerberus.errors import BaseErrorHandler, ErrorDefinition, ValidationError
 from cerberus.schema import UnvalidatedSchema
 
 from readiness.errors import Place, Problem
 from readiness.program.entries import Plain
-from readiness.program.entry_words import Path, field_at, words_at
+from readiness.program.entry_words import Path, field_at, meaning_of, words_at
 from readiness.program.field_schema import FieldSchema
 from readiness.program.wording import did_you_mean, shown
 from readiness.units import printed
@@ -22,6 +22,7 @@ _TYPES = {
 }  # fmt: skip
 _LISTS = {"texts": "text", "words": "word", "numbers": "number", "dates": "date", "references": "reference"}
 _ANYTHING = ["number", "boolean", "date", "string"]
+NEAR = 2  # times: a number so near to its range was not given in another unit
 MOST_WORDS = 12  # longer lists of allowed words are not repeated in a message
 # unit of a name -> what a mistaken number was probably given in, as a factor to the right unit
 _OTHER_UNITS: dict[str, tuple[float, ...]] = {
@@ -42,7 +43,9 @@ _NOT_ABOVE = ErrorDefinition(0x4F, "above")  # a code that cerberus does not use
 
 
 class _Checker(Validator):  # type: ignore[misc] # cerberus ships no types
-    """Cerberus with a lower limit that is itself excluded."""
+    """Cerberus with a lower limit that is itself excluded, and in which yes is not a whole number."""
+
+    types_mapping = {**Validator.types_mapping, "integer": TypeDefinition("integer", (int,), (bool,))}
 
     def _validate_above(self, limit: float, field: str, value: float) -> None:
         """{'type': 'number'}"""  # noqa: D200,D400,D403,D415 - read by cerberus
@@ -137,7 +140,7 @@ def _errors(plain: Mapping[str, Plain], rules: Mapping[str, Rules]) -> Iterable[
 
 def missing(field: FieldSchema, where: str = "") -> str:
     """Return the message for a required field that is not there."""
-    return f"{field.name} is missing{where}: {field.meaning[0].lower()}{field.meaning[1:]}"
+    return f"{field.name} is missing{where}: {meaning_of(field)}"
 
 
 def other_unit(number: float, field: FieldSchema) -> str:
@@ -150,10 +153,12 @@ def other_unit(number: float, field: FieldSchema) -> str:
 
 def meant_in_another_unit(number: float, field: FieldSchema) -> float | None:
     """Return the number that was probably meant, if it was given in another common unit."""
+    low, high = field.plausible or (field.minimum or field.above or 0, field.maximum)
+    if high is None or low / NEAR <= number <= high * NEAR:
+        return None
     for factor in _OTHER_UNITS.get(field.unit, ()):
         meant = float(f"{number * factor:.6g}")
-        low, high = field.plausible or (field.minimum, field.maximum)
-        if (low is None or meant >= low) and (high is None or meant <= high) and _inside(meant, field):
+        if low <= meant <= high and _inside(meant, field):
             return meant
     return None
 

@@ -1,6 +1,7 @@
 """The one door through which a program comes in, from a folder or out of a binder: every problem at once."""
 
 from collections.abc import Sequence
+from dataclasses import replace
 from pathlib import Path
 
 from readiness.errors import Place, Problem, ProgramProblems
@@ -80,7 +81,7 @@ def _read(contents: FolderContents, found: Sequence[Problem], known: Schemas) ->
         texts=texts,
         contents=contents.files,
     )
-    _raise_problems(program, sink, contents, known)
+    _raise_problems(program, reader, contents)
     return program
 
 
@@ -107,13 +108,24 @@ def _read_measurement(name: str, content: bytes, reader: FileReader) -> None:
         reader.items.append(item)
 
 
-def _raise_problems(program: Program, sink: Sink, contents: FolderContents, known: Schemas) -> None:
-    items, names = program.items, [*contents.files, *contents.evidence]
+def _raise_problems(program: Program, reader: FileReader, contents: FolderContents) -> None:
+    items, known, sink = program.items, reader.schemas, reader.sink
+    names = [*contents.files, *contents.evidence]
     found = [
         *sink.problems,
         *doubled(items, known),
         *dangling(sink.uses, items, program.known_lists, names, known),
-        *plausibility.implausible(program, known),
+        *plausibility.implausible(_without_half_read(program, reader), known),
     ]
     if not all(plausibility.is_question(problem) for problem in found):
         raise ProgramProblems(found)
+
+
+def _without_half_read(program: Program, reader: FileReader) -> Program:
+    """Return the program without items that are judged by what they leave out, if they are half read."""
+    kept = [
+        item
+        for item in program.items
+        if item.kind not in plausibility.JUDGED_WHOLE or (item.kind, item.id) not in reader.incomplete
+    ]
+    return replace(program, items=tuple(kept))

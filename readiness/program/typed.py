@@ -27,6 +27,7 @@ class FileReader:
         sink: Takes problems and names that must exist.
         items: What was described, owners before what belongs to them.
         known_lists: (kind, owner id) of each list that is present, even empty.
+        incomplete: (kind, id) of each item of which something was written that could not be read.
     """
 
     def __init__(self, schemas: Schemas, sink: Sink) -> None:
@@ -35,6 +36,7 @@ class FileReader:
         self.sink = sink
         self.items: list[Item] = []
         self.known_lists: set[tuple[str, str]] = set()
+        self.incomplete: set[tuple[str, str]] = set()
 
     def read(self, node: nodes.Node | None, file: FileSchema) -> None:
         """Read one file; None is a file in which nothing is written."""
@@ -59,6 +61,8 @@ class FileReader:
             if name not in wrong
         }
         owning = {kind.fields[name].to: str(plain[name]) for name in stated if kind.fields[name].owner}
+        if any((name,) in reader.places and name not in stated for name in kind.fields):
+            self.incomplete.add((kind.kind, item_id))
         if kind.kind:  # the top of a file that describes no item itself has none
             self.items.append(Item(kind.kind, item_id, stated, {**owners, **owning}, node.place))
         inside = {kind.kind or PROGRAM: item_id}

@@ -12,6 +12,8 @@ from readiness.program.plausibility import courses, equipment, measurements, rec
 from readiness.program.plausibility.stated import QUESTION, Check
 from readiness.program.plausibility.units import mistaken_units
 
+JUDGED_WHOLE = frozenset({"local_rule", "local_limit"})  # kinds whose checks ask for what is not there
+
 CHECKS: tuple[Check, ...] = (
     *rooms.CHECKS,
     *equipment.CHECKS,

@@ -31,12 +31,12 @@ def floor_polygons(program: Program) -> Iterator[Problem]:
             yield impossible(room, FLOOR, f"corner {repeated[0]} is written twice in a row")
             continue
         crossing = first_crossing(floor)
-        if crossing:
+        if area(floor) == 0:
+            yield impossible(room, FLOOR, "the corners lie on one line")
+        elif crossing:
             first, second = (_side(floor, each) for each in crossing)
             message = f"the side {first} meets the side {second}; write the corners in order"
             yield impossible(room, FLOOR, message)
-        elif area(floor) == 0:
-            yield impossible(room, FLOOR, "the corners lie on one line")
 
 
 def floor_sizes(program: Program) -> Iterator[Problem]:

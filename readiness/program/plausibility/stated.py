@@ -79,9 +79,14 @@ def place(item: Item, name: str) -> Place:
 
 def impossible(item: Item, name: str, message: str) -> Problem:
     """Return that what a field states cannot be."""
-    return Problem(place(item, name), f"{item.kind.replace('_', ' ')} {item.id}: {message}", IMPOSSIBLE)
+    return Problem(place(item, name), f"{_called(item)}: {message}", IMPOSSIBLE)
 
 
 def question(item: Item, name: str, message: str) -> Problem:
     """Return that what a field states is odd."""
-    return Problem(place(item, name), f"{item.kind.replace('_', ' ')} {item.id}: {message}", QUESTION)
+    return Problem(place(item, name), f"{_called(item)}: {message}", QUESTION)
+
+
+def _called(item: Item) -> str:
+    kind = item.kind.replace("_", " ")
+    return kind if item.id == item.kind else f"{kind} {item.id}"
