@@ -27,6 +27,7 @@ class AngleAtDistance:
     best_tilt_deg: float
     vertical_percent: float
     horizontal_percent: float
+    map_half_range_percent: float
     lowest_passing_tilt_deg: float | None
     highest_passing_tilt_deg: float | None
     vertical_within: bool
@@ -80,6 +81,7 @@ def angle_at_distance(
         best_tilt_deg=float(study.tilts_deg[best]),
         vertical_percent=float(vertical[best]),
         horizontal_percent=float(horizontal[best]),
+        map_half_range_percent=float(study.map_half_range_percent[at, best]),
         lowest_passing_tilt_deg=low,
         highest_passing_tilt_deg=high,
         vertical_within=within,
@@ -141,7 +143,13 @@ def angles_by_distance(
 
 
 def uniformity_over_distance_and_tilt(
-    *, study: TiltStudy, metric: str, vertical_limit_percent: float, horizontal_limit_percent: float
+    *,
+    study: TiltStudy,
+    metric: str,
+    vertical_limit_percent: float,
+    horizontal_limit_percent: float,
+    every_distance: int = 1,
+    every_tilt: int = 1,
 ) -> Table:
     """
     Return the feasible region: uniformity both ways per distance and tilt, and whether both keep their limit.
@@ -151,6 +159,8 @@ def uniformity_over_distance_and_tilt(
         metric: half-range, deviation-from-mid-height or stricter.
         vertical_limit_percent: Largest departure allowed along the height. [%]
         horizontal_limit_percent: Largest departure allowed across. [%]
+        every_distance: List only every n-th distance. [1]
+        every_tilt: List only every n-th tilt. [1]
 
     Returns:
         Columns distance_cm, tilt_deg, vertical_percent, horizontal_percent, within_both.
@@ -166,8 +176,8 @@ def uniformity_over_distance_and_tilt(
     within = (vertical <= vertical_limit_percent) & (horizontal <= horizontal_limit_percent)
     rows = [
         (float(distance), float(tilt), float(vertical[i, j]), float(horizontal[i, j]), bool(within[i, j]))
-        for i, distance in enumerate(study.distances_cm)
-        for j, tilt in enumerate(study.tilts_deg)
+        for i, distance in list(enumerate(study.distances_cm))[::every_distance]
+        for j, tilt in list(enumerate(study.tilts_deg))[::every_tilt]
     ]
     names = ["distance_cm", "tilt_deg", "vertical_percent", "horizontal_percent", "within_both"]
     return Table.of(names, rows)

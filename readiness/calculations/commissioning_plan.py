@@ -71,8 +71,8 @@ class CommissioningPlan:
     Steps in order and the readings to expect.
 
     ``steps``: order, name, measure, then. ``single_field``: height_cm, expected. ``angle_sweep``: order,
-    tilt_deg, height_cm, expected. ``across``: across_cm, expected. ``depth_dose``: depth_mm, expected_percent,
-    sd_percent, blank where nothing is predicted.
+    tilt_deg, height_cm, expected. ``across``: across_cm, expected. ``depth_dose``: depth_mm,
+    expected_percent, sd_percent, blank where nothing is predicted.
     """
 
     steps: Table

@@ -71,6 +71,8 @@ def tilt_study(
     uniformity_half_width_cm: float,
     field_length_cm: float,
     field_width_cm: float,
+    height_step_cm: float = HEIGHT_STEP_CM,
+    across_step_cm: float = ACROSS_STEP_CM,
 ) -> TiltStudy:
     """
     Return how even dual fields with two equal tilts are, for every distance and tilt.
@@ -85,6 +87,8 @@ def tilt_study(
         uniformity_half_width_cm: Half of the width over which the horizontal profile is judged. [cm]
         field_length_cm: Height of the rectangle. [cm]
         field_width_cm: Width of the rectangle. [cm]
+        height_step_cm: Largest step of the grid along the height. [cm]
+        across_step_cm: Largest step of the grid across. [cm]
 
     Returns:
         Both metrics of both profiles, the half-range of the rectangle and the output.
@@ -103,8 +107,8 @@ def tilt_study(
     if not 0 < mu_share_upper < 1 or tilts[0] < 0:
         raise ValueError("a part of the MU lies between 0 and 1, and a tilt is given as a positive angle")
     limits = (uniformity_half_length_cm, uniformity_half_width_cm, field_length_cm / 2, field_width_cm / 2)
-    heights = _grid(limits[0], limits[2], HEIGHT_STEP_CM)
-    across = _grid(limits[1], limits[3], ACROSS_STEP_CM)
+    heights = _grid(limits[0], limits[2], height_step_cm)
+    across = _grid(limits[1], limits[3], across_step_cm)
     reach = (float(distances[0]), float(distances[-1]))
     rows = []
     for distance in distances:
