@@ -109,5 +109,5 @@ def _remarks(sites: Sequence[str], points: int, at_prescription: int, cycles: in
         said.append(f"No expected dose is known for: {', '.join(strange)}.")
     missing = [word for word, site in known.items() if site.group in ("fold", "shaded") and word not in sites]
     if missing:
-        said.append(f"Sites that usually need a boost are not measured: {', '.join(missing)}.")
+        said.append(f"Sites that are often low are not measured: {', '.join(missing)}.")
     return said

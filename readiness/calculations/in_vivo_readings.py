@@ -160,7 +160,7 @@ def _against_published(percent: float, site: Site | None) -> str:
     if site is None:
         return "nothing published"
     if site.expected_low_percent is None or site.expected_high_percent is None:
-        return "low expected, no figure"
+        return "no range published"
     if percent < site.expected_low_percent:
         return "lower than published"
     return "higher than published" if percent > site.expected_high_percent else "as published"

@@ -12,7 +12,7 @@ class Site:
     """
     One site on the body.
 
-    The expected range is in per cent of the prescription, None where a low dose but no figure is published.
+    The expected range is in per cent of the prescription, None where no figure for the mean is published.
     """
 
     site: str

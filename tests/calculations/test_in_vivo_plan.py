@@ -61,7 +61,7 @@ def test_more_sites_take_more() -> None:
     ],
 )
 def test_what_the_plan_lacks_is_said(changed: dict[str, object], remark: str) -> None:
-    """A plan with too few points or without the sites that need boosts says so."""
+    """A plan with too few points or without the sites that are often low says so."""
     assert remark in " ".join(planned(**changed).remarks)
 
 
@@ -75,7 +75,7 @@ def test_impossible_plan_is_refused(changed: dict[str, object]) -> None:
 
 
 def test_each_site_says_where_its_range_comes_from() -> None:
-    """Each site has a source and how it is known; a range that was not read is derived from what was."""
+    """Each site has a source and how it is known; a range is derived from the figure that was read."""
     for site in in_vivo_sites().values():
         assert site.source
         assert site.known in {"read", "derived", "practice"}

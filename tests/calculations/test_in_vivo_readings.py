@@ -107,7 +107,7 @@ def test_dose_is_compared_with_what_was_published() -> None:
     """A chest at 80 % is lower than published, an ear at 110 % as published, for a sole there is no figure."""
     rows = both_days("chest", 160) + both_days("ear", 220) + both_days("sole", 190) + both_days("knee", 200)
     result = evaluated(rows)
-    words = ("lower than published", "as published", "low expected, no figure", "nothing published")
+    words = ("lower than published", "as published", "no range published", "nothing published")
     assert words == result.sites.column("against_published")
     assert "No expected dose is known for: knee." in result.remarks
 
