@@ -63,8 +63,11 @@ def _arrangement(program: Program, parts: dict[str, str | int], place: Place) ->
         parts["degrader"],
         carrier,
     )
-    owners = {kind: str(parts[kind]) for kind in ("room", "machine", "beam", "degrader", "stand", "couch")
-              if kind in parts}  # fmt: skip
+    owners: dict[str, str] = {
+        kind: str(parts[kind])
+        for kind in ("room", "machine", "beam", "degrader", "stand", "couch")
+        if kind in parts
+    }
     owners["program"] = "program"
     plan = next((plan for plan in program.of_kind("plan") if _fits(plan, parts)), None)
     if plan is not None:
@@ -90,7 +93,7 @@ def _is_chosen(program: Program, parts: dict[str, str | int]) -> bool:
     if chosen is None or not hasattr(chosen, "records"):
         return False
     wanted = {key: value for key, value in next(chosen.records()).items() if value is not None}
-    own = {key: value for key, value in parts.items()}
+    own = dict(parts)
     if "beam" in wanted and "/" not in str(wanted["beam"]):
         own["beam"] = str(own["beam"]).rpartition("/")[2]
     return all(own.get(key) == value for key, value in wanted.items())

@@ -32,6 +32,7 @@ GIVEN: Mapping[str, Mapping[str, str]] = {
         "chosen": "The department has chosen it.",
     },
     "exposure": {"title": "Barrier and arrangement in words."},
+    "local_limit": {"governs": "It is at least as strict as the limit that ships with the tool."},
     "exception": {"answers_a_finding": "The rule would not be met without it."},
     "document": {
         "title": "Title.",

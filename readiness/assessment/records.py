@@ -1,6 +1,6 @@
 """What an assessment is made of; names are those of assessment.json."""
 
-from dataclasses import dataclass, field
+from dataclasses import dataclass
 from datetime import date
 from typing import Any, NamedTuple
 
@@ -194,7 +194,7 @@ class Gap:
 
 @dataclass(frozen=True)
 class ArrangementRow:
-    """One arrangement compared with the others; deciding: (rule, item, outcome, strength, message)."""
+    """One arrangement compared with the others, with the findings that decide its feasibility."""
 
     item: Ref
     title: str
@@ -203,6 +203,7 @@ class ArrangementRow:
     deciding: tuple[Finding, ...]
     counts: tuple[tuple[str, int], ...]
     chosen: bool
+    figures: tuple[tuple[str, Any, str], ...]  # value name, value, basis
     reasons: tuple[str, ...]
 
 
@@ -294,7 +295,6 @@ class Assessment:
     rules: tuple[Rule, ...]
     inputs: tuple[tuple[str, str, int], ...]
     remarks: tuple[str, ...] = ()
-    extra: tuple[Any, ...] = field(default=())
 
 
 def weakest(bases: list[str]) -> str:

@@ -1,0 +1,140 @@
+"""Which arrangements are possible, in words, and which one is recommended and why."""
+
+from collections.abc import Iterable, Mapping
+
+from readiness.assessment.graph import Graph
+from readiness.assessment.kinds import PARTS
+from readiness.assessment.records import FEASIBILITIES, ArrangementRow, Finding, Ref, Rule, Value
+
+# what is shown when arrangements are compared, where it is known
+FIGURES = (
+    "arrangement.farthest_plane_distance_cm",
+    "arrangement.plane_distance_cm",
+    "arrangement.ceiling_clearance_cm",
+    "arrangement.best_tilt_deg",
+    "arrangement.vertical_half_range_percent",
+    "arrangement.horizontal_half_range_percent",
+    "arrangement.r80_mm",
+)
+_OWN = {"arrangement", "exposure", *PARTS}
+
+
+def by_arrangement(findings: Iterable[Finding], graph: Graph) -> dict[Ref, tuple[Finding, ...]]:
+    """Return each arrangement with its own findings, in one pass over all of them."""
+    shared: dict[Ref, list[Finding]] = {}
+    for finding in findings:
+        if finding.item.kind == "exposure":
+            owner = Ref("arrangement", graph.owners(finding.item).get("arrangement", ""))
+            shared.setdefault(owner, []).append(finding)
+        elif finding.item.kind in _OWN:
+            shared.setdefault(finding.item, []).append(finding)
+    return {
+        arrangement: tuple(
+            finding
+            for kind, owner in graph.owners(arrangement).items()
+            if kind in _OWN
+            for finding in shared.get(Ref(kind, owner), ())
+        )
+        + tuple(finding for finding in shared.get(arrangement, ()) if finding.item.kind == "exposure")
+        for arrangement in graph.refs("arrangement")
+    }
+
+
+def feasibility(findings: Iterable[Finding], rules: Mapping[str, Rule]) -> tuple[str, tuple[Finding, ...]]:
+    """Return the feasibility of one arrangement from its own findings, and the findings that decide it."""
+    failed, unknown, open_musts = [], [], []
+    for finding in findings:
+        rule = rules[finding.rule]
+        if rule.physical and finding.outcome == "not met":
+            failed.append(finding)
+        elif rule.physical and finding.outcome == "not assessed":
+            unknown.append(finding)
+        elif rule.strength == "must" and finding.outcome in {"not met", "not assessed"}:
+            open_musts.append(finding)
+    if failed:
+        return "not feasible here", tuple(failed)
+    if unknown:
+        return "not enough described", tuple(unknown)
+    if open_musts:
+        worst = sorted(open_musts, key=lambda finding: finding.outcome != "not met")
+        return "feasible when gaps close", tuple(worst)
+    return "feasible", ()
+
+
+def compare(
+    findings: Iterable[Finding], rules: Mapping[str, Rule], graph: Graph
+) -> tuple[ArrangementRow, ...]:
+    """
+    Return all arrangements, the best first.
+
+    Order: feasibility; fewest must-rules not met; fewest should-rules not met; fewest must-rules not
+    assessed; the order in which the folder lists them. No score is formed.
+    """
+    rows = []
+    for place, (arrangement, own) in enumerate(by_arrangement(findings, graph).items()):
+        words, deciding = feasibility(own, rules)
+        counts = _counts(own, rules)
+        order = (
+            FEASIBILITIES.index(words), counts["must not met"], counts["should not met"],
+            counts["must not assessed"], place,
+        )  # fmt: skip
+        rows.append((order, _row(arrangement, words, deciding, counts, graph)))
+    return tuple(row for _, row in sorted(rows, key=lambda pair: pair[0]))
+
+
+def _counts(findings: Iterable[Finding], rules: Mapping[str, Rule]) -> dict[str, int]:
+    counts = dict.fromkeys(
+        ("must not met", "should not met", "must not assessed", "should not assessed", "expected not met"), 0
+    )
+    for finding in findings:
+        key = f"{rules[finding.rule].strength} {finding.outcome}"
+        if key in counts:
+            counts[key] += 1
+        if finding.expected == "not met" and rules[finding.rule].strength == "must":
+            counts["must not met"] += 1  # a failing prediction counts like a failure when comparing
+            counts["must not assessed"] -= 1
+            counts["expected not met"] += 1
+    return counts
+
+
+def _row(
+    arrangement: Ref, words: str, deciding: tuple[Finding, ...], counts: dict[str, int], graph: Graph
+) -> ArrangementRow:
+    item = graph.item(arrangement)
+    assert item is not None  # noqa: S101 - it came from the graph
+    parts = tuple((kind, str(value)) for kind in ("room", "machine", "beam", "side_deg", "technique",
+                  "degrader", "stand", "couch") if (value := item.get(kind)) is not None)  # fmt: skip
+    chosen = item.get("chosen") is True
+    figures = tuple(
+        (name, got.value, got.basis)
+        for name in FIGURES
+        if name in graph.catalogue.definitions and isinstance(got := graph.get(name, arrangement), Value)
+    )
+    return ArrangementRow(
+        arrangement,
+        str(item.get("title")),
+        parts,
+        words,
+        deciding,
+        tuple(counts.items()),
+        chosen,
+        figures,
+        (),
+    )
+
+
+def reasons(best: ArrangementRow, second: ArrangementRow | None) -> tuple[str, ...]:
+    """Return in sentences why the first of the compared arrangements stands before the second."""
+    if second is None:
+        return ("It is the only arrangement described.",)
+    mine, other = dict(best.counts), dict(second.counts)
+    if best.feasibility != second.feasibility:
+        return (f"It is {best.feasibility}; the next, {second.title}, is {second.feasibility}.",)
+    for key, words in (
+        ("must not met", "must-rules not met or expected not to be met"),
+        ("should not met", "should-rules not met"),
+        ("must not assessed", "must-rules not assessed"),
+    ):
+        if mine[key] != other[key]:
+            return (f"It has {mine[key]} {words}; the next, {second.title}, has {other[key]}.",)
+    return (f"It and the next, {second.title}, stand alike; the folder lists it first.",)

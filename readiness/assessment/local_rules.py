@@ -1,0 +1,222 @@
+"""
+The jurisdiction's and the department's own rules and limits.
+
+A stricter local limit replaces ours. A looser one leaves ours governing, with an open finding until an
+exception covers it. Whatever does not fit is a located problem in local_rules.yaml, never a crash.
+"""
+
+import difflib
+from collections.abc import Iterable
+from dataclasses import dataclass
+from typing import Any
+
+from readiness.assessment.catalogue import Catalogue
+from readiness.assessment.conditions import CONDITIONS
+from readiness.assessment.records import Clause, Ref, Rule, RuleSource, Value
+from readiness.assessment.ruleset import check_rule, is_value_name, with_limit
+from readiness.assessment.schedule import shipped_tasks
+from readiness.errors import CatalogueError, Place, Problem, ProgramProblems
+from readiness.program.items import Item, Program
+from readiness.units import unit_of
+
+
+@dataclass(frozen=True)
+class LocalRules:
+    """The rules as they hold here, criteria replaced by local ones, and which local limits govern."""
+
+    rules: tuple[Rule, ...]
+    limits: dict[str, Value]
+    governs: dict[Ref, bool]
+
+
+def with_local(rules: tuple[Rule, ...], program: Program, known: Catalogue) -> LocalRules:
+    """Return shipped and local rules together; raise ProgramProblems with everything that does not fit."""
+    problems: list[Problem] = []
+    by_id = {rule.id: rule for rule in rules}
+    limits: dict[str, Value] = {}
+    governs: dict[Ref, bool] = {}
+    for item in program.of_kind("local_limit"):
+        _take_limit(item, by_id, limits, governs, known, problems)
+    shipped = set(by_id)
+    for item in program.of_kind("local_rule"):
+        rule = _local_rule(item, known, shipped, problems)
+        if rule is not None:
+            by_id[rule.id] = rule
+    if problems:
+        raise ProgramProblems(problems)
+    return LocalRules(tuple(by_id.values()), limits, governs)
+
+
+def _near(name: str, names: Iterable[str]) -> str:
+    close = difflib.get_close_matches(name, list(names), n=1, cutoff=0.5)
+    return f"; did you mean {close[0]}?" if close else ""
+
+
+def _place(item: Item, field: str) -> Place:
+    stated = item.fields.get(field)
+    return stated.place if stated else item.place
+
+
+def _take_limit(
+    item: Item, by_id: dict[str, Rule], limits: dict[str, Value], governs: dict[Ref, bool],
+    known: Catalogue, problems: list[Problem],
+) -> None:  # fmt: skip
+    rule_id, criterion = item.get("rule"), item.get("criterion")
+    if (rule_id is None) == (criterion is None):
+        words = "a local limit names either a rule or a criterion whose limit it replaces"
+        problems.append(Problem(item.place, words, "local limit"))
+    elif criterion is not None:
+        _take_criterion(item, str(criterion), limits, governs, known, problems)
+    else:
+        _take_rule_limit(item, str(rule_id), by_id, governs, known, problems)
+
+
+def _take_criterion(
+    item: Item, criterion: str, limits: dict[str, Value], governs: dict[Ref, bool], known: Catalogue,
+    problems: list[Problem],
+) -> None:  # fmt: skip
+    name = criterion if criterion.startswith("criterion.") else f"criterion.{criterion}"
+    ours = known.criteria.get(name)
+    if ours is None:
+        hint = _near(name, known.criteria)
+        problems.append(
+            Problem(_place(item, "criterion"), f"there is no criterion {criterion}{hint}", "local limit")
+        )
+        return
+    if not _unit_agrees(item, unit_of(name), problems):
+        return
+    limit = float(item.get("limit"))  # type: ignore[arg-type]
+    stricter = not ours.stricter or _at_least_as_strict(limit, float(ours.value), ours.stricter)
+    governs[Ref("local_limit", item.id)] = stricter
+    if stricter:
+        limits[name] = Value(
+            name, Ref("criterion", "criterion"), limit, unit_of(name), "stated", where=_place(item, "limit"),
+            source=str(item.get("source")), known="local",
+        )  # fmt: skip
+
+
+def _take_rule_limit(
+    item: Item, rule_id: str, by_id: dict[str, Rule], governs: dict[Ref, bool], known: Catalogue,
+    problems: list[Problem],
+) -> None:  # fmt: skip
+    rule = by_id.get(rule_id)
+    if rule is None:
+        words = f"there is no rule {rule_id}{_near(rule_id, by_id)}"
+        problems.append(Problem(_place(item, "rule"), words, "local limit"))
+        return
+    direction = CONDITIONS[rule.condition].stricter
+    if not direction:
+        words = f"rule {rule_id} has no limit that could be stricter (it asks: {CONDITIONS[rule.condition].words})"
+        problems.append(Problem(_place(item, "rule"), words, "local limit"))
+        return
+    if not _unit_agrees(item, unit_of(rule.subject), problems):
+        return
+    limit = float(item.get("limit"))  # type: ignore[arg-type]
+    ours = rule.limit
+    if is_value_name(ours, known):
+        criterion = known.criteria.get(str(ours))
+        ours = criterion.value if criterion else None
+    strict = ours is None or _at_least_as_strict(limit, float(ours), direction)
+    governs[Ref("local_limit", item.id)] = strict
+    if strict:
+        source = RuleSource(str(item.get("source")), "as cited by the department", "local")
+        by_id[rule_id] = with_limit(rule, limit, str(item.get("strength") or rule.strength), source)
+
+
+def _at_least_as_strict(theirs: float, ours: float, direction: str) -> bool:
+    return theirs >= ours if direction == "higher" else theirs <= ours
+
+
+def _unit_agrees(item: Item, unit: str, problems: list[Problem]) -> bool:
+    stated = str(item.get("unit"))
+    plain = stated.replace("u", "µ").replace(" ", "").lower()
+    if plain in {unit.replace(" ", "").lower(), unit.replace(" ", "").lower().replace("u", "µ")}:
+        return True
+    words = f'the limit is given in "{stated}", but what it limits is in "{unit}"; convert it to {unit}'
+    problems.append(Problem(_place(item, "unit"), words, "local limit"))
+    return False
+
+
+def _local_rule(item: Item, known: Catalogue, taken: set[str], problems: list[Problem]) -> Rule | None:
+    before = len(problems)
+    if item.id in taken:
+        words = f"a rule {item.id} ships with the tool; give the local rule another id, or a local limit"
+        problems.append(Problem(item.place, words, "local rule"))
+    _check_names(item, known, problems)
+    task = str(item.get("task") or "follow-local-rule")
+    if len(problems) > before:
+        return None
+    rule = Rule(
+        id=item.id,
+        title=str(item.get("title")),
+        strength=str(item.get("strength")),
+        sources=(RuleSource(str(item.get("source")), "as cited by the department", "local"),),
+        applies_when=_clauses(item),
+        subject=str(item.get("subject")),
+        condition=str(item.get("condition")),
+        limit=item.get("limit") if item.get("limit") is not None else item.get("limits"),
+        basis=str(item.get("basis") or "any"),
+        physical=False,
+        exceptable=True,
+        message=str(item.get("message") or "Found: {observed}. Asked: {limit}."),
+        remedy=str(item.get("remedy") or "Bring it into line with the local rule."),
+        owner=str(item.get("owner") or "medical physicist"),
+        task=task if task in shipped_tasks() else "describe-program",
+        phase=str(item.get("phase") or "decide"),
+        evidence=(),
+        documents=(),
+        topic="Local rules",
+        origin="local rule",
+        where=item.place,
+    )
+    try:
+        check_rule(rule, known, "this local rule")
+    except CatalogueError as error:
+        problems.append(Problem(item.place, str(error), "local rule"))
+        return None
+    return rule
+
+
+def _check_names(item: Item, known: Catalogue, problems: list[Problem]) -> None:
+    subject = str(item.get("subject"))
+    if not known.has(subject) or (subject in known.definitions and known.definitions[subject].internal):
+        words = f"there is no value {subject}{_near(subject, known.names())}"
+        problems.append(Problem(_place(item, "subject"), words, "local rule"))
+    for clause in _clauses(item):
+        if not known.has(clause.subject):
+            words = f"there is no value {clause.subject}{_near(clause.subject, known.names())}"
+            problems.append(Problem(_place(item, "applies_when"), words, "local rule"))
+    for name in _never(_clauses(item)):
+        words = f"its conditions on {name} can never hold together"
+        problems.append(Problem(_place(item, "applies_when"), words, "local rule"))
+
+
+def _clauses(item: Item) -> tuple[Clause, ...]:
+    table: Any = item.get("applies_when")
+    if table is None:
+        return ()
+    return tuple(
+        Clause(
+            str(row["subject"]), str(row["condition"]),
+            row.get("limit") if row.get("limit") is not None else row.get("limits"),
+        )
+        for row in table.records()
+    )  # fmt: skip
+
+
+def _never(clauses: tuple[Clause, ...]) -> list[str]:
+    """Return the values whose clauses contradict each other: a floor above a ceiling, two equals."""
+    found = []
+    for name in dict.fromkeys(clause.subject for clause in clauses):
+        own = [clause for clause in clauses if clause.subject == name]
+        floors = [c.limit for c in own if c.condition in {"at_least", "above"} and _is_number(c.limit)]
+        ceilings = [c.limit for c in own if c.condition in {"at_most", "below"} and _is_number(c.limit)]
+        equals = {str(c.limit) for c in own if c.condition == "equals"}
+        answers = {c.condition for c in own if c.condition in {"is_yes", "is_no"}}
+        if (floors and ceilings and max(floors) > min(ceilings)) or len(equals) > 1 or len(answers) > 1:
+            found.append(name)
+    return found
+
+
+def _is_number(limit: Any) -> bool:
+    return isinstance(limit, (int, float)) and not isinstance(limit, bool)

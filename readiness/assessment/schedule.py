@@ -1,0 +1,125 @@
+"""
+The road to the first patient: open gaps as tasks in a network, on working days.
+
+Beside values/ this is the other place that calls calculations: a schedule needs findings, which values
+cannot know.
+"""
+
+from collections.abc import Mapping
+from dataclasses import replace
+from datetime import date
+from functools import cache
+
+from readiness.assessment.records import Gap, Ref, Schedule, ScheduledTask
+from readiness.calculations.first_patient import road_to_first_patient, what_moves_first_patient
+from readiness.calculations.network_changes import reduced_network
+from readiness.calculations.task_library import OwnTask, library_tasks, with_own_tasks
+from readiness.calculations.task_network import Task
+from readiness.calculations.task_progress import Progress
+from readiness.calculations.working_days import WorkingDays, working_days
+from readiness.program.items import Program
+
+_WEEKDAYS = ("monday", "tuesday", "wednesday", "thursday", "friday")
+
+
+@cache
+def shipped_tasks() -> Mapping[str, Task]:
+    """Return the tasks that ship with the tool, by id."""
+    return {task.id: task for task in library_tasks()}
+
+
+def program_tasks(program: Program) -> tuple[Task, ...]:
+    """Return the shipped tasks with the department's own lead times and additions."""
+    own = tuple(
+        OwnTask(
+            id=item.id,
+            working_days=None if item.get("working_days") is None else round(float(item.get("working_days"))),  # type: ignore[arg-type]
+            waits_for=item.get("waits_for"),  # type: ignore[arg-type]
+            title=item.get("title"),  # type: ignore[arg-type]
+            owner=item.get("owner"),  # type: ignore[arg-type]
+            phase=item.get("phase"),  # type: ignore[arg-type]
+        )
+        for item in program.of_kind("task")
+    )
+    return with_own_tasks(tasks=library_tasks(), own=own)
+
+
+def plan_road(program: Program, gaps: tuple[Gap, ...], as_of: date) -> tuple[Schedule, tuple[Gap, ...]]:
+    """
+    Return the schedule of everything that open gaps need, and the gaps with what they wait for.
+
+    Lead times are the department's where it states them, else common practice. The road holds the tasks of
+    open gaps, the department's own tasks and the release; what is left out hands on what it waited for.
+    """
+    tasks = program_tasks(program)
+    own = {item.id for item in program.of_kind("task")}
+    own_times = {item.id for item in program.of_kind("task") if item.get("working_days") is not None}
+    wanted = {gap.task for gap in gaps} | own | {"release-program"}
+    tasks = reduced_network(tasks=tasks, keep={task.id for task in tasks if task.id in wanted})
+    progress = tuple(
+        Progress(str(item.get("task")), item.get("started_on"), item.get("finished_on"))  # type: ignore[arg-type]
+        for item in program.of_kind("progress")
+    )
+    progress = tuple(entry for entry in progress if entry.task in {task.id for task in tasks})
+    root = program.find("program", "program")
+    target = root.get("target_first_patient_date") if root else None
+    target = target if isinstance(target, date) else None
+    calendar = working_calendar(program)
+    road = road_to_first_patient(
+        tasks=tasks, progress=progress, calendar=calendar, as_of=as_of, target=target
+    )
+    moves = what_moves_first_patient(
+        tasks=tasks, progress=progress, calendar=calendar, as_of=as_of, shortened_by_working_days=5
+    )
+    gaps_of: dict[str, list[str]] = {}
+    for gap in gaps:
+        gaps_of.setdefault(gap.task, []).append(gap.id)
+    scheduled = tuple(
+        ScheduledTask(
+            id=each.task.id, title=each.task.title, owner=each.task.owner, phase=each.task.phase,
+            working_days=each.task.working_days, waits_for=each.task.waits_for,
+            gaps=tuple(gaps_of.get(each.task.id, ())), start=each.start or each.finish, finish=each.finish,
+            latest_finish=each.latest_finish or each.finish, float_days=float(each.float_working_days or 0),
+            critical=each.critical, done=each.state == "finished",
+            lead_time="department's own" if each.task.id in own_times else "default, common practice",
+        )
+        for each in road.tasks
+    )  # fmt: skip
+    movers = tuple(
+        (str(row["task"]), float(row["gain_if_no_time_working_days"]))  # type: ignore[arg-type]
+        for row in moves.records()
+        if row["gain_if_no_time_working_days"]
+    )[:5]
+    schedule = Schedule(
+        scheduled, road.first_patient, target, road.late_working_days, movers, _remarks(road.out_of_order)
+    )
+    return schedule, tuple(_dated(gap, scheduled) for gap in gaps)
+
+
+def working_calendar(program: Program) -> WorkingDays:
+    """Return the department's working days."""
+    root = program.find("program", "program")
+    closed = root.get("closed_dates") if root else None
+    country = root.get("holidays_country") if root else None
+    return working_days(
+        weekdays=_WEEKDAYS,
+        closed_dates=closed if isinstance(closed, tuple) else (),  # type: ignore[arg-type]
+        country=str(country or ""),
+    )
+
+
+def _remarks(out_of_order: tuple[str, ...]) -> tuple[str, ...]:
+    remarks = [
+        "The date is the earliest that the order of tasks allows; people's hours are not shared out among tasks.",
+        "A default lead time is common practice, not the department's; state your own under tasks in program.yaml.",
+    ]
+    if out_of_order:
+        remarks.append(f"Finished before what they wait for: {', '.join(out_of_order)}.")
+    return tuple(remarks)
+
+
+def _dated(gap: Gap, scheduled: tuple[ScheduledTask, ...]) -> Gap:
+    task = next((each for each in scheduled if each.id == gap.task), None)
+    if task is None:
+        return gap
+    return replace(gap, waits_for=task.waits_for, earliest=task.finish)
