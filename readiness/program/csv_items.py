@@ -104,7 +104,8 @@ def _read_columns(
             places.update({(name, row): entry.place for row, entry in enumerate(entries)})
             found[name] = _read_column(entries, field, reader, sink)
         elif field.required:
-            sink.add(csv.place, f"column {name} is missing: {meaning_of(field)}", "missing")
+            place = csv.columns[0].place if csv.columns else csv.place
+            sink.add(place, f"column {name} is missing: {meaning_of(field)}", "missing")
     sink.problems.extend(check_columns(found, fields, places))
     return found
 

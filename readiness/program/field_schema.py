@@ -2,6 +2,7 @@
 
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field
+from functools import cached_property
 
 from readiness.units import unit_ending, unit_of, words_of
 
@@ -70,17 +71,17 @@ class FieldSchema:
         """Return the name of the value that the field gives: kind.field."""
         return f"{self.kind}.{self.name}"
 
-    @property
+    @cached_property
     def unit(self) -> str:
         """Return the unit ending of the name ("cm"), or "" where there is none."""
         return unit_ending(self.name)
 
-    @property
+    @cached_property
     def printed_unit(self) -> str:
         """Return the unit as printed ("°"), or ""."""
         return unit_of(self.name)
 
-    @property
+    @cached_property
     def in_words(self) -> str:
         """Return the name in the user's words, without its unit."""
         return words_of(self.name)

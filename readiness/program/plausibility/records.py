@@ -24,7 +24,7 @@ _IN_USUAL_ORDER = (
     ("periodic_test", "baseline_on", "last_done_on"),
 )
 _SAID = {
-    "dated_on": "it is dated",
+    "dated_on": "it was written",
     "approved_on": "it was approved",
     "expires_on": "it expires",
     "next_review_on": "it is reviewed next",
