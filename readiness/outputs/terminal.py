@@ -1,0 +1,142 @@
+"""The summary that a chief reads in a minute."""
+
+import textwrap
+
+from readiness.assessment.records import ArrangementRow, Assessment, Gap
+from readiness.outputs.contract import CAUTION, INVENTED
+from readiness.outputs.words import VERDICT_SENTENCES, blocking, date_words, value_title, with_unit
+
+_MOST = 12
+
+
+def summary(assessment: Assessment, width: int = 100) -> str:
+    """Return verdict, arrangements compared, what blocks with owner and date, and what to do first."""
+    parts = [_head(assessment, width), _arrangements(assessment, width), _blocking(assessment, width),
+             _first_steps(assessment, width), _exceptions(assessment, width), _road(assessment, width),
+             _wrapped(CAUTION, width)]  # fmt: skip
+    return "\n\n".join(part for part in parts if part) + "\n"
+
+
+def _wrapped(text: str, width: int, indent: str = "", first: str = "") -> str:
+    return textwrap.fill(text, width, initial_indent=first or indent, subsequent_indent=indent)
+
+
+def _head(assessment: Assessment, width: int) -> str:
+    lines = [f"{assessment.program}, as of {assessment.as_of.isoformat()}, phase {assessment.phase}"]
+    if assessment.invented:
+        lines.append(_wrapped(INVENTED, width))
+    lines += ["", _wrapped(f"VERDICT: {VERDICT_SENTENCES[assessment.verdict.words]}", width)]
+    if assessment.verdict.arrangement:
+        who = "chosen by the department" if assessment.verdict.chosen_by == "department" else "recommended"
+        lines.append(_wrapped(f"Arrangement ({who}): {assessment.verdict.arrangement}", width))
+    lines += [_wrapped(reason, width, "  ", "- ") for reason in assessment.verdict.reasons]
+    return "\n".join(lines)
+
+
+def _arrangements(assessment: Assessment, width: int) -> str:
+    if not assessment.arrangements:
+        return ""
+    lines = ["ARRANGEMENTS COMPARED"]
+    rows = assessment.arrangements
+    shown = [row for row in rows if row.feasibility != "not feasible here"][:6]
+    shown += [row for row in rows if row not in shown and row.chosen]
+    for row in shown:
+        lines += _arrangement(row, width)
+    failed: dict[str, list[ArrangementRow]] = {}
+    for row in rows:
+        if row.feasibility == "not feasible here" and not row.chosen:
+            failed.setdefault(dict(row.parts)["room"], []).append(row)
+    for room, group in failed.items():
+        said = "; ".join(dict.fromkeys(finding.message for row in group for finding in row.deciding[:1]))
+        lines.append(
+            _wrapped(f"{room}: {len(group)} arrangements not feasible here. {said}", width, "    ", "  ")
+        )
+    left = len(rows) - len(shown) - sum(len(group) for group in failed.values())
+    if left > 0:
+        lines.append(f"  and {left} more that are possible (assessment.json lists them all)")
+    return "\n".join(lines)
+
+
+def _arrangement(row: ArrangementRow, width: int) -> list[str]:
+    mark = "*" if row.chosen else " "
+    figures = "; ".join(
+        f"{value_title(name).lower()} {with_unit(name, value)} ({basis})"
+        for name, value, basis in row.figures[:4]
+    )
+    lines = [_wrapped(f"{row.title}: {row.feasibility}", width, "    ", f"{mark} ")]
+    if figures:
+        lines.append(_wrapped(figures, width, "    "))
+    return lines + [_wrapped(reason, width, "    ") for reason in row.reasons]
+
+
+def _gap_line(gap: Gap, width: int) -> str:
+    when = f"; earliest {date_words(gap.earliest)}" if gap.earliest else ""
+    return _wrapped(f"{gap.what} [{gap.owner}{when}]", width, "    ", "  - ")
+
+
+def _blocking(assessment: Assessment, width: int) -> str:
+    gaps = blocking(assessment)
+    later = sum(gap.strength == "must" and gap.due_later for gap in assessment.gaps)
+    others = len(assessment.gaps) - len(gaps) - later
+    if not assessment.gaps:
+        return "No open gaps."
+    lines = [f"WHAT BLOCKS NOW ({len(gaps)} must-gaps due in this phase; {later} due later; {others} others)"]
+    lines += [_gap_line(gap, width) for gap in gaps[:_MOST]]
+    if len(gaps) > _MOST:
+        lines.append(f"  and {len(gaps) - _MOST} more in the gap list")
+    return "\n".join(lines)
+
+
+def _first_steps(assessment: Assessment, width: int) -> str:
+    schedule = assessment.schedule
+    if schedule is None:
+        return ""
+    done = {task.id for task in schedule.tasks if task.done}
+    ready = [task for task in schedule.tasks if not task.done and set(task.waits_for) <= done]
+    ready.sort(key=lambda task: (task.float_days, task.id))
+    if not ready:
+        return ""
+    lines = ["WHAT TO DO FIRST (nothing else has to be finished before these)"]
+    for task in ready[:6]:
+        slack = "on the critical path" if task.critical else f"{task.float_days:g} working days of float"
+        lines.append(
+            _wrapped(
+                f"{task.title} [{task.owner}; until {task.finish.isoformat()}; {slack}]",
+                width,
+                "    ",
+                "  - ",
+            )
+        )
+    return "\n".join(lines)
+
+
+def _exceptions(assessment: Assessment, width: int) -> str:
+    excepted = [finding for finding in assessment.findings if finding.outcome == "excepted"]
+    if not excepted:
+        return ""
+    lines = ["EXCEPTIONS IN FORCE"]
+    lines += [_wrapped(f"{f.rule}, {f.item} (exception {f.exception}): {f.message}", width, "    ", "  - ")
+              for f in excepted]  # fmt: skip
+    return "\n".join(lines)
+
+
+def _road(assessment: Assessment, width: int) -> str:
+    schedule = assessment.schedule
+    if (
+        schedule is None
+        or schedule.first_patient is None
+        or assessment.verdict.words == "no feasible arrangement"
+    ):
+        return ""
+    text = f"FIRST PATIENT not before {schedule.first_patient.isoformat()}"
+    if schedule.target:
+        late = schedule.working_days_late or 0
+        text += f"; wanted {schedule.target.isoformat()}"
+        text += f", {late} working days too late" if late > 0 else ", which the plan keeps"
+    lines = [text]
+    titles = {task.id: task.title for task in schedule.tasks}
+    for task, gain in schedule.movers[:3]:
+        lines.append(_wrapped(f"{titles.get(task, task)}: its time moves the date by up to {gain:g} working days",
+                              width, "    ", "  - "))  # fmt: skip
+    lines += [_wrapped(remark, width, "  ") for remark in schedule.remarks]
+    return "\n".join(lines)

@@ -1,0 +1,71 @@
+"""How an assessment's pieces read on every output: one wording for terminal, page, workbook and binder."""
+
+from datetime import date
+from typing import Any
+
+from readiness.assessment.records import ArrangementRow, Assessment, Finding, Gap, Ref, Rule
+from readiness.assessment.wording import in_words
+from readiness.sources import HOW_KNOWN
+from readiness.units import unit_of, words_of
+
+VERDICT_SENTENCES = {
+    "ready": "Ready: every must-rule is met or excepted and the program has been released.",
+    "ready when gaps close": "Ready when gaps close: an arrangement is possible; what is missing is listed.",
+    "no feasible arrangement": "No feasible arrangement: every described arrangement fails physically.",
+    "not enough described": "Not enough described: the folder does not yet say enough to judge.",
+}
+
+
+def with_unit(name: str, value: Any) -> str:
+    """Return a value with the unit of its name."""
+    unit = unit_of(name)
+    text = in_words(value)
+    return (
+        f"{text} {unit}".strip() if isinstance(value, (int, float)) and not isinstance(value, bool) else text
+    )
+
+
+def value_title(name: str) -> str:
+    """Return the name of a value as a heading."""
+    return words_of(name).capitalize()
+
+
+def known_words(rule: Rule) -> str:
+    """Return where a rule comes from and how we know, in one line."""
+    return "; ".join(
+        f"{each.key}, {each.at} ({each.known})" if each.key != "practice" else "common practice"
+        for each in rule.sources
+    )
+
+
+def how_known(known: str) -> str:
+    """Return what a word for knowledge means."""
+    return HOW_KNOWN.get(known, known)
+
+
+def item_words(item: Ref) -> str:
+    """Return an item for people; the program itself is not named."""
+    if item.id in {"all", "none"}:
+        return item.kind.replace("_", " ")
+    return str(item)
+
+
+def chosen_row(assessment: Assessment) -> ArrangementRow | None:
+    """Return the row of the chosen or recommended arrangement."""
+    wanted = assessment.verdict.arrangement
+    return next((row for row in assessment.arrangements if row.item.id == wanted), None)
+
+
+def blocking(assessment: Assessment) -> tuple[Gap, ...]:
+    """Return the must-gaps that are due in the phase where the program stands."""
+    return tuple(gap for gap in assessment.gaps if gap.strength == "must" and not gap.due_later)
+
+
+def date_words(day: date | None) -> str:
+    """Return a date, or a dash where there is none."""
+    return day.isoformat() if day else "-"
+
+
+def outcome_words(finding: Finding) -> str:
+    """Return an outcome with what to expect beside it."""
+    return f"{finding.outcome} (expected: {finding.expected})" if finding.expected else finding.outcome
