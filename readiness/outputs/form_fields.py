@@ -1,0 +1,117 @@
+"""Fields that people fill in, on paper or in the PDF; every field of a binder has its own name."""
+
+import re
+from collections.abc import Sequence
+
+from markupsafe import Markup
+
+from readiness.errors import CatalogueError
+from readiness.outputs.holes import Holes, plain
+
+
+SIGNED = ("Role", "Name", "Date, time", "Signature")
+
+
+class FormFields:
+    """
+    The fillable fields of one document.
+
+    A label may end with a unit after a bar: "Height|cm". Names are made from the document's number and
+    the label, so that they are the same every time and unique in the binder.
+    """
+
+    def __init__(self, number: str, holes: Holes) -> None:
+        """Take the document's number."""
+        self._prefix = "f" + number.replace(".", "-")
+        self._holes = holes
+        self.names: dict[str, None] = {}
+
+    def lines(self, *labels: str) -> Markup:
+        """Return labelled fields, two in a row."""
+        return self._fields("half", labels)
+
+    def line(self, *labels: str) -> Markup:
+        """Return labelled fields over the full width."""
+        return self._fields("full", labels)
+
+    def ticks(self, *labels: str) -> Markup:
+        """Return boxes to tick, one a line."""
+        return self._block("".join(f'<p class="tick">{self._box(each)} {plain(each)}</p>' for each in labels))
+
+    def area(self, label: str, lines: int = 4) -> Markup:
+        """Return a labelled field of several lines."""
+        name = self._name(label)
+        return self._block(
+            f'<div class="area"><p class="label">{plain(label)}</p><textarea name="{name}" '
+            f'title="{plain(label)}" aria-label="{plain(label)}" class="rows-{lines}"></textarea></div>'
+        )
+
+    def sheet(self, columns: Sequence[str], rows: int | Sequence[str], ticked: Sequence[str] = ()) -> Markup:
+        """
+        Return a table to fill in.
+
+        Args:
+            columns: Headings; a heading may end with a unit after a bar. With named rows the first heading
+                stands over their names.
+            rows: How many blank rows, or the names of the rows.
+            ticked: Headings whose cells are boxes to tick.
+        """
+        heads = "".join(f'<th scope="col">{_with_unit(each)}</th>' for each in columns)
+        named = () if isinstance(rows, int) else tuple(rows)
+        names = named or tuple(str(count + 1) for count in range(int(str(rows)) if not named else 0))
+        body = "".join(self._row(name, columns, bool(named), ticked) for name in names)
+        css = "sheet" if named else "sheet blank-rows"
+        return self._block(
+            f'<table class="{css}"><thead><tr>{heads}</tr></thead><tbody>{body}</tbody></table>'
+        )
+
+    def signatures(self, *roles: str) -> Markup:
+        """Return a table for names, dates and signatures of roles."""
+        rows = "".join(
+            f'<tr><th scope="row">{plain(role)}</th><td>{self._input(f"{role}, name")}</td>'
+            f'<td>{self._input(f"{role}, date")}</td><td class="by-hand"></td></tr>'
+            for role in roles
+        )
+        heads = "".join(f'<th scope="col">{each}</th>' for each in SIGNED)
+        return self._block(
+            f'<table class="sheet signatures"><thead><tr>{heads}</tr></thead><tbody>{rows}</tbody></table>'
+        )
+
+    def _row(self, name: str, columns: Sequence[str], named: bool, ticked: Sequence[str]) -> str:
+        first = f'<th scope="row">{_with_unit(name)}</th>' if named else ""
+        cells = "".join(
+            f"<td>{self._box(f'{name}, {each}') if each in ticked else self._input(f'{name}, {each}')}</td>"
+            for each in (columns[1:] if named else columns)
+        )
+        return f"<tr>{first}{cells}</tr>"
+
+    def _fields(self, width: str, labels: Sequence[str]) -> Markup:
+        each = "".join(
+            f'<div class="field {width}"><span class="label">{_with_unit(label)}</span>{self._input(label)}</div>'
+            for label in labels
+        )
+        return self._block(f'<div class="fields">{each}</div>')
+
+    def _input(self, label: str) -> str:
+        words = plain(label.replace("|", ", "))
+        return f'<input type="text" name="{self._name(label)}" title="{words}" aria-label="{words}">'
+
+    def _box(self, label: str) -> str:
+        words = plain(label)
+        return f'<input type="checkbox" name="{self._name(label)}" title="{words}" aria-label="{words}">'
+
+    def _name(self, label: str) -> str:
+        key = re.sub(r"[^a-z0-9]+", "-", label.lower()).strip("-")
+        name = f"{self._prefix}-{key}"
+        if name in self.names:
+            raise CatalogueError(f"two fields of one form are called {name}")
+        self.names[name] = None
+        return name
+
+    def _block(self, html: str) -> Markup:
+        return Markup(self._holes.put(html, block=True))  # noqa: S704 - a hole is two characters and a number
+
+
+def _with_unit(label: str) -> str:
+    words, _, unit = label.partition("|")
+    return f'{plain(words)} <span class="unit">[{plain(unit)}]</span>' if unit else plain(words)

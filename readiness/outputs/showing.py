@@ -1,0 +1,158 @@
+"""What templates may ask for: values, tables, lists, pictures and sources; nothing is worked out here."""
+
+from collections.abc import Mapping, Sequence
+
+from markupsafe import Markup
+
+from readiness.assessment.records import Ref, Value
+from readiness.assessment.wording import in_words
+from readiness.errors import CatalogueError
+from readiness.outputs.critical import CRITICAL, open_rules
+from readiness.outputs.holes import Holes, plain
+from readiness.outputs.lookup import Lookup, Missing
+from readiness.quantities import Table
+from readiness.sources import HOW_KNOWN, publications
+from readiness.units import unit_of, words_of
+
+BLANK = "________"
+
+
+def with_unit(text: str, unit: str) -> str:
+    """Return a number with its unit, which never stands on the next line."""
+    if not unit:
+        return text
+    return text + unit if unit == "°" else f"{text}\u00a0{unit}"
+
+
+class Showing:
+    """Answers the questions of one document's template and remembers what it showed and what was missing."""
+
+    def __init__(self, lookup: Lookup, pictures: Mapping[str, str], holes: Holes) -> None:
+        """Take where values, pictures and holes are kept."""
+        self._lookup = lookup
+        self._pictures = pictures
+        self._holes = holes
+        self.shown: dict[str, None] = {}
+        self.missing: dict[str, str] = {}
+
+    def show(self, name: str) -> Markup:
+        """Return a value with its unit and basis, or a blank line with what to supply."""
+        if name in CRITICAL:
+            raise CatalogueError(f"{name} is a critical number: a document asks for it with critical()")
+        return self._hole(self._one(name, self._lookup.get(name)))
+
+    def critical(self, name: str) -> Markup:
+        """Return a critical number if it is measured and its rules are met, else a blank with the rule."""
+        return self._hole(self._critical(name, None))
+
+    def table(self, name: str) -> Markup:
+        """Return a value that holds a table."""
+        found = self._lookup.get(name)
+        if isinstance(found, Missing):
+            return self._block(f"<p>{self._blank(found)}</p>")
+        if not isinstance(found.value, Table):
+            raise CatalogueError(f"{name} holds no table")
+        self.shown[name] = None
+        heads = [_column_words(column) for column in found.value.columns]
+        rows = [[plain(_cell(entry)) for entry in row] for row in found.value.rows]
+        return self._block(html_table(heads, rows) + f'<p class="basis-line">{plain(found.basis)}</p>')
+
+    def listing(self, kind: str, fields: str) -> Markup:
+        """Return a table with one row for each item of a kind, some of its fields as columns."""
+        names = [f"{kind}.{field}" for field in fields.split()]
+        items = self._lookup.items(kind)
+        if not items:
+            words = f"No {words_of(kind)} is described in the program folder."
+            self.missing.setdefault(kind, words)
+            return self._block(f'<p class="need">{plain(words)}</p>')
+        heads = [words_of(kind).capitalize(), *(_column_words(name) for name in names)]
+        rows = [
+            [f"<b>{plain(item.id)}</b>", *(self._one_in_list(name, item) for name in names)] for item in items
+        ]
+        return self._block(html_table(heads, rows))
+
+    def picture(self, name: str) -> Markup:
+        """Return a drawing, or the sentence that there is none yet."""
+        svg = self._pictures.get(name)
+        if svg is None:
+            words = f"Drawing of the {name.replace('-', ' ')}: none yet; what it shows is not described."
+            return self._block(f'<p class="need">{plain(words)}</p>')
+        return self._block(f'<figure class="picture">{svg}</figure>')
+
+    def source(self, key: str, at: str, known: str) -> Markup:
+        """Return a publication with the place in it and how it is known."""
+        if known not in HOW_KNOWN or key not in publications():
+            raise CatalogueError(f"source {key} ({known}) does not exist")
+        words = f'{publications()[key].citation}; {at} <span class="known">[{known}]</span>'
+        return self._hole(f'<a href="binder:source-{plain(key)}">{plain(key)}</a>: {words}')
+
+    def _one(self, name: str, found: Value | Missing) -> str:
+        if isinstance(found, Missing):
+            return self._blank(found)
+        if isinstance(found.value, Table):
+            raise CatalogueError(f"{name} holds a table: a document asks for it with table()")
+        self.shown[name] = None
+        return f'{_value_words(found)}<span class="basis">{plain(found.basis)}</span>'
+
+    def _one_in_list(self, name: str, item: Ref) -> str:
+        if name in CRITICAL:
+            return self._critical(name, item)
+        found = self._lookup.get(name, item)
+        if isinstance(found, Missing):
+            return f'<span class="blank">{with_unit("____", found.unit)}</span>'
+        self.shown[name] = None
+        return plain(in_words(found.value))
+
+    def _critical(self, name: str, item: Ref | None) -> str:
+        found = self._lookup.get(name, item)
+        rules = open_rules(name, self._lookup, item)
+        if isinstance(found, Value) and not rules:
+            self.shown[name] = None
+            return f'{_value_words(found)}<span class="basis">as built</span>'
+        rules = rules or CRITICAL[name][:1]
+        links = ", ".join(f'<a href="binder:rule-{rule}">{rule}</a>' for rule in rules)
+        where = f" of {item}" if item is not None else ""
+        words = f"{words_of(name)}{where}: rule {', '.join(rules)} is not met"
+        self.missing.setdefault(f"{name}{where}", words)
+        return (
+            f'<span class="blank">{with_unit(BLANK, unit_of(name))}</span>'
+            f'<span class="need"> (until rule {links} is met)</span>'
+        )
+
+    def _blank(self, found: Missing) -> str:
+        self.missing.setdefault(found.name, found.words)
+        words = words_of(found.name)
+        return (
+            f'<span class="blank">{plain(with_unit(BLANK, found.unit))}</span>'
+            f'<span class="need"> (to supply: {plain(words)})</span>'
+        )
+
+    def _hole(self, html: str) -> Markup:
+        return Markup(self._holes.put(html))  # noqa: S704 - the hole is two characters and a number
+
+    def _block(self, html: str) -> Markup:
+        return Markup(self._holes.put(html, block=True))  # noqa: S704 - as above
+
+
+def html_table(heads: Sequence[str], rows: Sequence[Sequence[str]], css: str = "list") -> str:
+    """Return a table; headings are plain words, cells are HTML."""
+    head = "".join(f'<th scope="col">{plain(each)}</th>' for each in heads)
+    body = "".join("<tr>" + "".join(f"<td>{cell}</td>" for cell in row) + "</tr>" for row in rows)
+    return f'<table class="{css}"><thead><tr>{head}</tr></thead><tbody>{body}</tbody></table>'
+
+
+def _value_words(found: Value) -> str:
+    text = in_words(found.value)
+    if found.sd is not None:
+        text = f"{text} ± {in_words(found.sd)}"
+    return f'<span class="value">{plain(with_unit(text, found.unit))}</span>'
+
+
+def _column_words(name: str) -> str:
+    unit = unit_of(name)
+    words = words_of(name).capitalize()
+    return f"{words} [{unit}]" if unit else words
+
+
+def _cell(entry: object) -> str:
+    return "" if entry is None else in_words(entry)
