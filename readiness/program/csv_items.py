@@ -11,6 +11,7 @@ from readiness.program.field_schema import PROGRAM, FieldSchema, KindSchema
 from readiness.program.items import Item, Stated
 from readiness.program.limits import check_columns, check_limits
 from readiness.program.measurement_kinds import MeasurementKind, measurement_kind, measurement_kinds
+from readiness.program.patient_identifiers import identifier_problems
 from readiness.program.typed import field_value, read_id, table_cell
 from readiness.program.wording import did_you_mean, shown
 from readiness.quantities import Table
@@ -27,6 +28,8 @@ def read_measurement(csv: nodes.CsvText, sink: Sink) -> Item | None:
     describes, blank where nothing was read.
     """
     kind = _kind(csv, sink)
+    described = (kind.header, kind.columns) if kind else ({}, {})
+    sink.problems.extend(identifier_problems(csv, *described))
     if kind is None:
         return None
     stem = PurePosixPath(csv.place.file).stem

@@ -4,9 +4,12 @@ from pathlib import Path
 
 import pytest
 
+from readiness.errors import ProgramProblems
 from readiness.program.csv_text import parse_csv
+from readiness.program.files import from_mapping
 from readiness.program.measurement_kinds import measurement_kind
 from readiness.program.patient_identifiers import identifier_problems, looks_like
+from readiness.program.reading import known_yaml, read_program
 
 HEADER = "# kind: in-vivo-readings\n# subject: patient\n# date: 2026-11-05\n"
 COLUMNS = "cycle,day,site,point,dose_cgy"
@@ -121,3 +124,15 @@ def test_sample_files_are_clean() -> None:
         csv, _ = parse_csv(f"measurements/{path.name}", path.read_bytes())
         assert csv is not None
         assert identifier_problems(csv, {}, {}) == [], path.name
+
+
+def test_program_with_such_a_file_is_not_read() -> None:
+    """A program folder is refused as long as one of its measurements names a patient."""
+    text = f"{HEADER}# note: Anna Berg\n{COLUMNS}\n1,1,umbilicus,1,74.2\n"
+    files = {"program.yaml": b"format: 1\n", "measurements/in-vivo-1.csv": text.encode()}
+    contents, found = from_mapping(files, {}, known_yaml())
+    with pytest.raises(ProgramProblems) as refused:
+        read_program(contents, found)
+    told = [problem for problem in refused.value.problems if problem.kind == "identifier"]
+    assert ["this looks like a patient's name"] == [problem.message.split(":")[0] for problem in told]
+    assert not any("Berg" in str(problem) for problem in refused.value.problems)
