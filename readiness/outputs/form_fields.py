@@ -8,7 +8,6 @@ from markupsafe import Markup
 from readiness.errors import CatalogueError
 from readiness.outputs.holes import Holes, plain
 
-
 SIGNED = ("Role", "Name", "Date, time", "Signature")
 
 
@@ -86,11 +85,9 @@ class FormFields:
         return f"<tr>{first}{cells}</tr>"
 
     def _fields(self, width: str, labels: Sequence[str]) -> Markup:
-        each = "".join(
-            f'<div class="field {width}"><span class="label">{_with_unit(label)}</span>{self._input(label)}</div>'
-            for label in labels
-        )
-        return self._block(f'<div class="fields">{each}</div>')
+        labelled = [f'<span class="label">{_with_unit(each)}</span>{self._input(each)}' for each in labels]
+        fields = "".join(f'<div class="field {width}">{each}</div>' for each in labelled)
+        return self._block(f'<div class="fields">{fields}</div>')
 
     def _input(self, label: str) -> str:
         words = plain(label.replace("|", ", "))
