@@ -109,7 +109,7 @@ def countries(program: Program) -> Iterator[Problem]:
 
 
 def arrangements(program: Program) -> Iterator[Problem]:
-    """A plan or choice has a side, a machine that stands in its room, and what its technique needs."""
+    """A plan or choice has a machine that stands in its room, and what its technique needs."""
     for plan in program.of_kind("plan"):
         parts = {name: stated.value for name, stated in plan.fields.items()}
         texts = {name: value for name, value in parts.items() if isinstance(value, str | int | float)}
@@ -121,10 +121,6 @@ def arrangements(program: Program) -> Iterator[Problem]:
 
 
 def _arrangement(program: Program, item: Item, parts: Mapping[str, Scalar], at: str) -> Iterator[Problem]:
-    side = parts.get("side_deg")
-    if side is not None and side not in (90, 270):
-        message = f"the side is gantry angle 90 or 270 (IEC 61217), not {side}"
-        yield impossible(item, at or "side_deg", message)
     machine = program.find("machine", str(parts.get("machine")))
     stands_in = word(machine, "room") if machine is not None else None
     if parts.get("room") is not None and stands_in is not None and parts["room"] != stands_in:
