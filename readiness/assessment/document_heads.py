@@ -24,8 +24,6 @@ _REQUIRED = ("number", "title", "part", "kind", "owner", "approvers", "purpose")
 _NUMBER = re.compile(r"[1-9][0-9]*\.[1-9][0-9]*")
 _FRONT_MATTER = re.compile(r"\A---\n(.*?)\n---\n(.*)\Z", re.DOTALL)
 _HEADING = re.compile(r"^## +(.+?) *$", re.MULTILINE)
-_NAMED = re.compile(r"\b(?:show|critical|table)\(\s*\"([a-z_]+\.[a-z0-9_]+)\"")
-_LISTED = re.compile(r"\blisting\(\s*\"([a-z_]+)\"\s*,\s*\"([a-z0-9_ ]+)\"")
 _Loader = getattr(yaml, "CSafeLoader", yaml.SafeLoader)
 
 
@@ -41,7 +39,6 @@ class DocumentHead:
         purpose: One sentence, for the contents and for readers in a hurry.
         shown_when: Techniques for which the document is shown; empty for all.
         sections: Keys of its parts, in order; the department's own wording names one of them.
-        values: Names of the values that its template prints; an assessment must have asked for them.
         file: Name of its template.
     """
 
@@ -54,7 +51,6 @@ class DocumentHead:
     purpose: str
     shown_when: tuple[str, ...]
     sections: tuple[str, ...]
-    values: tuple[str, ...]
     file: str
 
     def shown_for(self, technique: str) -> bool:
@@ -113,12 +109,6 @@ def split(path: Path) -> tuple[dict[str, Any], tuple[Section, ...]]:
     return front, tuple(Section(section_key(heading), heading, text.strip()) for heading, text in pairs)
 
 
-def names_in(text: str) -> tuple[str, ...]:
-    """Return the names of the values that template text prints, in order of the alphabet."""
-    listed = {f"{kind}.{field}" for kind, fields in _LISTED.findall(text) for field in fields.split()}
-    return tuple(sorted({*_NAMED.findall(text), *listed}))
-
-
 def section_key(heading: str) -> str:
     """Return the key of a heading: "Sweep of the room" -> "sweep-of-the-room"."""
     return re.sub(r"[^a-z0-9]+", "-", heading.lower()).strip("-")
@@ -137,7 +127,6 @@ def _head(path: Path) -> DocumentHead:
         purpose=front["purpose"],
         shown_when=tuple(front.get("shown_when", ())),
         sections=tuple(section.key for section in sections),
-        values=names_in("\n".join(section.text for section in sections)),
         file=path.name,
     )
 

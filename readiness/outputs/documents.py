@@ -109,20 +109,20 @@ def _render(
     showing, forms = Showing(lookup, pictures, holes), FormFields(head.number, holes)
     environment = _environment(showing, forms, lookup)
     _, sections = split(template_file("documents", head.file))
-    parts, own = [], []
+    parts, hashed, own = [], [], []
     for section in sections:
         wording = texts.get((head.number, section.key))
-        if wording is None:
-            markdown = _ours(environment, section, head)
-        else:
-            markdown = _department(wording, showing)
+        if wording is not None:
             own.append(section.heading)
-        parts.append(_section(head.number, section, holes.fill(to_html(markdown)), wording is not None))
-    body = "\n".join(parts)
+        markdown = _ours(environment, section, head) if wording is None else _department(wording, showing)
+        html = _section(head.number, section, to_html(markdown), wording is not None)
+        parts.append(holes.fill(html))
+        hashed.append(holes.fill(html, for_hash=True))
+    digest = hashlib.sha256("\n".join(hashed).encode()).hexdigest()
     return RenderedDocument(
         number=head.number, title=head.title, part=head.part, kind=head.kind, owner=head.owner,
-        approvers=head.approvers, purpose=head.purpose, html_body=body,
-        body_sha256=hashlib.sha256(body.encode()).hexdigest(), values=tuple(showing.shown),
+        approvers=head.approvers, purpose=head.purpose, html_body="\n".join(parts), body_sha256=digest,
+        values=tuple(showing.shown),
         missing=tuple(showing.missing.items()), own_wording=tuple(own), fields=tuple(forms.names),
     )  # fmt: skip
 

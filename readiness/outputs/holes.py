@@ -24,17 +24,28 @@ class Holes:
 
     def __init__(self) -> None:
         """Start without a hole."""
-        self._html: list[tuple[str, bool]] = []
+        self._html: list[tuple[str, bool, str | None]] = []
 
-    def put(self, html: str, block: bool = False) -> str:
-        """Keep some HTML and return the hole that stands for it; a block stands on a line of its own."""
-        self._html.append((html, block))
+    def put(self, html: str, block: bool = False, hashed: str | None = None) -> str:
+        """
+        Keep some HTML and return the hole that stands for it.
+
+        Args:
+            html: What is printed.
+            block: It stands on a line of its own.
+            hashed: What stands for it where the text is hashed; a drawing by its name.
+        """
+        self._html.append((html, block, hashed))
         return f"{OPEN}{len(self._html) - 1}{CLOSE}"
 
-    def fill(self, html: str) -> str:
+    def fill(self, html: str, for_hash: bool = False) -> str:
         """Return HTML with every hole filled; a paragraph that holds nothing but blocks is no paragraph."""
-        opened = _ALONE.sub(self._without_paragraph, html)
-        return _HOLE.sub(lambda found: self._html[int(found[1])][0], opened)
+
+        def filled(found: re.Match[str]) -> str:
+            kept, _, hashed = self._html[int(found[1])]
+            return hashed if for_hash and hashed is not None else kept
+
+        return _HOLE.sub(filled, _ALONE.sub(self._without_paragraph, html))
 
     def _without_paragraph(self, found: re.Match[str]) -> str:
         numbers = [int(each) for each in _HOLE.findall(found[1])]

@@ -14,6 +14,7 @@ from readiness.assessment.records import (
     Rule,
     Value,
 )
+from readiness.outputs.words import chosen_row
 from readiness.units import unit_of, words_of
 
 CRITERION = Ref("criterion", "criterion")
@@ -50,12 +51,16 @@ class Lookup:
 
     @cached_property
     def row(self) -> ArrangementRow | None:
-        """Return the arrangement that the documents are for, or None."""
+        """
+        Return the arrangement that the documents are for, or None.
+
+        Approvals are compared before the verdict is given, with the same arrangement: the department's, else
+        the first of the compared ones if it is possible.
+        """
         rows = self.assessment.arrangements
-        wanted = self.assessment.verdict.arrangement
-        named = [row for row in rows if wanted and wanted in (row.item.id, str(row.item), row.title)]
+        possible = [row for row in rows[:1] if row.feasibility != "not feasible here"]
         chosen = [row for row in rows if row.chosen]
-        return next(iter([*named, *chosen]), None)
+        return chosen_row(self.assessment) or next(iter([*chosen, *possible]), None)
 
     @cached_property
     def scope(self) -> Mapping[str, Ref]:

@@ -72,12 +72,11 @@ class Showing:
         return self._block(html_table(heads, rows))
 
     def picture(self, name: str) -> Markup:
-        """Return a drawing, or the sentence that there is none yet."""
+        """Return a drawing, or the sentence that there is none; the hash of the body knows its name only."""
         svg = self._pictures.get(name)
-        if svg is None:
-            words = f"Drawing of the {name.replace('-', ' ')}: none yet; what it shows is not described."
-            return self._block(f'<p class="need">{plain(words)}</p>')
-        return self._block(f'<figure class="picture">{svg}</figure>')
+        words = f"Drawing of the {name.replace('-', ' ')}: none yet; what it shows is not described."
+        html = f'<p class="need">{words}</p>' if svg is None else f'<figure class="picture">{svg}</figure>'
+        return Markup(self._holes.put(html, block=True, hashed=name))  # noqa: S704 - as below
 
     def source(self, key: str, at: str, known: str) -> Markup:
         """Return a publication with the place in it and how it is known."""
