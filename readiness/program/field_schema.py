@@ -27,7 +27,7 @@ class Assumed:
     known: str
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)  # there is one of each, so that what is made of it can be kept
 class FieldSchema:
     """
     One field of a kind, one column of a table, or one line of a measurement's header.

@@ -1,6 +1,7 @@
 """Ranges, allowed words, required fields: typed plain data through cerberus, its errors in our own words."""
 
 from collections.abc import Iterable, Mapping
+from functools import cache
 from typing import Any
 
 from cerberus import TypeDefinition, Validator
@@ -60,6 +61,7 @@ class _Listed(BaseErrorHandler):  # type: ignore[misc] # cerberus ships no types
         return list(errors)
 
 
+@cache
 def cerberus_rules(field: FieldSchema) -> Rules:
     """Return what cerberus must know about a field."""
     rules: Rules

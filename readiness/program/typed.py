@@ -1,6 +1,5 @@
 """The tree of a file and the schema of that file become typed items, each part with its place."""
 
-import json
 from collections.abc import Mapping
 from datetime import date
 
@@ -160,6 +159,8 @@ def table_cell(plain: Plain) -> Scalar:
     if isinstance(plain, date):
         return plain.isoformat()
     if isinstance(plain, list):
+        import json  # rarely needed, and reading must start fast
+
         return json.dumps([each.isoformat() if isinstance(each, date) else each for each in plain])
     cell: Scalar = plain
     return cell
