@@ -1,5 +1,6 @@
 """The command line: the only module that prints, exits or asks for today's date."""
 
+import contextlib
 import os
 import shutil
 import sys
@@ -139,10 +140,8 @@ def explain(value: str, folder: Path, item: str | None, as_of: date | None) -> N
 
 
 def _fail(message: str, status: int) -> int:
-    try:
+    with contextlib.suppress(OSError):
         click.echo(message, err=True)
-    except OSError:
-        pass
     return status
 
 

@@ -11,7 +11,7 @@ from dataclasses import replace
 from datetime import date
 
 from readiness import __version__
-from readiness.assessment.candidates import arrangements, exposures
+from readiness.assessment.candidates import arrangements, exposures, measurements
 from readiness.assessment.catalogue import catalogue
 from readiness.assessment.document_heads import document_heads
 from readiness.assessment.documents import document_items, document_states, is_shown
@@ -60,7 +60,7 @@ def assess(program: Program, as_of: date, bodies: Bodies | None = None) -> Asses
     local = with_local(load_rules(known), program, known)
     by_id = {rule.id: rule for rule in local.rules}
     made = arrangements(program)
-    items = (*made, *exposures(program, made), *document_items())
+    items = (*made, *exposures(program, made), *measurements(program), *document_items())
     graph = Graph(program, items, known, as_of, local.limits)
     early = judge((rule for rule in local.rules if rule.kind not in _LATE), graph)
     early, answers = excepted(early, by_id, program, as_of)

@@ -6,8 +6,10 @@ fits it becomes one of its owners and gives it the department's choices.
 """
 
 from collections.abc import Iterator
+from dataclasses import replace
 from itertools import product
 
+from readiness.assessment.kinds import MADE
 from readiness.errors import Place
 from readiness.program.items import Item, Program, Stated
 
@@ -15,7 +17,6 @@ SIDES = (90, 270)
 STANDING = ("six-position", "rotating-platform")
 LYING = "moving-couch"
 _MATCHED = ("room", "machine", "beam", "side_deg", "technique", "degrader", "stand", "couch")
-_NEEDED = ("program.techniques", "room", "machine", "beam", "degrader")
 
 
 def arrangements(program: Program) -> tuple[Item, ...]:
@@ -115,11 +116,13 @@ def exposures(program: Program, made: tuple[Item, ...]) -> tuple[Item, ...]:
     )
 
 
-def missing_for_arrangements(program: Program) -> tuple[str, ...]:
-    """Return what keeps arrangements from being formed: a value name, or kinds without an entry."""
-    root = program.find("program", "program")
-    lacking = [] if root and root.get("techniques") else ["program.techniques"]
-    lacking += [kind for kind in _NEEDED[1:] if not program.by_kind.get(kind)]
-    if not program.by_kind.get("stand") and not program.by_kind.get("couch"):
-        lacking.append("stand")
-    return tuple(lacking)
+def measurements(program: Program) -> tuple[Item, ...]:
+    """Return the measurement files as items that belong to the room, beam and tools they name."""
+    return tuple(
+        replace(item, owners={**item.owners, **_named(item)}) for item in program.of_kind("measurement")
+    )
+
+
+def _named(item: Item) -> dict[str, str]:
+    named = {kind: item.get(kind) for kind in MADE["measurement"]}
+    return {kind: value for kind, value in named.items() if isinstance(value, str) and value != "none"}

@@ -19,7 +19,7 @@ from readiness.program.measurement_kinds import measurement_kind, measurement_ki
 from readiness.units import unit_ending, words_of
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Catalogue:
     """Definitions, fields and criteria under one roof."""
 

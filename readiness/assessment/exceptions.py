@@ -1,4 +1,4 @@
-"""Exceptions that the department has granted: each covers one rule and one item, for a time, or does nothing."""
+"""Exceptions that the department has granted: each covers one rule and one item, for a time."""
 
 from collections.abc import Mapping
 from dataclasses import replace

@@ -78,10 +78,8 @@ def _take_criterion(
     name = criterion if criterion.startswith("criterion.") else f"criterion.{criterion}"
     ours = known.criteria.get(name)
     if ours is None:
-        hint = _near(name, known.criteria)
-        problems.append(
-            Problem(_place(item, "criterion"), f"there is no criterion {criterion}{hint}", "local limit")
-        )
+        words = f"there is no criterion {criterion}{_near(name, known.criteria)}"
+        problems.append(Problem(_place(item, "criterion"), words, "local limit"))
         return
     if not _unit_agrees(item, unit_of(name), problems):
         return
@@ -106,7 +104,7 @@ def _take_rule_limit(
         return
     direction = CONDITIONS[rule.condition].stricter
     if not direction:
-        words = f"rule {rule_id} has no limit that could be stricter (it asks: {CONDITIONS[rule.condition].words})"
+        words = f"rule {rule_id} has no limit that could be stricter"
         problems.append(Problem(_place(item, "rule"), words, "local limit"))
         return
     if not _unit_agrees(item, unit_of(rule.subject), problems):

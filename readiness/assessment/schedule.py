@@ -10,7 +10,7 @@ from dataclasses import replace
 from datetime import date
 from functools import cache
 
-from readiness.assessment.records import Gap, Ref, Schedule, ScheduledTask
+from readiness.assessment.records import Gap, Schedule, ScheduledTask
 from readiness.calculations.first_patient import road_to_first_patient, what_moves_first_patient
 from readiness.calculations.network_changes import reduced_network
 from readiness.calculations.task_library import OwnTask, library_tasks, with_own_tasks
@@ -86,7 +86,7 @@ def plan_road(program: Program, gaps: tuple[Gap, ...], as_of: date) -> tuple[Sch
         for each in road.tasks
     )  # fmt: skip
     movers = tuple(
-        (str(row["task"]), float(row["gain_if_no_time_working_days"]))  # type: ignore[arg-type]
+        (str(row["task"]), float(row["gain_if_no_time_working_days"]))
         for row in moves.records()
         if row["gain_if_no_time_working_days"]
     )[:5]
@@ -110,8 +110,8 @@ def working_calendar(program: Program) -> WorkingDays:
 
 def _remarks(out_of_order: tuple[str, ...]) -> tuple[str, ...]:
     remarks = [
-        "The date is the earliest that the order of tasks allows; people's hours are not shared out among tasks.",
-        "A default lead time is common practice, not the department's; state your own under tasks in program.yaml.",
+        "The date is the earliest the order of tasks allows; people's hours are not shared out among tasks.",
+        "A default lead time is common practice; state the department's own under tasks in program.yaml.",
     ]
     if out_of_order:
         remarks.append(f"Finished before what they wait for: {', '.join(out_of_order)}.")

@@ -19,8 +19,8 @@ def give_verdict(
     arrangement = chosen.item.id if chosen else ""
     chosen_by = "" if chosen is None else "department" if chosen.chosen else "recommendation"
     if not rows:
-        words = ("No arrangement can be formed from what the folder describes.",)
-        return Verdict("not enough described", "", "", words)
+        nothing = ("No arrangement can be formed from what the folder describes.",)
+        return Verdict("not enough described", "", "", nothing)
     if chosen is None or all(row.feasibility == "not feasible here" for row in rows):
         words = tuple(f"{row.title}: {row.deciding[0].message}" for row in rows if row.deciding)[:4]
         return Verdict("no feasible arrangement", arrangement, chosen_by, words)

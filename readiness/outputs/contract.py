@@ -26,7 +26,7 @@ INVENTED = "All data of this department are invented for teaching; nothing here 
 def to_json(assessment: Assessment) -> str:
     """Return an assessment as JSON text with a caution at its head."""
     notes = [CAUTION, INVENTED] if assessment.invented else [CAUTION]
-    data = {"caution": " ".join(notes), "contract": assessment.versions.contract, **_plain(assessment)}
+    data = {"caution": " ".join(notes), "contract": assessment.versions.contract, **plain(assessment)}
     return json.dumps(data, ensure_ascii=False, indent=1, allow_nan=False) + "\n"
 
 
@@ -43,20 +43,21 @@ def from_json(text: str) -> Assessment:
     return found
 
 
-def _plain(value: Any) -> Any:
+def plain(value: Any) -> Any:
+    """Return a record as mappings, lists, numbers and words that JSON can hold."""
     if isinstance(value, Table):
         return {
             "columns": list(value.columns),
-            "rows": [[_plain(each) for each in row] for row in value.rows],
+            "rows": [[plain(each) for each in row] for row in value.rows],
         }
     if dataclasses.is_dataclass(value) and not isinstance(value, type):
-        return {each.name: _plain(getattr(value, each.name)) for each in dataclasses.fields(value)}
+        return {each.name: plain(getattr(value, each.name)) for each in dataclasses.fields(value)}
     if isinstance(value, tuple) and hasattr(value, "_asdict"):
-        return {key: _plain(each) for key, each in value._asdict().items()}
+        return {key: plain(each) for key, each in value._asdict().items()}
     if isinstance(value, (tuple, list)):
-        return [_plain(each) for each in value]
+        return [plain(each) for each in value]
     if isinstance(value, dict):
-        return {str(key): _plain(each) for key, each in value.items()}
+        return {str(key): plain(each) for key, each in value.items()}
     if isinstance(value, date):
         return {"date": value.isoformat()}
     if value is None or isinstance(value, (str, int, float, bool)):
