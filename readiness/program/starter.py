@@ -53,16 +53,9 @@ def write_starter(folder: Path, schemas: Schemas) -> tuple[str, ...]:
     Raises:
         UsageError: If there is something at that place already, or it cannot be written.
     """
-    if folder.exists() and not folder.is_dir():
-        raise UsageError(f"{folder} is a file; name a new or empty folder")
-    if folder.exists() and any(folder.iterdir()):
-        raise UsageError(f"{folder} is not empty; nothing was written. Name a new or empty folder")
-    beside = folder.resolve().parent
-    if not beside.is_dir():
-        raise UsageError(f"{beside} does not exist; make that folder first")
     files = starter_files(schemas)
     try:
-        with tempfile.TemporaryDirectory(prefix=f".{folder.resolve().name}.", dir=beside) as temporary:
+        with tempfile.TemporaryDirectory(prefix=".readiness-", dir=_working_place(folder)) as temporary:
             whole = Path(temporary) / "whole"
             _write(whole, files)
             _move(whole, folder)
@@ -161,6 +154,20 @@ def _measurement_text(kind: MeasurementKind) -> str:
 
 def _described(fields: Mapping[str, FieldSchema], form: str) -> list[str]:
     return [f"- `{form.format(name)}` {each.meaning} [{field_note(each)}]" for name, each in fields.items()]
+
+
+def _working_place(folder: Path) -> Path:
+    """Return where to write before moving: inside an empty folder, or beside one that does not exist yet."""
+    if folder.is_dir():
+        if any(folder.iterdir()):
+            raise UsageError(f"{folder} is not empty; nothing was written. Name a new or empty folder")
+        return folder
+    if folder.exists():
+        raise UsageError(f"{folder} is a file; name a new or empty folder")
+    beside = folder.resolve().parent
+    if not beside.is_dir():
+        raise UsageError(f"{beside} does not exist; make that folder first")
+    return beside
 
 
 def _write(folder: Path, files: Mapping[str, str]) -> None:
