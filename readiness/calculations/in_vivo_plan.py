@@ -51,7 +51,7 @@ def in_vivo_plan(
         readings_at_prescription_level: Detectors at the prescription level. [1]
         sessions_per_cycle: Sessions that make one cycle; each has its own detectors. [1]
         measured_cycles_per_patient: Cycles measured for each patient. [1]
-        patients_per_year: Patients a year. [1]
+        patients_per_year: Patients a year. [per year]
         patients_measured_at_once: Patients whose measured cycle falls into the same days. [1]
         control_detectors: Detectors that are carried along without being irradiated. [1]
         pieces: Detectors owned. [1]

@@ -58,7 +58,7 @@ class InVivoResult:
 def evaluate_in_vivo(
     *,
     cycles: Sequence[int],
-    days: Sequence[int],
+    sessions: Sequence[int],
     sites: Sequence[str],
     points: Sequence[int],
     doses_cgy: Sequence[float],
@@ -77,10 +77,10 @@ def evaluate_in_vivo(
     Return what the readings of one cycle say about each site and about the prescription level.
 
     Args:
-        cycles: Cycle of each reading, counted from 1.
-        days: Session of the cycle of each reading, counted from 1.
+        cycles: Cycle of each reading, counted from 1. [1]
+        sessions: Session of the cycle of each reading, counted from 1. [1]
         sites: Site of each reading, by its word.
-        points: Which of several detectors at the site.
+        points: Which of several detectors at the site, counted from 1. [1]
         doses_cgy: Dose of each reading. [cGy]
         cycle: Cycle that is evaluated. [1]
         cycles_of_course: Cycles of the course, for what a boost would have to add. [1]
@@ -111,7 +111,7 @@ def evaluate_in_vivo(
         raise ValueError("a deviation is investigated before it stops a course")
     if not 0 < boost_below_percent < shield_above_percent:
         raise ValueError("a boost is considered below the dose at which a shield is")
-    given = zip(cycles, sites, points, days, doses_cgy, strict=True)
+    given = zip(cycles, sites, points, sessions, doses_cgy, strict=True)
     rows = [(site, point, day, dose) for number, site, point, day, dose in given if number == cycle]
     found, remarks = site_doses(rows, sessions_per_cycle, single_reading_sd_percent, shared_sd_percent)
     refuse_factor_100(list(found.values()), CGY_PER_GY * dose_per_cycle_gy)

@@ -69,7 +69,7 @@ def analyse_xray_component(
     depths_mm: Sequence[float],
     heights_cm: Sequence[float],
     across_cm: Sequence[float],
-    xray_percents: Sequence[float | None],
+    xray_percent: Sequence[float | None],
     xray_cgy_per_mu: Sequence[float | None],
     axis_height_cm: float,
     practical_range_mm: float | None,
@@ -85,7 +85,7 @@ def analyse_xray_component(
         depths_mm: Depth of each reading. [mm]
         heights_cm: Height of each reading above the isocentre in the plane. [cm]
         across_cm: Horizontal place of each reading from the beam's vertical plane. [cm]
-        xray_percents: X-ray dose over the dose that the fraction is defined with, None where not given. [%]
+        xray_percent: X-ray dose over the dose that the fraction is defined with, None where not given. [%]
         xray_cgy_per_mu: X-ray dose per MU of the pair, None where not given. [cGy/MU]
         axis_height_cm: Where the tilted axes meet the plane, this far above and below the isocentre. [cm]
         practical_range_mm: Practical range at the plane, None if not known. [mm]
@@ -102,7 +102,7 @@ def analyse_xray_component(
     Assumes: the reading at mid-height nearest to 5 cm depth stands for the body.
     Source: definition (derived); aapm-23 (memory) for measuring on and off the axis.
     """
-    rows = list(zip(fields, depths_mm, heights_cm, across_cm, xray_percents, xray_cgy_per_mu, strict=True))
+    rows = list(zip(fields, depths_mm, heights_cm, across_cm, xray_percent, xray_cgy_per_mu, strict=True))
     given = _readings(rows, axis_height_cm)
     behind_mm = SHALLOWEST_MM if practical_range_mm is None else practical_range_mm + BEHIND_RANGE_MM
     deep = [reading for reading in given if reading.depth_mm >= behind_mm]

@@ -146,3 +146,11 @@ def test_one_tilt_has_no_best_between() -> None:
     """A single tilt is judged but has no best tilt."""
     result = swept({16: READINGS[16]})
     assert (result.smallest_passing_tilt_deg, result.best) == (16, None)
+
+
+def test_sample_program_holds_these_readings() -> None:
+    """The sweep in the sample program is the one whose half-ranges are stated here."""
+    path = Path(__file__).parents[2] / "sample_program" / "measurements" / "angle-sweep.csv"
+    rows = [line.split(",") for line in path.read_text(encoding="utf-8").splitlines() if line[0] not in "#t"]
+    found = {tilt: [float(dose) for at, _, dose in rows if float(at) == tilt] for tilt in READINGS}
+    assert {tilt: list(values) for tilt, values in READINGS.items()} == found

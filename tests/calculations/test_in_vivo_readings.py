@@ -44,7 +44,7 @@ def evaluated(rows: list[Row], **changed: object) -> InVivoResult:
     }
     return evaluate_in_vivo(
         cycles=cycles,  # type: ignore[arg-type]
-        days=days,  # type: ignore[arg-type]
+        sessions=days,  # type: ignore[arg-type]
         sites=sites,  # type: ignore[arg-type]
         points=points,  # type: ignore[arg-type]
         doses_cgy=doses,  # type: ignore[arg-type]

@@ -24,7 +24,7 @@ def analysed(rows: list[tuple[object, ...]], **changed: object) -> XrayComponent
         depths_mm=depths,  # type: ignore[arg-type]
         heights_cm=heights,  # type: ignore[arg-type]
         across_cm=across,  # type: ignore[arg-type]
-        xray_percents=percents,  # type: ignore[arg-type]
+        xray_percent=percents,  # type: ignore[arg-type]
         xray_cgy_per_mu=doses,  # type: ignore[arg-type]
         **stated,  # type: ignore[arg-type]
     )
