@@ -10,6 +10,7 @@ from readiness.calculations.truncated_gaussian import blurred_gaussian
 
 Array = NDArray[np.float64]
 
+KERNEL_PARTS, KERNEL_WIDTHS = (np.array(column) for column in zip(*KERNEL, strict=True))
 MARGIN_CM = 12.0  # a source tilted by 25 degrees stands less than this nearer to the plane
 
 
@@ -34,16 +35,15 @@ def tilted_fields(
     scatter = scatter_at_plane(setup, nearest - MARGIN_CM, farthest)
     count = slices or slices_needed(distance_cm)
     found = slices_at_plane(setup, scatter, tilts_deg, distance_cm, count)
-    mirrored = setup.collimator_deg % 90.0 == 0.0 and _is_symmetric(across_cm)
-    wanted = across_cm[: (len(across_cm) + 1) // 2] if mirrored else across_cm
-    total = np.zeros((len(tilts_deg), len(heights_cm), len(wanted)))
-    for weight, width in KERNEL:
-        blur2 = width**2 * found.rays.air_variance_cm2 + found.rays.degrader_variance_cm2
-        up = _height_part(found, blur2, heights_cm)
-        total += weight * (up @ _width_part(setup, found, np.sqrt(blur2), wanted))
-    if mirrored:
-        total = np.concatenate([total, total[:, :, : len(across_cm) // 2][:, :, ::-1]], axis=2)
-    return total
+    blur2 = np.concatenate(
+        [
+            width**2 * found.rays.air_variance_cm2 + found.rays.degrader_variance_cm2
+            for width in KERNEL_WIDTHS
+        ],
+        axis=1,
+    )
+    result: Array = _height_part(found, blur2, heights_cm) @ _width_part(setup, found, blur2, across_cm)
+    return result
 
 
 def dual_field(
@@ -68,29 +68,34 @@ def dual_field(
 
 
 def _height_part(found: Slices, blur2: Array, heights_cm: Array) -> Array:
-    """Return weight times Gaussian of every slice at every height, shape (tilts, heights, slices)."""
-    variance = blur2 * found.vertical_stretch
-    front = found.weight / np.sqrt(2 * np.pi * variance)
-    away = heights_cm[None, :, None] - found.height_cm[:, None, :]
-    result: Array = front[:, None, :] * np.exp(away**2 * (-0.5 / variance)[:, None, :])
+    """Return weight times Gaussian of every slice and kernel at every height, (tilts, heights, slices)."""
+    variance = blur2 * _each(found.vertical_stretch)
+    parts = np.repeat(KERNEL_PARTS, found.weight.shape[1])
+    front = parts * _each(found.weight) / np.sqrt(2 * np.pi * variance)
+    result: Array = heights_cm[None, :, None] - _each(found.height_cm)[:, None, :]
+    result *= result
+    result *= (-0.5 / variance)[:, None, :]
+    np.exp(result, out=result)
+    result *= front[:, None, :]
     return result
 
 
-def _width_part(setup: FieldSetup, found: Slices, blur: Array, across_cm: Array) -> Array:
-    """Return the closed form of every slice across the plane, shape (tilts, slices, across)."""
-    widening = found.widening_cm[:, :, None]
+def _width_part(setup: FieldSetup, found: Slices, blur2: Array, across_cm: Array) -> Array:
+    """Return the closed form of every slice and kernel across the plane, (tilts, slices, across)."""
+    widening = _each(found.widening_cm)[:, :, None]
+    edges = [np.tile(edge, len(KERNEL))[None, :, None] * widening for edge in (found.lower, found.upper)]
     return (
         blurred_gaussian(
             position_cm=across_cm,
             spread_cm=setup.foil_spread * widening,
-            lower_cm=found.lower[None, :, None] * widening,
-            upper_cm=found.upper[None, :, None] * widening,
-            blur_cm=blur[:, :, None],
+            lower_cm=edges[0],
+            upper_cm=edges[1],
+            blur_cm=np.sqrt(blur2)[:, :, None],
         )
         / widening
     )
 
 
-def _is_symmetric(across_cm: Array) -> bool:
-    """Return whether positions across are the same left and right."""
-    return bool(np.allclose(across_cm, -across_cm[::-1]))
+def _each(slices: Array) -> Array:
+    """Return the slices once for each kernel, side by side."""
+    return np.tile(slices, (1, len(KERNEL)))
