@@ -199,18 +199,6 @@ def _mean_atomic_number(material: str) -> float:
 
 
 def refuse_stopped_beam(*, energy_mev: float) -> None:
-    """
-    Refuse a beam that came to rest in its degrader.
-
-    Args:
-        energy_mev: Mean energy behind the degrader. [MeV]
-
-    Raises:
-        OutsideValidity: If nothing but the lowest energy is left.
-
-    Valid for: results of beams_behind_degrader.
-    Assumes: a mean energy of 0.3 MeV means that the average electron has stopped.
-    Source: our own convention.
-    """
+    """Refuse a beam whose mean energy behind its degrader is the lowest that is followed."""
     if energy_mev <= SLOWEST_MEV:
         raise OutsideValidity("the degrader stops the beam: it is thicker than the range of the electrons")
