@@ -1,0 +1,203 @@
+"""Values are worked out once, with descent, basis and root causes."""
+
+from datetime import date
+
+import pytest
+from tests.assessment.small import graph, item, program, small_catalogue
+
+from readiness.assessment.definition import Definition, Measured
+from readiness.assessment.records import Gone, Input, Ref, Value
+from readiness.errors import CatalogueError, OutsideValidity
+from readiness.quantities import Table, Uncertain
+
+ROOM = Ref("room", "a")
+
+
+def headroom(*, ceiling_height_cm: float, isocentre_height_cm: float) -> float:
+    """Return the height above the isocentre."""
+    return ceiling_height_cm - isocentre_height_cm
+
+
+HEADROOM = Definition(
+    "room.headroom_cm", "Height above the isocentre.", by=headroom,
+    takes={"ceiling_height_cm": "room.ceiling_height_cm", "isocentre_height_cm": "room.isocentre_height_cm"},
+)  # fmt: skip
+
+
+def test_a_stated_field_is_a_value_with_its_place() -> None:
+    """A field of the folder is a stated value."""
+    got = graph(program(item("room", "a", ceiling_height_cm=300.0))).get("room.ceiling_height_cm", ROOM)
+    assert isinstance(got, Value)
+    assert (300.0, "cm", "stated", "room.yaml") == (got.value, got.unit, got.basis, got.where.file)
+
+
+def test_a_calculated_value_names_its_inputs() -> None:
+    """A calculated value carries what it came from."""
+    got = graph(program(item("room", "a", ceiling_height_cm=300.0, isocentre_height_cm=130.0)), HEADROOM).get(
+        "room.headroom_cm", ROOM
+    )
+    assert isinstance(got, Value)
+    assert got.value == 170.0
+    assert got.inputs[0] == Input("ceiling_height_cm", "room.ceiling_height_cm", ROOM)
+
+
+def test_absence_travels_as_root_causes() -> None:
+    """What is missing is named by field, never by an intermediate name."""
+    chained = Definition("room.double_headroom_cm", "Twice the headroom.", by=lambda *, headroom_cm: 2 * headroom_cm,
+                         takes={"headroom_cm": "room.headroom_cm"})  # fmt: skip
+    got = graph(program(item("room", "a", ceiling_height_cm=300.0)), HEADROOM, chained).get(
+        "room.double_headroom_cm", ROOM
+    )
+    assert isinstance(got, Gone)
+    assert [cause.what for cause in got.causes] == ["room.isocentre_height_cm"]
+    assert got.causes[0].words == "State isocentre height (cm) of room a in rooms.yaml."
+
+
+def test_numbers_keep_six_significant_digits() -> None:
+    """A number is rounded once, when it becomes a value."""
+    third = Definition("room.third_cm", "A third.", by=lambda *, ceiling_height_cm: ceiling_height_cm / 3,
+                       takes={"ceiling_height_cm": "room.ceiling_height_cm"})  # fmt: skip
+    got = graph(program(item("room", "a", ceiling_height_cm=100.0)), third).get("room.third_cm", ROOM)
+    assert isinstance(got, Value)
+    assert got.value == 33.3333
+
+
+def test_a_model_is_predicted_and_an_assumption_is_weaker_still() -> None:
+    """A model's result is predicted; one assumed input makes it assumed."""
+    model = Definition("room.model_ratio", "A model.", by=lambda *, air_changes_per_h: 1.0, model=True,
+                       takes={"air_changes_per_h": "room.air_changes_per_h"})  # fmt: skip
+    stated = graph(program(item("room", "a", air_changes_per_h=8.0)), model).get("room.model_ratio", ROOM)
+    assumed = graph(program(item("room", "a")), model).get("room.model_ratio", ROOM)
+    assert isinstance(stated, Value)
+    assert isinstance(assumed, Value)
+    assert (stated.basis, assumed.basis) == ("predicted", "assumed")
+
+
+def test_an_assumption_is_traced_to_what_has_to_be_stated() -> None:
+    """Whatever rests on a default names the field that would replace it."""
+    model = Definition("room.model_ratio", "A model.", by=lambda *, air_changes_per_h: 1.0,
+                       takes={"air_changes_per_h": "room.air_changes_per_h"})  # fmt: skip
+    roots = graph(program(item("room", "a")), model).assumed_roots("room.model_ratio", ROOM)
+    assert [root.what for root in roots] == ["room.air_changes_per_h"]
+
+
+def test_outside_validity_is_a_cause_and_not_a_crash() -> None:
+    """A calculation outside its range says so in words."""
+
+    def refuse(*, ceiling_height_cm: float) -> float:
+        raise OutsideValidity("the table ends at 200 cm")
+
+    value = Definition("room.refused_cm", "Refused.", by=refuse, takes={"ceiling_height_cm": "room.ceiling_height_cm"})
+    got = graph(program(item("room", "a", ceiling_height_cm=300.0)), value).get("room.refused_cm", ROOM)
+    assert isinstance(got, Gone)
+    assert got.causes[0].words == "the table ends at 200 cm"
+
+
+def test_each_collects_over_the_nearest_list() -> None:
+    """A room asks for its own obstructions, not for those of another room."""
+    tops = Definition("room.tops", "Tops.", by=lambda *, tops_cm: max(tops_cm), takes={"tops_cm": "each obstruction.top_cm"})
+    of = program(
+        item("room", "a"), item("room", "b"),
+        item("obstruction", "a/x", {"room": "a"}, top_cm=70.0), item("obstruction", "b/x", {"room": "b"}, top_cm=90.0),
+    )  # fmt: skip
+    got = graph(of, tops).get("room.tops", ROOM)
+    assert isinstance(got, Value)
+    assert got.value == 70.0
+
+
+def test_an_unknown_list_is_a_cause_and_an_empty_list_is_empty() -> None:
+    """Nothing is known of a list that is not there; a list that is there, even empty, is complete."""
+    count = Definition("program.instrument_count", "Count.", by=lambda *, ids: len(ids), takes={"ids": "each instrument.id"})
+    unknown = graph(program(), count).get("program.instrument_count", Ref("program", "program"))
+    empty = graph(program(lists=("instrument",)), count).get("program.instrument_count", Ref("program", "program"))
+    assert isinstance(unknown, Gone)
+    assert "dosimetry.yaml" in unknown.causes[0].words
+    assert isinstance(empty, Value)
+    assert empty.value == 0
+
+
+def test_rows_make_a_table_of_items() -> None:
+    """Fields of listed items become the rows of a table, optional ones blank."""
+    table = Definition("program.table", "Table.", by=lambda *, tools: tools, takes={"tools": "rows instrument: id type pieces?"})
+    of = program(item("instrument", "i", type="film"))
+    got = graph(of, table).get("program.table", Ref("program", "program"))
+    assert isinstance(got, Value)
+    assert got.value == Table(("id", "type", "pieces"), (("i", "film", None),))
+
+
+def _measurement(name: str, **fields: object) -> object:
+    stated = {"kind": "single-profile", "room": "a", "machine": "m", "beam": "m/e6", "instrument": "film",
+              "date": date(2026, 10, 1), **fields}  # fmt: skip
+    owners = {"room": "a", "machine": "m", "beam": "m/e6", "instrument": str(stated["instrument"])}
+    return item("measurement", name, owners, **stated)
+
+
+SPREAD = Definition(
+    "beam.foil_spread", "Spread.",
+    measured=Measured("single-profile", takes={"x": "measurement.fitted"}),
+)  # fmt: skip
+FITTED = Definition("measurement.fitted", "Fit.", by=lambda *, day: Uncertain(0.2, 0.01), takes={"day": "measurement.date"})
+
+
+def _of_measurements(*measurements: object, due: date = date(2027, 1, 1)) -> object:
+    parts = (
+        item("room", "a", changed_on=date(2025, 1, 1)), item("machine", "m", {"room": "a"}),
+        item("beam", "m/e6", {"machine": "m"}, foil_spread=0.25),
+        item("instrument", "film", calibrated_on=date(2026, 1, 1), calibration_due_on=due),
+    )  # fmt: skip
+    return graph(program(*parts), SPREAD, FITTED, made=measurements)  # type: ignore[arg-type]
+
+
+def test_a_measurement_replaces_a_claim_and_keeps_it_visible() -> None:
+    """What was measured is measured, and the claim stands beside it."""
+    got = _of_measurements(_measurement("one")).get("beam.foil_spread", Ref("beam", "m/e6"))  # type: ignore[attr-defined]
+    assert isinstance(got, Value)
+    assert ("measured", 0.2) == (got.basis, got.value)
+    assert got.instead_of is not None
+    assert got.instead_of.value == 0.25
+
+
+def test_a_measurement_with_an_expired_instrument_does_not_count() -> None:
+    """An instrument out of calibration that day makes a measurement void, and the cause says so."""
+    of = _of_measurements(_measurement("one"), due=date(2026, 9, 1))
+    got = of.get("beam.foil_spread", Ref("beam", "m/e6"))  # type: ignore[attr-defined]
+    assert isinstance(got, Value)
+    assert got.basis == "stated"
+    causes = of.why_not_measured("beam.foil_spread", Ref("beam", "m/e6"))  # type: ignore[attr-defined]
+    assert any("out of calibration on 2026-10-01" in cause.words for cause in causes)
+
+
+def test_a_measurement_older_than_a_change_does_not_count() -> None:
+    """The room changed after the measurement, so that the claim stays."""
+    got = _of_measurements(_measurement("one", date=date(2024, 1, 1))).get(  # type: ignore[attr-defined]
+        "beam.foil_spread", Ref("beam", "m/e6")
+    )
+    assert isinstance(got, Value)
+    assert got.basis == "stated"
+
+
+@pytest.mark.parametrize(
+    ("broken", "words"),
+    [
+        (Definition("room.x_cm", "X.", by=headroom, takes={"ceiling_height_cm": "room.ceiling_height_cm"}), "keywords"),
+        (Definition("room.x_cm", "X.", by=lambda *, a_cm: a_cm, takes={"a_cm": "room.ceiling"}), "does not exist"),
+        (Definition("room.x_cm", "X.", by=lambda *, a_m: a_m, takes={"a_m": "room.ceiling_height_cm"}), "same unit"),
+        (Definition("room.x_cm", "X.", by=lambda *, a_cm: a_cm, takes={"a_cm": "stand.width_cm"}), "does not belong"),
+        (Definition("room.x_cm", "X.", by=lambda *, x_cm: x_cm, takes={"x_cm": "room.y_cm"}), "does not exist"),
+        (Definition("room.x_cm", "X", by=lambda: 1), "not a sentence"),
+        (Definition("room.x_cm", "X."), "says nothing"),
+        (Definition("nothing.x_cm", "X.", by=lambda: 1), "kind that does not exist"),
+    ],
+)  # fmt: skip
+def test_a_catalogue_that_does_not_fit_is_refused(broken: Definition, words: str) -> None:
+    """Loading proves names, keywords, units and owners."""
+    with pytest.raises(CatalogueError, match=words):
+        small_catalogue(broken)
+
+
+def test_a_circle_is_refused_and_printed() -> None:
+    """Values that wait for each other are refused when loaded."""
+    one = Definition("room.one_cm", "One.", by=lambda *, a_cm: a_cm, takes={"a_cm": "room.two_cm"})
+    two = Definition("room.two_cm", "Two.", by=lambda *, a_cm: a_cm, takes={"a_cm": "room.one_cm"})
+    with pytest.raises(CatalogueError, match="room.one_cm <- room.two_cm <- room.one_cm"):
+        small_catalogue(one, two)
