@@ -9,9 +9,10 @@ import hashlib
 import re
 from collections.abc import Mapping
 from dataclasses import dataclass
+from functools import cache
 from typing import Any
 
-from jinja2 import Environment, StrictUndefined
+from jinja2 import Environment, StrictUndefined, Template
 from markupsafe import Markup
 
 from readiness.assessment.catalogue import catalogue
@@ -107,14 +108,14 @@ def _render(
 ) -> RenderedDocument:
     holes = Holes()
     showing, forms = Showing(lookup, pictures, holes), FormFields(head.number, holes)
-    environment = _environment(showing, forms, lookup)
+    functions = _functions(showing, forms, lookup)
     _, sections = split(template_file("documents", head.file))
     parts, hashed, own = [], [], []
     for section in sections:
         wording = texts.get((head.number, section.key))
         if wording is not None:
             own.append(section.heading)
-        markdown = _ours(environment, section, head) if wording is None else _department(wording, showing)
+        markdown = _ours(functions, section, head) if wording is None else _department(wording, showing)
         html = _section(head.number, section, to_html(markdown), wording is not None)
         parts.append(holes.fill(html))
         hashed.append(holes.fill(html, for_hash=True))
@@ -127,18 +128,29 @@ def _render(
     )  # fmt: skip
 
 
-def _environment(showing: Showing, forms: FormFields, lookup: Lookup) -> Environment:
-    environment = Environment(
-        undefined=StrictUndefined, autoescape=True, finalize=_refuse_none, keep_trailing_newline=True
-    )
-    environment.globals = {
+def _functions(showing: Showing, forms: FormFields, lookup: Lookup) -> dict[str, Any]:
+    """Return what a template may ask for; nothing else is known to it."""
+    return {
         "show": showing.show, "critical": showing.critical, "table": showing.table,
         "listing": showing.listing, "picture": showing.picture, "source": showing.source,
         "lines": forms.lines, "line": forms.line, "ticks": forms.ticks, "area": forms.area,
         "sheet": forms.sheet, "signatures": forms.signatures,
         "technique": lambda *names: not lookup.technique or lookup.technique in names,
     }  # fmt: skip
-    return environment
+
+
+@cache
+def _compiled(text: str) -> Template:
+    """Return template text ready to be filled in, compiled once."""
+    environment = Environment(
+        undefined=StrictUndefined,
+        autoescape=True,
+        finalize=_refuse_none,
+        trim_blocks=True,
+        lstrip_blocks=True,
+    )
+    environment.globals.clear()
+    return environment.from_string(text)
 
 
 def _refuse_none(value: Any) -> Any:
@@ -147,9 +159,9 @@ def _refuse_none(value: Any) -> Any:
     return value
 
 
-def _ours(environment: Environment, section: Section, head: DocumentHead) -> str:
+def _ours(functions: Mapping[str, Any], section: Section, head: DocumentHead) -> str:
     try:
-        return environment.from_string(section.text).render()
+        return _compiled(section.text).render(functions)
     except CatalogueError as error:
         raise CatalogueError(f"{head.file}, {section.heading}: {error}") from error
 

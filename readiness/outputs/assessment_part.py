@@ -1,0 +1,117 @@
+"""The part of the binder that speaks of the assessment: cover, contents, chief's page, lists and matrix."""
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+from functools import cache
+from typing import Any
+
+from jinja2 import Environment, FileSystemLoader, StrictUndefined
+
+from readiness.assessment.records import Assessment
+from readiness.outputs import assessment_rows as rows
+from readiness.outputs.contract import CAUTION, INVENTED
+from readiness.outputs.documents import RenderedDocument
+from readiness.outputs.frame import SAFETY, foot_words
+from readiness.outputs.words import VERDICT_SENTENCES, chosen_row
+from readiness.resources import folder
+
+
+@dataclass(frozen=True)
+class Sheet:
+    """One piece of the assessment part: where links lead, its title and its HTML."""
+
+    anchor: str
+    title: str
+    html: str
+
+
+@dataclass(frozen=True)
+class Entry:
+    """One line of the contents; ``page`` counts from the cover, 0 for a heading."""
+
+    level: int
+    target: str
+    title: str
+    status: str
+    pages: int
+    page: int
+
+
+# anchor, title, template
+SHEETS = (
+    ("chief", "For the chief: where the program stands", "chief.html.j2"),
+    ("gap-list", "What is to be done: the gap list", "gaps.html.j2"),
+    ("road", "The road to the first patient", "road.html.j2"),
+    ("matrix", "Requirements and what was found", "matrix.html.j2"),
+    ("values", "Values, their basis and their descent", "values.html.j2"),
+    ("evidence", "Evidence and input files", "evidence.html.j2"),
+    ("sources", "Sources, and how we know them", "sources.html.j2"),
+    ("words", "Words used in this binder", "words.html.j2"),
+)
+
+
+@cache
+def _environment() -> Environment:
+    return Environment(
+        loader=FileSystemLoader(folder("templates") / "binder"), undefined=StrictUndefined, autoescape=True,
+        trim_blocks=True, lstrip_blocks=True,
+    )  # fmt: skip
+
+
+def assessment_sheets(assessment: Assessment, rendered: Sequence[RenderedDocument]) -> tuple[Sheet, ...]:
+    """Return every sheet between the contents and the first document."""
+    context: dict[str, Any] = {
+        "verdict": VERDICT_SENTENCES[assessment.verdict.words],
+        "verdict_reasons": assessment.verdict.reasons,
+        "chosen": chosen_row(assessment),
+        "chosen_by": assessment.verdict.chosen_by,
+        "arrangements": rows.arrangements(assessment),
+        "not_listed": rows.arrangements_not_listed(assessment),
+        "blocking": rows.gaps(assessment, blocking_only=True),
+        "gaps": rows.gaps(assessment),
+        "exceptions": rows.exceptions(assessment),
+        "remembered": rows.remembered(assessment),
+        "worst_modes": rows.worst_failure_modes(assessment),
+        "figures": rows.figures(assessment),
+        "schedule": assessment.schedule,
+        "tasks": rows.tasks(assessment),
+        "matrix": rows.matrix(assessment),
+        "values": rows.values(assessment),
+        "evidence": rows.evidence(assessment),
+        "inputs": assessment.inputs,
+        "sources": rows.sources(assessment, rendered),
+        "known_words": rows.KNOWN_WORDS,
+        "versions": assessment.versions,
+    }
+    return tuple(_sheet(*each, assessment, context) for each in SHEETS)
+
+
+def cover_sheet(assessment: Assessment, unprintable: Sequence[str]) -> Sheet:
+    """Return the cover."""
+    context = {
+        "program": assessment.program,
+        "as_of": assessment.as_of.isoformat(),
+        "phase": assessment.phase,
+        "verdict": VERDICT_SENTENCES[assessment.verdict.words],
+        "chosen": chosen_row(assessment),
+        "chosen_by": assessment.verdict.chosen_by,
+        "caution": f"{CAUTION} {SAFETY}",
+        "invented": INVENTED if assessment.invented else "",
+        "versions": assessment.versions,
+        "approved": sum(state.status == "approved" for state in assessment.documents),
+        "documents": len(assessment.documents),
+        "unprintable": unprintable,
+    }
+    return _sheet("cover", "Cover", "cover.html.j2", assessment, context)
+
+
+def contents_sheet(assessment: Assessment, entries: Sequence[Entry]) -> Sheet:
+    """Return the contents."""
+    return _sheet("contents", "Contents", "contents.html.j2", assessment, {"entries": entries})
+
+
+def _sheet(
+    anchor: str, title: str, template: str, assessment: Assessment, context: Mapping[str, Any]
+) -> Sheet:
+    around = {"anchor": anchor, "title": title, "foot": foot_words(assessment)}
+    return Sheet(anchor, title, _environment().get_template(template).render({**context, **around}))

@@ -1,0 +1,262 @@
+"""The lines of the assessment part: gaps, requirements, values, evidence and sources, ready to print."""
+
+import re
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+from typing import Any
+
+from readiness.assessment.records import Assessment, Finding, Gap, Rule, Value
+from readiness.assessment.wording import in_words
+from readiness.outputs.documents import RenderedDocument
+from readiness.outputs.words import (
+    blocking,
+    date_words,
+    item_words,
+    known_words,
+    outcome_words,
+    value_title,
+    with_unit,
+)
+from readiness.quantities import Table
+from readiness.sources import HOW_KNOWN, publications
+from readiness.units import printed
+
+KNOWN_WORDS = tuple(HOW_KNOWN.items())
+MOST_ARRANGEMENTS = 8
+MOST_MODES = 10
+_SOURCE_LINK = re.compile(r'href="binder:source-([a-z0-9.-]+)"')
+
+
+@dataclass(frozen=True)
+class GapRow:
+    """One gap as it is printed."""
+
+    id: str
+    what: str
+    item: str
+    owner: str
+    earliest: str
+    strength: str
+    phase: str
+    when: str
+    task: str
+    rules: tuple[str, ...]
+
+
+@dataclass(frozen=True)
+class MatrixRow:
+    """One finding as it is printed; ``first`` marks the first line of its rule."""
+
+    rule: str
+    first: bool
+    title: str
+    strength: str
+    item: str
+    outcome: str
+    observed: str
+    limit: str
+    basis: str
+    sources: str
+    documents: tuple[str, ...]
+    message: str
+
+
+@dataclass(frozen=True)
+class SourceRow:
+    """One publication as it is printed."""
+
+    key: str
+    citation: str
+    url: str
+    known: str
+    rules: tuple[str, ...]
+    documents: tuple[str, ...]
+
+
+def arrangements(assessment: Assessment) -> tuple[tuple[str, str, str, str], ...]:
+    """Return the best arrangements: title, feasibility, what decides, figures."""
+    return tuple(
+        (
+            row.title,
+            row.feasibility,
+            " ".join(dict.fromkeys(finding.message for finding in row.deciding[:2])),
+            "; ".join(
+                f"{value_title(name).lower()} {with_unit(name, value)} ({basis})"
+                for name, value, basis in row.figures[:3]
+            ),
+        )
+        for row in assessment.arrangements[:MOST_ARRANGEMENTS]
+    )
+
+
+def arrangements_not_listed(assessment: Assessment) -> int:
+    """Return how many arrangements the chief's page leaves out."""
+    return max(0, len(assessment.arrangements) - MOST_ARRANGEMENTS)
+
+
+def gaps(assessment: Assessment, blocking_only: bool = False) -> tuple[GapRow, ...]:
+    """Return the gaps in their order, or only those that block now."""
+    return tuple(_gap(gap) for gap in (blocking(assessment) if blocking_only else assessment.gaps))
+
+
+def _gap(gap: Gap) -> GapRow:
+    return GapRow(
+        id=gap.id, what=gap.what, item=item_words(gap.item), owner=gap.owner,
+        earliest=date_words(gap.earliest), strength=gap.strength, phase=gap.phase,
+        when="due later" if gap.due_later else "due now", task=gap.task,
+        rules=tuple(dict.fromkeys(rule for rule, _ in gap.findings)),
+    )  # fmt: skip
+
+
+def matrix(assessment: Assessment) -> tuple[MatrixRow, ...]:
+    """Return one line for each finding that applies, and one for each rule that applies nowhere."""
+    rules = {rule.id: rule for rule in assessment.rules}
+    by_rule: dict[str, list[Finding]] = {rule: [] for rule in rules}
+    for finding in assessment.findings:
+        by_rule[finding.rule].append(finding)
+    lines = []
+    for rule, found in by_rule.items():
+        applying = [finding for finding in found if finding.outcome != "not applicable"] or found[:1]
+        lines += [_line(rules[rule], each, place == 0) for place, each in enumerate(applying)]
+    return tuple(lines)
+
+
+def _line(rule: Rule, finding: Finding, first: bool) -> MatrixRow:
+    def said(value: Any) -> str:
+        return "" if value is None else with_unit(rule.subject, value)
+
+    return MatrixRow(
+        rule=rule.id, first=first, title=rule.title, strength=rule.strength, item=item_words(finding.item),
+        outcome=outcome_words(finding), observed=said(finding.observed), limit=said(finding.limit),
+        basis=finding.basis, sources=known_words(rule), documents=rule.documents, message=finding.message,
+    )  # fmt: skip
+
+
+def exceptions(assessment: Assessment) -> tuple[tuple[str, str, str], ...]:
+    """Return what is excepted: rule, item, message."""
+    return tuple(
+        (finding.rule, item_words(finding.item), finding.message)
+        for finding in assessment.findings
+        if finding.outcome == "excepted"
+    )
+
+
+def remembered(assessment: Assessment) -> tuple[tuple[str, str, str], ...]:
+    """Return the must-rules not met or not assessed whose every source is recalled: id, title, sources."""
+    open_rules = {each.rule for each in assessment.findings if each.outcome in {"not met", "not assessed"}}
+    return tuple(
+        (rule.id, rule.title, known_words(rule))
+        for rule in assessment.rules
+        if rule.id in open_rules
+        and rule.strength == "must"
+        and rule.sources
+        and all(source.known == "memory" for source in rule.sources)
+    )
+
+
+def worst_failure_modes(assessment: Assessment) -> Table | None:
+    """Return the ranking of the failure modes that the team has scored, if there is one."""
+    found = [value.value for value in assessment.values if value.name == "program.worst_failure_modes"]
+    return found[0] if found and isinstance(found[0], Table) else None
+
+
+def figures(assessment: Assessment) -> tuple[tuple[str, str, str], ...]:
+    """Return money and hours of the program: what, how much, basis."""
+    wanted = ("_fte", "_h_per_week", "_h_per_year", "cost_likely", "cost_low", "cost_high")
+    return tuple(
+        (value_title(value.name), with_unit(value.name, value.value), value.basis)
+        for value in assessment.values
+        if value.item.kind == "program"
+        and value.name.endswith(wanted)
+        and isinstance(value.value, (int, float))
+    )
+
+
+def tasks(assessment: Assessment) -> tuple[tuple[str, ...], ...]:
+    """Return the road: task, owner, phase, days, from, to, latest, whose lead time, waits for."""
+    if assessment.schedule is None:
+        return ()
+    return tuple(
+        (
+            task.title, task.owner, task.phase, printed(task.working_days), task.start.isoformat(),
+            task.finish.isoformat(),
+            "moves the date" if task.critical else task.latest_finish.isoformat(),
+            "done" if task.done else task.lead_time,
+        )
+        for task in assessment.schedule.tasks
+    )  # fmt: skip
+
+
+def values(assessment: Assessment) -> tuple[tuple[str, str, str, str, str, str], ...]:
+    """Return every value that was measured, worked out or assumed: name, item, value, basis, from, source."""
+    return tuple(
+        (
+            value.name,
+            item_words(value.item),
+            _number(value),
+            value.basis,
+            _descent(value),
+            f"{value.source} ({value.known})" if value.source else "",
+        )
+        for value in assessment.values
+        if value.item.kind != "criterion" and (value.inputs or value.source or value.basis != "stated")
+    )
+
+
+def _number(value: Value) -> str:
+    if isinstance(value.value, float):
+        text = f"{printed(value.value, 6)} {value.unit}".strip()
+    else:
+        text = with_unit(value.name, value.value)
+    return text if value.sd is None else f"{text} (sd {printed(value.sd, 2)})"
+
+
+def _descent(value: Value) -> str:
+    names = dict.fromkeys(each.name for each in value.inputs)
+    said = [", ".join(names)] if names else []
+    if value.where is not None:
+        said.append(str(value.where))
+    if value.instead_of is not None:
+        replaced = value.instead_of
+        said.append(f"instead of {with_unit(replaced.name, replaced.value)} ({replaced.basis})")
+    return "; ".join(said)
+
+
+def evidence(assessment: Assessment) -> tuple[tuple[str, ...], ...]:
+    """Return the evidence register: id and its fields."""
+    fields = ("title", "type", "file", "revision", "dated_on", "approved_by", "expires_on")
+    known = {(value.name, value.item): in_words(value.value) for value in assessment.values}
+    items = sorted({value.item for value in assessment.values if value.item.kind == "evidence"})
+    return tuple(
+        (item.id, *(known.get((f"evidence.{field}", item), "") for field in fields)) for item in items
+    )
+
+
+def sources(assessment: Assessment, rendered: Sequence[RenderedDocument]) -> tuple[SourceRow, ...]:
+    """Return every publication that a rule, value or document of this binder points to."""
+    known: dict[str, dict[str, None]] = {}
+    rules: dict[str, dict[str, None]] = {}
+    documents: dict[str, dict[str, None]] = {}
+    for rule in assessment.rules:
+        for source in rule.sources:
+            rules.setdefault(source.key, {})[rule.id] = None
+            known.setdefault(source.key, {})[source.known] = None
+    for value in assessment.values:
+        if value.source:
+            known.setdefault(value.source, {})[value.known] = None
+    for document in rendered:
+        for key in _SOURCE_LINK.findall(document.html_body):
+            documents.setdefault(key, {})[document.number] = None
+            known.setdefault(key, {})
+    return tuple(
+        SourceRow(
+            key=key, citation=publications()[key].citation, url=publications()[key].url,
+            known=", ".join(word for word in known[key] if word),
+            rules=tuple(rules.get(key, ())), documents=tuple(documents.get(key, ())),
+        )
+        for key in sorted(_in_library(known))
+    )  # fmt: skip
+
+
+def _in_library(keys: Iterable[str]) -> set[str]:
+    return {key for key in keys if key in publications()}
