@@ -13,14 +13,12 @@ import numpy as np
 from numpy.typing import NDArray
 
 from readiness.calculations.field_setup import STEEPEST_TILT_DEG, FieldSetup
-from readiness.calculations.scatter_at_plane import RaysAtPlane, ScatterAtPlane
+from readiness.calculations.scatter_at_plane import KERNEL, RaysAtPlane, ScatterAtPlane
 from readiness.errors import OutsideValidity
 
 Array = NDArray[np.float64]
 
 OBLIQUITY_POWER = 2  # dose = crossings of the plane x secant^2; 1 is the physical value (own-fit, fit)
-SLICES = 10  # within 0.1 % of the centre from 250 cm on, up to 12 MeV
-NEAR_CM, NEAR_SLICES = 250.0, 32  # nearer, the blur is narrow against the field
 
 
 class Opening(NamedTuple):
@@ -44,9 +42,11 @@ class Slices(NamedTuple):
     vertical_stretch: Array
 
 
-def slices_needed(distance_cm: float) -> int:
-    """Return how many slices a plane at this distance needs."""
-    return SLICES if distance_cm >= NEAR_CM else NEAR_SLICES
+def slices_needed(setup: FieldSetup, scatter: ScatterAtPlane, distance_cm: float) -> int:
+    """Return how many slices reach 0.1 % of the centre: the narrower the blur in the opening, the more."""
+    blur2 = scatter.rays(np.array(distance_cm), np.array(1.0)).air_variance_cm2
+    narrowest = float(np.sqrt(blur2)) * min(width for _, width in KERNEL)
+    return 4 + int(np.ceil(2 * setup.opening_cm / 200 * distance_cm / narrowest))
 
 
 @lru_cache(maxsize=32)

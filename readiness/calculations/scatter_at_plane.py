@@ -20,6 +20,7 @@ Array = NDArray[np.float64]
 
 STEEPEST_SECANT = 1.35  # of the angle between ray and plane normal: 25 degrees of tilt, turned collimator
 NODES = 9
+FINEST_BLUR_CM = 0.5  # at the plane even without air: the source is not a point (practice)
 KERNEL: tuple[tuple[float, float], ...] = tuple(
     (float(weight or 0), float(width or 0)) for weight, width in published_table("scatter_kernel").rows
 )
@@ -76,7 +77,7 @@ class ScatterAtPlane:
 
     def rays(self, distance_cm: Array, secant: Array) -> RaysAtPlane:
         """Return the rays' widths across themselves and their transmission, in the shape of the arguments."""
-        sigma = self._scale * self._sigma(distance_cm * secant)
+        sigma = np.maximum(self._scale * self._sigma(distance_cm * secant), FINEST_BLUR_CM)
         if not self._degraded:
             return RaysAtPlane(sigma**2, np.zeros_like(sigma), np.ones_like(sigma))
         near = np.broadcast_to(distance_cm, secant.shape)

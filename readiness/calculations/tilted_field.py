@@ -33,7 +33,7 @@ def tilted_fields(
     """
     nearest, farthest = reach_cm or (distance_cm, distance_cm)
     scatter = scatter_at_plane(setup, nearest - MARGIN_CM, farthest)
-    count = slices or slices_needed(distance_cm)
+    count = slices or slices_needed(setup, scatter, distance_cm)
     found = slices_at_plane(setup, scatter, tilts_deg, distance_cm, count)
     blur2 = np.concatenate(
         [
