@@ -69,15 +69,11 @@ def pencil_beam_in_air(
     Source: eyges-1948 (memory) for the moments; own-fit (fit) for the cut.
     """
     density = air_density_g_per_cm3(pressure_kpa=pressure_kpa, temperature_celsius=temperature_celsius)
-    beam = beams_in_air(
-        energy_at_source_mev=energy_at_source_mev, path_cm=path_cm, density_g_per_cm3=density
-    )
+    beam = beams_in_air(energy_at_source_mev=energy_at_source_mev, path_cm=path_cm, density_g_per_cm3=density)
     return PencilBeam(float(beam.sigma_cm), float(beam.angle_rad), float(beam.energy_mev))
 
 
-def beams_in_air(
-    *, energy_at_source_mev: ArrayLike, path_cm: ArrayLike, density_g_per_cm3: float
-) -> AirBeam:
+def beams_in_air(*, energy_at_source_mev: ArrayLike, path_cm: ArrayLike, density_g_per_cm3: float) -> AirBeam:
     """
     Return width, angle and energy of pencil beams behind paths in air, all at once.
 

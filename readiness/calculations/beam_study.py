@@ -5,12 +5,12 @@ Distances beyond the room's reach are studied too, so that a room that fails can
 """
 
 from dataclasses import dataclass
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
 from readiness.calculations.angle_choice import (
-    AngleAtDistance,
     angle_at_distance,
     angles_by_distance,
     distance_for_both_limits_cm,
@@ -121,24 +121,18 @@ def arrangement_study(
         across_step_cm=ACROSS_STEP_CM,
     )
 
-    def at(distance_cm: float) -> AngleAtDistance:
-        """Return the best angle of a distance."""
-        return angle_at_distance(
-            study=study,
-            distance_cm=distance_cm,
-            metric=metric,
-            vertical_limit_percent=vertical_limit_percent,
-            horizontal_limit_percent=horizontal_limit_percent,
-        )
-
-    here = at(plane_distance_cm)
-    angles = angles_by_distance(
-        study=study,
-        metric=metric,
-        vertical_limit_percent=vertical_limit_percent,
-        horizontal_limit_percent=horizontal_limit_percent,
+    limits: dict[str, Any] = {
+        "study": study,
+        "metric": metric,
+        "vertical_limit_percent": vertical_limit_percent,
+        "horizontal_limit_percent": horizontal_limit_percent,
+    }
+    here = angle_at_distance(distance_cm=plane_distance_cm, **limits)
+    angles = angles_by_distance(**limits)
+    best_cm = _recommended(angles, nearest_reachable_cm, farthest_reachable_cm)
+    remedy = remedy_for_uniformity(
+        angles=angles, plane_distance_cm=plane_distance_cm, farthest_reachable_cm=farthest_reachable_cm
     )
-    recommended = at(_recommended(angles, nearest_reachable_cm, farthest_reachable_cm))
     return ArrangementStudy(
         best_tilt_deg=here.best_tilt_deg,
         lowest_passing_tilt_deg=here.lowest_passing_tilt_deg,
@@ -148,20 +142,13 @@ def arrangement_study(
         map_half_range_percent=here.map_half_range_percent,
         vertical_within=here.vertical_within,
         horizontal_within=here.horizontal_within,
-        recommended_distance_cm=recommended.distance_cm,
-        tilt_at_recommended_distance_deg=recommended.best_tilt_deg,
+        recommended_distance_cm=best_cm,
+        tilt_at_recommended_distance_deg=angle_at_distance(distance_cm=best_cm, **limits).best_tilt_deg,
         distance_for_both_limits_cm=distance_for_both_limits_cm(angles=angles),
-        remedy=remedy_for_uniformity(
-            angles=angles, plane_distance_cm=plane_distance_cm, farthest_reachable_cm=farthest_reachable_cm
-        ),
+        remedy=remedy,
         by_distance=angles,
         by_distance_and_tilt=uniformity_over_distance_and_tilt(
-            study=study,
-            metric=metric,
-            vertical_limit_percent=vertical_limit_percent,
-            horizontal_limit_percent=horizontal_limit_percent,
-            every_distance=LISTED,
-            every_tilt=LISTED,
+            every_distance=LISTED, every_tilt=LISTED, **limits
         ),
     )
 

@@ -151,9 +151,7 @@ def _through(material: str, energy: Array, angle: Array, path: Array, cut: Array
         mass = density * step * (1 + slope**2)
         middle = left - 0.5 * mass * total_stopping_power(material=material, energy_mev=np.atleast_1d(left))
         middle = np.maximum(middle, SLOWEST_MEV)
-        own = own + 0.5 * density * step * scattering_power(
-            material=material, energy_mev=middle, cut_rad=cut
-        )
+        own = own + 0.5 * density * step * scattering_power(material=material, energy_mev=middle, cut_rad=cut)
         left = left - mass * total_stopping_power(material=material, energy_mev=middle)
         left = np.maximum(left, SLOWEST_MEV)
     capped = np.minimum(np.sqrt(own), LARGEST_ANGLE_RAD)

@@ -1,9 +1,9 @@
 """The dual field as it is planned: profiles, map, evenness, and what the ends of the patient get."""
 
 from dataclasses import dataclass
+from typing import Any
 
 import numpy as np
-from numpy.typing import NDArray
 
 from readiness.calculations.field_at_plane import (
     ACROSS_STEP_CM,
@@ -18,8 +18,6 @@ from readiness.calculations.field_setup import FieldSetup
 from readiness.calculations.plane_uniformity import uniformity_of_plane
 from readiness.calculations.uniformity import coverage_length_cm, coverage_of_profile
 from readiness.quantities import Table
-
-Array = NDArray[np.float64]
 
 LISTED_STEP_CM = 5.0  # of the profiles in the tables
 
@@ -96,20 +94,15 @@ def predicted_plane(
     beside = max(uniformity_half_width_cm, field_width_cm / 2)
     across = even_grid(half_length_cm=beside, step_cm=ACROSS_STEP_CM)
 
-    def doses_at(up: Array, aside: Array) -> Array:
-        """Return the dual field over a grid."""
-        return dual_field_doses(
-            setup=setup,
-            plane_distance_cm=plane_distance_cm,
-            tilt_toward_head_deg=tilt_toward_head_deg,
-            tilt_toward_feet_deg=tilt_toward_feet_deg,
-            mid_height_cm=mid_height_cm,
-            mu_share_upper=mu_share_upper,
-            heights_cm=up,
-            across_cm=aside,
-        )
-
-    doses = doses_at(heights, across)
+    pair: dict[str, Any] = {
+        "setup": setup,
+        "plane_distance_cm": plane_distance_cm,
+        "tilt_toward_head_deg": tilt_toward_head_deg,
+        "tilt_toward_feet_deg": tilt_toward_feet_deg,
+        "mid_height_cm": mid_height_cm,
+        "mu_share_upper": mu_share_upper,
+    }
+    doses = dual_field_doses(heights_cm=heights, across_cm=across, **pair)
     even = uniformity_of_plane(
         heights_cm=heights,
         across_cm=across,
@@ -137,5 +130,7 @@ def predicted_plane(
         ends.at_hands,
         profile_table(positions_cm=heights[listed], doses=vertical[listed], position_name="height"),
         profile_table(positions_cm=across, doses=horizontal, position_name="across"),
-        map_table(heights_cm=tall, across_cm=wide, doses=doses_at(tall, wide)),
+        map_table(
+            heights_cm=tall, across_cm=wide, doses=dual_field_doses(heights_cm=tall, across_cm=wide, **pair)
+        ),
     )
