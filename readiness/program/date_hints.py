@@ -24,8 +24,7 @@ def hint(text: str) -> str:
     if len(meant) == 2:
         day_first, month_first = meant
         return (
-            f": write it year-month-day, {day_first} if the day stands first,"
-            f" {month_first} if the month does"
+            f": write it year-month-day, {day_first} if the day stands first, {month_first} if the month does"
         )
     return ": write year-month-day, as in 2026-02-01"
 
