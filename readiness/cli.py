@@ -22,7 +22,7 @@ _CAUTION = (
 )
 
 
-class _Day(click.ParamType):
+class _Day(click.ParamType[date]):
     """A date as year-month-day."""
 
     name = "YYYY-MM-DD"

@@ -39,6 +39,10 @@ from readiness.assessment.verdict import give_verdict
 from readiness.program.items import Program
 
 CONTRACT = "1"
+DATED_VERDICTS = (
+    "ready",
+    "ready when gaps close",
+)  # no date is promised where nothing is known to be possible
 _LATE = ("document", "exception", "local_limit")  # judged when documents, exceptions and limits are known
 Bodies = Callable[[Assessment], Mapping[str, str]]
 
@@ -76,8 +80,8 @@ def assess(program: Program, as_of: date, bodies: Bodies | None = None) -> Asses
     late, _ = excepted(late, by_id, program, as_of)
     findings = _in_rule_order((*shown, *(f for f in late if _is_shown(f, graph))), local.rules)
     gaps = find_gaps(findings, by_id, _phase(program))
-    schedule, gaps = plan_road(program, gaps, as_of)
     verdict = give_verdict(program, rows, chosen, findings, by_id)
+    schedule, gaps = plan_road(program, gaps, as_of, possible=verdict.words in DATED_VERDICTS)
     return replace(first, findings=findings, gaps=gaps, schedule=schedule, documents=states, verdict=verdict)
 
 

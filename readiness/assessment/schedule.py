@@ -19,6 +19,7 @@ from readiness.calculations.task_progress import Progress
 from readiness.calculations.working_days import WorkingDays, working_days
 from readiness.program.items import Program
 
+_NO_DATE = "No date of a first patient can be given while no arrangement is known to be possible."
 _WEEKDAYS = ("monday", "tuesday", "wednesday", "thursday", "friday")
 
 
@@ -44,12 +45,15 @@ def program_tasks(program: Program) -> tuple[Task, ...]:
     return with_own_tasks(tasks=library_tasks(), own=own)
 
 
-def plan_road(program: Program, gaps: tuple[Gap, ...], as_of: date) -> tuple[Schedule, tuple[Gap, ...]]:
+def plan_road(
+    program: Program, gaps: tuple[Gap, ...], as_of: date, *, possible: bool
+) -> tuple[Schedule, tuple[Gap, ...]]:
     """
     Return the schedule of everything that open gaps need, and the gaps with what they wait for.
 
     Lead times are the department's where it states them, else common practice. The road holds the tasks of
     open gaps, the department's own tasks and the release; what is left out hands on what it waited for.
+    No date of a first patient is given unless an arrangement is known to be possible.
     """
     tasks = program_tasks(program)
     own = {item.id for item in program.of_kind("task")}
@@ -90,6 +94,8 @@ def plan_road(program: Program, gaps: tuple[Gap, ...], as_of: date) -> tuple[Sch
         for row in moves.records()
         if row["gain_if_no_time_working_days"]
     )[:5]
+    if not possible:
+        return Schedule(scheduled, None, target, None, (), (_NO_DATE,)), gaps
     schedule = Schedule(
         scheduled, road.first_patient, target, road.late_working_days, movers, _remarks(road.out_of_order)
     )

@@ -122,12 +122,10 @@ def _exceptions(assessment: Assessment, width: int) -> str:
 
 def _road(assessment: Assessment, width: int) -> str:
     schedule = assessment.schedule
-    if (
-        schedule is None
-        or schedule.first_patient is None
-        or assessment.verdict.words == "no feasible arrangement"
-    ):
+    if schedule is None:
         return ""
+    if schedule.first_patient is None:
+        return "\n".join(_wrapped(remark, width) for remark in schedule.remarks)
     text = f"FIRST PATIENT not before {schedule.first_patient.isoformat()}"
     if schedule.target:
         late = schedule.working_days_late or 0

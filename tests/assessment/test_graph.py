@@ -3,12 +3,12 @@
 from datetime import date
 
 import pytest
-from tests.assessment.small import graph, item, program, small_catalogue
 
 from readiness.assessment.definition import Definition, Measured
 from readiness.assessment.records import Gone, Input, Ref, Value
 from readiness.errors import CatalogueError, OutsideValidity
 from readiness.quantities import Table, Uncertain
+from tests.assessment.small import graph, item, program, small_catalogue
 
 ROOM = Ref("room", "a")
 

@@ -4,7 +4,6 @@ from dataclasses import replace
 from datetime import date
 
 import pytest
-from tests.assessment.small import DAY, graph, item, program, rule, small_catalogue
 
 from readiness.assessment.conditions import CONDITIONS, fits
 from readiness.assessment.definition import Definition, Measured
@@ -14,6 +13,7 @@ from readiness.assessment.judge import judge, judge_item
 from readiness.assessment.records import Clause, Ref
 from readiness.assessment.ruleset import check_rule
 from readiness.errors import CatalogueError
+from tests.assessment.small import DAY, graph, item, program, rule, small_catalogue
 
 ROOM = Ref("room", "a")
 
