@@ -21,7 +21,7 @@ def explain_value(name: str, assessment: Assessment, item: str | None, width: in
     Return a value with its whole descent.
 
     Raises:
-        UsageError: If there is no such value, with the nearest name, or if it is not known, with what to supply.
+        UsageError: If there is no such value, with the nearest name.
     """
     known = catalogue()
     if not known.has(name):

@@ -23,8 +23,8 @@ def list_rules(topic: str | None, strength: str | None, width: int, as_json: boo
         if (not topic or topic.lower() in rule.topic.lower()) and (not strength or rule.strength == strength)
     ]
     if as_json:
-        listed = [{"id": r.id, "title": r.title, "strength": r.strength, "topic": r.topic, "subject": r.subject}
-                  for r in chosen]  # fmt: skip
+        keys = ("id", "title", "strength", "topic", "subject")
+        listed = [{key: getattr(rule, key) for key in keys} for rule in chosen]
         return json.dumps({"rules": listed}, ensure_ascii=False, indent=1) + "\n"
     if not chosen:
         topics = ", ".join(dict.fromkeys(rule.topic for rule in load_rules(catalogue())))

@@ -134,7 +134,7 @@ def _road(assessment: Assessment, width: int) -> str:
     lines = [text]
     titles = {task.id: task.title for task in schedule.tasks}
     for task, gain in schedule.movers[:3]:
-        lines.append(_wrapped(f"{titles.get(task, task)}: its time moves the date by up to {gain:g} working days",
-                              width, "    ", "  - "))  # fmt: skip
+        words = f"{titles.get(task, task)}: its time moves the date by up to {gain:g} working days"
+        lines.append(_wrapped(words, width, "    ", "  - "))
     lines += [_wrapped(remark, width, "  ") for remark in schedule.remarks]
     return "\n".join(lines)
