@@ -87,12 +87,7 @@ def field_schemas(descriptions: Mapping[str, Description], kind: str) -> dict[st
 def field_schema(kind: str, name: str, description: Description, *, column: bool = False) -> FieldSchema:
     """Return one field, or raise CatalogueError if its description does not fit together."""
     where = f"{kind}.{name}"
-    if not isinstance(name, str) or not name.replace("_", "a").isalnum() or name != name.lower():
-        raise CatalogueError(f"{where}: a name has small letters, digits and underscores")
-    if not isinstance(description, dict):
-        raise CatalogueError(f"{where}: a mapping is expected")
-    _only(description, _FIELD_KEYS, where)
-    _text(description, "meaning", where)
+    _field_form(name, description, where)
     result = FieldSchema(
         kind=kind,
         name=name,
@@ -126,6 +121,13 @@ def field_schema(kind: str, name: str, description: Description, *, column: bool
     if column and result.type not in _IN_A_ROW | {"scalars"}:
         raise CatalogueError(f"{where}: a column cannot be of type {result.type!r}")
     return result
+
+
+def _field_form(name: str, description: Description, where: str) -> None:
+    if not isinstance(name, str) or not name.replace("_", "a").isalnum() or name != name.lower():
+        raise CatalogueError(f"{where}: a name has small letters, digits and underscores")
+    _only(description, _FIELD_KEYS, where)
+    _text(description, "meaning", where)
 
 
 def _inner(description: Description, form: str, file: str, owner: str) -> dict[str, KindSchema]:
