@@ -6,6 +6,7 @@ exception covers it. Whatever does not fit is a located problem in local_rules.y
 """
 
 import difflib
+import json
 from collections.abc import Iterable
 from dataclasses import dataclass
 from typing import Any
@@ -196,10 +197,15 @@ def _clauses(item: Item) -> tuple[Clause, ...]:
     return tuple(
         Clause(
             str(row["subject"]), str(row["condition"]),
-            row.get("limit") if row.get("limit") is not None else row.get("limits"),
+            row.get("limit") if row.get("limit") is not None else _list_in_row(row.get("limits")),
         )
         for row in table.records()
     )  # fmt: skip
+
+
+def _list_in_row(text: Any) -> Any:
+    """Return the list that a table row holds as JSON text."""
+    return None if text is None else tuple(json.loads(text))
 
 
 def _never(clauses: tuple[Clause, ...]) -> list[str]:
