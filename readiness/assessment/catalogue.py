@@ -110,7 +110,10 @@ def _prove(definition: Definition, known: Catalogue) -> None:
         raise CatalogueError(f"value {name}: its meaning is not a sentence")
     if definition.of and definition.of not in known.definitions:
         raise CatalogueError(f"value {name} takes a part of {definition.of}, which is not defined")
-    if not (definition.by or definition.of or definition.measured):
+    if definition.otherwise:
+        take = Take("one", definition.otherwise, optional=False)
+        _prove_take(name, definition.kind, name, take, known, ())
+    if not (definition.by or definition.of or definition.measured or definition.otherwise):
         raise CatalogueError(f"value {name} says nothing of how it is found")
     if definition.by:
         _prove_takes(name, definition.kind, definition.by, known.takes[name], known, ())
@@ -159,8 +162,7 @@ def _needs(name: str, known: Catalogue) -> Iterator[str]:
     definition = known.definitions.get(name)
     if definition is None:
         return
-    if definition.of:
-        yield definition.of
+    yield from (each for each in (definition.of, definition.otherwise) if each)
     for _, take in (*known.takes.get(name, ()), *known.measured_takes.get(name, ())):
         if take.form == "rows":
             yield from (f"{take.name}.{column}" for column, _ in take.columns)

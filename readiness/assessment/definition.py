@@ -46,6 +46,8 @@ class Definition:
         by: Calculation; None for a part of another value or a field with a measurement.
         takes: Keyword -> value name, see above.
         of, part: Take an attribute of the record that another (internal) value holds.
+        otherwise: Value that stands in, with its own basis, where this one cannot be had: a prediction for
+            what is neither measured nor stated.
         model: The result is a prediction whatever its inputs.
         critical: A treatment-critical number.
         internal: Holds a record for other values; never shown.
@@ -59,6 +61,7 @@ class Definition:
     takes: Mapping[str, str] = field(default_factory=dict)
     of: str = ""
     part: str = ""
+    otherwise: str = ""
     model: bool = False
     critical: bool = False
     internal: bool = False

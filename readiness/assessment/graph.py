@@ -6,6 +6,7 @@ a default that nobody stated. What a measurement replaced stays visible.
 """
 
 from collections.abc import Mapping
+from dataclasses import replace
 from datetime import date
 from functools import cached_property
 from typing import Any
@@ -144,6 +145,8 @@ class Graph:
         claim: Got | None = stated
         if definition is not None and claim is None and (definition.by or definition.of):
             claim = self._calculated(definition, ref)
+        if definition is not None and definition.otherwise and not isinstance(claim, Value):
+            claim = self._otherwise(definition, ref, claim)
         if claim is None or isinstance(claim, Gone):
             default = self._assumed(name, ref)
             claim = default or claim
@@ -189,11 +192,26 @@ class Graph:
             if isinstance(whole, Gone):
                 return whole
             result = getattr(whole.value, definition.part)
+            if result is None:
+                return self._no_answer(definition, ref)
             inputs = whole.inputs if self._is_internal(definition.of) else (
                 Input("record", definition.of, whole.item),
             )  # fmt: skip
             return self._value(definition, ref, result, inputs, whole.basis, None)
         return self._run(definition, definition.by, self.catalogue.takes[definition.name], ref, None)
+
+    @staticmethod
+    def _no_answer(definition: Definition, ref: Ref) -> Gone:
+        words = f"{definition.meaning} It has no answer here."
+        return Gone((Cause("validity", definition.name, ref, words),))
+
+    def _otherwise(self, definition: Definition, ref: Ref, claim: Gone | None) -> Got:
+        stands_in = self.get(definition.otherwise, ref)
+        own = claim.causes if claim is not None else ()
+        if isinstance(stands_in, Gone):
+            return Gone(tuple(sorted({*own, *stands_in.causes})))
+        inputs = (Input("otherwise", stands_in.name, stands_in.item),)
+        return replace(stands_in, name=definition.name, item=ref, inputs=inputs)
 
     def _run(
         self,
@@ -213,12 +231,10 @@ class Graph:
             return Gone((Cause("validity", definition.name, ref, str(outside)),))
         except ValueError as contradiction:
             return Gone((Cause("contradiction", definition.name, ref, f"{contradiction} ({ref})"),))
-        if result is None:
-            return Gone(
-                (Cause("validity", definition.name, ref, f"{definition.meaning} It has no answer here."),)
-            )
-        if part:
+        if result is not None and part:
             result = getattr(result, part)
+        if result is None:
+            return self._no_answer(definition, ref)
         basis = "measured" if measurement else weakest(bases + (["predicted"] if definition.model else []))
         return self._value(definition, ref, result, inputs, basis, measurement)
 

@@ -1,5 +1,6 @@
 """Values are worked out once, with descent, basis and root causes."""
 
+from dataclasses import dataclass
 from datetime import date
 
 import pytest
@@ -201,3 +202,54 @@ def test_a_circle_is_refused_and_printed() -> None:
     two = Definition("room.two_cm", "Two.", by=lambda *, a_cm: a_cm, takes={"a_cm": "room.one_cm"})
     with pytest.raises(CatalogueError, match="room.one_cm <- room.two_cm <- room.one_cm"):
         small_catalogue(one, two)
+
+
+CHOSEN_HEADROOM = Definition(
+    "room.chosen_headroom_cm", "Headroom that plans are made with.", by=lambda *, headroom_cm: headroom_cm,
+    takes={"headroom_cm": "room.headroom_cm"}, otherwise="room.guessed_headroom_cm",
+)  # fmt: skip
+GUESSED_HEADROOM = Definition(
+    "room.guessed_headroom_cm", "Guess from the door.", by=lambda *, door_clear_width_cm: 2 * door_clear_width_cm, model=True,
+    takes={"door_clear_width_cm": "room.door_clear_width_cm"},
+)  # fmt: skip
+
+
+def test_a_prediction_stands_in_with_its_own_basis_only_where_nothing_better_is_had() -> None:
+    """What is stated counts as stated; a prediction is used, and named as one, only without it."""
+    values = (HEADROOM, CHOSEN_HEADROOM, GUESSED_HEADROOM)
+    stated = {"ceiling_height_cm": 300.0, "isocentre_height_cm": 130.0}
+    known = graph(program(item("room", "a", **stated, door_clear_width_cm=90.0)), *values)
+    guessed = graph(program(item("room", "a", door_clear_width_cm=90.0)), *values)
+    one, other = (each.get("room.chosen_headroom_cm", ROOM) for each in (known, guessed))
+    assert isinstance(one, Value)
+    assert isinstance(other, Value)
+    assert ((170.0, "stated"), (180.0, "predicted")) == ((one.value, one.basis), (other.value, other.basis))
+    assert [each.name for each in other.inputs] == ["room.guessed_headroom_cm"]
+
+
+def test_without_either_both_roots_are_named() -> None:
+    """Where even the prediction is missing, each thing that would help is a cause."""
+    got = graph(program(item("room", "a", isocentre_height_cm=130.0)), HEADROOM, CHOSEN_HEADROOM, GUESSED_HEADROOM).get(
+        "room.chosen_headroom_cm", ROOM
+    )
+    assert isinstance(got, Gone)
+    assert [cause.what for cause in got.causes] == ["room.ceiling_height_cm", "room.door_clear_width_cm"]
+
+
+@dataclass(frozen=True)
+class Pair:
+    """Two parts, one of them blank."""
+
+    first: float
+    second: float | None
+
+
+def test_a_part_that_a_record_does_not_have_is_no_value() -> None:
+    """A record's blank is not known; it is never a value of its own."""
+    whole = Definition("room.pair", "A pair.", by=lambda *, ceiling_height_cm: Pair(ceiling_height_cm, None), internal=True,
+                       takes={"ceiling_height_cm": "room.ceiling_height_cm"})  # fmt: skip
+    first = Definition("room.first_cm", "Its first part.", of="room.pair", part="first")
+    second = Definition("room.second_cm", "Its second part.", of="room.pair", part="second")
+    of = graph(program(item("room", "a", ceiling_height_cm=300.0)), whole, first, second)
+    assert isinstance(of.get("room.first_cm", ROOM), Value)
+    assert isinstance(of.get("room.second_cm", ROOM), Gone)
