@@ -1,11 +1,10 @@
 """Energy at the source from the energy at 100 cm, and energy at a depth in water."""
 
-from scipy.optimize import brentq
-
 from readiness.calculations.air_transport import HIGHEST_MEV, LOWEST_MEV, pencil_beam_in_air
 from readiness.errors import OutsideValidity
 
 REFERENCE_DISTANCE_CM = 100.0  # where R50 and Rp are measured
+REPEATS, SETTLED_MEV = 20, 1e-6  # the loss hardly depends on the energy, so that few repeats suffice
 
 
 def most_probable_energy_at_depth_mev(*, surface_energy_mev: float, depth_cm: float) -> float:
@@ -87,19 +86,20 @@ def energy_at_source_mev(
     if surface_energy_mev <= 0:
         raise ValueError("an energy must be positive")
 
-    def excess(energy: float) -> float:
-        """Return how much a source energy exceeds the wanted one at 100 cm."""
+    energy = min(max(surface_energy_mev, LOWEST_MEV), HIGHEST_MEV)
+    for _ in range(REPEATS):
         beam = pencil_beam_in_air(
             energy_at_source_mev=energy,
             path_cm=REFERENCE_DISTANCE_CM,
             pressure_kpa=pressure_kpa,
             temperature_celsius=temperature_celsius,
         )
-        return beam.mean_energy_mev - surface_energy_mev
-
-    if excess(LOWEST_MEV) > 0 or excess(HIGHEST_MEV) < 0:
-        raise OutsideValidity(
-            f"{surface_energy_mev:.3g} MeV at 100 cm is outside the beam model "
-            f"({LOWEST_MEV:g} to {HIGHEST_MEV:g} MeV at the source)"
-        )
-    return float(brentq(excess, LOWEST_MEV, HIGHEST_MEV, xtol=1e-6))
+        before, energy = energy, surface_energy_mev + energy - beam.mean_energy_mev
+        if not LOWEST_MEV <= energy <= HIGHEST_MEV:
+            raise OutsideValidity(
+                f"{surface_energy_mev:.3g} MeV at 100 cm is outside the beam model "
+                f"({LOWEST_MEV:g} to {HIGHEST_MEV:g} MeV at the source)"
+            )
+        if abs(energy - before) <= SETTLED_MEV:
+            break
+    return energy
