@@ -1,5 +1,10 @@
 """What each value means and which calculation gives it, one module a subject."""
 
 from readiness.assessment.definition import Definition
+from readiness.assessment.values import (
+    arrangement_choices,
+)
 
-ALL: tuple[Definition, ...] = ()
+ALL: tuple[Definition, ...] = (
+    *arrangement_choices.DEFINITIONS,
+)
