@@ -13,6 +13,7 @@ from readiness.quantities import Scalar, Table
 
 TASKS = ("task", "profession", "per", "minutes_min", "persons")
 ROLES = ("role", "profession", "available_fte")
+LISTED = ("person", "role", "qualified", "available_fte")
 PEOPLE = ("person", "profession", "fte", "qualified")
 TASK_HOURS = ("task", "profession", "phase", "per", "times", "persons", "minutes_min", "total_h")
 BALANCE = (
@@ -85,16 +86,17 @@ def people_with_fte(*, roles: Table, people: Table) -> Table:
 
     Args:
         roles: Roles with their professions and full-time equivalents; columns of ROLES.
-        people: Columns person, role and qualified.
+        people: People with their roles and their own time, blank where it is not stated; columns of LISTED.
 
     Returns:
         One row per person, columns of PEOPLE; a role of which nobody is listed has a row without a person.
 
     Raises:
-        ValueError: If an FTE is negative, or a person has a role that is not listed.
+        ValueError: If an FTE is negative, a person has a role that is not listed, or the people of a role
+            have more time than the role.
 
     Valid for: the day for which the qualifications were judged.
-    Assumes: that the people of one role share its time equally; list roles apart where they do not.
+    Assumes: that those without a time of their own share equally what the others leave of the role's.
     Source: definition (derived).
     """
     members: dict[str, list[dict[str, Scalar]]] = {str(role): [] for role in roles.column("role")}
@@ -105,11 +107,14 @@ def people_with_fte(*, roles: Table, people: Table) -> Table:
         members[role_id].append(person)
     rows: list[tuple[Scalar, ...]] = []
     for role in roles.records():
-        fte, crew = _amount(role, "available_fte"), members[str(role["role"])]
-        share = None if fte is None else fte / max(1, len(crew))
-        rows += [(person["person"], role["profession"], share, person["qualified"]) for person in crew]
+        crew = members[str(role["role"])]
+        times = _times(role, crew)
+        rows += [
+            (person["person"], role["profession"], fte, person["qualified"])
+            for person, fte in zip(crew, times, strict=True)
+        ]
         if not crew:
-            rows.append((None, role["profession"], share, False))
+            rows.append((None, role["profession"], _amount(role, "available_fte"), False))
     return Table.of(PEOPLE, rows)
 
 
@@ -207,6 +212,17 @@ def profession_fte_qualified(*, people: Table, profession: str) -> float:
     if fte is None:
         raise OutsideValidity(f"the time of a qualified {profession} for the program is not stated")
     return fte
+
+
+def _times(role: dict[str, Scalar], crew: list[dict[str, Scalar]]) -> list[float | None]:
+    """Return the time of each person of a role: the person's own, or a share of what the others leave."""
+    own = [_amount(person, "available_fte") for person in crew]
+    whole, sharing = _amount(role, "available_fte"), own.count(None)
+    left = None if whole is None else whole - sum(fte for fte in own if fte is not None)
+    if left is not None and left < -1e-9:
+        raise ValueError(f"the people of role {role['role']!r} have {-left:g} FTE more than the role")
+    share = None if left is None or not sharing else max(0.0, left) / sharing
+    return [share if fte is None else fte for fte in own]
 
 
 def _amount(row: dict[str, Scalar], column: str) -> float | None:

@@ -4,6 +4,7 @@ import pytest
 
 from readiness.calculations.patient_flow import WEEKS_PER_YEAR
 from readiness.calculations.staff_hours import (
+    LISTED,
     PEOPLE,
     ROLES,
     TASKS,
@@ -85,8 +86,8 @@ def test_only_stated_qualifications_count():
 def test_people_of_a_role_share_its_time():
     """Four therapists with 0.40 FTE together have 0.10 each; a role without people keeps its time without a person."""
     roles = Table.of(ROLES, [("therapists", "therapist", 0.40), ("nurse", "nurse", 0.05), ("md", "oncologist", None)])
-    listed = [(f"T{n}", "therapists", n != 4) for n in (1, 2, 3, 4)] + [("O1", "md", True)]
-    crew = people_with_fte(roles=roles, people=Table.of(("person", "role", "qualified"), listed))
+    listed = [(f"T{n}", "therapists", n != 4, None) for n in (1, 2, 3, 4)] + [("O1", "md", True, None)]
+    crew = people_with_fte(roles=roles, people=Table.of(LISTED, listed))
     assert crew.columns == PEOPLE
     assert crew.rows[:2] == (("T1", "therapist", 0.10, True), ("T2", "therapist", 0.10, True))
     assert crew.rows[3:] == (
@@ -100,7 +101,17 @@ def test_a_person_of_an_unlisted_role_is_refused():
     """A slip in a role's id is named."""
     roles = Table.of(ROLES, [("therapists", "therapist", 0.40)])
     with pytest.raises(ValueError, match="'T1' has the role 'therapist', which is not listed"):
-        people_with_fte(roles=roles, people=Table.of(("person", "role", "qualified"), [("T1", "therapist", True)]))
+        people_with_fte(roles=roles, people=Table.of(LISTED, [("T1", "therapist", True, None)]))
+
+
+def test_a_persons_own_time_counts_and_the_others_share_the_rest():
+    """Of 0.15 FTE one physicist has 0.10, so that the other has 0.05; more than the role has is refused."""
+    roles = Table.of(ROLES, [("physicists", "physicist", 0.15)])
+    listed = [("P1", "physicists", True, 0.10), ("P2", "physicists", False, None)]
+    crew = people_with_fte(roles=roles, people=Table.of(LISTED, listed))
+    assert crew.column("fte") == pytest.approx((0.10, 0.05))
+    with pytest.raises(ValueError, match="0.05 FTE more than the role"):
+        people_with_fte(roles=roles, people=Table.of(LISTED, [("P1", "physicists", True, 0.20)]))
 
 
 def test_time_that_nobody_stated_is_not_zero():
