@@ -8,12 +8,11 @@ import re
 from collections.abc import Sequence as Listed
 
 from readiness.errors import Place, Problem
-from readiness.program.decoding import decode, lines_of
+from readiness.program.decoding import decode, first_problems, lines_of
 from readiness.program.nodes import CsvText, Scalar
 from readiness.program.wording import shown
 from readiness.program.yaml_traps import WIDE_SPACES
 
-MOST_PROBLEMS = 50  # of one file; the rest is usually the same slip again
 MOST_COLUMNS = 200
 MOST_ROWS = 100_000
 
@@ -43,11 +42,7 @@ def parse_csv(name: str, content: bytes) -> tuple[CsvText | None, list[Problem]]
         return None, [*problems, Problem(Place(name), "the file is empty; fill it or delete it", "empty")]
     reader = _Reader(name, problems)
     table = reader.read(lines_of(text))
-    found = reader.problems
-    if len(found) > MOST_PROBLEMS:
-        rest = Problem(Place(name), f"{len(found) - MOST_PROBLEMS} more problems in this file", "syntax")
-        found = [*found[:MOST_PROBLEMS], rest]
-    return table, found
+    return table, first_problems(reader.problems)
 
 
 class _Reader:

@@ -11,6 +11,8 @@ import re
 from readiness.errors import Place, Problem
 from readiness.program.wording import character_name
 
+MOST_PROBLEMS = 50  # told of one file; the rest is usually the same slip again
+
 _LINE_END = re.compile(r"\r\n|\n|\r")
 _BINARY = (
     (b"PK\x03\x04", "a workbook or another zip archive"),
@@ -59,6 +61,17 @@ def place_of(name: str, text: str, index: int) -> Place:
     return Place(name, len(before), len(before[-1]) + 1)
 
 
+def first_problems(problems: list[Problem]) -> list[Problem]:
+    """Return the problems of one file in order of place, the many after the first fifty as one."""
+    ordered = sorted(problems)
+    if len(ordered) <= MOST_PROBLEMS:
+        return ordered
+    rest = (
+        f"{len(ordered) - MOST_PROBLEMS} more problems in this file from here on; mend the first ones first"
+    )
+    return [*ordered[:MOST_PROBLEMS], Problem(ordered[MOST_PROBLEMS].place, rest, "more")]
+
+
 def refused_characters(text: str) -> list[str]:
     """Return each character of a text that is refused, once, in the order in which they stand."""
     if text.isascii() and text.isprintable():
@@ -103,15 +116,15 @@ def _not_utf8(name: str, body: bytes, start: int) -> tuple[str, list[Problem]]:
         message = "half of a character stands here (a lone surrogate); delete it and write it again"
         text = body.decode("utf-8", errors="replace").replace("\ufffd", " ")
         return text, [Problem(place, message, "encoding")]
-    western = body.decode("cp1252", errors="replace").replace("\ufffd", " ")
+    western = body.decode("cp1252", errors="replace")
     high = [character for character in western if ord(character) > 126]
     likely = sum(character.isalpha() or character in "°²³µ±·×½¼–—‘’“”…€§" for character in high)
     read_as = bytes([body[start]]).decode("cp1252", errors="replace")
-    if high and likely >= 0.9 * len(high):
+    if read_as != "\ufffd" and likely >= 0.9 * len(high):
         message = f'the file is not UTF-8 but probably Windows-1252 or Latin-1 (here "{read_as}"); {_SAVE}'
     else:
         message = f"the file is not UTF-8 (byte {body[start]:02X} here); {_SAVE}"
-    return western, [Problem(place, message, "encoding")]
+    return western.replace("\ufffd", " "), [Problem(place, message, "encoding")]
 
 
 def _without_refused(name: str, text: str, problems: list[Problem]) -> tuple[str, list[Problem]]:

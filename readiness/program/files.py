@@ -147,7 +147,8 @@ def _not_a_folder(folder: Path) -> str:
             return "there is no such folder; check the spelling, or start one with: readiness new FOLDER"
         if not folder.is_dir():
             return "is a file, not a folder; name the folder that holds it"
-        next(os.scandir(folder), None)
+        with os.scandir(folder):
+            pass
     except (OSError, ValueError) as error:
         reason = getattr(error, "strerror", None) or "its name cannot be used"
         return f"the folder cannot be read: {reason.lower()}"
@@ -161,7 +162,8 @@ def _walk(folder: Path, names: Names, problems: list[Problem]) -> Iterator[Path]
     while pending:
         here = pending.pop(0)
         try:
-            entries = sorted(os.scandir(here), key=lambda entry: entry.name)
+            with os.scandir(here) as listing:
+                entries = sorted(listing, key=lambda entry: entry.name)
         except OSError as error:
             inside = here.relative_to(folder).as_posix()
             message = f"the folder cannot be read: {(error.strerror or 'unknown reason').lower()}"

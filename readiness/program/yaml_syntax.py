@@ -156,6 +156,8 @@ def _starting_character(fault: Fault) -> Found | None:
             written = fault.text(line)[column : column + 1]
             if written and written in characters:
                 return line, column, f'put a text that begins with "{written}" in quotes'
+    if fault.character == "\t":
+        return fault.line, fault.column, "a tab stands here; use spaces"
     if fault.character and fault.says("cannot start any token"):
         return fault.line, fault.column, f'put a text that begins with "{fault.character}" in quotes'
     if fault.character in {"]", "}", ",", ":"} and fault.says("node content"):

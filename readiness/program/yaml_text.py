@@ -11,7 +11,7 @@ from collections.abc import Iterator
 import yaml
 
 from readiness.errors import Place, Problem
-from readiness.program.decoding import decode, lines_of, refusal, refused_characters
+from readiness.program.decoding import decode, first_problems, lines_of, refusal, refused_characters
 from readiness.program.nodes import Mapping, Node, Scalar, Sequence
 from readiness.program.wording import shown
 from readiness.program.yaml_syntax import explain
@@ -20,7 +20,6 @@ from readiness.program.yaml_traps import Written, missing_space, position, traps
 LOADER = getattr(yaml, "CSafeLoader", yaml.SafeLoader)  # the C parser where it is installed
 DEEPEST = 20
 MOST_NODES = 200_000
-MOST_PROBLEMS = 50  # of one file; the rest is usually the same slip again
 
 _QUOTE = 'put the text in quotes if it begins with "{}"'
 
@@ -44,11 +43,7 @@ def parse_yaml(name: str, content: bytes) -> tuple[Node | None, list[Problem]]:
         return None, [*problems, Problem(Place(name), "the file is empty; fill it or delete it", "empty")]
     builder = _Builder(name, text, problems)
     root = builder.build()
-    found = builder.problems
-    if len(found) > MOST_PROBLEMS:
-        rest = Problem(Place(name), f"{len(found) - MOST_PROBLEMS} more problems in this file", "syntax")
-        found = [*found[:MOST_PROBLEMS], rest]
-    return root, found
+    return root, first_problems(builder.problems)
 
 
 class _StopError(Exception):
@@ -119,7 +114,9 @@ class _Builder:
             ended = self.stack.pop()
             self._add(ended.closed())
         elif isinstance(event, yaml.AliasEvent):
-            reason = "repeating an entry by its name (*) is not read: write it out, or "
+            reason = (
+                "repeating an entry (*) is refused, so that each entry shows its own value: write it out, or "
+            )
             self._note(self._place(event), reason + _QUOTE.format("*"), "alias")
             self._count(event)
             self._add(None)
@@ -195,7 +192,8 @@ class _Builder:
             self._note(node.place, "the name before the colon is missing", "syntax")
             return None
         if node.text == "<<" and not node.quoted:
-            self._note(node.place, 'taking over entries with "<<" is not read: write them out', "alias")
+            message = 'taking over entries with "<<" is refused: write them out, so that each shows its value'
+            self._note(node.place, message, "alias")
             return None
         if not node.quoted and (slip := missing_space(node.text)):
             self._note(node.place, slip, "syntax")
@@ -211,11 +209,11 @@ class _Builder:
 
     def _check_marks(self, event: yaml.NodeEvent) -> None:
         if event.anchor is not None:
-            reason = "naming an entry (&) to repeat it is not read: write it out where it is needed, or "
+            reason = "naming an entry (&) to repeat it is refused; write it out where it is needed, or "
             self._note(self._place(event), reason + _QUOTE.format("&"), "alias")
         tag = getattr(event, "tag", None)
         if tag is not None:
-            reason = "types (!) are not read: delete it, or "
+            reason = "types (!) are refused, because the field says what it holds: delete it, or "
             self._note(self._place(event), reason + _QUOTE.format("!"), "tag")
 
     def _count(self, event: yaml.Event) -> None:
