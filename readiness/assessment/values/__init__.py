@@ -3,8 +3,10 @@
 from readiness.assessment.definition import Definition
 from readiness.assessment.values import (
     arrangement_choices,
+    beam_energy,
 )
 
 ALL: tuple[Definition, ...] = (
     *arrangement_choices.DEFINITIONS,
+    *beam_energy.DEFINITIONS,
 )

@@ -19,6 +19,11 @@ def chosen_gap(*, degrader_gap_cm: float) -> float:
     return degrader_gap_cm
 
 
+def smallest_gap(*, turning_radius_cm: float, clearance_cm: float) -> float:
+    """Return the smallest gap between degrader and plane that clears the turning patient."""
+    return turning_radius_cm + clearance_cm
+
+
 def mu_ratio(*, mu_share_upper: float) -> float:
     """Return the MU of the field aimed at the head divided by the MU of the one aimed at the feet."""
     if not 0 < mu_share_upper < 1:
@@ -65,6 +70,23 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Plane distance for which the field is predicted.",
         by=chosen_plane_distance,
         takes={"plane_distance_cm": "arrangement.plane_distance_cm"},
-        part="choice",
+    ),
+    Definition(
+        "arrangement.smallest_gap_cm",
+        "Smallest gap between degrader and plane that clears the turning patient.",
+        by=smallest_gap,
+        takes={
+            "turning_radius_cm": "stand.turning_radius_cm",
+            "clearance_cm": "criterion.turning_clearance_cm",
+        },
+        source="practice",
+        known="practice",
+    ),
+    Definition(
+        "arrangement.study_gap_cm",
+        "Gap between degrader and plane for which the field is predicted: the chosen one, else the smallest.",
+        by=chosen_gap,
+        takes={"degrader_gap_cm": "arrangement.degrader_gap_cm"},
+        otherwise="arrangement.smallest_gap_cm",
     ),
 )
