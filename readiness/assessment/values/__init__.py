@@ -4,9 +4,11 @@ from readiness.assessment.definition import Definition
 from readiness.assessment.values import (
     arrangement_choices,
     beam_energy,
+    beam_foil,
 )
 
 ALL: tuple[Definition, ...] = (
     *arrangement_choices.DEFINITIONS,
     *beam_energy.DEFINITIONS,
+    *beam_foil.DEFINITIONS,
 )
