@@ -5,10 +5,12 @@ from readiness.assessment.values import (
     arrangement_choices,
     beam_energy,
     beam_foil,
+    courses,
 )
 
 ALL: tuple[Definition, ...] = (
     *arrangement_choices.DEFINITIONS,
     *beam_energy.DEFINITIONS,
     *beam_foil.DEFINITIONS,
+    *courses.DEFINITIONS,
 )
