@@ -26,6 +26,19 @@ def test_wide_encodings_are_named_and_still_read(codec):
     assert f"written in {codec[:6].upper()}; save it as UTF-8" in problems[0].message
 
 
+@pytest.mark.parametrize(
+    ("message", "content"),
+    [
+        ('x.yaml:2:3: the file is not UTF-8 but probably Windows-1252 or Latin-1 (here "ü"); save it as UTF-8 [encoding]', b"a\nT-\xfcr \x9620 \xb0C"),
+        ("x.yaml:1:2: the file is not UTF-8 (byte A4 here); save it as UTF-8 [encoding]", b"a\xa4\xac\xa8\xfc"),
+        ("x.yaml:1:2: the file is not UTF-8 (byte 81 here); save it as UTF-8 [encoding]", b"a\x81"),
+    ],
+)  # fmt: skip
+def test_other_encodings_are_suspected_only_where_they_give_letters(message, content):
+    """Windows-1252 is named if it makes letters and usual signs of the bytes."""
+    assert [message] == [str(problem) for problem in decode("x.yaml", content)[1]]
+
+
 def test_character_is_told_once_with_its_count():
     """The same bad character is one problem, at its first place."""
     _, problems = decode("x.yaml", "a\u200bb\nc\u200bd\u200b".encode())

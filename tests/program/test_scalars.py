@@ -222,7 +222,8 @@ def test_switch_words_need_quotes_to_be_a_text(text):
 
 @pytest.mark.parametrize("text", ["null", "~"])
 def test_nothing_words_are_not_texts(text):
-    """Unquoted null and ~ are taken for "not known"."""
+    """Unquoted null and ~ are taken for "not known", in quotes they are texts."""
+    assert (text, None) == read_text(written(text, quoted=True), what="name")
     _, problem = read_text(written(text), what="name")
     expected = f'name must be a text, not "{text}": leave it out if it is not known, or put it in quotes if you mean the word'
     assert expected == problem.message

@@ -9,7 +9,7 @@ from readiness.errors import Place
 from readiness.program import yaml_text
 from readiness.program.decoding import MOST_PROBLEMS
 from readiness.program.nodes import Mapping, Scalar, Sequence
-from readiness.program.yaml_text import DEEPEST, MOST_NODES, parse_yaml
+from readiness.program.yaml_text import DEEPEST, parse_yaml
 
 
 def parse(text: str):
@@ -154,10 +154,21 @@ def test_thousands_of_levels_are_refused():
     assert "levels inside each other" in problems[0].message
 
 
-def test_too_many_entries_are_refused():
-    """A file with more entries than any program holds is refused at the entry that is too many."""
-    node, problems = parse("a:\n" + "- 1\n" * MOST_NODES)
-    assert (None, ["size"]) == (node, [problem.kind for problem in problems])
+def test_too_many_entries_are_refused(monkeypatch):
+    """A file with as many entries as the limit is read, one more is refused at the entry that is too many."""
+    monkeypatch.setattr(yaml_text, "MOST_NODES", 10)
+    assert [] == parse("a:\n" + "- 1\n" * 7)[1]
+    node, problems = parse("a:\n" + "- 1\n" * 8)
+    assert (None, "rooms.yaml:9:3: the file holds more than 10 entries [size]") == (node, str(problems[0]))
+
+
+@pytest.mark.parametrize(
+    ("at", "text"), [("1:1", "room:2\nname: vault\n"), ("2:5", "rooms:\n  - room:2\n"), ("2:3", "note: x\n  room:2\n"), ("1:5", "a: {room:2}\n")]
+)
+def test_missing_space_after_a_colon_is_told_once(at, text):
+    """A name and its value written together are told wherever they would pass for a text."""
+    (problem,) = parse(text)[1]
+    assert f"rooms.yaml:{at}: a space is missing after the colon; write \"room: 2\"" == str(problem).removesuffix(" [syntax]").removesuffix(", or put it in quotes")
 
 
 def test_one_slip_repeated_does_not_fill_the_screen():
