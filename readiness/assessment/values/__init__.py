@@ -4,6 +4,7 @@ from readiness.assessment.definition import Definition
 from readiness.assessment.values import (
     arrangement_choices,
     beam_energy,
+    beam_field,
     beam_foil,
     courses,
 )
@@ -11,6 +12,7 @@ from readiness.assessment.values import (
 ALL: tuple[Definition, ...] = (
     *arrangement_choices.DEFINITIONS,
     *beam_energy.DEFINITIONS,
+    *beam_field.DEFINITIONS,
     *beam_foil.DEFINITIONS,
     *courses.DEFINITIONS,
 )
