@@ -352,6 +352,8 @@ class Graph:
         if isinstance(got, Gone):
             return got
         value = getattr(got.value, measured.part) if measured.part else got.value
+        if value is None:
+            return self._no_answer(definition, ref)
         inputs = (Input("measurement", take.name, measurement),)
         return self._value(definition, ref, value, inputs, "measured", measurement)
 

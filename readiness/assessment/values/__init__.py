@@ -4,15 +4,19 @@ from readiness.assessment.definition import Definition
 from readiness.assessment.values import (
     arrangement_choices,
     beam_energy,
+    beam_evenness,
     beam_field,
     beam_foil,
+    beam_profiles,
     courses,
 )
 
 ALL: tuple[Definition, ...] = (
     *arrangement_choices.DEFINITIONS,
     *beam_energy.DEFINITIONS,
+    *beam_evenness.DEFINITIONS,
     *beam_field.DEFINITIONS,
     *beam_foil.DEFINITIONS,
+    *beam_profiles.DEFINITIONS,
     *courses.DEFINITIONS,
 )
