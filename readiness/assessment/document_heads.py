@@ -23,7 +23,7 @@ TECHNIQUES = ("six-position", "rotating-platform", "moving-couch")
 _REQUIRED = ("number", "title", "part", "kind", "owner", "approvers", "purpose")
 _NUMBER = re.compile(r"[1-9][0-9]*\.[1-9][0-9]*")
 _FRONT_MATTER = re.compile(r"\A---\n(.*?)\n---\n(.*)\Z", re.DOTALL)
-_HEADING = re.compile(r"^## +(.+?) *$", re.MULTILINE)
+_HEADING = re.compile(r"^## +(.+?)(?: *\{([a-z -]+)\})? *$", re.MULTILINE)  # "## Tilt {six-position}"
 _Loader = getattr(yaml, "CSafeLoader", yaml.SafeLoader)
 
 
@@ -60,11 +60,12 @@ class DocumentHead:
 
 @dataclass(frozen=True)
 class Section:
-    """One part of a document: its key, its heading and the template text under it."""
+    """One part of a document: key, heading, template text, and the techniques for which it is shown."""
 
     key: str
     heading: str
     text: str
+    shown_when: tuple[str, ...] = ()
 
 
 @cache
@@ -105,8 +106,11 @@ def split(path: Path) -> tuple[dict[str, Any], tuple[Section, ...]]:
     pieces = _HEADING.split(matched[2])
     if pieces[0].strip():
         raise CatalogueError(f"{path.name}: text stands before the first heading")
-    pairs = zip(pieces[1::2], pieces[2::2], strict=True)
-    return front, tuple(Section(section_key(heading), heading, text.strip()) for heading, text in pairs)
+    each = zip(pieces[1::3], pieces[2::3], pieces[3::3], strict=True)
+    return front, tuple(
+        Section(section_key(heading), heading, text.strip(), tuple((techniques or "").split()))
+        for heading, techniques, text in each
+    )
 
 
 def section_key(heading: str) -> str:
@@ -146,8 +150,12 @@ def _check(name: str, front: dict[str, Any], sections: tuple[Section, ...]) -> N
         raise CatalogueError(f"{name}: kind {front['kind']!r} is none of {', '.join(KINDS)}")
     if not front["approvers"] or not all(isinstance(each, str) for each in front["approvers"]):
         raise CatalogueError(f"{name}: nobody approves it")
-    if not set(front.get("shown_when", ())) <= set(TECHNIQUES):
-        raise CatalogueError(f"{name}: shown_when names an unknown technique")
+    shown_when = {
+        *front.get("shown_when", ()),
+        *(each for section in sections for each in section.shown_when),
+    }
+    if not shown_when <= set(TECHNIQUES):
+        raise CatalogueError(f"{name}: an unknown technique is named")
     keys = [section.key for section in sections]
     if not keys or len(keys) != len(set(keys)):
         raise CatalogueError(f"{name}: no part, or a part stands twice")

@@ -12,6 +12,7 @@ from readiness.outputs import assessment_rows as rows
 from readiness.outputs.contract import CAUTION, INVENTED
 from readiness.outputs.documents import RenderedDocument
 from readiness.outputs.frame import SAFETY, foot_words
+from readiness.outputs.frame import anchor as place
 from readiness.outputs.words import VERDICT_SENTENCES, chosen_row
 from readiness.resources import folder
 
@@ -52,10 +53,12 @@ SHEETS = (
 
 @cache
 def _environment() -> Environment:
-    return Environment(
+    environment = Environment(
         loader=FileSystemLoader(folder("templates") / "binder"), undefined=StrictUndefined, autoescape=True,
         trim_blocks=True, lstrip_blocks=True,
     )  # fmt: skip
+    environment.filters["anchor"] = place
+    return environment
 
 
 def assessment_sheets(assessment: Assessment, rendered: Sequence[RenderedDocument]) -> tuple[Sheet, ...]:

@@ -16,6 +16,8 @@ CRITICAL: Mapping[str, tuple[str, ...]] = {
     "arrangement.tilt_deg": ("as-built-record", "vertical-uniformity"),
     "arrangement.degrader_gap_cm": ("as-built-record", "degrader-clears-patient"),
     "degrader.thickness_cm": ("as-built-record", "dose-at-4-mm"),
+    "plan.pair_output_cgy_per_mu": ("pair-output",),
+    "plan.b_factor": ("b-factor",),
     "patient_shield.thickness_mm": ("shield-thickness", "shield-transmission"),
 }
 

@@ -112,6 +112,8 @@ def _render(
     _, sections = split(template_file("documents", head.file))
     parts, hashed, own = [], [], []
     for section in sections:
+        if lookup.technique and section.shown_when and lookup.technique not in section.shown_when:
+            continue
         wording = texts.get((head.number, section.key))
         if wording is not None:
             own.append(section.heading)
@@ -133,6 +135,7 @@ def _functions(showing: Showing, forms: FormFields, lookup: Lookup) -> dict[str,
     return {
         "show": showing.show, "critical": showing.critical, "table": showing.table,
         "listing": showing.listing, "picture": showing.picture, "source": showing.source,
+        "failure_modes": showing.failure_modes, "score_scale": showing.score_scale,
         "lines": forms.lines, "line": forms.line, "ticks": forms.ticks, "area": forms.area,
         "sheet": forms.sheet, "signatures": forms.signatures,
         "technique": lambda *names: not lookup.technique or lookup.technique in names,

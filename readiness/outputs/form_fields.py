@@ -10,6 +10,8 @@ from readiness.outputs.holes import Holes, plain
 
 SIGNED = ("Role", "Name", "Date, time", "Signature")
 
+_MINUS = re.compile(r"(?<![a-z0-9])-(?![a-z])")  # a sign, not a hyphen
+
 
 class FormFields:
     """
@@ -56,9 +58,9 @@ class FormFields:
             ticked: Headings whose cells are boxes to tick.
         """
         heads = "".join(f'<th scope="col">{_with_unit(each)}</th>' for each in columns)
-        named = () if isinstance(rows, int) else tuple(rows)
-        names = named or tuple(str(count + 1) for count in range(int(str(rows)) if not named else 0))
-        body = "".join(self._row(name, columns, bool(named), ticked) for name in names)
+        named = not isinstance(rows, int)
+        names = [str(count + 1) for count in range(rows)] if isinstance(rows, int) else rows
+        body = "".join(self._row(name, columns, named, ticked) for name in names)
         css = "sheet" if named else "sheet blank-rows"
         return self._block(
             f'<table class="{css}"><thead><tr>{heads}</tr></thead><tbody>{body}</tbody></table>'
@@ -98,7 +100,8 @@ class FormFields:
         return f'<input type="checkbox" name="{self._name(label)}" title="{words}" aria-label="{words}">'
 
     def _name(self, label: str) -> str:
-        key = re.sub(r"[^a-z0-9]+", "-", label.lower()).strip("-")
+        signs = _MINUS.sub(" minus ", label.lower().replace("+", " plus "))
+        key = re.sub(r"[^a-z0-9]+", "-", signs).strip("-")
         name = f"{self._prefix}-{key}"
         if name in self.names:
             raise CatalogueError(f"two fields of one form are called {name}")

@@ -54,7 +54,9 @@ class Holes:
 
 @cache
 def _markdown() -> MarkdownIt:
-    reader = MarkdownIt("commonmark", {"html": False, "typographer": False}).enable("table")
+    reader = MarkdownIt("commonmark", {"html": False, "typographer": False}).enable(
+        ["table", "strikethrough"]
+    )
     return reader.disable(["image", "html_block", "html_inline"])
 
 

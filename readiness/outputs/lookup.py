@@ -101,9 +101,9 @@ class Lookup:
         found = self._values.get((name, where))
         return found if found is not None else Missing(name, where, self._what_to_supply(name, where))
 
-    def text(self, name: str) -> str:
-        """Return a value as plain text, "" where it is missing."""
-        found = self.get(name)
+    def text_of(self, name: str, item: Ref) -> str:
+        """Return a value of an item as plain text, "" where it is missing."""
+        found = self.get(name, item)
         return str(found.value) if isinstance(found, Value) else ""
 
     def items(self, kind: str) -> tuple[Ref, ...]:

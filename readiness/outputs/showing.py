@@ -8,6 +8,7 @@ from readiness.assessment.records import Ref, Value
 from readiness.assessment.wording import in_words
 from readiness.errors import CatalogueError
 from readiness.outputs.critical import CRITICAL, open_rules
+from readiness.outputs.failure_mode_table import modes_html, scale_html
 from readiness.outputs.holes import Holes, plain
 from readiness.outputs.lookup import Lookup, Missing
 from readiness.quantities import Table
@@ -77,6 +78,14 @@ class Showing:
         words = f"Drawing of the {name.replace('-', ' ')}: none yet; what it shows is not described."
         html = f'<p class="need">{words}</p>' if svg is None else f'<figure class="picture">{svg}</figure>'
         return Markup(self._holes.put(html, block=True, hashed=name))  # noqa: S704 - as below
+
+    def failure_modes(self) -> Markup:
+        """Return the failure modes with causes, effects, controls and the team's scores."""
+        return self._block(modes_html(self._lookup))
+
+    def score_scale(self) -> Markup:
+        """Return what the scores of failure modes mean."""
+        return self._block(scale_html())
 
     def source(self, key: str, at: str, known: str) -> Markup:
         """Return a publication with the place in it and how it is known."""
