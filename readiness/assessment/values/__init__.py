@@ -3,6 +3,7 @@
 from readiness.assessment.definition import Definition
 from readiness.assessment.values import (
     arrangement_choices,
+    beam_depth,
     beam_energy,
     beam_evenness,
     beam_field,
@@ -13,6 +14,7 @@ from readiness.assessment.values import (
 
 ALL: tuple[Definition, ...] = (
     *arrangement_choices.DEFINITIONS,
+    *beam_depth.DEFINITIONS,
     *beam_energy.DEFINITIONS,
     *beam_evenness.DEFINITIONS,
     *beam_field.DEFINITIONS,
