@@ -76,6 +76,11 @@ class Definition:
         return self.name.partition(".")[0]
 
 
+def derived(name: str, meaning: str, by: Callable[..., Any], takes: Mapping[str, str]) -> Definition:
+    """Return a value that follows from its inputs by definition, without a source or a model of its own."""
+    return Definition(name, meaning, by=by, takes=takes, source="definition", known="derived")
+
+
 @dataclass(frozen=True)
 class Take:
     """One parsed entry of ``takes``."""

@@ -180,6 +180,30 @@ def mean_sessions_per_week(*, courses: Table) -> float:
     return sessions_per_year(courses=courses) / WEEKS_PER_YEAR
 
 
+def treatment_days_per_year(*, courses: Table) -> float:
+    """
+    Return the days a year on which at least one session is expected, where nobody has counted them.
+
+    days = min(S, d W (1 - exp(-L)))
+
+    Args:
+        courses: The mix of courses, with the columns of COURSES.
+
+    Returns:
+        Days, never more than the sessions. [per year]
+
+    Raises:
+        ValueError: If the table has no course or an impossible number.
+
+    Valid for: referrals at random; everybody under treatment comes on the same days of the week.
+    Assumes: that nobody waits, so that the number under treatment is Poisson with mean L; holidays count.
+    Source: mirasol-1963 (memory) for the share of time without a patient; the product is derived.
+    """
+    days_per_week = max(weekly for _, _, _, weekly, _ in checked_courses(courses=courses))
+    in_use = 1 - math.exp(-patients_under_treatment(courses=courses))
+    return min(sessions_per_year(courses=courses), days_per_week * WEEKS_PER_YEAR * in_use)
+
+
 def peak_sessions_per_week(*, courses: Table, places: int) -> float:
     """
     Return the sessions in the busiest week: every place taken by the course with most sessions a week.

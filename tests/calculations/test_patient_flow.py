@@ -17,6 +17,7 @@ from readiness.calculations.patient_flow import (
     peak_sessions_per_week,
     sessions_per_year,
     total_patients_per_year,
+    treatment_days_per_year,
 )
 from readiness.quantities import Table
 
@@ -131,3 +132,16 @@ def test_impossible_questions_about_the_peak_are_refused():
         peak_patients(mean_patients=-1, share_of_time=0.9)
     with pytest.raises(ValueError, match="hold no patient"):
         peak_sessions_per_week(courses=MIX, places=0)
+
+
+def test_few_patients_share_no_day_and_many_share_every_day():
+    """One patient in ten years has a day for each session; fifty at once leave no treatment day empty."""
+    assert treatment_days_per_year(courses=mix(patients_per_year=0.1)) == pytest.approx(3.6, rel=0.02)
+    assert treatment_days_per_year(courses=mix(patients_per_year=261)) == pytest.approx(4 * WEEKS_PER_YEAR)
+
+
+def test_treatment_days_of_the_sample_mix():
+    """59 patient weeks a year leave the room without a patient for exp(-1.13) of the time: 141 days."""
+    expected = 4 * WEEKS_PER_YEAR * (1 - math.exp(-59 / WEEKS_PER_YEAR))
+    assert treatment_days_per_year(courses=MIX) == pytest.approx(expected)
+    assert expected == pytest.approx(141, abs=0.5)

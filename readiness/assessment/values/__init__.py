@@ -9,7 +9,9 @@ from readiness.assessment.values import (
     beam_field,
     beam_foil,
     beam_profiles,
+    capacity,
     courses,
+    patient_flow,
 )
 
 ALL: tuple[Definition, ...] = (
@@ -20,5 +22,7 @@ ALL: tuple[Definition, ...] = (
     *beam_field.DEFINITIONS,
     *beam_foil.DEFINITIONS,
     *beam_profiles.DEFINITIONS,
+    *capacity.DEFINITIONS,
     *courses.DEFINITIONS,
+    *patient_flow.DEFINITIONS,
 )
