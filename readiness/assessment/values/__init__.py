@@ -14,6 +14,7 @@ from readiness.assessment.values import (
     capacity,
     courses,
     patient_flow,
+    staff_time,
 )
 
 ALL: tuple[Definition, ...] = (
@@ -29,4 +30,5 @@ ALL: tuple[Definition, ...] = (
     *capacity.DEFINITIONS,
     *courses.DEFINITIONS,
     *patient_flow.DEFINITIONS,
+    *staff_time.DEFINITIONS,
 )
