@@ -16,6 +16,7 @@ from readiness.assessment.values import (
     costs,
     courses,
     patient_flow,
+    risk,
     staff_time,
 )
 
@@ -34,5 +35,6 @@ ALL: tuple[Definition, ...] = (
     *costs.DEFINITIONS,
     *courses.DEFINITIONS,
     *patient_flow.DEFINITIONS,
+    *risk.DEFINITIONS,
     *staff_time.DEFINITIONS,
 )
