@@ -49,10 +49,9 @@ def risk_analysis(*, modes: Table) -> RiskAnalysis:
 def _mode(name: str, row: dict[str, Any], shipped: FailureMode | None) -> FailureMode:
     """Return a mode with what the department wrote in place of what ships."""
     mode = shipped or FailureMode(name, "not stated", "", "not stated", "not stated", (), ())
-    parts: dict[str, Any] = {
-        key: row[key] for key in ("step", "failure", "cause", "effect", *_LISTS) if row[key] is not None
-    }
-    return replace(mode, **{key: tuple(part) if key in _LISTS else str(part) for key, part in parts.items()})
+    parts = {key: row[key] for key in ("step", "failure", "cause", "effect", *_LISTS) if row[key] is not None}
+    own: dict[str, Any] = {key: tuple(part) if key in _LISTS else str(part) for key, part in parts.items()}
+    return replace(mode, **own)
 
 
 def ranking(*, risks: RiskAnalysis) -> Table:
