@@ -13,7 +13,9 @@ MADE: Mapping[str, tuple[str, ...]] = {
     "exposure": ("arrangement", "barrier"),
     "criterion": ("program",),
     "document": ("program",),
-    "measurement": ("beam", "machine", "room", "degrader", "stand", "couch", "instrument", "program"),
+    "measurement": (
+        "beam", "machine", "room", "degrader", "stand", "couch", "instrument", "patient_shield", "program",
+    ),
     "progress": ("program",),
 }
 # fields that the assessment itself gives, kind -> name -> meaning

@@ -26,7 +26,8 @@ _COMPARED: Mapping[str, tuple[str, float | None]] = {
     "mu_ratio": ("arrangement.mu_ratio", 0.02),
     "technique": ("arrangement.technique", None),
 }
-_OWNED = ("room", "machine", "beam", "degrader", "stand", "couch")
+_OWNED = ("room", "machine", "beam", "degrader", "stand", "couch", "shield")
+_KINDS = {"shield": "patient_shield"}  # header key -> kind, where they differ
 _OPTIONAL = ("collimator_opening_cm", "collimator_angle_deg", "mu_ratio", "stand", "couch", "side_deg")
 
 Lookup = Callable[[str, Ref], Any]
@@ -50,10 +51,11 @@ def _disagreement(
 ) -> list[str]:
     stated = measurement.get(key)
     if key in _OWNED:
-        if stated is None or key not in owners:
+        kind_of = _KINDS.get(key, key)
+        if stated is None or kind_of not in owners:
             return []
-        wanted = owners[key]
-        given = measurement.owners.get(key, str(stated))
+        wanted = owners[kind_of]
+        given = measurement.owners.get(kind_of, str(stated))
         return (
             [] if given == wanted else [f"measured with {key} {_short(given)}, the plan is {_short(wanted)}"]
         )

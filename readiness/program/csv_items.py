@@ -17,6 +17,7 @@ from readiness.program.wording import did_you_mean, shown
 from readiness.quantities import Table
 
 MEASUREMENT = "measurement"
+NONE = "none"  # written where nothing was in place
 TABLE = "table"  # the field of a measurement that holds its readings
 
 
@@ -25,7 +26,7 @@ def read_measurement(csv: nodes.CsvText, sink: Sink) -> Item | None:
     Return one measurement; None if its kind is not known.
 
     The item's fields are those of the header and ``table``, the readings under all columns that the kind
-    describes, blank where nothing was read.
+    describes, blank where nothing was read. It belongs to everything that its header names.
     """
     kind = _kind(csv, sink)
     described = (kind.header, kind.columns) if kind else ({}, {})
@@ -50,7 +51,12 @@ def read_measurement(csv: nodes.CsvText, sink: Sink) -> Item | None:
         message = f"{len(csv.rows)} row(s) of readings are too few: {kind.kind} needs {kind.min_rows} or more"
         sink.add(csv.place, message, "missing")
     fields[TABLE] = Stated(_table(kind.columns, columns, len(csv.rows)), csv.place)
-    return Item(MEASUREMENT, item_id, fields, {PROGRAM: PROGRAM}, csv.place)
+    named = {
+        field.to: str(fields[name].value)
+        for name, field in kind.header.items()
+        if field.type == "reference" and name in fields and fields[name].value != NONE
+    }
+    return Item(MEASUREMENT, item_id, fields, {**named, PROGRAM: PROGRAM}, csv.place)
 
 
 def read_progress(csv: nodes.CsvText, kind: KindSchema, sink: Sink) -> list[Item]:

@@ -56,8 +56,16 @@ def test_a_measurement_is_one_item():
     assert item.get("beam") == "linac-1/e6"
     assert item.get("date") == date(2026, 10, 21)
     assert item.get("distance_cm") == 400.0
-    assert item.owners == {"program": "program"}
+    assert item.owners["program"] == "program"
     assert item.fields["distance_cm"].place == Place("measurements/pilot.csv", 7, 16)
+
+
+def test_a_measurement_belongs_to_what_it_was_made_with():
+    """Room, machine, beam and instrument are its owners; a degrader that was not in place is none."""
+    owners = read(csv(degrader="none", gap_cm="0")).find("measurement", "pilot").owners
+    assert {"room": "vault-a", "machine": "linac-1", "beam": "linac-1/e6"}.items() <= owners.items()
+    assert owners["instrument"] == read(csv()).find("measurement", "pilot").get("instrument")
+    assert "degrader" not in owners
 
 
 def test_readings_are_a_table_with_all_columns():
