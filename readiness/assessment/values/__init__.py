@@ -3,6 +3,7 @@
 from readiness.assessment.definition import Definition
 from readiness.assessment.values import (
     arrangement_choices,
+    beam_axes,
     beam_depth,
     beam_energy,
     beam_evenness,
@@ -19,6 +20,7 @@ from readiness.assessment.values import (
     capacity,
     costs,
     courses,
+    in_vivo,
     patient_flow,
     risk,
     staff_time,
@@ -26,6 +28,7 @@ from readiness.assessment.values import (
 
 ALL: tuple[Definition, ...] = (
     *arrangement_choices.DEFINITIONS,
+    *beam_axes.DEFINITIONS,
     *beam_depth.DEFINITIONS,
     *beam_energy.DEFINITIONS,
     *beam_evenness.DEFINITIONS,
@@ -42,6 +45,7 @@ ALL: tuple[Definition, ...] = (
     *capacity.DEFINITIONS,
     *costs.DEFINITIONS,
     *courses.DEFINITIONS,
+    *in_vivo.DEFINITIONS,
     *patient_flow.DEFINITIONS,
     *risk.DEFINITIONS,
     *staff_time.DEFINITIONS,

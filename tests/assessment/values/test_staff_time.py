@@ -21,7 +21,9 @@ def person(name: str, role: str, **fields: Any) -> Item:
     return item("person", name, {"role": role}, role=role, **fields)
 
 
-def task(name: str, profession: str, per: str, minutes: float, persons: int | None = 1, **changes: Any) -> Item:
+def task(
+    name: str, profession: str, per: str, minutes: float, persons: int | None = 1, **changes: Any
+) -> Item:
     """Return a task of staff."""
     fields = {"profession": profession, "per": per, "minutes_min": minutes, "persons": persons, **changes}
     return item("staff_task", name, **{key: value for key, value in fields.items() if value is not None})
