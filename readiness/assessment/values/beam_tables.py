@@ -42,6 +42,21 @@ def points_at_tilt(*, table: Table, tilt_deg: float) -> Table:
     return _points("height_cm", numbers(chosen, "height_cm"), numbers(chosen, "relative_dose"))
 
 
+def half_length_of_points(*, profile: Table) -> float:
+    """Return how far either way a vertical profile was measured."""
+    return _either_way(numbers(profile, "height_cm"))
+
+
+def half_width_of_points(*, profile: Table) -> float:
+    """Return how far either way a horizontal profile was measured."""
+    return _either_way(numbers(profile, "across_cm"))
+
+
+def _either_way(places: list[float]) -> float:
+    """Return the distance from 0 that is covered on both sides."""
+    return max(0.0, min(max(places), -min(places)))
+
+
 def points_with_depth(*, table: Table) -> Table:
     """Return the measured points of a composite depth dose."""
     return _points("depth_mm", numbers(table, "depth_mm"), numbers(table, "relative_dose"))
@@ -93,6 +108,18 @@ DEFINITIONS: tuple[Definition, ...] = (
         "measured_profile_width",
         "Points measured across.",
         Measured(DUAL_PROFILE, by=points_across, takes=_TABLE),
+    ),
+    Definition(
+        "arrangement.measured_half_length_cm",
+        "How far either way from the beam axis the vertical profile was measured.",
+        by=half_length_of_points,
+        takes={"profile": "arrangement.measured_profile_height"},
+    ),
+    Definition(
+        "arrangement.measured_half_width_cm",
+        "How far either way from the middle the horizontal profile was measured.",
+        by=half_width_of_points,
+        takes={"profile": "arrangement.measured_profile_width"},
     ),
     _measured(
         "measured_sweep",
