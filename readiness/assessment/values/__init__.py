@@ -4,6 +4,7 @@ from readiness.assessment.definition import Definition
 from readiness.assessment.values import (
     arrangement_choices,
     beam_axes,
+    beam_degrader,
     beam_depth,
     beam_energy,
     beam_evenness,
@@ -29,6 +30,7 @@ from readiness.assessment.values import (
 ALL: tuple[Definition, ...] = (
     *arrangement_choices.DEFINITIONS,
     *beam_axes.DEFINITIONS,
+    *beam_degrader.DEFINITIONS,
     *beam_depth.DEFINITIONS,
     *beam_energy.DEFINITIONS,
     *beam_evenness.DEFINITIONS,
