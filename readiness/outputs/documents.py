@@ -23,7 +23,7 @@ from readiness.outputs.critical import CRITICAL
 from readiness.outputs.form_fields import FormFields
 from readiness.outputs.holes import Holes, plain, to_html, without_holes
 from readiness.outputs.lookup import Lookup
-from readiness.outputs.showing import Showing
+from readiness.outputs.showing import Blank, Showing
 from readiness.resources import template_file
 
 _NAME_HOLE = re.compile(r"\{\{\s*([a-z_]+\.[a-z0-9_]+)\s*\}\}")
@@ -39,7 +39,7 @@ class RenderedDocument:
         html_body: HTML of its parts; links into the binder begin with ``binder:``.
         body_sha256: Hash of that body.
         values: Names of the values it shows.
-        missing: What stands as a blank in it -> what to supply, in words.
+        missing: What stands as a blank in it, and what fills it.
         own_wording: Headings of the parts that are in the department's own words.
         fields: Names of its form fields.
     """
@@ -54,7 +54,7 @@ class RenderedDocument:
     html_body: str
     body_sha256: str
     values: tuple[str, ...]
-    missing: tuple[tuple[str, str], ...]
+    missing: tuple[Blank, ...]
     own_wording: tuple[str, ...]
     fields: tuple[str, ...]
 
@@ -126,7 +126,7 @@ def _render(
         number=head.number, title=head.title, part=head.part, kind=head.kind, owner=head.owner,
         approvers=head.approvers, purpose=head.purpose, html_body="\n".join(parts), body_sha256=digest,
         values=tuple(showing.shown),
-        missing=tuple(showing.missing.items()), own_wording=tuple(own), fields=tuple(forms.names),
+        missing=tuple(showing.missing.values()), own_wording=tuple(own), fields=tuple(forms.names),
     )  # fmt: skip
 
 

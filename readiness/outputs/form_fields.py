@@ -57,8 +57,12 @@ class FormFields:
             rows: How many blank rows, or the names of the rows.
             ticked: Headings whose cells are boxes to tick.
         """
-        heads = "".join(f'<th scope="col">{_with_unit(each)}</th>' for each in columns)
         named = not isinstance(rows, int)
+        widths = [_width(each, place, columns, named, ticked) for place, each in enumerate(columns)]
+        heads = "".join(
+            f'<th scope="col"{width}>{_with_unit(each)}</th>'
+            for each, width in zip(columns, widths, strict=True)
+        )
         names = [str(count + 1) for count in range(rows)] if isinstance(rows, int) else rows
         body = "".join(self._row(name, columns, named, ticked) for name in names)
         css = "sheet" if named else "sheet blank-rows"
@@ -115,3 +119,10 @@ class FormFields:
 def _with_unit(label: str) -> str:
     words, _, unit = label.partition("|")
     return f'{plain(words)} <span class="unit">[{plain(unit)}]</span>' if unit else plain(words)
+
+
+def _width(heading: str, place: int, columns: Sequence[str], named: bool, ticked: Sequence[str]) -> str:
+    """Return the width of a column: names wide, ticks narrow, the rest alike."""
+    if named and place == 0:
+        return ' class="w28"' if len(columns) < 8 else ' class="w12"'
+    return ' class="w10"' if heading in ticked else ""

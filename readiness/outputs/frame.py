@@ -101,6 +101,9 @@ def _control(document: RenderedDocument, state: DocumentState | None, assessment
         "Revision and status": state_words(state),
         "Approvals": f"{approvals}. {RECORD}" if approvals else "none",
     }
+    if document.kind == "form":
+        said = ". ".join(f"<b>{key}</b> {plain(text)}" for key, text in rows.items())
+        return f'<p class="control-line">{said}.</p>'
     lines = "".join(
         f'<tr><th scope="row">{key}</th><td>{plain(text)}</td></tr>' for key, text in rows.items()
     )
@@ -115,6 +118,9 @@ def _around(document: RenderedDocument, assessment: Assessment) -> str:
         for rule in rules
     )
     answered = f"<h2>Requirements that this document answers</h2><ul>{lines}</ul>" if lines else ""
-    blanks = "".join(f"<li>{plain(words)}</li>" for _, words in document.missing)
-    still = f"<h2>Blanks in this document, and what fills them</h2><ul>{blanks}</ul>" if blanks else ""
+    groups: dict[str, list[str]] = {}
+    for blank in document.missing:
+        groups.setdefault(blank.group, []).append(plain(blank.words))
+    blanks = "".join(f"<p><b>{group}:</b> {'; '.join(words)}.</p>" for group, words in groups.items())
+    still = f"<h2>Blanks in this document, and what fills them</h2>{blanks}" if blanks else ""
     return f'<section class="around">{answered}{still}</section>' if answered or still else ""

@@ -15,14 +15,14 @@ from readiness.assessment.records import (
     Value,
 )
 from readiness.outputs.words import chosen_row
-from readiness.units import unit_of, words_of
+from readiness.units import unit_of
 
 CRITERION = Ref("criterion", "criterion")
 
 
 @dataclass(frozen=True)
 class Missing:
-    """A value that the assessment does not have, with what to supply."""
+    """A value that the assessment does not have, with what to supply where a finding says it."""
 
     name: str
     item: Ref
@@ -145,8 +145,6 @@ class Lookup:
         return found
 
     def _what_to_supply(self, name: str, item: Ref) -> str:
+        """Return the root causes in words, "" where the assessment has not said any."""
         causes = self._causes.get((name, item), ())
-        if causes:
-            return " ".join(dict.fromkeys(cause.words for cause in causes))
-        kind = words_of(item.kind)
-        return f"Supply {words_of(name)} ({kind})."
+        return " ".join(dict.fromkeys(cause.words for cause in causes))

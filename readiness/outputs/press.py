@@ -7,6 +7,7 @@ which keeps tags, outline, form fields and links from one document to another.
 
 import copy
 import logging
+import re
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from contextlib import contextmanager
 from dataclasses import dataclass
@@ -18,6 +19,9 @@ from readiness.outputs import fonts
 
 PACKAGES = "libpango-1.0-0 libpangoft2-1.0-0 libharfbuzz-subset0"
 _LOGGER = "weasyprint"
+# A space before inline markup is given its own box: WeasyPrint 70 breaks a line after its first word when
+# only such a space does not fit.
+_SPACE_BEFORE_MARKUP = re.compile(r"(?<=[^\s>]) (?=<(?:a|b|em|i|span|strong)\b)")
 
 
 class PressMissing(Exception):  # noqa: N818 - what is missing is no error of the program
@@ -76,13 +80,20 @@ def _fetcher() -> Any:
     return DataOnly()
 
 
+@cache
+def _sheet(style: str) -> Any:
+    """Return a style sheet, read once for all documents."""
+    return _weasyprint().CSS(string=style, url_fetcher=_fetcher())
+
+
 def lay_out(html: str, styles: Iterable[str], title: str) -> Layout:
     """Return one document laid out on its own pages; raise PressError at anything it cannot print."""
     press = _weasyprint()
     fetcher = _fetcher()
     with _no_errors(title):
-        sheets = [press.CSS(string=style, url_fetcher=fetcher) for style in styles]
-        page = press.HTML(string=html, url_fetcher=fetcher, base_url=None)
+        sheets = [_sheet(style) for style in styles]
+        spaced = _SPACE_BEFORE_MARKUP.sub("<span> </span>", html)
+        page = press.HTML(string=spaced, url_fetcher=fetcher, base_url=None)
         document = page.render(stylesheets=sheets, pdf_forms=True, pdf_variant="pdf/ua-1")
     return Layout(title, document)
 

@@ -1,9 +1,11 @@
 """What templates may ask for: values, tables, lists, pictures and sources; nothing is worked out here."""
 
 from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
 
 from markupsafe import Markup
 
+from readiness.assessment.catalogue import catalogue
 from readiness.assessment.records import Ref, Value
 from readiness.assessment.wording import in_words
 from readiness.errors import CatalogueError
@@ -16,6 +18,22 @@ from readiness.sources import HOW_KNOWN, publications
 from readiness.units import unit_of, words_of
 
 BLANK = "________"
+LONG = 20  # characters; a longer value may be broken over lines
+STATE, RULES, LISTS, CAUSES = (
+    "To state in the program folder",
+    "Until these rules are met",
+    "Nothing of its kind is described",
+    "What the assessment asks for",
+)
+
+
+@dataclass(frozen=True)
+class Blank:
+    """Something that a document could not print: its name, why in a word, and what fills it."""
+
+    name: str
+    group: str
+    words: str
 
 
 def with_unit(text: str, unit: str) -> str:
@@ -34,7 +52,7 @@ class Showing:
         self._pictures = pictures
         self._holes = holes
         self.shown: dict[str, None] = {}
-        self.missing: dict[str, str] = {}
+        self.missing: dict[str, Blank] = {}
 
     def show(self, name: str) -> Markup:
         """Return a value with its unit and basis, or a blank line with what to supply."""
@@ -64,7 +82,7 @@ class Showing:
         items = self._lookup.items(kind)
         if not items:
             words = f"No {words_of(kind)} is described in the program folder."
-            self.missing.setdefault(kind, words)
+            self._note(kind, LISTS, words_of(kind))
             return self._block(f'<p class="need">{plain(words)}</p>')
         heads = [words_of(kind).capitalize(), *(_column_words(name) for name in names)]
         rows = [
@@ -109,7 +127,7 @@ class Showing:
         if isinstance(found, Missing):
             return f'<span class="blank">{with_unit("____", found.unit)}</span>'
         self.shown[name] = None
-        return plain(in_words(found.value))
+        return plain(spoken(found))
 
     def _critical(self, name: str, item: Ref | None) -> str:
         found = self._lookup.get(name, item)
@@ -120,20 +138,23 @@ class Showing:
         rules = rules or CRITICAL[name][:1]
         links = ", ".join(f'<a href="binder:rule-{rule}">{rule}</a>' for rule in rules)
         where = f" of {item}" if item is not None else ""
-        words = f"{words_of(name)}{where}: rule {', '.join(rules)} is not met"
-        self.missing.setdefault(f"{name}{where}", words)
+        self._note(f"{name}{where}", RULES, f"{words_of(name)}{where} ({', '.join(rules)})")
         return (
             f'<span class="blank">{with_unit(BLANK, unit_of(name))}</span>'
             f'<span class="need"> (until rule {links} is met)</span>'
         )
 
     def _blank(self, found: Missing) -> str:
-        self.missing.setdefault(found.name, found.words)
         words = words_of(found.name)
+        kind = words_of(found.item.kind)
+        self._note(found.name, CAUSES if found.words else STATE, found.words or f"{words} ({kind})")
         return (
             f'<span class="blank">{plain(with_unit(BLANK, found.unit))}</span>'
             f'<span class="need"> (to supply: {plain(words)})</span>'
         )
+
+    def _note(self, name: str, group: str, words: str) -> None:
+        self.missing.setdefault(name, Blank(name, group, words))
 
     def _hole(self, html: str) -> Markup:
         return Markup(self._holes.put(html))  # noqa: S704 - the hole is two characters and a number
@@ -149,11 +170,21 @@ def html_table(heads: Sequence[str], rows: Sequence[Sequence[str]], css: str = "
     return f'<table class="{css}"><thead><tr>{head}</tr></thead><tbody>{body}</tbody></table>'
 
 
+def spoken(found: Value) -> str:
+    """Return a value in words; a word of a field by its meaning, or at least without its hyphens."""
+    field = catalogue().kinds.field(found.name)
+    if field is None or field.type not in {"word", "words"}:
+        return in_words(found.value)
+    chosen = found.value if isinstance(found.value, tuple) else (found.value,)
+    return ", ".join(field.words.get(each) or str(each).replace("-", " ") for each in chosen)
+
+
 def _value_words(found: Value) -> str:
-    text = in_words(found.value)
+    text = spoken(found)
     if found.sd is not None:
         text = f"{text} ± {in_words(found.sd)}"
-    return f'<span class="value">{plain(with_unit(text, found.unit))}</span>'
+    css = "value" if len(text) < LONG else "value long"
+    return f'<span class="{css}">{plain(with_unit(text, found.unit))}</span>'
 
 
 def _column_words(name: str) -> str:
