@@ -41,6 +41,13 @@ def in_air(*, profile: ProfileEvaluation, medium: str) -> float:
     return profile.judged_percent
 
 
+def in_air_at_tilt(*, sweep: AngleSweep, tilt_deg: float, medium: str) -> float:
+    """Return the judged metric that a sweep in air found at the chosen tilt."""
+    if medium != "air":
+        raise OutsideValidity("it was measured in a phantom, not in air")
+    return profile_at_tilt(sweep=sweep, tilt_deg=tilt_deg).judged_percent
+
+
 def best_of_sweep(*, sweep: AngleSweep) -> BestTilt | None:
     """Return the best tilt between those measured; None if fewer than two have enough readings."""
     return sweep.best
@@ -106,10 +113,12 @@ def _final(direction: str, metric: str) -> Definition:
 
 def _in_air(direction: str) -> Definition:
     """Return the evenness measured in air, else predicted."""
+    swept = direction == "vertical"
+    stands_in = "vertical_in_air_in_sweep" if swept else f"predicted_horizontal_{JUDGED}"
     return Definition(
         f"arrangement.{direction}_in_air_percent",
         f"{direction.capitalize()} uniformity in air, in the metric by which it is judged.",
-        otherwise=f"arrangement.predicted_{direction}_{JUDGED}_percent",
+        otherwise=f"arrangement.{stands_in}_percent",
         measured=Measured(
             DUAL_PROFILE,
             by=in_air,
@@ -139,6 +148,22 @@ DEFINITIONS: tuple[Definition, ...] = (
     *(_in_sweep(metric) for metric in WORDS),
     *(_final(direction, metric) for direction in LENGTHS for metric in WORDS),
     *(_in_air(direction) for direction in LENGTHS),
+    Definition(
+        "arrangement.vertical_in_air_in_sweep_percent",
+        "Vertical uniformity in air at the chosen tilt in a sweep of tilts, else predicted.",
+        otherwise=f"arrangement.predicted_vertical_{JUDGED}_percent",
+        measured=Measured(
+            ANGLE_SWEEP,
+            by=in_air_at_tilt,
+            takes={
+                "sweep": "measurement.angle_sweep",
+                "tilt_deg": "arrangement.tilt_deg",
+                "medium": "measurement.medium",
+            },
+        ),
+        source="eortc-2002",
+        known="memory",
+    ),
     Definition(
         "arrangement.map_half_range_percent",
         "Predicted half-range over the whole rectangle of the composite field.",
