@@ -99,7 +99,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         known="derived",
     ),
     Definition(
-        "program.plane_parallel_chambers_in_calibration",
+        "beam.plane_parallel_chambers",
         "Number of plane-parallel chambers whose calibration holds today.",
         by=chambers_in_calibration,
         takes={
