@@ -22,9 +22,12 @@ from readiness.assessment.values import (
     capacity,
     costs,
     courses,
+    dose,
     in_vivo,
+    moving_couch,
     patient_flow,
     risk,
+    session_minutes,
     staff_time,
 )
 
@@ -49,8 +52,11 @@ ALL: tuple[Definition, ...] = (
     *capacity.DEFINITIONS,
     *costs.DEFINITIONS,
     *courses.DEFINITIONS,
+    *dose.DEFINITIONS,
     *in_vivo.DEFINITIONS,
+    *moving_couch.DEFINITIONS,
     *patient_flow.DEFINITIONS,
     *risk.DEFINITIONS,
+    *session_minutes.DEFINITIONS,
     *staff_time.DEFINITIONS,
 )

@@ -105,11 +105,17 @@ def composite_of_readings(*, xrays: XrayComponent) -> float:
     return xrays.composite_xray_percent
 
 
-def composite_of_pair(*, technique: str, pair_xray_percent: float, b_factor: float) -> float:
+def composite_of_pair(
+    *, technique: str, pair_xray_percent: float, b_factor: float, definition_confirmed: bool | None
+) -> float:
     """Return F from f1 and B; a moving couch has no B."""
     if technique == "moving-couch":
         raise OutsideValidity("a lying technique has no B: its x-ray dose must be measured")
-    return composite_xray_percent(pair_xray_percent=pair_xray_percent, b_factor=b_factor)
+    return composite_xray_percent(
+        pair_xray_percent=pair_xray_percent,
+        b_factor=b_factor,
+        definition_confirmed=definition_confirmed is True,
+    )
 
 
 def _xrays(name: str, meaning: str, part: str) -> Definition:
@@ -225,7 +231,11 @@ DEFINITIONS: tuple[Definition, ...] = (
         "arrangement.composite_xray_percent",
         "X-ray dose F of all six dual fields to the body as a part of the skin dose.",
         by=composite_of_pair,
-        takes={"technique": "arrangement.technique", **_F_PLACES},
+        takes={
+            "technique": "arrangement.technique",
+            **_F_PLACES,
+            "definition_confirmed": "plan.b_definition_confirmed?",
+        },
         measured=Measured(XRAYS, by=composite_of_readings, takes={"xrays": "measurement.xray_readings"}),
         source="definition",
         known="derived",
