@@ -74,6 +74,11 @@ def check_of_mode(
     )
 
 
+def departure_from_prescription(*, prescription_percent: float) -> float:
+    """Return how far the dose at the prescription level is from the prescription, either way."""
+    return abs(prescription_percent - 100)
+
+
 _BUILT = {
     "table": "measurement.table",
     "plane_distance_cm": "arrangement.plane_distance_cm?",
@@ -128,6 +133,14 @@ DEFINITIONS: tuple[Definition, ...] = (
         "phantom_prescription_percent",
         "Dose of a phantom cycle at the prescription level, in per cent of the prescription.",
         "prescription_percent",
+    ),
+    Definition(
+        "arrangement.phantom_deviation_percent",
+        "Departure of a phantom cycle from the prescription at the prescription level, either way.",
+        by=departure_from_prescription,
+        takes={"prescription_percent": "arrangement.phantom_prescription_percent"},
+        source="definition",
+        known="derived",
     ),
     _cycle(
         "phantom_detector_difference_percent",
