@@ -28,6 +28,7 @@ from readiness.assessment.values import (
     patient_flow,
     risk,
     session_minutes,
+    shields,
     staff_time,
 )
 
@@ -58,5 +59,6 @@ ALL: tuple[Definition, ...] = (
     *patient_flow.DEFINITIONS,
     *risk.DEFINITIONS,
     *session_minutes.DEFINITIONS,
+    *shields.DEFINITIONS,
     *staff_time.DEFINITIONS,
 )
