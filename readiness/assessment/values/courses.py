@@ -3,7 +3,7 @@
 from collections.abc import Sequence
 from datetime import date
 
-from readiness.assessment.definition import Definition
+from readiness.assessment.definition import Definition, derived
 from readiness.calculations.boost_calendar import boost_calendar, last_day
 from readiness.calculations.course_calendar import CourseCalendar, course_calendar, field_sets
 from readiness.calculations.course_consistency import course_dose, cycles_per_week, undisturbed_weeks
@@ -34,6 +34,11 @@ def department_treatment_days(
     return treatment_days(
         calendar=calendar, treatment_weekdays=treatment_weekdays, service_days=service_dates
     )
+
+
+def course_count(*, courses: Sequence[str]) -> int:
+    """Return how many courses there are."""
+    return len(courses)
 
 
 def session_count(*, cycles: int, sessions_per_cycle: int) -> int:
@@ -113,6 +118,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         by=planned_technique,
         takes={"chosen_arrangement": "program.chosen_arrangement?", "techniques": "program.techniques"},
     ),
+    derived("program.course_count", "Courses of the program.", course_count, {"courses": "each course.id"}),
     Definition(
         "program.treatment_days",
         "Days on which sessions can be given.",

@@ -6,6 +6,7 @@ Monitor units stay inside: no value shows a number that could be set on a machin
 
 from collections.abc import Sequence
 from dataclasses import dataclass
+from datetime import date
 
 from readiness.assessment.definition import Definition, derived
 from readiness.assessment.values.beam_field import upper_share
@@ -120,6 +121,11 @@ def second_difference(*, second_check_percent: float) -> float:
     return abs(second_check_percent)
 
 
+def second_check_day(*, second_check_on: date) -> date:
+    """Return the day of the second calculation."""
+    return second_check_on
+
+
 def part_of_first_day(*, technique: str, b_factor: float) -> float | None:
     """Return the part of a cycle's dose that the front gets on day 1 of six positions."""
     return expected_day_one_percent(b_factor=b_factor) if technique == "six-position" else None
@@ -228,6 +234,12 @@ UNITS: tuple[Definition, ...] = (
         "Difference of the second, independent calculation from the first, either way.",
         second_difference,
         {"second_check_percent": "plan.second_check_percent"},
+    ),
+    derived(
+        "arrangement.second_check_date",
+        "Day of the second, independent calculation.",
+        second_check_day,
+        {"second_check_on": "plan.second_check_on"},
     ),
     derived(
         "arrangement.day_one_percent",

@@ -3,6 +3,7 @@
 from collections.abc import Sequence
 
 from readiness.assessment.definition import Definition, Measured, derived
+from readiness.assessment.values.naming import named
 from readiness.assessment.values.readings import numbers, numbers_or, words
 from readiness.calculations.in_vivo_plan import InVivoPlan, in_vivo_plan
 from readiness.calculations.in_vivo_readings import InVivoResult, evaluate_in_vivo
@@ -55,15 +56,10 @@ def detectors_short(*, detectors_needed: int, pieces: int) -> int:
     return max(0, detectors_needed - pieces)
 
 
-def low_sites_not_measured(*, sites: Sequence[str]) -> tuple[str, ...]:
+def low_sites_not_measured(*, sites: Sequence[str]) -> str:
     """Return the folds and shaded sites, often low, that the plan leaves out."""
     low = (word for word, site in in_vivo_sites().items() if site.group in ("fold", "shaded"))
-    return tuple(word for word in low if word not in sites)
-
-
-def number_of(*, sites: Sequence[str]) -> int:
-    """Return how many there are."""
-    return len(sites)
+    return named(word for word in low if word not in sites)
 
 
 def expected_at_sites(*, sites: Sequence[str]) -> Table:
@@ -187,15 +183,9 @@ PLAN: tuple[Definition, ...] = (
     ),
     derived(
         "in_vivo.low_sites_not_measured",
-        "Folds and shaded sites, often low, that are not measured.",
+        "Folds and shaded sites, often low, that are not measured, or none.",
         low_sites_not_measured,
         {"sites": "in_vivo.sites"},
-    ),
-    derived(
-        "in_vivo.low_sites_not_measured_count",
-        "How many they are.",
-        number_of,
-        {"sites": "in_vivo.low_sites_not_measured"},
     ),
     derived(
         "in_vivo.expected_doses",

@@ -38,6 +38,11 @@ def pass_of_couch(
     )
 
 
+def number_of_incidences(*, lying_incidences: Sequence[str]) -> int:
+    """Return how many incidences there are."""
+    return len(lying_incidences)
+
+
 def incidence_time(*, couch: CouchPass, lying_passes: int) -> float:
     """Return the beam-on minutes of one incidence."""
     return lying_passes * couch.pass_time_s / 60
@@ -94,6 +99,12 @@ DEFINITIONS: tuple[Definition, ...] = (
             },
         ),
         internal=True,
+    ),
+    derived(
+        "program.lying_incidence_count",
+        "Incidences of the lying technique.",
+        number_of_incidences,
+        {"lying_incidences": "program.lying_incidences"},
     ),
     Definition(
         "arrangement.incidence_dose_cgy",

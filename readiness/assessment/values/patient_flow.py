@@ -32,6 +32,11 @@ def busiest_sessions(*, courses: Table, peak_patients: int) -> float:
     return peak_sessions_per_week(courses=courses, places=peak_patients)
 
 
+def booked_for_first_cycle(*, session_room_min: float, first_cycle_extra_min: float) -> float:
+    """Return the room minutes booked for a session of a first cycle."""
+    return session_room_min + first_cycle_extra_min
+
+
 _MIX = {"courses": "program.course_mix"}
 _COURSES = "rows course: id patients_per_year cycles sessions_per_cycle sessions_per_week break_weeks"
 
@@ -91,6 +96,15 @@ DEFINITIONS: tuple[Definition, ...] = (
         source="mirasol-1963",
         known="memory",
         formula="min(S, d W (1 - exp(-L)))",
+    ),
+    derived(
+        "program.first_cycle_room_min",
+        "Room minutes booked for a session of a patient's first cycle.",
+        booked_for_first_cycle,
+        {
+            "session_room_min": "program.session_room_min",
+            "first_cycle_extra_min": "program.first_cycle_extra_min",
+        },
     ),
     derived(
         "program.room_hours_per_week_h",

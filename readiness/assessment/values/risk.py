@@ -6,6 +6,7 @@ from datetime import date
 from typing import Any
 
 from readiness.assessment.definition import Definition, derived
+from readiness.assessment.values.naming import named
 from readiness.calculations.failure_mode_ranking import (
     Scores,
     failure_mode_ranking,
@@ -74,10 +75,10 @@ def severe(*, risks: RiskAnalysis) -> tuple[str, ...]:
     return severe_failure_modes(modes=risks.modes, scores=risks.scores)
 
 
-def severe_with_one_control(*, risks: RiskAnalysis) -> tuple[str, ...]:
+def severe_with_one_control(*, risks: RiskAnalysis) -> str:
     """Return the modes of severity 9 or 10 against which fewer than two controls stand."""
     grave = severe(risks=risks)
-    return tuple(mode.id for mode in risks.modes if mode.id in grave and len(mode.controls) < 2)
+    return named(mode.id for mode in risks.modes if mode.id in grave and len(mode.controls) < 2)
 
 
 def mode_count(*, risks: RiskAnalysis) -> int:
@@ -98,11 +99,6 @@ def uncontrolled(*, risks: RiskAnalysis) -> int:
 def undocumented(*, risks: RiskAnalysis) -> int:
     """Return the number of modes whose controls stand in no document."""
     return sum(not mode.documents for mode in risks.modes)
-
-
-def number_of_modes(*, ids: Sequence[str]) -> int:
-    """Return how many modes there are."""
-    return len(ids)
 
 
 def months_since_scoring(*, scored_on: Sequence[date | None], as_of_date: date) -> float | None:
@@ -141,16 +137,10 @@ DEFINITIONS: tuple[Definition, ...] = (
     _of("severe_failure_modes", "Failure modes of severity 9 or 10.", severe, "practice", "practice"),
     _of(
         "severe_modes_with_one_control",
-        "Failure modes of severity 9 or 10 against which fewer than two controls stand.",
+        "Failure modes of severity 9 or 10 against which fewer than two controls stand, or none.",
         severe_with_one_control,
         "practice",
         "practice",
-    ),
-    derived(
-        "program.severe_modes_with_one_control_count",
-        "How many they are.",
-        number_of_modes,
-        {"ids": "program.severe_modes_with_one_control"},
     ),
     derived(
         "program.failure_mode_scores_age_months",

@@ -3,6 +3,7 @@
 from collections.abc import Sequence
 
 from readiness.assessment.definition import Definition, Measured, derived
+from readiness.assessment.values.naming import named
 from readiness.assessment.values.readings import numbers, words
 from readiness.calculations.patient_shields import (
     AGAINST_LEAD,
@@ -36,7 +37,7 @@ def margins_of_shields(*, shields: Table, energy_at_plane_mev: float) -> Table:
     return Table.of(MARGINS, rows)
 
 
-def shields_too_thin(*, margins: Table) -> tuple[str, ...]:
+def shields_too_thin(*, margins: Table) -> str:
     """Return the shields that are thinner than the rule asks; a thickness that is not stated is asked for."""
     found = []
     for row in margins.records():
@@ -46,7 +47,7 @@ def shields_too_thin(*, margins: Table) -> tuple[str, ...]:
             )
         if row["margin_mm"] is not None and float(row["margin_mm"]) < 0:
             found.append(str(row["shield"]))
-    return tuple(found)
+    return named(found)
 
 
 def readings_of_shield(
@@ -102,17 +103,17 @@ def cycles_with_open_eyes(*, cycles: int, dose_per_cycle_gy: float, shields: Tab
     return int(worn.rows[0][USE_COLUMNS.index("open_cycles")] or 0)
 
 
-def worn_but_not_owned(*, shields: Table, owned: Table) -> tuple[str, ...]:
+def worn_but_not_owned(*, shields: Table, owned: Table) -> str:
     """Return the organs that the course shields and for which no shield is owned."""
-    organs = tuple(dict.fromkeys(str(organ) for organ in shields.column("organ")))
-    return tuple(organ for organ in organs if _pieces(owned, organ) == 0)
+    organs = [str(organ) for organ in shields.column("organ")]
+    return named(organ for organ in organs if _pieces(owned, organ) == 0)
 
 
-def boosts_not_measured(*, boosts: Table, measured_sites: Sequence[Sequence[str]]) -> tuple[str, ...]:
+def boosts_not_measured(*, boosts: Table, measured_sites: Sequence[Sequence[str]]) -> str:
     """Return the boosted sites at which the in-vivo plan has no detector; a lesion needs none."""
     measured = {site for sites in measured_sites for site in sites}
-    sites = dict.fromkeys(str(site) for site in boosts.column("site"))
-    return tuple(site for site in sites if site != LESION and site not in measured)
+    sites = [str(site) for site in boosts.column("site")]
+    return named(site for site in sites if site != LESION and site not in measured)
 
 
 _READINGS = {
@@ -170,7 +171,7 @@ DEFINITIONS: tuple[Definition, ...] = (
     ),
     derived(
         "arrangement.shields_too_thin",
-        "Shields that are thinner than the energy at the plane needs.",
+        "Shields that are thinner than the energy at the plane needs, or none.",
         shields_too_thin,
         {"margins": "arrangement.shield_margins"},
     ),
@@ -198,13 +199,13 @@ DEFINITIONS: tuple[Definition, ...] = (
     ),
     derived(
         "course.shields_not_owned",
-        "Organs that the course shields and for which no shield is owned.",
+        "Organs that the course shields and for which no shield is owned, or none.",
         worn_but_not_owned,
         {"shields": "course.shields", "owned": _OWNED},
     ),
     derived(
         "course.boosts_not_measured",
-        "Boosted sites at which the in-vivo plan has no detector.",
+        "Boosted sites at which the in-vivo plan has no detector, or none.",
         boosts_not_measured,
         {"boosts": "course.boosts", "measured_sites": "each in_vivo.sites"},
     ),

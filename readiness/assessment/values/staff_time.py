@@ -4,6 +4,7 @@ from collections.abc import Callable, Sequence
 from datetime import date
 
 from readiness.assessment.definition import Definition, derived
+from readiness.assessment.values.naming import named
 from readiness.calculations.staff_cover import (
     cover_with_one_away,
     qualified_at_console,
@@ -65,15 +66,9 @@ def cover_of_staff(*, tasks: Table, people: Table, balance: Table) -> Table:
     return cover_with_one_away(tasks=Table(TASKS, tasks.rows), people=people, balance=balance)
 
 
-def professions_without_cover(*, cover: Table) -> tuple[str, ...]:
+def professions_without_cover(*, cover: Table) -> str:
     """Return the professions in which an absence leaves too few qualified people for a session."""
-    open_rows = [row for row in cover.records() if row["session_covered"] is not True]
-    return tuple(dict.fromkeys(str(row["profession"]) for row in open_rows))
-
-
-def number_of(*, professions: Sequence[str]) -> int:
-    """Return how many there are."""
-    return len(professions)
+    return named(str(row["profession"]) for row in cover.records() if row["session_covered"] is not True)
 
 
 def commissioning_hours_needed(*, hours: Table) -> float:
@@ -198,15 +193,9 @@ DEFINITIONS: tuple[Definition, ...] = (
     ),
     derived(
         "program.professions_without_cover",
-        "Professions in which an absence leaves too few qualified people for a session.",
+        "Professions in which an absence leaves too few qualified people for a session, or none.",
         professions_without_cover,
         {"cover": "program.staff_cover"},
-    ),
-    derived(
-        "program.uncovered_profession_count",
-        "Number of professions in which an absence leaves too few qualified people for a session.",
-        number_of,
-        {"professions": "program.professions_without_cover"},
     ),
     derived(
         "program.console_qualified_persons",
