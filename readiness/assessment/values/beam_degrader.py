@@ -42,6 +42,11 @@ def width_left(*, degrader_width_cm: float, field_width_cm: float) -> float:
     return degrader_width_cm - field_width_cm
 
 
+def gap_left(*, degrader_gap_cm: float, turning_radius_cm: float) -> float:
+    """Return by how much the degrader clears the turning patient."""
+    return degrader_gap_cm - turning_radius_cm
+
+
 def days_since(*, inspected_on: date, as_of_date: date) -> int:
     """Return the days since the degrader was last looked at."""
     return (as_of_date - inspected_on).days
@@ -82,6 +87,17 @@ DEFINITIONS: tuple[Definition, ...] = (
         "How far the degrader reaches above or below the rays to the tallest patient, whichever is less.",
         of="arrangement.degrader_shadow",
         part="height_to_spare_cm",
+        source="definition",
+        known="derived",
+    ),
+    Definition(
+        "arrangement.degrader_gap_to_spare_cm",
+        "By how much the degrader clears the turning patient; negative if elbows meet it.",
+        by=gap_left,
+        takes={
+            "degrader_gap_cm": "arrangement.degrader_gap_cm",
+            "turning_radius_cm": "stand.turning_radius_cm",
+        },
         source="definition",
         known="derived",
     ),
