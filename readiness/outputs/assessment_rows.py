@@ -24,6 +24,24 @@ from readiness.units import printed
 KNOWN_WORDS = tuple(HOW_KNOWN.items())
 MOST_ARRANGEMENTS = 8
 MOST_MODES = 10
+FIGURES = (
+    "program.expected_patients_per_year",
+    "program.sessions_per_year",
+    "program.treatment_days_per_year",
+    "program.busiest_room_hours_per_week_h",
+    "program.free_room_hours_left_h",
+    "program.wait_weeks",
+    *(
+        f"program.{profession}_{what}_fte"
+        for profession in ("oncologist", "physicist", "therapist", "nurse")
+        for what in ("needed", "qualified")
+    ),
+    "program.commissioning_needed_h",
+    "program.commissioning_available_h",
+    "program.cost_once",
+    "program.cost_each_year",
+    "program.cost_per_patient",
+)
 _SOURCE_LINK = re.compile(r'href="binder:source-([a-z0-9.-]+)"')
 
 
@@ -162,13 +180,11 @@ def worst_failure_modes(assessment: Assessment) -> Table | None:
 
 def figures(assessment: Assessment) -> tuple[tuple[str, str, str], ...]:
     """Return money and hours of the program: what, how much, basis."""
-    wanted = ("_fte", "_h_per_week", "_h_per_year", "cost_likely", "cost_low", "cost_high")
+    found = {value.name: value for value in assessment.values if value.item.kind == "program"}
     return tuple(
-        (value_title(value.name), with_unit(value.name, value.value), value.basis)
-        for value in assessment.values
-        if value.item.kind == "program"
-        and value.name.endswith(wanted)
-        and isinstance(value.value, (int, float))
+        (value_title(name), with_unit(name, found[name].value), found[name].basis)
+        for name in FIGURES
+        if name in found
     )
 
 

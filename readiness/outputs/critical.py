@@ -1,34 +1,54 @@
 """
-Treatment-critical numbers and the rules that must be met before a document prints one of them.
+Treatment-critical numbers and what must be met before a document prints one of them.
 
-A number is printed only if every rule named here has been judged for it and is met, and at least one of
-them rests on a measurement. In every other case the document has a blank with the unit and the rule.
+Each number has a proof, the value that a measurement or an as-built record gives, and further values. It is
+printed only if a rule on the proof is met by measurement and every must-rule on the others is met. In every
+other case, also where no such rule has been judged, the document has a blank with the unit and the rule.
 """
 
 from collections.abc import Mapping
 
-from readiness.assessment.records import Finding, Ref
+from readiness.assessment.records import Ref, Rule
 from readiness.outputs.lookup import Lookup
 
-# value -> rules; the first one compares the choice with the as-built record
+_AS_BUILT = "arrangement.as_built_agrees"
+# value -> subjects of the rules that must be met; the first is the proof
 CRITICAL: Mapping[str, tuple[str, ...]] = {
-    "arrangement.plane_distance_cm": ("as-built-record", "plane-distance"),
-    "arrangement.tilt_deg": ("as-built-record", "vertical-uniformity"),
-    "arrangement.degrader_gap_cm": ("as-built-record", "degrader-clears-patient"),
-    "degrader.thickness_cm": ("as-built-record", "dose-at-4-mm"),
-    "plan.pair_output_cgy_per_mu": ("pair-output",),
-    "plan.b_factor": ("b-factor",),
-    "patient_shield.thickness_mm": ("shield-thickness", "shield-transmission"),
+    "arrangement.plane_distance_cm": (_AS_BUILT, "arrangement.plane_distance_cm"),
+    "arrangement.tilt_deg": (
+        _AS_BUILT,
+        "arrangement.vertical_uniformity_percent",
+        "arrangement.tilt_difference_deg",
+    ),
+    "arrangement.degrader_gap_cm": (_AS_BUILT, "arrangement.degrader_gap_cm"),
+    "degrader.thickness_cm": (
+        _AS_BUILT,
+        "arrangement.dose_at_4_mm_percent",
+        "arrangement.dose_at_20_mm_percent",
+    ),
+    "arrangement.pair_output_cgy_per_mu": ("arrangement.pair_output_cgy_per_mu",),
+    "arrangement.b_factor": ("arrangement.b_factor",),
+    "arrangement.rotating_factor": ("arrangement.rotating_factor",),
+    "patient_shield.thickness_mm": ("patient_shield.transmission_measured", "patient_shield.thickness_mm"),
 }
 
 
-def open_rules(name: str, lookup: Lookup, item: Ref | None = None) -> tuple[str, ...]:
-    """Return the rules that keep a critical number from being printed, none if it may be."""
-    findings = {rule: lookup.findings(rule, item) for rule in CRITICAL[name]}
-    unmet = tuple(rule for rule, found in findings.items() if not _is_met(found))
-    measured = any(finding.basis == "measured" for found in findings.values() for finding in found)
-    return unmet if unmet or measured else CRITICAL[name][:1]
+def open_rules(name: str, lookup: Lookup, item: Ref | None = None) -> tuple[str, ...] | None:
+    """Return the rules that keep a critical number from being printed: none, or None if there is no proof."""
+    proof, *others = CRITICAL[name]
+    proving = lookup.rules_on(proof)
+    judged = [rule for subject in others for rule in lookup.rules_on(subject) if rule.strength == "must"]
+    unmet = [rule.id for rule in (*proving, *judged) if not _is_met(rule, lookup, item)]
+    measured = any(
+        finding.outcome == "met" and finding.basis == "measured"
+        for rule in proving
+        for finding in lookup.findings(rule.id, item)
+    )
+    if unmet:
+        return tuple(dict.fromkeys(unmet))
+    return () if measured else None
 
 
-def _is_met(findings: tuple[Finding, ...]) -> bool:
-    return bool(findings) and all(finding.outcome == "met" for finding in findings)
+def _is_met(rule: Rule, lookup: Lookup, item: Ref | None) -> bool:
+    findings = lookup.findings(rule.id, item)
+    return bool(findings) and all(finding.outcome in {"met", "not applicable"} for finding in findings)

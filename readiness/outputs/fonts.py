@@ -46,8 +46,11 @@ def use_only_ours() -> TemporaryDirectory[str]:
 def _known_characters() -> frozenset[int]:
     from fontTools.ttLib import TTFont  # type: ignore[import-untyped]
 
-    faces = [set(TTFont(face, lazy=True).getBestCmap()) for face in shipped_faces()[:3]]
-    return frozenset(set.intersection(*faces))
+    characters = []
+    for face in shipped_faces()[:3]:
+        with TTFont(face, lazy=True) as font:
+            characters.append(set(font.getBestCmap()))
+    return frozenset(set.intersection(*characters))
 
 
 def missing_characters(text: str) -> tuple[str, ...]:

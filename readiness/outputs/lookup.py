@@ -47,7 +47,7 @@ class Lookup:
         self._values: Mapping[tuple[str, Ref], Value] = {
             (value.name, value.item): value for value in assessment.values
         }
-        self.rules: Mapping[str, Rule] = {rule.id: rule for rule in assessment.rules}
+        self._rules: Mapping[str, Rule] = {rule.id: rule for rule in assessment.rules}
 
     @cached_property
     def row(self) -> ArrangementRow | None:
@@ -118,6 +118,10 @@ class Lookup:
                 return False
         return True
 
+    def rules_on(self, subject: str) -> tuple[Rule, ...]:
+        """Return the rules that judge a value."""
+        return tuple(rule for rule in self._rules.values() if rule.subject == subject)
+
     def findings(self, rule: str, item: Ref | None = None) -> tuple[Finding, ...]:
         """Return what a rule says of one item, or of the items in scope."""
         inside = {item} if item is not None else {*self.scope.values()}
@@ -139,7 +143,7 @@ class Lookup:
         """Return why a judged value is missing: (name, item) -> causes."""
         found: dict[tuple[str, Ref], tuple[Cause, ...]] = {}
         for finding in self.assessment.findings:
-            rule = self.rules.get(finding.rule)
+            rule = self._rules.get(finding.rule)
             if rule is not None and finding.observed is None and finding.causes:
                 found.setdefault((rule.subject, finding.item), finding.causes)
         return found

@@ -18,10 +18,12 @@ from readiness.sources import HOW_KNOWN, publications
 from readiness.units import unit_of, words_of
 
 BLANK = "________"
+MANY = 9  # columns; from here on they share the width of the page
 LONG = 20  # characters; a longer value may be broken over lines
-STATE, RULES, LISTS, CAUSES = (
+STATE, WORK_OUT, RULES, LISTS, CAUSES = (
     "To state in the program folder",
-    "Until these rules are met",
+    "To measure, or to be worked out once its inputs are stated",
+    "Until measured and met",
     "Nothing of its kind is described",
     "What the assessment asks for",
 )
@@ -88,7 +90,7 @@ class Showing:
         rows = [
             [f"<b>{plain(item.id)}</b>", *(self._one_in_list(name, item) for name in names)] for item in items
         ]
-        return self._block(html_table(heads, rows))
+        return self._block(html_table(heads, rows, "list" if len(heads) < MANY else "list many"))
 
     def picture(self, name: str) -> Markup:
         """Return a drawing, or the sentence that there is none; the hash of the body knows its name only."""
@@ -127,30 +129,35 @@ class Showing:
         if isinstance(found, Missing):
             return f'<span class="blank">{with_unit("____", found.unit)}</span>'
         self.shown[name] = None
-        return plain(spoken(found))
+        basis = "" if found.basis == "stated" else f'<span class="basis">{plain(found.basis)}</span>'
+        return plain(spoken(found)) + basis
 
     def _critical(self, name: str, item: Ref | None) -> str:
         found = self._lookup.get(name, item)
         rules = open_rules(name, self._lookup, item)
-        if isinstance(found, Value) and not rules:
+        if isinstance(found, Value) and rules == ():
             self.shown[name] = None
-            return f'{_value_words(found)}<span class="basis">as built</span>'
-        rules = rules or CRITICAL[name][:1]
-        links = ", ".join(f'<a href="binder:rule-{rule}">{rule}</a>' for rule in rules)
+            basis = "measured" if found.basis == "measured" else "as built"
+            return f'{_value_words(found)}<span class="basis">{basis}</span>'
         where = f" of {item}" if item is not None else ""
-        self._note(f"{name}{where}", RULES, f"{words_of(name)}{where} ({', '.join(rules)})")
+        links = ", ".join(f'<a href="binder:rule-{plain(rule)}">{plain(rule)}</a>' for rule in rules or ())
+        until = f"until rule {links} is met" if links else "until it has been measured here"
+        said = f"rule {', '.join(rules)}" if rules else "measured here"
+        self._note(f"{name}{where}", RULES, f"{words_of(name)}{where} ({said})")
         return (
             f'<span class="blank">{with_unit(BLANK, unit_of(name))}</span>'
-            f'<span class="need"> (until rule {links} is met)</span>'
+            f'<span class="need"> ({until})</span>'
         )
 
     def _blank(self, found: Missing) -> str:
-        words = words_of(found.name)
-        kind = words_of(found.item.kind)
-        self._note(found.name, CAUSES if found.words else STATE, found.words or f"{words} ({kind})")
+        words, kind = words_of(found.name), words_of(found.item.kind)
+        is_field = catalogue().kinds.field(found.name) is not None
+        group = CAUSES if found.words else STATE if is_field else WORK_OUT
+        self._note(found.name, group, found.words or f"{words} ({kind})")
+        need = f"to supply: {words}" if is_field else f"{words} not known yet"
         return (
             f'<span class="blank">{plain(with_unit(BLANK, found.unit))}</span>'
-            f'<span class="need"> (to supply: {plain(words)})</span>'
+            f'<span class="need"> ({plain(need)})</span>'
         )
 
     def _note(self, name: str, group: str, words: str) -> None:
@@ -172,11 +179,19 @@ def html_table(heads: Sequence[str], rows: Sequence[Sequence[str]], css: str = "
 
 def spoken(found: Value) -> str:
     """Return a value in words; a word of a field by its meaning, or at least without its hyphens."""
+    if isinstance(found.value, Table):
+        rows = (_row_words(found.value.columns, row) for row in found.value.rows)
+        return "; ".join(rows) or "none"
     field = catalogue().kinds.field(found.name)
     if field is None or field.type not in {"word", "words"}:
         return in_words(found.value)
     chosen = found.value if isinstance(found.value, tuple) else (found.value,)
     return ", ".join(field.words.get(each) or str(each).replace("-", " ") for each in chosen)
+
+
+def _row_words(columns: Sequence[str], row: Sequence[object]) -> str:
+    said = zip(columns, row, strict=True)
+    return " ".join(with_unit(in_words(entry), unit_of(name)) for name, entry in said if entry is not None)
 
 
 def _value_words(found: Value) -> str:

@@ -2,7 +2,7 @@
 
 import re
 from datetime import date
-from pathlib import Path
+from functools import cache
 
 from readiness.assessment.document_heads import document_heads, split
 from readiness.assessment.records import (
@@ -36,6 +36,7 @@ _TABLES = re.compile(r'\btable\("([a-z_]+\.[a-z0-9_]+)"')
 _LISTED = re.compile(r'\blisting\("([a-z_]+)", "([a-z0-9_ ]+)"')
 
 
+@cache
 def template_texts() -> dict[str, str]:
     """Return document number -> everything its template says."""
     return {
@@ -44,11 +45,17 @@ def template_texts() -> dict[str, str]:
     }
 
 
+@cache
 def names_in_templates() -> frozenset[str]:
     """Return the name of every value that a template prints."""
     text = "\n".join(template_texts().values())
     listed = {f"{kind}.{field}" for kind, fields in _LISTED.findall(text) for field in fields.split()}
     return frozenset({*_NAMED.findall(text), *_TABLES.findall(text), *listed})
+
+
+@cache
+def _tables_in_templates() -> frozenset[str]:
+    return frozenset(_TABLES.findall("\n".join(template_texts().values())))
 
 
 def empty() -> Assessment:
@@ -85,6 +92,7 @@ def rule(name: str, subject: str, documents: tuple[str, ...] = ("3.1",)) -> Rule
     )  # fmt: skip
 
 
+@cache
 def full(technique: str = "six-position", status: str = "draft") -> Assessment:
     """Return an assessment in which everything that documents print is known, measured and met."""
     parts = tuple((kind, technique if kind == "technique" else owner) for kind, owner in PARTS)
@@ -115,7 +123,8 @@ def full(technique: str = "six-position", status: str = "draft") -> Assessment:
 
 
 def _critical_rules() -> dict[str, str]:
-    return {name: subject for subject, names in CRITICAL.items() for name in names}
+    subjects = dict.fromkeys(subject for subjects in CRITICAL.values() for subject in subjects)
+    return {subject.partition(".")[2].replace("_", "-") + "-rule": subject for subject in subjects}
 
 
 def _met(each: Rule) -> Finding:
@@ -137,7 +146,7 @@ def _is_single(kind: str) -> bool:
 
 
 def _invented(name: str) -> object:
-    if name in set(_TABLES.findall("\n".join(template_texts().values()))):
+    if name in _tables_in_templates():
         return Table(("height_cm", "relative_dose"), ((0.0, 1.0), (10.0, 0.98)))
     field = schemas().field(name)
     if name.endswith(".room"):
@@ -154,6 +163,3 @@ def _invented(name: str) -> object:
         if field.type in made:
             return made[field.type]
     return 12.5 if unit_ending(name) or field is not None else 2.5
-
-
-TEMPLATES = Path(template_file("documents"))
