@@ -9,7 +9,7 @@ from readiness.assessment.catalogue import catalogue
 from readiness.assessment.graph import Graph
 from readiness.assessment.judge import judge_item
 from readiness.assessment.records import Finding, Gone, Got, Ref, Value
-from readiness.assessment.ruleset import load_rules
+from readiness.assessment.ruleset import shipped_rules
 from readiness.program.items import Item, Program
 from readiness.quantities import Table
 from tests.assessment.small import DAY, item, program
@@ -139,6 +139,6 @@ def words(of: Program, name: str, degrader: str = "thin") -> str:
 def finding(of: Program, rule: str, degrader: str = "thin") -> Finding:
     """Return what a rule says of an arrangement or of what it belongs to."""
     graph = graph_of(of)
-    wanted = next(each for each in load_rules(graph.catalogue) if each.id == rule)
+    wanted = next(each for each in shipped_rules() if each.id == rule)
     owner = graph.owners(arrangement(degrader)).get(wanted.kind, wanted.kind)
     return judge_item(wanted, Ref(wanted.kind, owner), graph)
