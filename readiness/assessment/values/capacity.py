@@ -14,7 +14,7 @@ from readiness.calculations.room_hours import places_room_holds
 from readiness.calculations.waiting_simulation import share_started_in_time, wait_for_start
 from readiness.quantities import Table, Uncertain
 
-SIMULATED = "kiefer-wolfowitz-1955, simulated"
+SIMULATED = "kiefer-wolfowitz-1955"
 
 
 def places_by_room(

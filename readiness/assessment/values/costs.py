@@ -57,7 +57,7 @@ _TAKES = {
     "lines": "program.cost_lines",
     "expected_patients_per_year": "program.expected_patients_per_year",
 }
-TRIANGULAR = "moments of the triangular distribution"
+TRIANGULAR = "definition"
 
 DEFINITIONS: tuple[Definition, ...] = (
     derived(

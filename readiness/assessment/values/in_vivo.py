@@ -201,7 +201,7 @@ PLAN: tuple[Definition, ...] = (
             **_SPREAD,
             "readings_at_prescription_level": "in_vivo.readings_at_prescription_level",
         },
-        source="law of propagation of uncertainty",
+        source="definition",
         known="derived",
         formula="s = sqrt(s_shared^2 + s_single^2/n)",
     ),
