@@ -67,9 +67,10 @@ DEFINITIONS: tuple[Definition, ...] = (
     ),
     Definition(
         "arrangement.study_distance_cm",
-        "Plane distance for which the field is predicted.",
+        "Plane distance for which the field is predicted: the chosen one, else the farthest in the room.",
         by=chosen_plane_distance,
         takes={"plane_distance_cm": "arrangement.plane_distance_cm"},
+        otherwise="arrangement.farthest_plane_distance_cm",
     ),
     Definition(
         "arrangement.smallest_gap_cm",

@@ -1,0 +1,108 @@
+"""The evidence register: what is in force, what has run out, and which papers speak of which item."""
+
+from collections.abc import Iterator
+from datetime import date, timedelta
+
+from readiness.assessment.definition import Definition, derived
+from readiness.quantities import Scalar, Table
+
+KINDS = (
+    "room", "machine", "beam", "degrader", "stand", "couch", "patient_shield", "instrument", "person",
+)  # fmt: skip
+
+
+def papers_about(*, evidence: Table, about: str, as_of_date: date) -> tuple[str, ...]:
+    """Return the types of papers in force that name an item under what they cover, in full or its own id."""
+    wanted = {about, about.rpartition("/")[2]}
+    return _types(row for row in _in_force(evidence, as_of_date) if wanted & set(_names(row["covers"])))
+
+
+def papers_in_force(*, evidence: Table, as_of_date: date) -> tuple[str, ...]:
+    """Return the types of all papers in force."""
+    return _types(_in_force(evidence, as_of_date))
+
+
+def _in_force(evidence: Table, as_of_date: date) -> Iterator[dict[str, Scalar]]:
+    """Yield the papers that have a file, are approved, and have not run out."""
+    for row in evidence.records():
+        approved, expires = row["approved_on"], row["expires_on"]
+        approved_by_now = isinstance(approved, date) and approved <= as_of_date
+        if row["file"] and approved_by_now and not (isinstance(expires, date) and expires < as_of_date):
+            yield row
+
+
+def _types(rows: Iterator[dict[str, Scalar]]) -> tuple[str, ...]:
+    return tuple(sorted({str(row["type"]) for row in rows if row["type"]}))
+
+
+def _names(covers: object) -> tuple[str, ...]:
+    return tuple(str(each) for each in covers) if isinstance(covers, tuple) else ()
+
+
+def still_in_force(*, expires_on: date | None, as_of_date: date) -> bool:
+    """Return whether a paper has not run out; one without an expiry date does not run out."""
+    return expires_on is None or expires_on >= as_of_date
+
+
+def runs_out_soon(*, expires_on: date | None, as_of_date: date, notice_days: float) -> bool:
+    """Return whether a paper that holds today runs out within the notice."""
+    last = as_of_date + timedelta(days=notice_days)
+    return expires_on is not None and as_of_date <= expires_on <= last
+
+
+def reviewed_in_time(*, next_review_on: date | None, as_of_date: date) -> bool:
+    """Return whether the date of a paper's next review, if it has one, has not passed."""
+    return next_review_on is None or next_review_on >= as_of_date
+
+
+def approved_after_written(*, dated_on: date, approved_on: date) -> bool:
+    """Return whether a paper was approved on the day of its own date or later."""
+    return approved_on >= dated_on
+
+
+def _about(kind: str) -> Definition:
+    """Return the papers that speak of an item of a kind."""
+    return derived(
+        f"{kind}.papers",
+        f"Types of papers in force that name this {kind.replace('_', ' ')} under what they cover.",
+        papers_about,
+        {"evidence": _EVIDENCE, "about": f"{kind}.id", "as_of_date": "program.as_of_date"},
+    )
+
+
+_EVIDENCE = "rows evidence: type? file? approved_on? expires_on? covers?"
+_TODAY = {"as_of_date": "program.as_of_date"}
+
+DEFINITIONS: tuple[Definition, ...] = (
+    *(_about(kind) for kind in KINDS),
+    derived(
+        "program.papers",
+        "Types of papers that are on file, approved and in force.",
+        papers_in_force,
+        {"evidence": _EVIDENCE, **_TODAY},
+    ),
+    derived(
+        "evidence.still_in_force",
+        "It has not run out.",
+        still_in_force,
+        {"expires_on": "evidence.expires_on?", **_TODAY},
+    ),
+    derived(
+        "evidence.runs_out_soon",
+        "It holds today and runs out within the notice.",
+        runs_out_soon,
+        {"expires_on": "evidence.expires_on?", "notice_days": "criterion.expiry_notice_days", **_TODAY},
+    ),
+    derived(
+        "evidence.reviewed_in_time",
+        "The date of its next review has not passed.",
+        reviewed_in_time,
+        {"next_review_on": "evidence.next_review_on?", **_TODAY},
+    ),
+    derived(
+        "evidence.approved_after_written",
+        "It was approved on the day of its own date or later.",
+        approved_after_written,
+        {"dated_on": "evidence.dated_on", "approved_on": "evidence.approved_on"},
+    ),
+)
