@@ -113,8 +113,8 @@ def _control(document: RenderedDocument, state: DocumentState | None, assessment
 def _around(document: RenderedDocument, assessment: Assessment) -> str:
     rules = [rule for rule in assessment.rules if document.number in rule.documents]
     lines = "".join(
-        f'<li><a href="binder:rule-{plain(rule.id)}">{plain(rule.id)}</a> ({rule.strength}): {plain(rule.title)}. '
-        f'<span class="known">{plain(known_words(rule))}</span></li>'
+        f'<li><a href="binder:rule-{plain(rule.id)}">{plain(rule.id)}</a> ({rule.strength}): '
+        f'{plain(rule.title)}. <span class="known">{plain(known_words(rule))}</span></li>'
         for rule in rules
     )
     answered = f"<h2>Requirements that this document answers</h2><ul>{lines}</ul>" if lines else ""
