@@ -15,6 +15,7 @@ from readiness.calculations.failure_mode_ranking import (
     worst_failure_modes,
 )
 from readiness.calculations.failure_modes import FailureMode, shipped_failure_modes
+from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 _ROWS = (
@@ -78,7 +79,11 @@ def severe(*, risks: RiskAnalysis) -> tuple[str, ...]:
 def severe_with_one_control(*, risks: RiskAnalysis) -> str:
     """Return the modes of severity 9 or 10 against which fewer than two controls stand."""
     grave = severe(risks=risks)
-    return named(mode.id for mode in risks.modes if mode.id in grave and len(mode.controls) < 2)
+    few = [mode.id for mode in risks.modes if mode.id in grave and len(mode.controls) < 2]
+    blank = sum(risks.scores.get(mode.id, Scores()).severity is None for mode in risks.modes)
+    if blank and not few:
+        raise OutsideValidity(f"Score the severity of {blank} failure mode(s) in risks.yaml.")
+    return named(few)
 
 
 def mode_count(*, risks: RiskAnalysis) -> int:
@@ -101,10 +106,12 @@ def undocumented(*, risks: RiskAnalysis) -> int:
     return sum(not mode.documents for mode in risks.modes)
 
 
-def months_since_scoring(*, scored_on: Sequence[date | None], as_of_date: date) -> float | None:
-    """Return the age of the oldest session of scoring; none if no mode has a date."""
+def months_since_scoring(*, scored_on: Sequence[date | None], as_of_date: date) -> float:
+    """Return the age of the oldest session of scoring."""
     dates = [day for day in scored_on if day is not None]
-    return (as_of_date - min(dates)).days / DAYS_PER_MONTH if dates else None
+    if not dates:
+        raise OutsideValidity("State the date of the team's scores (scored_on) in risks.yaml.")
+    return (as_of_date - min(dates)).days / DAYS_PER_MONTH
 
 
 def _of(

@@ -13,6 +13,7 @@ from readiness.calculations.staff_cover import (
 from readiness.calculations.staff_hours import (
     COMMISSION,
     LISTED,
+    OPERATE,
     ROLES,
     TASKS,
     people_with_fte,
@@ -24,6 +25,7 @@ from readiness.calculations.staff_hours import (
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
+ALWAYS_NEEDED = ("oncologist", "physicist", "therapist")
 PROFESSIONS = ("oncologist", "physicist", "therapist", "nurse", "dosimetrist")
 _TASKS = "rows staff_task: id profession per minutes_min persons"
 
@@ -71,8 +73,14 @@ def professions_without_cover(*, cover: Table) -> str:
     return named(str(row["profession"]) for row in cover.records() if row["session_covered"] is not True)
 
 
+def _has_task(hours: Table, phase: str, profession: str) -> bool:
+    return any(row["phase"] == phase and row["profession"] == profession for row in hours.records())
+
+
 def commissioning_hours_needed(*, hours: Table) -> float:
-    """Return the physicists' hours of commissioning."""
+    """Return the physicists' hours of commissioning, which no program is without."""
+    if not _has_task(hours, COMMISSION, "physicist"):
+        raise OutsideValidity("List the physicist's minutes per commissioning in staffing.yaml.")
     return sum(
         float(row["total_h"] or 0.0)
         for row in hours.records()
@@ -108,7 +116,9 @@ def person_is_qualified(
 
 def _needed(profession: str) -> Callable[..., float]:
     def fte_needed(*, hours: Table, hours_per_fte_h: float) -> float:
-        """Return the full-time equivalents that the running program needs of the profession."""
+        """Return what the running program needs of the profession; the core ones have tasks."""
+        if profession in ALWAYS_NEEDED and not _has_task(hours, OPERATE, profession):
+            raise OutsideValidity(f"List the {profession}'s tasks with their minutes in staffing.yaml.")
         return profession_fte_needed(hours=hours, profession=profession, hours_per_fte_h=hours_per_fte_h)
 
     return fte_needed

@@ -76,8 +76,16 @@ def test_scores_for_a_mode_that_nobody_described_are_a_slip() -> None:
 def test_a_severe_mode_wants_two_controls() -> None:
     """Severity 9 with one control is named, severity 8 is not."""
     one = ("Look at it",)
+    others = [mode(each.id, severity=5) for each in SHIPPED[1:]]
     assert FIRST == value("severe_modes_with_one_control", mode(FIRST, severity=9, controls=one))
-    assert "none" == value("severe_modes_with_one_control", mode(FIRST, severity=8, controls=one))
+    assert "none" == value("severe_modes_with_one_control", mode(FIRST, severity=8, controls=one), *others)
+
+
+def test_a_severity_that_nobody_scored_may_be_severe() -> None:
+    """While a severity is blank it is not known that no severe mode lacks a control."""
+    found = got("severe_modes_with_one_control", mode(FIRST, severity=8))
+    assert isinstance(found, Gone)
+    assert f"severity of {len(SHIPPED) - 1} failure mode" in found.causes[0].words
 
 
 def test_the_oldest_scores_decide_their_age() -> None:

@@ -88,6 +88,17 @@ def test_full_time_equivalents_close_by_hand() -> None:
     assert 0.0 == value(of, "program.nurse_needed_fte")
 
 
+def test_a_profession_without_a_task_is_not_one_without_work() -> None:
+    """No oncologist's task is listed, so that the need is not known; commissioning takes hours too."""
+    found = graph(described(), *DEFINITIONS).get("program.oncologist_needed_fte", PROGRAM)
+    assert isinstance(found, Gone)
+    assert "oncologist's tasks" in found.causes[0].words
+    without = graph(described(without=("project",)), *DEFINITIONS).get(
+        "program.commissioning_needed_h", PROGRAM
+    )
+    assert isinstance(without, Gone)
+
+
 def test_only_those_known_to_be_qualified_count() -> None:
     """Of 0.15 and 0.40 FTE the trained physicist has 0.10, the three checked therapists 0.30."""
     of = described()
