@@ -11,7 +11,7 @@ from numpy.typing import ArrayLike, NDArray
 
 from readiness.calculations.air_density import air_density_g_per_cm3
 from readiness.calculations.scattering_power import scattering_power
-from readiness.calculations.stopping_power import total_stopping_power
+from readiness.calculations.stopping_power import stopping_power_in_steps
 from readiness.errors import OutsideValidity
 
 Array = NDArray[np.float64]
@@ -125,10 +125,10 @@ def _moments(energy: Array, path: Array, density: float, cut: Array) -> AirBeam:
     left = energy
     for _ in range(STEPS):
         mass = density * step * (1 + a0)  # mass per area along the lengthened path
-        middle = left - 0.5 * mass * total_stopping_power(material="air", energy_mev=np.atleast_1d(left))
+        middle = left - 0.5 * mass * stopping_power_in_steps(material="air", energy_mev=left)
         _refuse_stopped(middle)
         power = 0.5 * density * scattering_power(material="air", energy_mev=middle, cut_rad=cut)
-        left = left - mass * total_stopping_power(material="air", energy_mev=middle)
+        left = left - mass * stopping_power_in_steps(material="air", energy_mev=middle)
         _refuse_stopped(left)
         a2 = a2 + 2 * a1 * step + a0 * step**2 + power * step**3 / 3
         a1 = a1 + a0 * step + power * step**2 / 2

@@ -14,7 +14,7 @@ from readiness.calculations.air_transport import (
 )
 from readiness.calculations.electron_materials import electron_material
 from readiness.calculations.scattering_power import scattering_power
-from readiness.calculations.stopping_power import csda_range, total_stopping_power
+from readiness.calculations.stopping_power import csda_range, stopping_power_in_steps, total_stopping_power
 from readiness.errors import OutsideValidity
 
 Array = NDArray[np.float64]
@@ -149,10 +149,10 @@ def _through(material: str, energy: Array, angle: Array, path: Array, cut: Array
     for _ in range(STEPS):
         slope = np.minimum(np.sqrt(own + angle**2), LARGEST_ANGLE_RAD)
         mass = density * step * (1 + slope**2)
-        middle = left - 0.5 * mass * total_stopping_power(material=material, energy_mev=np.atleast_1d(left))
+        middle = left - 0.5 * mass * stopping_power_in_steps(material=material, energy_mev=left)
         middle = np.maximum(middle, SLOWEST_MEV)
         own = own + 0.5 * density * step * scattering_power(material=material, energy_mev=middle, cut_rad=cut)
-        left = left - mass * total_stopping_power(material=material, energy_mev=middle)
+        left = left - mass * stopping_power_in_steps(material=material, energy_mev=middle)
         left = np.maximum(left, SLOWEST_MEV)
     capped = np.minimum(np.sqrt(own), LARGEST_ANGLE_RAD)
     return left.reshape(path.shape), capped.reshape(path.shape)

@@ -1,5 +1,6 @@
 """How fast electrons lose energy, and how far they reach."""
 
+from functools import cache
 from typing import overload
 
 import numpy as np
@@ -16,6 +17,7 @@ COLLISION_FACTOR = 0.153536  # 2 pi r_e^2 m c^2 N_A, in MeV cm2/g
 RADIATIVE_FACTOR = 3.4896e-4  # alpha r_e^2 N_A, in cm2/g
 LOWEST_ENERGY_MEV = 0.01  # below it the formula needs shell corrections
 HIGHEST_ENERGY_MEV = 50.0
+CURVE_POINTS = 6001
 
 
 @overload
@@ -78,6 +80,38 @@ def total_stopping_power(*, material: str, energy_mev: float | Array) -> float |
     found = electron_material(name=material)
     result = _collision(found, energy) + _radiative(found, energy)
     return result if isinstance(energy_mev, np.ndarray) else float(result)
+
+
+def stopping_power_in_steps(*, material: str, energy_mev: Array) -> Array:
+    """
+    Return the total stopping power read between close-lying energies, for transport in many small steps.
+
+    Args:
+        material: Name of the material.
+        energy_mev: Kinetic energies. [MeV]
+
+    Returns:
+        Mass stopping power, in MeV cm2/g, shape of the energies.
+
+    Raises:
+        ValueError: If an energy is not positive.
+        OutsideValidity: If the material is unknown or an energy outside 0.01 to 50 MeV.
+
+    Valid for: see total_stopping_power, from which it differs by less than 2e-5 of itself.
+    Assumes: straight lines between energies 0.14 % apart.
+    Source: total_stopping_power (derived).
+    """
+    lowest, highest = np.min(energy_mev), np.max(energy_mev)
+    if not lowest >= LOWEST_ENERGY_MEV or not highest <= HIGHEST_ENERGY_MEV:
+        _energy(energy_mev)
+    return np.interp(np.log(energy_mev), *_curve(material))
+
+
+@cache
+def _curve(material: str) -> tuple[Array, Array]:
+    """Return logarithms of energies and the total stopping power there."""
+    energies = np.geomspace(LOWEST_ENERGY_MEV, HIGHEST_ENERGY_MEV, CURVE_POINTS)
+    return np.log(energies), total_stopping_power(material=material, energy_mev=energies)
 
 
 def csda_range(*, material: str, energy_mev: float) -> float:
