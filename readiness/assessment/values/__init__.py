@@ -35,6 +35,7 @@ from readiness.assessment.values import (
     session_minutes,
     shields,
     staff_time,
+    stand_checks,
 )
 
 ALL: tuple[Definition, ...] = (
@@ -71,4 +72,5 @@ ALL: tuple[Definition, ...] = (
     *session_minutes.DEFINITIONS,
     *shields.DEFINITIONS,
     *staff_time.DEFINITIONS,
+    *stand_checks.DEFINITIONS,
 )
