@@ -125,7 +125,7 @@ def write(
         joined.metadata.created = joined.metadata.modified = day.isoformat()
         files = [_attachment(press, name, *each, day) for name, each in sorted((attachments or {}).items())]
         written: bytes = joined.write_pdf(
-            pdf_variant="pdf/ua-1", pdf_forms=True, attachments=files, finisher=_as_sources
+            pdf_variant="pdf/ua-1", pdf_forms=True, attachments=files, finisher=_finish
         )
     return written
 
@@ -155,8 +155,17 @@ def _attachment(press: Any, name: str, content: bytes, description: str, day: da
     )  # fmt: skip
 
 
-def _as_sources(document: Any, pdf: Any) -> None:
-    """Say of each attached file that the document was made from it."""
+def _finish(document: Any, pdf: Any) -> None:
+    """Say what each table heading stands over, and that the document was made from the attached files."""
+    for page in document.pages:
+        for box in page._page_box.descendants():
+            cell = getattr(box, "mark", None)
+            if cell is not None and box.element_tag == "th":
+                cell["A"]["Scope"] = "/Row" if box.element.get("scope") == "row" else "/Column"
+    _as_sources(pdf)
+
+
+def _as_sources(pdf: Any) -> None:
     import pydyf  # type: ignore[import-untyped]
 
     dictionaries = (each for each in pdf.objects if isinstance(each, pydyf.Dictionary))

@@ -116,6 +116,23 @@ def test_it_says_that_it_is_accessible(reader: PdfReader) -> None:
     assert "Total skin electron program, Example Department" == reader.metadata.title
 
 
+def test_every_table_heading_says_what_it_stands_over(reader: PdfReader) -> None:
+    """A screen reader is told for each heading whether it heads a row or a column."""
+    scopes: list[str] = []
+    waiting = [reader.trailer["/Root"]["/StructTreeRoot"]["/K"]]
+    while waiting:
+        node = waiting.pop()
+        node = node.get_object() if hasattr(node, "get_object") else node
+        if isinstance(node, list):
+            waiting += node
+        elif isinstance(node, dict):
+            if node.get("/S") == "/TH" and "/A" in node:
+                scopes.append(str(node["/A"].get("/Scope")))
+            waiting.append(node.get("/K", []))
+    assert {"/Row", "/Column"} == set(scopes)
+    assert len(scopes) > 100
+
+
 def test_contents_give_the_page_on_which_each_document_begins(pages: list[str]) -> None:
     """The numbers printed in the contents are those of the file."""
     contents = next(text for text in pages if text.startswith("Contents"))
