@@ -12,9 +12,11 @@ from readiness.calculations.beam_study import (
 )
 from readiness.calculations.field_setup import FieldSetup
 from readiness.calculations.unequal_tilts import UnequalTilts, best_unequal_tilts
+from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 MAP_TILT_STEP_DEG = 1.0
+FARTHEST = "arrangement.farthest_when_cleared_cm"
 TRIED_TILTS_DEG = tuple(8.0 + 0.5 * step for step in range(33))
 
 
@@ -23,7 +25,7 @@ def study_of_arrangement(
     *,
     setup: FieldSetup,
     plane_distance_cm: float,
-    farthest_cm: float | None = None,
+    farthest_cm: float | None,
     mu_share_upper: float | None,
     metric: str,
     vertical_limit_percent: float,
@@ -33,8 +35,12 @@ def study_of_arrangement(
     field_length_cm: float,
     field_width_cm: float,
 ) -> ArrangementStudy:
-    """Return the study up to the farthest plane of the room, or to the chosen one if that is not known."""
-    farthest = max(plane_distance_cm, farthest_cm or plane_distance_cm)
+    """Return the study up to the farthest plane of the cleared room, or the chosen one if that is unknown."""
+    farthest = plane_distance_cm if farthest_cm is None else farthest_cm
+    if farthest < NEAREST_CM:
+        raise OutsideValidity(
+            f"the room reaches no plane that a study covers, which begins at {NEAREST_CM:g} cm"
+        )
     return arrangement_study(
         setup=setup,
         plane_distance_cm=plane_distance_cm,
@@ -60,7 +66,7 @@ def map_of_study(*, study: ArrangementStudy) -> Table:
     return Table(whole.columns, kept)
 
 
-def remedy_in_words(*, study: ArrangementStudy, farthest_cm: float | None = None) -> str:
+def remedy_in_words(*, study: ArrangementStudy, farthest_cm: float | None) -> str:
     """Return what would have to change for both profiles to keep their limits."""
     if not study.remedy:
         return "Both profiles are predicted to keep their limits at this plane."
@@ -99,6 +105,11 @@ def unequal_tilts_of_arrangement(
     )
 
 
+def recommended_distance(*, study: ArrangementStudy, farthest_cm: float) -> float:
+    """Return the nearest plane that keeps both limits, else the farthest; only where the reach is known."""
+    return min(study.recommended_distance_cm, farthest_cm)
+
+
 def _of(name: str, meaning: str, of: str, part: str) -> Definition:
     """Return a part of one of the records."""
     name, of = f"arrangement.{name}", f"arrangement.{of}"
@@ -114,6 +125,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             **PREDICTION,
             **LIMITS,
             **LENGTHS,
+            "farthest_cm": f"{FARTHEST}?",
         },
         model=True,
         internal=True,
@@ -134,6 +146,20 @@ DEFINITIONS: tuple[Definition, ...] = (
         source="own-fit",
         known="fit",
     ),
+    Definition(
+        "arrangement.recommended_distance_cm",
+        "Nearest plane in the cleared room that is predicted to keep both limits, else the farthest.",
+        by=recommended_distance,
+        takes={"study": "arrangement.study", "farthest_cm": FARTHEST},
+        source="own-fit",
+        known="fit",
+    ),
+    _of(
+        "tilt_at_recommended_distance_deg",
+        "Best tilt at the recommended distance, as predicted.",
+        "study",
+        "tilt_at_recommended_distance_deg",
+    ),
     _of(
         "distance_for_both_limits_cm",
         "Nearest plane at which both profiles are predicted to keep their limits, in reach or not.",
@@ -144,7 +170,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         "arrangement.study_reason",
         "What would have to change for both profiles to keep their limits, as predicted.",
         by=remedy_in_words,
-        takes={"study": "arrangement.study"},
+        takes={"study": "arrangement.study", "farthest_cm": f"{FARTHEST}?"},
         source="own-fit",
         known="fit",
     ),
