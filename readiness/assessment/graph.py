@@ -380,13 +380,38 @@ class Graph:
         return [candidate for _, candidate in found], tuple(near)
 
     def why_not_measured(self, name: str, ref: Ref) -> tuple[Cause, ...]:
-        """Return what is missing for a value to be measured."""
-        definition = self.catalogue.definitions.get(name)
-        owner = Ref(name.partition(".")[0], self.owners(ref).get(name.partition(".")[0], ref.id))
-        if definition is None or definition.measured is None:
-            return (Cause("measurement", name, owner, f"Measure {words_of(name)} of {owner}."),)
-        _, near = self.measurements(definition.measured, owner)
-        return self._wanted(definition.measured, owner, near)
+        """Return what is missing for a value to be measured, itself or what it is worked out from."""
+        causes: set[Cause] = set()
+        seen: set[tuple[str, Ref]] = set()
+        waiting = [(name, ref)]
+        while waiting:
+            each = waiting.pop()
+            if each in seen or self.catalogue.is_choice(each[0]):
+                continue
+            seen.add(each)
+            definition = self.catalogue.definitions.get(each[0])
+            got = self.get(*each)
+            if definition is None or (isinstance(got, Value) and got.basis == "measured"):
+                continue
+            if definition.measured is not None:
+                owner = self._owner_of(*each)
+                _, near = self.measurements(definition.measured, owner)
+                causes.update(self._wanted(definition.measured, owner, near))
+            else:
+                waiting += self._rests_on(definition, got, each[1])
+        owner = self._owner_of(name, ref)
+        words = f"Measure {words_of(name)} of {owner}."
+        return tuple(sorted(causes)) or (Cause("measurement", name, owner, words),)
+
+    def _owner_of(self, name: str, ref: Ref) -> Ref:
+        kind = name.partition(".")[0]
+        return Ref(kind, self.owners(ref).get(kind, ref.id))
+
+    def _rests_on(self, definition: Definition, got: Got, ref: Ref) -> list[tuple[str, Ref]]:
+        """Return what a value is worked out from; where a prediction stands in, what it stands in for."""
+        if isinstance(got, Value) and [each.keyword for each in got.inputs] != ["otherwise"]:
+            return [] if definition.model else [(each.name, each.item) for each in got.inputs]
+        return [(take.name, ref) for _, take in self.catalogue.takes[definition.name] if take.form == "one"]
 
     def _wanted(self, measured: Measured, ref: Ref, near: tuple[Cause, ...]) -> tuple[Cause, ...]:
         words = f"Measure {measured.kind.replace('-', ' ')} for {ref}."

@@ -88,7 +88,9 @@ def test_outside_validity_is_a_cause_and_not_a_crash() -> None:
     def refuse(*, ceiling_height_cm: float) -> float:
         raise OutsideValidity("the table ends at 200 cm")
 
-    value = Definition("room.refused_cm", "Refused.", by=refuse, takes={"ceiling_height_cm": "room.ceiling_height_cm"})
+    value = Definition(
+        "room.refused_cm", "Refused.", by=refuse, takes={"ceiling_height_cm": "room.ceiling_height_cm"}
+    )
     got = graph(program(item("room", "a", ceiling_height_cm=300.0)), value).get("room.refused_cm", ROOM)
     assert isinstance(got, Gone)
     assert got.causes[0].words == "the table ends at 200 cm"
@@ -96,7 +98,9 @@ def test_outside_validity_is_a_cause_and_not_a_crash() -> None:
 
 def test_each_collects_over_the_nearest_list() -> None:
     """A room asks for its own obstructions, not for those of another room."""
-    tops = Definition("room.tops", "Tops.", by=lambda *, tops_cm: max(tops_cm), takes={"tops_cm": "each obstruction.top_cm"})
+    tops = Definition(
+        "room.tops", "Tops.", by=lambda *, tops_cm: max(tops_cm), takes={"tops_cm": "each obstruction.top_cm"}
+    )
     of = program(
         item("room", "a"), item("room", "b"),
         item("obstruction", "a/x", {"room": "a"}, top_cm=70.0), item("obstruction", "b/x", {"room": "b"}, top_cm=90.0),
@@ -108,9 +112,13 @@ def test_each_collects_over_the_nearest_list() -> None:
 
 def test_an_unknown_list_is_a_cause_and_an_empty_list_is_empty() -> None:
     """Nothing is known of a list that is not there; a list that is there, even empty, is complete."""
-    count = Definition("program.instrument_count", "Count.", by=lambda *, ids: len(ids), takes={"ids": "each instrument.id"})
+    count = Definition(
+        "program.instrument_count", "Count.", by=lambda *, ids: len(ids), takes={"ids": "each instrument.id"}
+    )
     unknown = graph(program(), count).get("program.instrument_count", Ref("program", "program"))
-    empty = graph(program(lists=("instrument",)), count).get("program.instrument_count", Ref("program", "program"))
+    empty = graph(program(lists=("instrument",)), count).get(
+        "program.instrument_count", Ref("program", "program")
+    )
     assert isinstance(unknown, Gone)
     assert "dosimetry.yaml" in unknown.causes[0].words
     assert isinstance(empty, Value)
@@ -119,7 +127,12 @@ def test_an_unknown_list_is_a_cause_and_an_empty_list_is_empty() -> None:
 
 def test_rows_make_a_table_of_items() -> None:
     """Fields of listed items become the rows of a table, optional ones blank."""
-    table = Definition("program.table", "Table.", by=lambda *, tools: tools, takes={"tools": "rows instrument: id type pieces?"})
+    table = Definition(
+        "program.table",
+        "Table.",
+        by=lambda *, tools: tools,
+        takes={"tools": "rows instrument: id type pieces?"},
+    )
     of = program(item("instrument", "i", type="film"))
     got = graph(of, table).get("program.table", Ref("program", "program"))
     assert isinstance(got, Value)
@@ -137,7 +150,9 @@ SPREAD = Definition(
     "beam.foil_spread", "Spread.",
     measured=Measured("single-profile", takes={"x": "measurement.fitted"}),
 )  # fmt: skip
-FITTED = Definition("measurement.fitted", "Fit.", by=lambda *, day: Uncertain(0.2, 0.01), takes={"day": "measurement.date"})
+FITTED = Definition(
+    "measurement.fitted", "Fit.", by=lambda *, day: Uncertain(0.2, 0.01), takes={"day": "measurement.date"}
+)
 
 
 def _of_measurements(*measurements: object, due: date = date(2027, 1, 1)) -> object:
@@ -229,9 +244,9 @@ def test_a_prediction_stands_in_with_its_own_basis_only_where_nothing_better_is_
 
 def test_without_either_both_roots_are_named() -> None:
     """Where even the prediction is missing, each thing that would help is a cause."""
-    got = graph(program(item("room", "a", isocentre_height_cm=130.0)), HEADROOM, CHOSEN_HEADROOM, GUESSED_HEADROOM).get(
-        "room.chosen_headroom_cm", ROOM
-    )
+    got = graph(
+        program(item("room", "a", isocentre_height_cm=130.0)), HEADROOM, CHOSEN_HEADROOM, GUESSED_HEADROOM
+    ).get("room.chosen_headroom_cm", ROOM)
     assert isinstance(got, Gone)
     assert [cause.what for cause in got.causes] == ["room.ceiling_height_cm", "room.door_clear_width_cm"]
 
@@ -253,3 +268,31 @@ def test_a_part_that_a_record_does_not_have_is_no_value() -> None:
     of = graph(program(item("room", "a", ceiling_height_cm=300.0)), whole, first, second)
     assert isinstance(of.get("room.first_cm", ROOM), Value)
     assert isinstance(of.get("room.second_cm", ROOM), Gone)
+
+
+MEASURED_TILT = Definition(
+    "arrangement.best_tilt_deg", "Best tilt.", measured=Measured("angle-sweep", takes={"of": "measurement.tilt_deg"}),
+    otherwise="arrangement.guessed_tilt_deg",
+)  # fmt: skip
+GUESSED_TILT = Definition(
+    "arrangement.guessed_tilt_deg", "Guessed tilt.", by=lambda *, thickness_cm: 16.0, model=True,
+    takes={"thickness_cm": "degrader.thickness_cm"},
+)  # fmt: skip
+DOUBLE_TILT = Definition(
+    "arrangement.between_axes_deg", "Angle between the axes.", by=lambda *, best_tilt_deg: 2 * best_tilt_deg,
+    takes={"best_tilt_deg": "arrangement.best_tilt_deg"},
+)  # fmt: skip
+
+
+def test_what_is_worked_out_from_a_prediction_asks_for_the_measurement_of_what_it_rests_on() -> None:
+    """A sum of predicted tilts is measured once the tilt is: that measurement is asked for, not the sum."""
+    made = item("arrangement", "x", {"degrader": "sheet"})
+    of = graph(
+        program(item("degrader", "sheet", thickness_cm=1.0)),
+        MEASURED_TILT,
+        GUESSED_TILT,
+        DOUBLE_TILT,
+        made=(made,),
+    )
+    causes = of.why_not_measured("arrangement.between_axes_deg", Ref("arrangement", "x"))
+    assert ["Measure angle sweep for arrangement x."] == [cause.words for cause in causes]
