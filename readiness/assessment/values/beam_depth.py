@@ -14,8 +14,12 @@ from readiness.calculations.degrader_choice import (
     depth_rules_in_words,
     pmma_equivalent_cm,
 )
+from readiness.calculations.published_tables import published_table
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
+
+TABLE = "composite_depth_dose"
+BOTH_KEPT, TOO_DEEP, TOO_SHALLOW = "both kept", "too deep", "too shallow"
 
 
 @lru_cache(maxsize=256)
@@ -27,6 +31,41 @@ def depth_dose_of_arrangement(
         raise OutsideValidity("no depth dose is predicted for a lying patient: measure it")
     pmma = pmma_equivalent_cm(degrader_material=material, degrader_thickness_cm=thickness_cm)
     return composite_depth_dose(energy_at_source_mev=energy_for_table_mev, pmma_cm=pmma)
+
+
+def forecast_in_words(
+    *,
+    depth_dose: CompositeDepthDose | None,
+    energy_at_plane_mev: float,
+    least_at_4_mm_percent: float,
+    most_at_20_mm_percent: float,
+) -> str:
+    """
+    Return whether both depth rules are predicted to be kept.
+
+    Beyond the energies of the table the dose is deeper, or shallower, than at its ends.
+    """
+    ends = [float(entry or 0) for entry in published_table(TABLE).column("energy_at_plane_mev")]
+    if depth_dose is not None:
+        at_4_mm = depth_dose.dose_at_4_mm_percent.value
+        at_20_mm = depth_dose.dose_at_20_mm_percent.value
+    elif energy_at_plane_mev >= max(ends):
+        at_4_mm, at_20_mm = _row_with(max(ends))
+    elif energy_at_plane_mev <= min(ends):
+        at_4_mm, at_20_mm = _row_with(min(ends))
+    else:
+        raise OutsideValidity("the depth-dose table holds neither this energy nor one beyond it: measure it")
+    if at_20_mm >= most_at_20_mm_percent:
+        return TOO_DEEP
+    return TOO_SHALLOW if at_4_mm < least_at_4_mm_percent else BOTH_KEPT
+
+
+def _row_with(energy_at_plane_mev: float) -> tuple[float, float]:
+    """Return the doses at 4 and 20 mm of the table's row with an energy at the plane, in per cent."""
+    for row in published_table(TABLE).records():
+        if row["energy_at_plane_mev"] == energy_at_plane_mev:
+            return 100 * float(row["dose_at_4_mm"] or 0), 100 * float(row["dose_at_20_mm"] or 0)
+    raise OutsideValidity("the depth-dose table has no such row")
 
 
 def degraders_compared(
@@ -143,6 +182,20 @@ DEFINITIONS: tuple[Definition, ...] = (
     _single("single_r80_mm", "Depth of 80 % of the dose of one field at the plane.", "r80_mm"),
     _single("single_r50_mm", "Half-value depth of one field at the plane.", "r50_mm"),
     _single("single_practical_range_mm", "Practical range of one field at the plane.", "rp_mm"),
+    Definition(
+        "arrangement.depth_rules_forecast",
+        "Whether both depth rules are predicted to be kept, or the dose is too deep or too shallow.",
+        by=forecast_in_words,
+        takes={
+            "depth_dose": "arrangement.predicted_depth_dose?",
+            "energy_at_plane_mev": "arrangement.energy_at_plane_mev",
+            "least_at_4_mm_percent": "criterion.dose_at_4_mm_percent",
+            "most_at_20_mm_percent": "criterion.dose_at_20_mm_percent",
+        },
+        model=True,
+        source="own-monte-carlo",
+        known="mc",
+    ),
     Definition(
         "arrangement.degraders_by_depth_rules",
         "Thicknesses of PMMA with what each is predicted to do to the composite depth dose.",

@@ -89,6 +89,21 @@ def test_each_degrader_has_its_own_predicted_depth_dose() -> None:
     assert value(department(), "arrangement.r80_mm", "thick").value < value(department(), "arrangement.r80_mm").value
 
 
+@pytest.mark.parametrize(
+    ("beam", "degrader", "forecast"),
+    [
+        ({}, "thin", "both kept"),
+        ({}, "thick", "too shallow"),
+        ({"r50_cm": 3.56, "rp_cm": 4.34}, "thin", "too deep"),
+    ],
+)
+def test_a_degrader_suits_an_energy_or_not(beam: dict[str, float], degrader: str, forecast: str) -> None:
+    """At 6 MeV 0.6 cm suits and 1.0 cm is too thick; at 9 MeV 0.6 cm leaves the dose too deep, beyond the table."""
+    of = department(beam=beam)
+    assert forecast == value(of, "arrangement.depth_rules_forecast", degrader).value
+    assert ("met" if forecast == "both kept" else "not met") == finding(of, "degrader-suits-energy", degrader).outcome
+
+
 def test_a_predicted_depth_has_two_millimetres_of_uncertainty() -> None:
     """Real beams are softer than the table."""
     assert 2.0 == value(department(), "arrangement.r80_mm").sd

@@ -7,7 +7,16 @@ import pytest
 from readiness.assessment.records import Gone, Value
 from readiness.program.items import Program
 from readiness.quantities import Table
-from tests.assessment.values.beam_program import arrangement, department, finding, graph_of, got, measured, value, words
+from tests.assessment.values.beam_program import (
+    arrangement,
+    department,
+    finding,
+    got,
+    graph_of,
+    measured,
+    value,
+    words,
+)
 
 SPREAD = {"foil_spread": 0.2}
 
