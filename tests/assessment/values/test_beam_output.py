@@ -106,8 +106,7 @@ def test_a_factor_of_another_definition_is_asked_about() -> None:
     """B of 1.5 lies outside what the definition gives."""
     of = department(cylinder(30.0, 20.0))
     assert "outside" in value(of, "arrangement.b_factor_question").value
-    assert "not met" == finding(of, "b-factor-usual").outcome
-    assert "met" == finding(department(cylinder(52.0, 20.0)), "b-factor-usual").outcome
+    assert "none" == value(department(cylinder(52.0, 20.0)), "arrangement.b_factor_question").value
 
 
 def test_a_factor_on_a_rotating_platform_is_no_factor_of_six_positions() -> None:
