@@ -29,8 +29,28 @@ def fitted_foil_spread(
     table: Table,
     normalisation: str,
     distance_cm: float,
-    gap_cm: float,
     tilt_deg: float,
+    setup: FieldSetup,
+) -> FoilSpreadFit | None:
+    """Return the fit to a single-field profile in its own set-up; None for another kind of measurement."""
+    if kind != SINGLE_PROFILE:
+        return None
+    direction = direction_of_profile(table=table)
+    vertical = direction == "vertical"
+    return foil_spread_of_profile(
+        positions_cm=numbers(table, "height_cm") if vertical else numbers_or(table, "across_cm", 0.0),
+        readings=numbers(table, "relative_dose"),
+        normalisation=normalisation,
+        direction=direction,
+        setup=setup,
+        plane_distance_cm=distance_cm,
+        tilt_deg=tilt_deg,
+    )
+
+
+def setup_of_measurement(
+    *,
+    gap_cm: float,
     degrader: str,
     material: str | None,
     thickness_cm: float | None,
@@ -40,36 +60,22 @@ def fitted_foil_spread(
     pressure_kpa: float,
     temperature_celsius: float,
     source_axis_distance_cm: float,
-) -> FoilSpreadFit | None:
-    """Return the fit to a single-field profile in its own set-up; None for another kind of measurement."""
-    if kind != SINGLE_PROFILE:
-        return None
-    behind_degrader = degrader != "none"
-    if behind_degrader and (material is None or thickness_cm is None):
+) -> FieldSetup:
+    """Return the record of beam, degrader and room of a measurement; its foil spread is a placeholder."""
+    behind = degrader != "none"
+    if behind and (material is None or thickness_cm is None):
         raise OutsideValidity(f"material or thickness of degrader {degrader} is not known")
-    direction = direction_of_profile(table=table)
-    setup = field_setup(
+    return field_setup(
         energy_at_source_mev=energy_at_source_mev,
         foil_spread=ANY_SPREAD,
         opening_cm=opening_cm,
         collimator_deg=collimator_deg,
-        degrader_material=material if behind_degrader else None,
-        degrader_thickness_cm=thickness_cm if behind_degrader else None,
-        degrader_gap_cm=gap_cm if behind_degrader else None,
+        degrader_material=material if behind else None,
+        degrader_thickness_cm=thickness_cm if behind else None,
+        degrader_gap_cm=gap_cm if behind else None,
         pressure_kpa=pressure_kpa,
         temperature_celsius=temperature_celsius,
         source_axis_distance_cm=source_axis_distance_cm,
-    )
-    return foil_spread_of_profile(
-        positions_cm=numbers(table, "height_cm")
-        if direction == "vertical"
-        else numbers_or(table, "across_cm", 0.0),
-        readings=numbers(table, "relative_dose"),
-        normalisation=normalisation,
-        direction=direction,
-        setup=setup,
-        plane_distance_cm=distance_cm,
-        tilt_deg=tilt_deg,
     )
 
 
@@ -112,6 +118,19 @@ _BEAM_AND_ROOM = {
 
 DEFINITIONS: tuple[Definition, ...] = (
     Definition(
+        "measurement.field_setup",
+        "Beam, degrader and air of a measurement.",
+        by=setup_of_measurement,
+        takes={
+            "gap_cm": "measurement.gap_cm",
+            "degrader": "measurement.degrader",
+            "material": "degrader.material?",
+            "thickness_cm": "degrader.thickness_cm?",
+            **_BEAM_AND_ROOM,
+        },
+        internal=True,
+    ),
+    Definition(
         "measurement.foil_spread_fit",
         "Foil spread and shift of the centre that fit a single-field profile.",
         by=fitted_foil_spread,
@@ -120,12 +139,8 @@ DEFINITIONS: tuple[Definition, ...] = (
             "table": "measurement.table",
             "normalisation": "measurement.normalisation",
             "distance_cm": "measurement.distance_cm",
-            "gap_cm": "measurement.gap_cm",
             "tilt_deg": "measurement.tilt_deg",
-            "degrader": "measurement.degrader",
-            "material": "degrader.material?",
-            "thickness_cm": "degrader.thickness_cm?",
-            **_BEAM_AND_ROOM,
+            "setup": "measurement.field_setup",
         },
         internal=True,
         source="own-fit",
