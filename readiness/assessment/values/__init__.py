@@ -27,6 +27,8 @@ from readiness.assessment.values import (
     moving_couch,
     papers,
     patient_flow,
+    people,
+    periodic_tests,
     risk,
     room_beam,
     room_heights,
@@ -36,6 +38,7 @@ from readiness.assessment.values import (
     shields,
     staff_time,
     stand_checks,
+    tools,
 )
 
 ALL: tuple[Definition, ...] = (
@@ -64,6 +67,8 @@ ALL: tuple[Definition, ...] = (
     *moving_couch.DEFINITIONS,
     *papers.DEFINITIONS,
     *patient_flow.DEFINITIONS,
+    *people.DEFINITIONS,
+    *periodic_tests.DEFINITIONS,
     *risk.DEFINITIONS,
     *room_beam.DEFINITIONS,
     *room_heights.DEFINITIONS,
@@ -73,4 +78,5 @@ ALL: tuple[Definition, ...] = (
     *shields.DEFINITIONS,
     *staff_time.DEFINITIONS,
     *stand_checks.DEFINITIONS,
+    *tools.DEFINITIONS,
 )

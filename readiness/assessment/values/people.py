@@ -1,0 +1,91 @@
+"""People one by one: trained, competent, recorded; and how many there are of each profession."""
+
+from collections.abc import Callable, Sequence
+from datetime import date
+
+from readiness.assessment.definition import Definition, derived
+from readiness.errors import OutsideValidity
+from readiness.quantities import Table
+
+COUNTED = ("oncologist", "physicist", "therapist", "nurse")
+RECORD = "competency-record"
+NOBODY = "nobody"
+
+
+def trained_by(*, trained_on: Sequence[date | None], as_of_date: date) -> int:
+    """Return how many people are trained."""
+    return sum(day is not None and day <= as_of_date for day in trained_on)
+
+
+def listed(*, people: Sequence[str]) -> int:
+    """Return how many people there are."""
+    return len(people)
+
+
+def competency_holds(
+    *, competency_on: date, intervals_months: Sequence[float], as_of_date: date
+) -> bool:
+    """Return whether a competency check was made and its interval has not passed."""
+    if not intervals_months:
+        raise OutsideValidity("State competency interval (months) of training in staffing.yaml.")
+    months = competency_on.year * 12 + competency_on.month - 1 + round(min(intervals_months))
+    end = (months // 12, months % 12 + 1, competency_on.day)
+    return competency_on <= as_of_date and (as_of_date.year, as_of_date.month, as_of_date.day) <= end
+
+
+def without_record(*, people: Table) -> str:
+    """Return the people of whom no competency record is on file."""
+    missing = [str(row["id"]) for row in people.records() if RECORD not in _types(row["papers"])]
+    return ", ".join(missing) or NOBODY
+
+
+def _types(papers: object) -> tuple[str, ...]:
+    return papers if isinstance(papers, tuple) else ()
+
+
+def _qualified_of(profession: str) -> Callable[..., int]:
+    def count(*, people: Table) -> int:
+        """Return how many of the profession are known to be qualified."""
+        return sum(
+            row["profession"] == profession and row["qualified"] is True for row in people.records()
+        )
+
+    return count
+
+
+DEFINITIONS: tuple[Definition, ...] = (
+    derived(
+        "person.competency_holds",
+        "The last competency check was signed and its interval has not passed.",
+        competency_holds,
+        {
+            "competency_on": "person.competency_on",
+            "intervals_months": "each training.competency_interval_months",
+            "as_of_date": "program.as_of_date",
+        },
+    ),
+    derived(
+        "program.people_trained",
+        "Number of people with a date of training for this program.",
+        trained_by,
+        {"trained_on": "each person.trained_on?", "as_of_date": "program.as_of_date"},
+    ),
+    derived(
+        "program.people_listed", "Number of people in the program.", listed, {"people": "each person.id"}
+    ),
+    derived(
+        "program.people_without_record",
+        "People of whom no competency record in force is on file.",
+        without_record,
+        {"people": "rows person: id papers"},
+    ),
+    *(
+        derived(
+            f"program.qualified_{profession}s",
+            f"Number of {profession}s who are licensed, trained and have a competency check in force.",
+            _qualified_of(profession),
+            {"people": "program.people"},
+        )
+        for profession in COUNTED
+    ),
+)
