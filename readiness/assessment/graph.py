@@ -150,6 +150,8 @@ class Graph:
         if claim is None or isinstance(claim, Gone):
             default = self._assumed(name, ref)
             claim = default or claim
+        if claim is None and self.catalogue.kinds.field(name) is not None:
+            claim = self._absent(name, ref)
         if definition is not None and definition.measured is not None:
             return self._measured(definition, definition.measured, ref, claim)
         return claim if claim is not None else self._absent(name, ref)

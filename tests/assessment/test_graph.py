@@ -173,6 +173,17 @@ def test_a_measurement_replaces_a_claim_and_keeps_it_visible() -> None:
     assert got.instead_of.value == 0.25
 
 
+def test_a_claim_that_a_measurement_would_replace_may_be_stated_as_well() -> None:
+    """Where neither is had, both ways to supply the value are named."""
+    only_measured = Definition(
+        "beam.rp_cm", "Range.", measured=Measured("depth-dose-single", takes={"of": "measurement.tilt_deg"})
+    )
+    of = graph(program(item("beam", "m/e6", {"machine": "m"})), only_measured)
+    got = of.get("beam.rp_cm", Ref("beam", "m/e6"))
+    assert isinstance(got, Gone)
+    assert ["field", "measurement"] == [cause.kind for cause in got.causes]
+
+
 def test_a_measurement_with_an_expired_instrument_does_not_count() -> None:
     """An instrument out of calibration that day makes a measurement void, and the cause says so."""
     of = _of_measurements(_measurement("one"), due=date(2026, 9, 1))

@@ -27,11 +27,14 @@ from readiness.quantities import Table
 
 ALWAYS_NEEDED = ("oncologist", "physicist", "therapist")
 PROFESSIONS = ("oncologist", "physicist", "therapist", "nurse", "dosimetrist")
+NO_INTERVAL = "State competency interval (months) of training in staffing.yaml."
 _TASKS = "rows staff_task: id profession per minutes_min persons"
 
 
-def people_of_program(*, roles: Table, people: Table) -> Table:
-    """Return who there is, with time and qualification."""
+def people_of_program(*, roles: Table, people: Table, intervals_months: Sequence[float]) -> Table:
+    """Return who there is, with time and qualification, once it is known how long a check holds."""
+    if not intervals_months:
+        raise OutsideValidity(NO_INTERVAL)
     return people_with_fte(roles=Table(ROLES, roles.rows), people=Table(LISTED, people.rows))
 
 
@@ -107,7 +110,7 @@ def person_is_qualified(
 ) -> bool:
     """Return whether a person is licensed, trained, and has a competency check that is still in force."""
     if not intervals_months:
-        raise OutsideValidity("State competency interval (months) of training in staffing.yaml.")
+        raise OutsideValidity(NO_INTERVAL)
     months = competency_on.year * 12 + competency_on.month - 1 + round(min(intervals_months))
     ends = (months // 12, months % 12 + 1, competency_on.day)
     today = (as_of_date.year, as_of_date.month, as_of_date.day)
@@ -169,6 +172,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         {
             "roles": "rows role: id profession available_fte",
             "people": "rows person: id role qualified? available_fte?",
+            "intervals_months": "each training.competency_interval_months",
         },
     ),
     derived(

@@ -177,6 +177,7 @@ def test_commissioning_within_its_weeks_needs_more_people() -> None:
         (described(task("daily", "physicist", "treatment-day", 30.0, persons=None)), "program.physicist_needed_fte",
          "staff_task.persons"),
         (described(item("role", "nurses", profession="nurse")), "program.physicist_qualified_fte", "role.available_fte"),
+        (described(item("training")), "program.physicist_qualified_fte", "training.competency_interval_months"),
         (described(console_professions=None), "program.console_qualified_persons", "program.console_professions"),
     ],
 )  # fmt: skip
