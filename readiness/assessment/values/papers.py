@@ -1,6 +1,6 @@
 """The evidence register: what is in force, what has run out, and which papers speak of which item."""
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 from datetime import date, timedelta
 
 from readiness.assessment.definition import Definition, derived
@@ -9,6 +9,7 @@ from readiness.quantities import Scalar, Table
 KINDS = (
     "room", "machine", "beam", "degrader", "stand", "couch", "patient_shield", "instrument", "person",
 )  # fmt: skip
+NOTHING = "nothing"
 
 
 def papers_about(*, evidence: Table, about: str, as_of_date: date) -> tuple[str, ...]:
@@ -55,9 +56,36 @@ def reviewed_in_time(*, next_review_on: date | None, as_of_date: date) -> bool:
     return next_review_on is None or next_review_on >= as_of_date
 
 
-def approved_after_written(*, dated_on: date, approved_on: date) -> bool:
-    """Return whether a paper was approved on the day of its own date or later."""
-    return approved_on >= dated_on
+def particulars_missing(
+    *,
+    type_word: str | None,
+    revision: str | None,
+    owner: str | None,
+    dated_on: date | None,
+    covers: tuple[str, ...] | None,
+) -> str:
+    """Return which particulars of a paper are not entered."""
+    return _missing(
+        {"type": type_word, "revision": revision, "owner": owner, "date": dated_on, "what it covers": covers}
+    )
+
+
+def exception_missing(
+    *, reason: str | None, compensation: str | None, approver: str | None, approved_on: date | None
+) -> str:
+    """Return which particulars of an exception are not entered."""
+    return _missing(
+        {"reason": reason, "compensation": compensation, "approver": approver, "date granted": approved_on}
+    )
+
+
+def _missing(particulars: Mapping[str, object]) -> str:
+    return ", ".join(name for name, entry in particulars.items() if not entry) or NOTHING
+
+
+def is_approved(*, approved_by: str, approved_on: date, dated_on: date | None, as_of_date: date) -> bool:
+    """Return whether a named role has approved a paper, not before its own date and not in the future."""
+    return bool(approved_by) and approved_on <= as_of_date and (dated_on is None or approved_on >= dated_on)
 
 
 def _about(kind: str) -> Definition:
@@ -100,9 +128,37 @@ DEFINITIONS: tuple[Definition, ...] = (
         {"next_review_on": "evidence.next_review_on?", **_TODAY},
     ),
     derived(
-        "evidence.approved_after_written",
-        "It was approved on the day of its own date or later.",
-        approved_after_written,
-        {"dated_on": "evidence.dated_on", "approved_on": "evidence.approved_on"},
+        "evidence.particulars_missing",
+        "Particulars that are not entered.",
+        particulars_missing,
+        {
+            "type_word": "evidence.type?",
+            "revision": "evidence.revision?",
+            "owner": "evidence.owner?",
+            "dated_on": "evidence.dated_on?",
+            "covers": "evidence.covers?",
+        },
+    ),
+    derived(
+        "evidence.approved",
+        "A named role has approved it, not before its own date.",
+        is_approved,
+        {
+            "approved_by": "evidence.approved_by",
+            "approved_on": "evidence.approved_on",
+            "dated_on": "evidence.dated_on?",
+            **_TODAY,
+        },
+    ),
+    derived(
+        "exception.particulars_missing",
+        "Particulars that are not entered.",
+        exception_missing,
+        {
+            "reason": "exception.reason?",
+            "compensation": "exception.compensation?",
+            "approver": "exception.approver?",
+            "approved_on": "exception.approved_on?",
+        },
     ),
 )

@@ -4,6 +4,7 @@ from collections.abc import Callable
 from datetime import date
 
 from readiness.assessment.definition import Definition, derived
+from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 FREQUENCIES = {
@@ -19,9 +20,14 @@ def has_tolerance(
     return any(each is not None for each in (tolerance_percent, tolerance_mm, tolerance_deg))
 
 
-def days_between(*, done_on: date, as_of_date: date) -> int:
-    """Return the days since a test was done."""
-    return (as_of_date - done_on).days
+def done_in_time(
+    *, frequency: str, last_done_on: date, as_of_date: date, month_days: float, year_days: float
+) -> bool:
+    """Return whether a monthly or yearly test was done within its interval."""
+    longest = {"month": month_days, "year": year_days}.get(frequency)
+    if longest is None:
+        raise OutsideValidity("only monthly and yearly tests have an interval")
+    return 0 <= (as_of_date - last_done_on).days <= longest
 
 
 def days_since_audit(*, external_audit_on: date, as_of_date: date) -> int:
@@ -89,10 +95,16 @@ DEFINITIONS: tuple[Definition, ...] = (
         },
     ),
     derived(
-        "periodic_test.days_since_done_days",
-        "Days since it was last done.",
-        days_between,
-        {"done_on": "periodic_test.last_done_on", **_TODAY},
+        "periodic_test.done_in_time",
+        "It was last done within its month or year.",
+        done_in_time,
+        {
+            "frequency": "periodic_test.frequency",
+            "last_done_on": "periodic_test.last_done_on",
+            "month_days": "criterion.month_interval_days",
+            "year_days": "criterion.yearly_interval_days",
+            **_TODAY,
+        },
     ),
     derived(
         "reference_dosimetry.days_since_audit_days",

@@ -20,11 +20,6 @@ def as_stated(*, turns: bool) -> bool:
     return turns
 
 
-def days_since(*, done_on: date, as_of_date: date) -> int:
-    """Return the days since something was done."""
-    return (as_of_date - done_on).days
-
-
 def stops_beam(*, stated: Sequence[bool]) -> bool:
     """Return whether the beam goes off when stand or couch stops."""
     return bool(stated) and all(stated)
@@ -57,12 +52,6 @@ DEFINITIONS: tuple[Definition, ...] = (
         "The beam goes off when platform or couch stops or moves unexpectedly.",
         stops_beam,
         {"stated": "each patient_safety.stand_stop_stops_beam"},
-    ),
-    derived(
-        "stand.days_since_check_days",
-        "Days since stability, lock and index were last checked.",
-        days_since,
-        {"done_on": "stand.checked_on", **_TODAY},
     ),
     derived(
         "program.days_since_drill_days",

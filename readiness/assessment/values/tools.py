@@ -6,26 +6,24 @@ from datetime import date, timedelta
 from readiness.assessment.definition import Definition, derived
 from readiness.quantities import Scalar, Table
 
-# counted together -> types that count
-IN_CALIBRATION = {
-    "reference_chambers": (
-        "ionisation chambers for reference dosimetry", ("cylindrical-chamber", "plane-parallel-chamber"),
-    ),
-    "electrometers": ("electrometers", ("electrometer",)),
-    "survey_meters": ("survey meters", ("survey-meter",)),
-    "barometers": ("barometers", ("barometer", "barometer-with-thermometer")),
-    "thermometers": ("thermometers", ("thermometer", "barometer-with-thermometer")),
-    "readers": ("readers and scanners of detectors", ("osld-reader", "tld-reader", "film-scanner")),
+CHAMBERS = ("cylindrical-chamber", "plane-parallel-chamber")
+# what must be in calibration -> types that will do
+NEEDED = {
+    "ionisation chamber": CHAMBERS,
+    "electrometer": ("electrometer",),
+    "survey meter": ("survey-meter",),
+    "barometer": ("barometer", "barometer-with-thermometer"),
+    "thermometer": ("thermometer", "barometer-with-thermometer"),
 }  # fmt: skip
-AT_HAND = {
-    "distance_meters": ("distance meters", ("distance-meter",)),
-    "inclinometers": ("inclinometers", ("inclinometer",)),
-    "thickness_gauges": ("thickness gauges", ("thickness-gauge",)),
+AS_BUILT = {
+    "distance meter": ("distance-meter",),
+    "inclinometer": ("inclinometer",),
+    "thickness gauge": ("thickness-gauge",),
 }  # fmt: skip
+NOTHING = "nothing"
 PHANTOMS = {
     "cylinders": ("cylinders", ("cylinder",)),
     "anthropomorphic_phantoms": ("anthropomorphic phantoms", ("anthropomorphic",)),
-    "water_phantoms": ("water tanks and slab phantoms", ("water-tank", "slab")),
 }  # fmt: skip
 IN_VIVO = ("film", "osld", "tld", "diode", "mosfet")
 
@@ -45,11 +43,21 @@ def due_soon(*, calibration_due_on: date, as_of_date: date, notice_days: float) 
     return as_of_date <= calibration_due_on <= as_of_date + timedelta(days=notice_days)
 
 
-def in_calibration(*, instruments: Table, types: Collection[str], as_of_date: date) -> int:
-    """Return how many instruments of some types are in calibration; one without dates is not."""
-    return sum(
-        row["type"] in types and _holds(row, as_of_date) for row in instruments.records()
-    )
+def chambers_in_calibration(*, instruments: Table, as_of_date: date) -> int:
+    """Return how many ionisation chambers are in calibration; one without dates is not."""
+    return sum(row["type"] in CHAMBERS and _holds(row, as_of_date) for row in instruments.records())
+
+
+def without_calibration(*, instruments: Table, as_of_date: date) -> str:
+    """Return the kinds of instrument of which none is in calibration."""
+    good = {row["type"] for row in instruments.records() if _holds(row, as_of_date)}
+    return ", ".join(kind for kind, types in NEEDED.items() if not good & set(types)) or NOTHING
+
+
+def as_built_missing(*, instruments: Table) -> str:
+    """Return the instruments for an as-built record that are not listed."""
+    listed = {row["type"] for row in instruments.records()}
+    return ", ".join(kind for kind, types in AS_BUILT.items() if not listed & set(types)) or NOTHING
 
 
 def _holds(row: dict[str, Scalar], as_of_date: date) -> bool:
@@ -67,22 +75,6 @@ def off_usual(*, diameter_cm: float, usual_cm: float) -> float:
     return abs(diameter_cm - usual_cm)
 
 
-def _calibrated(types: Collection[str]) -> Callable[..., int]:
-    def count(*, instruments: Table, as_of_date: date) -> int:
-        """Return how many of them are in calibration."""
-        return in_calibration(instruments=instruments, types=types, as_of_date=as_of_date)
-
-    return count
-
-
-def _listed(types: Collection[str]) -> Callable[..., int]:
-    def count(*, instruments: Table) -> int:
-        """Return how many of them are listed."""
-        return sum(row["type"] in types for row in instruments.records())
-
-    return count
-
-
 def _owned(types: Collection[str]) -> Callable[..., int]:
     def count(*, phantoms: Table) -> int:
         """Return how many of them the department has."""
@@ -95,6 +87,7 @@ _DATES = {
     "calibrated_on": "instrument.calibrated_on",
     "calibration_due_on": "instrument.calibration_due_on",
 }
+_DATED = "rows instrument: type calibrated_on? calibration_due_on?"
 _TODAY = {"as_of_date": "program.as_of_date"}
 
 DEFINITIONS: tuple[Definition, ...] = (
@@ -114,23 +107,23 @@ DEFINITIONS: tuple[Definition, ...] = (
             **_TODAY,
         },
     ),
-    *(
-        derived(
-            f"program.{name}_in_calibration",
-            f"Number of {words} whose calibration holds today.",
-            _calibrated(types),
-            {"instruments": "rows instrument: type calibrated_on? calibration_due_on?", **_TODAY},
-        )
-        for name, (words, types) in IN_CALIBRATION.items()
+    derived(
+        "program.chambers_in_calibration",
+        "Number of ionisation chambers whose calibration holds today.",
+        chambers_in_calibration,
+        {"instruments": _DATED, **_TODAY},
     ),
-    *(
-        derived(
-            f"program.{name}",
-            f"Number of {words} that are listed.",
-            _listed(types),
-            {"instruments": "rows instrument: type"},
-        )
-        for name, (words, types) in AT_HAND.items()
+    derived(
+        "program.instruments_without_calibration",
+        "Kinds of instrument of which none is in calibration today.",
+        without_calibration,
+        {"instruments": _DATED, **_TODAY},
+    ),
+    derived(
+        "program.as_built_instruments_missing",
+        "Instruments for an as-built record that are not listed.",
+        as_built_missing,
+        {"instruments": "rows instrument: type"},
     ),
     derived(
         "program.in_vivo_detector_types",
