@@ -265,10 +265,14 @@ class Graph:
             if not take.optional:
                 causes.extend(got.causes)
             return None
-        inputs.append(Input(keyword, got.name, got.item))
+        inputs += [each for each in self._shown_inputs(keyword, got) if each not in inputs]
         if not self.catalogue.is_choice(got.name):
             bases.append(got.basis)
         return got.value
+
+    def _shown_inputs(self, keyword: str, got: Value) -> tuple[Input, ...]:
+        """Return a value as an input; of a record that is never shown, what it was worked out from."""
+        return got.inputs if self._is_internal(got.name) else (Input(keyword, got.name, got.item),)
 
     def _listed(self, kind: str, ref: Ref) -> tuple[list[Ref], Cause | None]:
         anchor = self.catalogue.kinds.anchor(ref.kind, kind)
@@ -356,7 +360,7 @@ class Graph:
         value = getattr(got.value, measured.part) if measured.part else got.value
         if value is None:
             return self._no_answer(definition, ref)
-        inputs = (Input("measurement", take.name, measurement),)
+        inputs = self._shown_inputs("measurement", got)
         return self._value(definition, ref, value, inputs, "measured", measurement)
 
     def measurements(self, measured: Measured, ref: Ref) -> tuple[list[Ref], tuple[Cause, ...]]:

@@ -164,3 +164,17 @@ def test_thinner_air_moves_the_best_tilt() -> None:
         value(high, "arrangement.predicted_best_tilt_deg").value
         < value(department(), "arrangement.predicted_best_tilt_deg").value
     )
+
+
+def test_the_descent_of_a_prediction_names_what_decides_the_field() -> None:
+    """Records that hold the set-up are never shown; in their place stand energy, foil spread, degrader and air."""
+    names = {each.name for each in value(department(), "arrangement.predicted_vertical_half_range_percent").inputs}
+    assert {
+        "beam.energy_at_source_mev",
+        "beam.foil_spread",
+        "degrader.thickness_cm",
+        "room.site_pressure_kpa",
+        "arrangement.study_distance_cm",
+        "arrangement.study_tilt_deg",
+    } <= names
+    assert "arrangement.field_setup" not in names
