@@ -1,5 +1,6 @@
 """Depth dose of all dual fields together: predicted by energy and degrader, else measured on a cylinder."""
 
+from collections.abc import Callable
 from functools import lru_cache
 
 from readiness.assessment.definition import Definition, Measured
@@ -33,39 +34,46 @@ def depth_dose_of_arrangement(
     return composite_depth_dose(energy_at_source_mev=energy_for_table_mev, pmma_cm=pmma)
 
 
+def least_dose_at_20_mm(*, energy_at_plane_mev: float, most_at_20_mm_percent: float) -> float:
+    """Return the dose at 20 mm that an energy above the table's exceeds, where that breaks the rule."""
+    energy, _, at_20_mm = _end_of_table(max)
+    if energy_at_plane_mev < energy or at_20_mm < most_at_20_mm_percent:
+        raise OutsideValidity("the depth-dose table holds no such energy and thickness: measure it")
+    return at_20_mm
+
+
+def most_dose_at_4_mm(*, energy_at_plane_mev: float, least_at_4_mm_percent: float) -> float:
+    """Return the dose at 4 mm that an energy below the table's does not reach, where that breaks the rule."""
+    energy, at_4_mm, _ = _end_of_table(min)
+    if energy_at_plane_mev > energy or at_4_mm >= least_at_4_mm_percent:
+        raise OutsideValidity("the depth-dose table holds no such energy and thickness: measure it")
+    return at_4_mm
+
+
+def _end_of_table(end: Callable[..., tuple[float, ...]]) -> tuple[float, float, float]:
+    """Return energy at the plane and doses at 4 and 20 mm, in per cent, at an end of the table."""
+    table = published_table(TABLE)
+    names = ("energy_at_plane_mev", "dose_at_4_mm", "dose_at_20_mm")
+    columns = ([float(entry or 0) for entry in table.column(name)] for name in names)
+    energy, at_4_mm, at_20_mm = end(zip(*columns, strict=True))
+    return energy, 100 * at_4_mm, 100 * at_20_mm
+
+
 def forecast_in_words(
     *,
-    depth_dose: CompositeDepthDose | None,
-    energy_at_plane_mev: float,
+    at_4_mm_percent: float | None,
+    at_20_mm_percent: float | None,
     least_at_4_mm_percent: float,
     most_at_20_mm_percent: float,
 ) -> str:
-    """
-    Return whether both depth rules are predicted to be kept.
-
-    Beyond the energies of the table the dose is deeper, or shallower, than at its ends.
-    """
-    ends = [float(entry or 0) for entry in published_table(TABLE).column("energy_at_plane_mev")]
-    if depth_dose is not None:
-        at_4_mm = depth_dose.dose_at_4_mm_percent.value
-        at_20_mm = depth_dose.dose_at_20_mm_percent.value
-    elif energy_at_plane_mev >= max(ends):
-        at_4_mm, at_20_mm = _row_with(max(ends))
-    elif energy_at_plane_mev <= min(ends):
-        at_4_mm, at_20_mm = _row_with(min(ends))
-    else:
-        raise OutsideValidity("the depth-dose table holds neither this energy nor one beyond it: measure it")
-    if at_20_mm >= most_at_20_mm_percent:
+    """Return whether both depth rules are predicted to be kept, or which way the dose misses them."""
+    if at_20_mm_percent is not None and at_20_mm_percent >= most_at_20_mm_percent:
         return TOO_DEEP
-    return TOO_SHALLOW if at_4_mm < least_at_4_mm_percent else BOTH_KEPT
-
-
-def _row_with(energy_at_plane_mev: float) -> tuple[float, float]:
-    """Return the doses at 4 and 20 mm of the table's row with an energy at the plane, in per cent."""
-    for row in published_table(TABLE).records():
-        if row["energy_at_plane_mev"] == energy_at_plane_mev:
-            return 100 * float(row["dose_at_4_mm"] or 0), 100 * float(row["dose_at_20_mm"] or 0)
-    raise OutsideValidity("the depth-dose table has no such row")
+    if at_4_mm_percent is not None and at_4_mm_percent < least_at_4_mm_percent:
+        return TOO_SHALLOW
+    if at_4_mm_percent is None or at_20_mm_percent is None:
+        raise OutsideValidity("the depth-dose table holds no such energy and thickness: measure it")
+    return BOTH_KEPT
 
 
 def degraders_compared(
@@ -84,7 +92,9 @@ def _measured(part: str) -> Measured:
     return Measured(COMPOSITE, takes={"depth_dose": "measurement.depth_dose"}, part=part)
 
 
-def _depth(name: str, meaning: str, predicted: str, measured: str) -> tuple[Definition, Definition]:
+def _depth(
+    name: str, meaning: str, predicted: str, measured: str, bound: str = ""
+) -> tuple[Definition, Definition]:
     """Return a number of the composite depth dose, measured or else predicted, and the prediction."""
     return (
         Definition(
@@ -92,6 +102,7 @@ def _depth(name: str, meaning: str, predicted: str, measured: str) -> tuple[Defi
             f"{meaning}, as predicted.",
             of="arrangement.predicted_depth_dose",
             part=predicted,
+            otherwise=bound,
             source="own-monte-carlo",
             known="mc",
         ),
@@ -103,6 +114,19 @@ def _depth(name: str, meaning: str, predicted: str, measured: str) -> tuple[Defi
             source="own-monte-carlo",
             known="mc",
         ),
+    )
+
+
+def _bound(name: str, meaning: str, by: Callable[..., float], limit: dict[str, str]) -> Definition:
+    """Return a bound on a dose beyond the table, given only where it already breaks the rule."""
+    return Definition(
+        f"arrangement.{name}",
+        meaning,
+        by=by,
+        takes={"energy_at_plane_mev": "arrangement.energy_at_plane_mev", **limit},
+        model=True,
+        source="own-monte-carlo",
+        known="mc",
     )
 
 
@@ -146,12 +170,25 @@ DEFINITIONS: tuple[Definition, ...] = (
         source="own-monte-carlo",
         known="mc",
     ),
+    _bound(
+        "highest_dose_at_4_mm_percent",
+        "Dose at 4 mm that the beam cannot reach, its energy at the plane being below the table's.",
+        most_dose_at_4_mm,
+        {"least_at_4_mm_percent": "criterion.dose_at_4_mm_percent"},
+    ),
+    _bound(
+        "least_dose_at_20_mm_percent",
+        "Dose at 20 mm that the beam exceeds, its energy at the plane being above the table's.",
+        least_dose_at_20_mm,
+        {"most_at_20_mm_percent": "criterion.dose_at_20_mm_percent"},
+    ),
     *_depth("r80_mm", "Depth at which the composite dose has fallen to 80 %", "r80_mm", "r80_mm"),
     *_depth(
         "dose_at_4_mm_percent",
         "Composite dose at 4 mm as a part of the skin dose",
         "dose_at_4_mm_percent",
         "at_4_mm_percent",
+        "arrangement.highest_dose_at_4_mm_percent",
     ),
     *_depth(
         "dose_at_10_mm_percent",
@@ -164,6 +201,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Composite dose at 20 mm as a part of the skin dose",
         "dose_at_20_mm_percent",
         "at_20_mm_percent",
+        "arrangement.least_dose_at_20_mm_percent",
     ),
     Definition(
         "arrangement.composite_practical_range_mm",
@@ -187,8 +225,8 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Whether both depth rules are predicted to be kept, or the dose is too deep or too shallow.",
         by=forecast_in_words,
         takes={
-            "depth_dose": "arrangement.predicted_depth_dose?",
-            "energy_at_plane_mev": "arrangement.energy_at_plane_mev",
+            "at_4_mm_percent": "arrangement.predicted_dose_at_4_mm_percent?",
+            "at_20_mm_percent": "arrangement.predicted_dose_at_20_mm_percent?",
             "least_at_4_mm_percent": "criterion.dose_at_4_mm_percent",
             "most_at_20_mm_percent": "criterion.dose_at_20_mm_percent",
         },

@@ -131,6 +131,18 @@ def test_a_beam_outside_the_table_is_to_be_measured() -> None:
     assert "measure the composite depth dose" in words(of, "arrangement.r80_mm")
 
 
+def test_an_energy_above_the_table_breaks_the_rule_on_depth() -> None:
+    """
+    With 9 MeV behind 0.6 cm some 6.9 MeV arrive; the table ends at 5.04 MeV with 26 % at 20 mm, which is exceeded.
+
+    At 4 mm nothing is broken, and nothing is said.
+    """
+    of = department(beam={"r50_cm": 3.56, "rp_cm": 4.34})
+    deep = finding(of, "dose-at-20-mm")
+    assert ("not assessed", "not met", 26.0) == (deep.outcome, deep.expected, deep.observed)
+    assert "" == finding(of, "dose-at-4-mm").expected
+
+
 def test_a_higher_and_wider_patient_needs_a_taller_degrader() -> None:
     """A sheet of 205 cm shadows a patient of 160 cm, not one of 190 cm with raised hands."""
     assert "not met" == finding(department(), "degrader-high-enough").outcome
