@@ -5,11 +5,12 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from typing import Any
 
-from readiness.assessment.records import Assessment, Finding, Gap, Rule, Value
+from readiness.assessment.records import ArrangementRow, Assessment, Finding, Gap, Ref, Rule, Value
 from readiness.assessment.wording import in_words
 from readiness.outputs.documents import RenderedDocument
 from readiness.outputs.words import (
     blocking,
+    chosen_row,
     date_words,
     item_words,
     known_words,
@@ -22,8 +23,7 @@ from readiness.sources import HOW_KNOWN, publications
 from readiness.units import printed
 
 KNOWN_WORDS = tuple(HOW_KNOWN.items())
-MOST_ARRANGEMENTS = 8
-MOST_MODES = 10
+MOST_ARRANGEMENTS = 4
 FIGURES = (
     "program.expected_patients_per_year",
     "program.sessions_per_year",
@@ -91,35 +91,53 @@ class SourceRow:
     documents: tuple[str, ...]
 
 
+def short_item(item: Ref, assessment: Assessment) -> str:
+    """Return an item for people; the arrangement that the binder is for is not spelled out each time."""
+    chosen = assessment.verdict.arrangement
+    if not chosen:
+        return item_words(item)
+    return (
+        item_words(item).replace(f"arrangement {chosen}", "this arrangement").replace(f" from {chosen}", "")
+    )
+
+
 def arrangements(assessment: Assessment) -> tuple[tuple[str, str, str, str], ...]:
     """Return the best arrangements: title, feasibility, what decides, figures."""
     return tuple(
         (
             row.title,
             row.feasibility,
-            " ".join(dict.fromkeys(finding.message for finding in row.deciding[:2])),
+            row.deciding[0].message if row.deciding else "",
             "; ".join(
                 f"{value_title(name).lower()} {with_unit(name, value)} ({basis})"
                 for name, value, basis in row.figures[:3]
             ),
         )
-        for row in assessment.arrangements[:MOST_ARRANGEMENTS]
+        for row in _listed(assessment)
     )
 
 
 def arrangements_not_listed(assessment: Assessment) -> int:
     """Return how many arrangements the chief's page leaves out."""
-    return max(0, len(assessment.arrangements) - MOST_ARRANGEMENTS)
+    return len(assessment.arrangements) - len(_listed(assessment))
+
+
+def _listed(assessment: Assessment) -> list[ArrangementRow]:
+    """Return the best arrangements, the one that the binder is for always among them."""
+    best = list(assessment.arrangements[:MOST_ARRANGEMENTS])
+    chosen = chosen_row(assessment)
+    return best if chosen is None or chosen in best else [chosen, *best[:-1]]
 
 
 def gaps(assessment: Assessment, blocking_only: bool = False) -> tuple[GapRow, ...]:
     """Return the gaps in their order, or only those that block now."""
-    return tuple(_gap(gap) for gap in (blocking(assessment) if blocking_only else assessment.gaps))
+    wanted = blocking(assessment) if blocking_only else assessment.gaps
+    return tuple(_gap(gap, assessment) for gap in wanted)
 
 
-def _gap(gap: Gap) -> GapRow:
+def _gap(gap: Gap, assessment: Assessment) -> GapRow:
     return GapRow(
-        id=gap.id, what=gap.what, item=item_words(gap.item), owner=gap.owner,
+        id=gap.id, what=gap.what, item=short_item(gap.item, assessment), owner=gap.owner,
         earliest=date_words(gap.earliest), strength=gap.strength, phase=gap.phase,
         when="due later" if gap.due_later else "due now", task=gap.task,
         rules=tuple(dict.fromkeys(rule for rule, _ in gap.findings)),
@@ -135,16 +153,19 @@ def matrix(assessment: Assessment) -> tuple[MatrixRow, ...]:
     lines = []
     for rule, found in by_rule.items():
         applying = [finding for finding in found if finding.outcome != "not applicable"] or found[:1]
-        lines += [_line(rules[rule], each, place == 0) for place, each in enumerate(applying)]
+        lines += [
+            _line(rules[rule], each, short_item(each.item, assessment), place == 0)
+            for place, each in enumerate(applying)
+        ]
     return tuple(lines)
 
 
-def _line(rule: Rule, finding: Finding, first: bool) -> MatrixRow:
+def _line(rule: Rule, finding: Finding, item: str, first: bool) -> MatrixRow:
     def said(value: Any) -> str:
         return "" if value is None else with_unit(rule.subject, value)
 
     return MatrixRow(
-        rule=rule.id, first=first, title=rule.title, strength=rule.strength, item=item_words(finding.item),
+        rule=rule.id, first=first, title=rule.title, strength=rule.strength, item=item,
         outcome=outcome_words(finding), observed=said(finding.observed), limit=said(finding.limit),
         basis=finding.basis, sources=known_words(rule), documents=rule.documents, message=finding.message,
     )  # fmt: skip
@@ -153,7 +174,7 @@ def _line(rule: Rule, finding: Finding, first: bool) -> MatrixRow:
 def exceptions(assessment: Assessment) -> tuple[tuple[str, str, str], ...]:
     """Return what is excepted: rule, item, message."""
     return tuple(
-        (finding.rule, item_words(finding.item), finding.message)
+        (finding.rule, short_item(finding.item, assessment), finding.message)
         for finding in assessment.findings
         if finding.outcome == "excepted"
     )
@@ -181,8 +202,13 @@ def worst_failure_modes(assessment: Assessment) -> Table | None:
 def figures(assessment: Assessment) -> tuple[tuple[str, str, str], ...]:
     """Return money and hours of the program: what, how much, basis."""
     found = {value.name: value for value in assessment.values if value.item.kind == "program"}
+    currency = f" {found['program.currency'].value}" if "program.currency" in found else ""
     return tuple(
-        (value_title(name), with_unit(name, found[name].value), found[name].basis)
+        (
+            value_title(name).lower(),
+            with_unit(name, found[name].value) + (currency if ".cost_" in name else ""),
+            found[name].basis,
+        )
         for name in FIGURES
         if name in found
     )
@@ -203,20 +229,15 @@ def tasks(assessment: Assessment) -> tuple[tuple[str, ...], ...]:
     )  # fmt: skip
 
 
-def values(assessment: Assessment) -> tuple[tuple[str, str, str, str, str, str], ...]:
-    """Return every value that was measured, worked out or assumed: name, item, value, basis, from, source."""
-    return tuple(
-        (
-            value.name,
-            item_words(value.item),
-            _number(value),
-            value.basis,
-            _descent(value),
-            f"{value.source} ({value.known})" if value.source else "",
-        )
-        for value in assessment.values
-        if value.item.kind != "criterion" and (value.inputs or value.source or value.basis != "stated")
-    )
+def values(assessment: Assessment) -> tuple[tuple[str, tuple[tuple[str, str, str, str, str], ...]], ...]:
+    """Return item -> values not merely stated: name, number, basis, descent, method."""
+    by_item: dict[str, list[tuple[str, str, str, str, str]]] = {}
+    for value in assessment.values:
+        if value.item.kind != "criterion" and (value.inputs or value.source or value.basis != "stated"):
+            method = f"{value.source} ({value.known})" if value.source else ""
+            line = (value.name.partition(".")[2], _number(value), value.basis, _descent(value), method)
+            by_item.setdefault(short_item(value.item, assessment), []).append(line)
+    return tuple((item, tuple(lines)) for item, lines in by_item.items())
 
 
 def _number(value: Value) -> str:

@@ -37,6 +37,17 @@ def make(
         PressMissing: If PDFs cannot be written on this machine; html_files() can be had without them.
     """
     press.ready()
+    with press.undisturbed():
+        return _made(assessment, rendered, attachments, as_of, say)
+
+
+def _made(
+    assessment: Assessment,
+    rendered: Sequence[RenderedDocument],
+    attachments: Mapping[str, bytes],
+    as_of: date,
+    say: Callable[[str], None],
+) -> dict[str, bytes]:
     css = style(assessment)
     files = html_files(assessment, rendered)
     sheets = assessment_sheets(assessment, rendered)
