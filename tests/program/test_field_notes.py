@@ -42,10 +42,10 @@ def test_words_with_meanings_keep_them():
 
 
 def test_a_measurement_may_name_none():
-    """A degrader in a header may be none; a side is one of two angles."""
+    """A degrader in a header may be none; a side is one of three angles."""
     header = measurement_kind("dual-profile").header
     assert field_note(header["degrader"]) == "id of a degrader, or none, required"
-    assert field_note(header["side_deg"]) == "number, °, 90 or 270, required"
+    assert field_note(header["side_deg"]) == "number, °, 0 or 90 or 270, required"
 
 
 def test_a_place_is_named_in_words():

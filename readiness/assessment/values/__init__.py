@@ -3,6 +3,7 @@
 from readiness.assessment.definition import Definition
 from readiness.assessment.values import (
     arrangement_choices,
+    as_built,
     beam_axes,
     beam_degrader,
     beam_depth,
@@ -43,6 +44,7 @@ from readiness.assessment.values import (
 
 ALL: tuple[Definition, ...] = (
     *arrangement_choices.DEFINITIONS,
+    *as_built.DEFINITIONS,
     *beam_axes.DEFINITIONS,
     *beam_degrader.DEFINITIONS,
     *beam_depth.DEFINITIONS,

@@ -88,6 +88,11 @@ def is_approved(*, approved_by: str, approved_on: date, dated_on: date | None, a
     return bool(approved_by) and approved_on <= as_of_date and (dated_on is None or approved_on >= dated_on)
 
 
+def how_many(*, documents: tuple[str, ...]) -> int:
+    """Return how many approvals are on file."""
+    return len(documents)
+
+
 def _about(kind: str) -> Definition:
     """Return the papers that speak of an item of a kind."""
     return derived(
@@ -108,6 +113,12 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Types of papers that are on file, approved and in force.",
         papers_in_force,
         {"evidence": _EVIDENCE, **_TODAY},
+    ),
+    derived(
+        "program.approval_count",
+        "Number of approvals on file.",
+        how_many,
+        {"documents": "each approval.document"},
     ),
     derived(
         "evidence.still_in_force",
