@@ -180,13 +180,13 @@ def exceptions(assessment: Assessment) -> tuple[tuple[str, str, str], ...]:
     )
 
 
-def remembered(assessment: Assessment) -> tuple[tuple[str, str, str], ...]:
-    """Return the must-rules not met or not assessed whose every source is recalled: id, title, sources."""
-    open_rules = {each.rule for each in assessment.findings if each.outcome in {"not met", "not assessed"}}
+def remembered(assessment: Assessment) -> tuple[tuple[str, str], ...]:
+    """Return the must-rules that fail, or are expected to, and rest on recalled sources alone: id, title."""
+    failing = {each.rule for each in assessment.findings if "not met" in (each.outcome, each.expected)}
     return tuple(
-        (rule.id, rule.title, known_words(rule))
+        (rule.id, rule.title)
         for rule in assessment.rules
-        if rule.id in open_rules
+        if rule.id in failing
         and rule.strength == "must"
         and rule.sources
         and all(source.known == "memory" for source in rule.sources)

@@ -137,8 +137,7 @@ class Showing:
         rules = open_rules(name, self._lookup, item)
         if isinstance(found, Value) and rules == ():
             self.shown[name] = None
-            basis = "measured" if found.basis == "measured" else "as built"
-            return f'{_value_words(found)}<span class="basis">{basis}</span>'
+            return f'{_value_words(found)}<span class="basis">{CRITICAL[name].words}</span>'
         where = f" of {item}" if item is not None else ""
         links = ", ".join(f'<a href="binder:rule-{plain(rule)}">{plain(rule)}</a>' for rule in rules or ())
         until = f"until rule {links} is met" if links else "until it has been measured here"

@@ -15,6 +15,8 @@ from readiness.assessment.records import (
     Ref,
     Rule,
     RuleSource,
+    Schedule,
+    ScheduledTask,
     Value,
     Verdict,
     Versions,
@@ -117,13 +119,24 @@ def full(technique: str = "six-position", status: str = "draft") -> Assessment:
         program="Example Department", invented=True, as_of=AS_OF, phase="commission",
         versions=Versions("0.1.0", "abc", "1"),
         verdict=Verdict("ready when gaps close", ARRANGEMENT.id, "department", ("One finding is open.",)),
-        arrangements=(row,), values=values, findings=(*findings, missing), gaps=(gap,), schedule=None,
+        arrangements=(row,), values=values, findings=(*findings, missing), gaps=(gap,), schedule=_road(),
         documents=states(status), rules=(*rules, open_rule), inputs=(("program.yaml", "ab" * 32, 120),),
     )  # fmt: skip
 
 
+def _road() -> Schedule:
+    task = ScheduledTask(
+        "survey-radiation", "Survey around the room", "radiation protection officer", "commission", 2.0, (),
+        ("survey-vault-a",), date(2027, 1, 28), date(2027, 2, 1), date(2027, 2, 1), 0.0, True, False,
+        "department's own",
+    )  # fmt: skip
+    return Schedule(
+        (task,), date(2027, 2, 2), date(2027, 1, 15), 12, (("survey-radiation", 2.0),), ("One remark.",)
+    )
+
+
 def _critical_rules() -> dict[str, str]:
-    subjects = dict.fromkeys(subject for subjects in CRITICAL.values() for subject in subjects)
+    subjects = dict.fromkeys(subject for each in CRITICAL.values() for subject in each.subjects)
     return {subject.partition(".")[2].replace("_", "-") + "-rule": subject for subject in subjects}
 
 

@@ -260,6 +260,29 @@ def test_a_binder_of_an_empty_program_can_be_made() -> None:
     assert "________" in text
 
 
+def test_what_the_font_cannot_show_is_told_on_the_cover() -> None:
+    """A name in letters that the fonts lack is printed as boxes, and the cover says where."""
+    assessment = fakes.full()
+    values = tuple(
+        replace(value, value="\u0e01\u0e23") if value.name == "program.jurisdiction" else value
+        for value in assessment.values
+    )
+    foreign = replace(assessment, values=values)
+    made = binder.make(foreign, _some(foreign)[:1], {}, fakes.AS_OF)
+    cover = _text(PdfReader(io.BytesIO(made[binder.BINDER])))[0].replace("\0", "")
+    assert "Document 1.1: U+0E01, U+0E23" in cover
+
+
+def test_the_chief_reads_verdict_gaps_and_date(pages: list[str]) -> None:
+    """The chief's page names what blocks, who does it, when the first patient could come, and what moves it."""
+    chief = re.sub(r"\s+", " ", next(text for text in pages if text.startswith("For the chief")))
+    for words in ("Ready when gaps close", "Measure a survey in the mode.", "radiation protection officer",
+                  "2027-02-01", "Earliest first patient: 2027-02-02", "12 working days late"):  # fmt: skip
+        assert words in chief
+    road = next(text for text in pages if text.startswith("The road"))
+    assert "survey radiation: up to 2 working days" in road
+
+
 def test_html_can_be_had_without_the_press() -> None:
     """Where PDFs cannot be written the documents still come as HTML."""
     assessment = fakes.full()

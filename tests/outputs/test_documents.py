@@ -9,6 +9,7 @@ import pytest
 from readiness.assessment.catalogue import catalogue
 from readiness.assessment.document_heads import TECHNIQUES, document_heads
 from readiness.assessment.records import Assessment, Finding, Input, Ref, Value
+from readiness.assessment.ruleset import load_rules
 from readiness.errors import CatalogueError, UsageError
 from readiness.outputs.critical import CRITICAL
 from readiness.outputs.documents import RenderedDocument, render_bodies, wording_problems
@@ -67,8 +68,19 @@ def test_every_name_in_a_template_is_in_the_catalogue() -> None:
 def test_every_critical_name_is_in_the_catalogue() -> None:
     """The numbers that are held back, and what must be met for them, exist."""
     known = catalogue()
-    subjects = {subject for each in CRITICAL.values() for subject in each}
+    subjects = {subject for each in CRITICAL.values() for subject in each.subjects}
     assert [] == sorted(name for name in {*CRITICAL, *subjects} if not known.has(name))
+
+
+def test_every_critical_number_has_rules_that_judge_it() -> None:
+    """What must be met for a critical number is really judged, its proof by measurement alone."""
+    rules = load_rules(catalogue())
+    for name, critical in CRITICAL.items():
+        for subject in critical.subjects:
+            assert [rule for rule in rules if rule.subject == subject], (name, subject)
+        proving = [rule for rule in rules if rule.subject == critical.proof]
+        assert {"measured"} == {rule.basis for rule in proving}, name
+        assert {"must"} == {rule.strength for rule in proving}, name
 
 
 def test_no_template_shows_what_changes_by_itself() -> None:
@@ -140,7 +152,7 @@ def test_a_critical_number_is_printed_when_everything_is_met(name: str) -> None:
 def test_a_critical_number_is_blank_when_one_rule_is_open(name: str, outcome: str) -> None:
     """One rule that is not met holds the number back, and is named; an exception does not help."""
     assessment = fakes.full()
-    subjects = CRITICAL[name]
+    subjects = CRITICAL[name].subjects
     rules = {rule.id for rule in assessment.rules if rule.subject == subjects[-1]}
     findings = tuple(
         replace(each, outcome=outcome) if each.rule in rules else each for each in assessment.findings
@@ -149,6 +161,23 @@ def test_a_critical_number_is_blank_when_one_rule_is_open(name: str, outcome: st
     assert "________" in text
     assert "2.5" not in text
     assert all(f"until rule {rule} is met" in text for rule in rules)
+
+
+def test_an_exception_to_a_should_rule_lets_a_critical_number_stand() -> None:
+    """What the department has excepted in writing does not blank its documents, unless it is a must."""
+    assessment = fakes.full()
+    for strength, printed in (("should", True), ("must", False)):
+        rules = tuple(
+            replace(each, strength=strength) if each.subject == "arrangement.plane_distance_cm" else each
+            for each in assessment.rules
+        )
+        excepted = {each.id for each in rules if each.subject == "arrangement.plane_distance_cm"}
+        findings = tuple(
+            replace(each, outcome="excepted") if each.rule in excepted else each
+            for each in assessment.findings
+        )
+        changed = replace(assessment, rules=rules, findings=findings)
+        assert printed == ("12.5" in _shown(changed, "arrangement.plane_distance_cm"))
 
 
 @pytest.mark.parametrize("name", [each for each in sorted(CRITICAL) if not each.startswith("patient_shield")])
