@@ -61,22 +61,34 @@ def feasibility(findings: Iterable[Finding], rules: Mapping[str, Rule]) -> tuple
     return "feasible", ()
 
 
+# counts by which arrangements are ordered, with their words
+_COMPARED = (
+    ("must against it", "must-rules that the arrangement itself does not meet or is not expected to meet"),
+    (
+        "should against it",
+        "should-rules that the arrangement itself does not meet or is not expected to meet",
+    ),
+    ("must open", "must-rules not met or not assessed"),
+)
+
+
 def compare(
     findings: Iterable[Finding], rules: Mapping[str, Rule], graph: Graph
 ) -> tuple[ArrangementRow, ...]:
     """
     Return all arrangements, the best first.
 
-    Order: feasibility; fewest must-rules not met; fewest should-rules not met; fewest must-rules not
-    assessed; the order in which the folder lists them. No score is formed.
+    Order: feasibility; fewest must-rules, then should-rules, that the arrangement itself or a barrier seen
+    from it does not meet or is not expected to meet (what belongs to a part of it can be bought or repaired);
+    fewest must-rules open at all, so that silence is no advantage; the order in which the folder lists them.
+    No score is formed.
     """
     rows = []
     for place, (arrangement, own) in enumerate(by_arrangement(findings, graph).items()):
         words, deciding = feasibility(own, rules)
         counts = _counts(own, rules)
         order = (
-            FEASIBILITIES.index(words), counts["must not met"], counts["should not met"],
-            counts["must not assessed"], place,
+            FEASIBILITIES.index(words), *(counts[key] for key, _ in _COMPARED), place,
         )  # fmt: skip
         rows.append((order, _row(arrangement, words, deciding, counts, graph)))
     return tuple(row for _, row in sorted(rows, key=lambda pair: pair[0]))
@@ -84,16 +96,21 @@ def compare(
 
 def _counts(findings: Iterable[Finding], rules: Mapping[str, Rule]) -> dict[str, int]:
     counts = dict.fromkeys(
-        ("must not met", "should not met", "must not assessed", "should not assessed", "expected not met"), 0
-    )
+        (
+            *(key for key, _ in _COMPARED),
+            "must not met", "should not met", "must not assessed", "should not assessed",
+        ),
+        0,
+    )  # fmt: skip
     for finding in findings:
-        key = f"{rules[finding.rule].strength} {finding.outcome}"
+        strength = rules[finding.rule].strength
+        key = f"{strength} {finding.outcome}"
         if key in counts:
             counts[key] += 1
-        if finding.expected == "not met" and rules[finding.rule].strength == "must":
-            counts["must not met"] += 1  # a failing prediction counts like a failure when comparing
-            counts["must not assessed"] -= 1
-            counts["expected not met"] += 1
+        against = finding.outcome == "not met" or finding.expected == "not met"
+        if against and finding.item.kind in {"arrangement", "exposure"} and strength != "consider":
+            counts[f"{strength} against it"] += 1
+    counts["must open"] = counts["must not met"] + counts["must not assessed"]
     return counts
 
 
@@ -130,11 +147,7 @@ def reasons(best: ArrangementRow, second: ArrangementRow | None) -> tuple[str, .
     mine, other = dict(best.counts), dict(second.counts)
     if best.feasibility != second.feasibility:
         return (f"It is {best.feasibility}; the next, {second.title}, is {second.feasibility}.",)
-    for key, words in (
-        ("must not met", "must-rules not met or expected not to be met"),
-        ("should not met", "should-rules not met"),
-        ("must not assessed", "must-rules not assessed"),
-    ):
+    for key, words in _COMPARED:
         if mine[key] != other[key]:
             return (f"It has {mine[key]} {words}; the next, {second.title}, has {other[key]}.",)
     return (f"It and the next, {second.title}, stand alike; the folder lists it first.",)

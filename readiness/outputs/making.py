@@ -32,9 +32,22 @@ def assessed(program: Program, as_of: date) -> Assessment:
 
 def make_all(assessment: Assessment, program: Program, as_of: date, say: Callable[[str], None]) -> Made:
     """Return every output; if Pango is missing, everything but the PDFs."""
+    from readiness.outputs import binder, press
+
     files = {
         "assessment.json": to_json(assessment).encode("utf-8"),
         "gaps.csv": gap_list.to_csv(assessment),
         "gaps.xlsx": gap_list.to_xlsx(assessment),
     }
+    say("drawing")
+    pictures: Mapping[str, str] = {}
+    say("writing documents")
+    rendered = render_bodies(assessment, program.texts, pictures)
+    inside = {f"program/{name}": content for name, content in sorted(program.contents.items())}
+    inside |= {name: files[name] for name in ("assessment.json", "gaps.csv")}
+    try:
+        files |= binder.make(assessment, rendered, inside, as_of, say)
+    except press.PressMissing as missing:
+        files |= binder.html_files(assessment, rendered)
+        return Made(files, (str(missing), "not written: binder.pdf, documents/*.pdf"))
     return Made(files, ())
