@@ -95,7 +95,7 @@ def _control(document: RenderedDocument, state: DocumentState | None, assessment
     arrangement = f"{row.title}{chosen.get(chosen_by, '')}" if row else "none chosen"
     approvals = "; ".join(f"{role}: {who}, {day}" for role, who, day in state.approvals) if state else ""
     rows: Mapping[str, str] = {
-        "Department": assessment.program + (" (invented)" if assessment.invented else ""),
+        "Department": assessment.program + _invented(assessment),
         "Written for": arrangement,
         "Owner; approvers": f"{document.owner}; {', '.join(document.approvers)}",
         "Revision and status": state_words(state),
@@ -110,8 +110,15 @@ def _control(document: RenderedDocument, state: DocumentState | None, assessment
     return f'<table class="control"><tbody>{lines}</tbody></table>'
 
 
+def _invented(assessment: Assessment) -> str:
+    needed = assessment.invented and "invented" not in assessment.program.lower()
+    return " (invented)" if needed else ""
+
+
 def _around(document: RenderedDocument, assessment: Assessment) -> str:
-    rules = [rule for rule in assessment.rules if document.number in rule.documents]
+    applying = {each.rule for each in assessment.findings if each.outcome != "not applicable"}
+    own = [rule for rule in assessment.rules if document.number in rule.documents]
+    rules = [rule for rule in own if rule.id in applying]
     lines = "".join(
         f'<li><a href="binder:rule-{plain(rule.id)}">{plain(rule.id)}</a> ({rule.strength}): '
         f'{plain(rule.title)}. <span class="known">{plain(known_words(rule))}</span></li>'
@@ -121,6 +128,8 @@ def _around(document: RenderedDocument, assessment: Assessment) -> str:
     groups: dict[str, list[str]] = {}
     for blank in document.missing:
         groups.setdefault(blank.group, []).append(plain(blank.words))
-    blanks = "".join(f"<p><b>{group}:</b> {'; '.join(words)}.</p>" for group, words in groups.items())
+    blanks = "".join(
+        f"<p><b>{group}:</b> {'; '.join(dict.fromkeys(words))}.</p>" for group, words in groups.items()
+    )
     still = f"<h2>Blanks in this document, and what fills them</h2>{blanks}" if blanks else ""
     return f'<section class="around">{answered}{still}</section>' if answered or still else ""

@@ -66,17 +66,19 @@ class Showing:
         """Return a critical number if it is measured and its rules are met, else a blank with the rule."""
         return self._hole(self._critical(name, None))
 
-    def table(self, name: str) -> Markup:
-        """Return a value that holds a table."""
+    def table(self, name: str, columns: str = "") -> Markup:
+        """Return a value that holds a table, whole or some of its columns."""
         found = self._lookup.get(name)
         if isinstance(found, Missing):
             return self._block(f"<p>{self._blank(found)}</p>")
         if not isinstance(found.value, Table):
             raise CatalogueError(f"{name} holds no table")
         self.shown[name] = None
-        heads = [_column_words(column) for column in found.value.columns]
-        rows = [[plain(_cell(entry)) for entry in row] for row in found.value.rows]
-        return self._block(html_table(heads, rows) + f'<p class="basis-line">{plain(found.basis)}</p>')
+        wanted = columns.split() or found.value.columns
+        entries = [found.value.column(column) for column in wanted]
+        rows = [[plain(_cell(entry)) for entry in row] for row in zip(*entries, strict=True)]
+        table = html_table([_column_words(column) for column in wanted], rows)
+        return self._block(table + f'<p class="basis-line">{plain(found.basis)}</p>')
 
     def listing(self, kind: str, fields: str) -> Markup:
         """Return a table with one row for each item of a kind, some of its fields as columns."""

@@ -34,7 +34,7 @@ PARTS = (
 )  # fmt: skip
 ARRANGEMENT = Ref("arrangement", "vault-a/linac-1/e6/side-90/six-position/sheet-06/turntable-1")
 _NAMED = re.compile(r'\b(?:show|critical)\("([a-z_]+\.[a-z0-9_]+)"')
-_TABLES = re.compile(r'\btable\("([a-z_]+\.[a-z0-9_]+)"')
+_TABLES = re.compile(r'\btable\("([a-z_]+\.[a-z0-9_]+)"(?:, "([a-z0-9_ ]+)")?')
 _LISTED = re.compile(r'\blisting\("([a-z_]+)", "([a-z0-9_ ]+)"')
 
 
@@ -52,12 +52,12 @@ def names_in_templates() -> frozenset[str]:
     """Return the name of every value that a template prints."""
     text = "\n".join(template_texts().values())
     listed = {f"{kind}.{field}" for kind, fields in _LISTED.findall(text) for field in fields.split()}
-    return frozenset({*_NAMED.findall(text), *_TABLES.findall(text), *listed})
+    return frozenset({*_NAMED.findall(text), *(name for name, _ in _TABLES.findall(text)), *listed})
 
 
 @cache
-def _tables_in_templates() -> frozenset[str]:
-    return frozenset(_TABLES.findall("\n".join(template_texts().values())))
+def _tables_in_templates() -> dict[str, str]:
+    return dict(_TABLES.findall("\n".join(template_texts().values())))
 
 
 def empty() -> Assessment:
@@ -160,7 +160,8 @@ def _is_single(kind: str) -> bool:
 
 def _invented(name: str) -> object:
     if name in _tables_in_templates():
-        return Table(("height_cm", "relative_dose"), ((0.0, 1.0), (10.0, 0.98)))
+        columns = tuple(_tables_in_templates()[name].split()) or ("height_cm", "relative_dose")
+        return Table.of(columns, [[0.98 + place for place in range(len(columns))]] * 2)
     field = schemas().field(name)
     if name.endswith(".room"):
         return "vault-a"
