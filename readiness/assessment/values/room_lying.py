@@ -3,6 +3,7 @@
 from readiness.assessment.definition import Definition
 from readiness.assessment.values.room_plane import ROOM, Floor, Space, cleared, named_obstructions
 from readiness.calculations.lying_reach import LyingReach, lying_reach, source_to_floor_cm
+from readiness.calculations.range_taken import range_taken
 from readiness.quantities import Table
 
 ALONG_Y = "y"
@@ -150,5 +151,19 @@ DEFINITIONS: tuple[Definition, ...] = (
         takes={"travel_cm": "couch.travel_cm", "needed_cm": "arrangement.couch_travel_needed_cm"},
         source="definition",
         known="derived",
+    ),
+    Definition(
+        "arrangement.lying_range_taken_ratio",
+        "Part of their range that the electrons of the vertical beam spend in air and degrader.",
+        by=range_taken,
+        takes={
+            "energy_at_100_cm_mev": "beam.most_probable_energy_mev",
+            "plane_distance_cm": "arrangement.source_to_couch_cm",
+            "degrader_material": "degrader.material",
+            "degrader_thickness_cm": "degrader.thickness_cm",
+        },
+        model=True,
+        source="icru-37",
+        known="memory",
     ),
 )

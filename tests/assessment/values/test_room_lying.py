@@ -45,3 +45,9 @@ def test_the_vertical_beam() -> None:
 def test_a_standing_value_has_no_answer_for_a_couch() -> None:
     """A lying arrangement has no stand, and that is what a standing value says."""
     assert "stand" in causes(department(), "arrangement.ceiling_clearance_cm", **LYING)
+
+
+def test_electrons_reach_a_nearer_patient_more_easily() -> None:
+    """The couch is nearer than a standing plane, so that less of the range is taken."""
+    lying = value(department(), "arrangement.lying_range_taken_ratio", **LYING)
+    assert 0.0 < lying < value(department(), "arrangement.range_taken_ratio")
