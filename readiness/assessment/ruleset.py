@@ -69,12 +69,15 @@ def _rule(entry: Mapping[str, Any], topic: str, file: str) -> Rule:
         evidence=tuple(entry.get("evidence", ())),
         documents=tuple(str(number) for number in entry.get("documents", ())),
         topic=topic,
-        cases=entry["cases"],
+        cases=_tupled(entry["cases"]),
     )
 
 
-def _tupled(limit: Any) -> Any:
-    return tuple(limit) if isinstance(limit, list) else limit
+def _tupled(entry: Any) -> Any:
+    """Return what YAML gave with every list as a tuple, so that a rule is frozen and comes back from JSON."""
+    if isinstance(entry, dict):
+        return {key: _tupled(value) for key, value in entry.items()}
+    return tuple(_tupled(value) for value in entry) if isinstance(entry, list) else entry
 
 
 def check_rule(rule: Rule, known: Catalogue, where: str) -> None:
