@@ -119,12 +119,12 @@ def _around(document: RenderedDocument, assessment: Assessment) -> str:
     applying = {each.rule for each in assessment.findings if each.outcome != "not applicable"}
     own = [rule for rule in assessment.rules if document.number in rule.documents]
     rules = [rule for rule in own if rule.id in applying]
-    lines = "".join(
-        f'<li><a href="binder:rule-{plain(rule.id)}">{plain(rule.id)}</a> ({rule.strength}): '
-        f'{plain(rule.title)}. <span class="known">{plain(known_words(rule))}</span></li>'
+    lines = "; ".join(
+        f'<a href="binder:rule-{plain(rule.id)}">{plain(rule.id)}</a> ({rule.strength}) {plain(rule.title)} '
+        f'<span class="known">[{plain(known_words(rule))}]</span>'
         for rule in rules
     )
-    answered = f"<h2>Requirements that this document answers</h2><ul>{lines}</ul>" if lines else ""
+    answered = f"<h2>Requirements that this document answers</h2><p>{lines}.</p>" if lines else ""
     groups: dict[str, list[str]] = {}
     for blank in document.missing:
         groups.setdefault(blank.group, []).append(plain(blank.words))
