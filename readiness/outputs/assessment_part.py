@@ -9,6 +9,7 @@ from jinja2 import Environment, FileSystemLoader, StrictUndefined
 
 from readiness.assessment.records import Assessment
 from readiness.outputs import assessment_rows as rows
+from readiness.outputs import chief_rows as chief
 from readiness.outputs.contract import CAUTION, INVENTED
 from readiness.outputs.documents import RenderedDocument
 from readiness.outputs.frame import SAFETY, foot_words
@@ -68,14 +69,14 @@ def assessment_sheets(assessment: Assessment, rendered: Sequence[RenderedDocumen
         "verdict_reasons": assessment.verdict.reasons,
         "chosen": chosen_row(assessment),
         "chosen_by": assessment.verdict.chosen_by,
-        "arrangements": rows.arrangements(assessment),
-        "not_listed": rows.arrangements_not_listed(assessment),
+        "arrangements": chief.arrangements(assessment),
+        "not_listed": chief.arrangements_not_listed(assessment),
         "blocking": rows.gaps(assessment, blocking_only=True),
         "gaps": rows.gaps(assessment),
-        "exceptions": rows.exceptions(assessment),
-        "remembered": rows.remembered(assessment),
-        "worst_modes": rows.worst_failure_modes(assessment),
-        "figures": rows.figures(assessment),
+        "exceptions": chief.exceptions(assessment),
+        "remembered": chief.remembered(assessment),
+        "worst_modes": chief.worst_failure_modes(assessment),
+        "figures": chief.figures(assessment),
         "schedule": assessment.schedule,
         "tasks": rows.tasks(assessment),
         "matrix": rows.matrix(assessment),
