@@ -1,4 +1,4 @@
-"""What the chief reads on one page: arrangements, exceptions, remembered sources, worst risks, hours, money."""
+"""What the chief reads on one page: arrangements, exceptions, remembered sources, risks, hours and money."""
 
 from readiness.assessment.records import ArrangementRow, Assessment
 from readiness.outputs.assessment_rows import short_item
