@@ -11,6 +11,7 @@ from datetime import date
 from functools import cached_property
 from typing import Any
 
+from readiness.assessment.absence import unknown_field, unknown_list
 from readiness.assessment.catalogue import Catalogue
 from readiness.assessment.definition import Definition, Measured, Take
 from readiness.assessment.matching import disagreements, void
@@ -178,13 +179,7 @@ class Graph:
         )
 
     def _absent(self, name: str, ref: Ref) -> Gone:
-        field = self.catalogue.kinds.field(name)
-        what = words_of(name)
-        unit = f" ({unit_of(name)})" if unit_of(name) else ""
-        if field is None:
-            return Gone((Cause("item", name, ref, f"Supply {what}{unit} of {ref}."),))
-        file = self.catalogue.kinds.described.kinds[field.kind].file
-        return Gone((Cause("field", name, ref, f"State {what}{unit} of {ref} in {file}."),))
+        return Gone((unknown_field(name, ref, self.catalogue.kinds),))
 
     # -- calculations --------------------------------------------------------------------------
 
@@ -280,11 +275,7 @@ class Graph:
         found = self._children.get((kind, owner), [])
         if found or self.list_is_known(kind, owner):
             return found, None
-        file = self.catalogue.kinds.described.kinds[kind].file
-        title = self.catalogue.kinds.described.kinds[kind].title.lower()
-        return [], Cause(
-            "list", kind, owner, f"List every {title} of {owner} in {file}; [] if there is none."
-        )
+        return [], unknown_list(kind, owner, self.catalogue.kinds)
 
     def _each(
         self, keyword: str, take: Take, ref: Ref, inputs: list[Input], bases: list[str], causes: list[Cause]

@@ -8,6 +8,7 @@ A missing or assumed number is never "met". A prediction under a rule that asks 
 from collections.abc import Iterable, Iterator
 from typing import Any
 
+from readiness.assessment.absence import unknown_list
 from readiness.assessment.conditions import CONDITIONS
 from readiness.assessment.graph import Graph
 from readiness.assessment.records import Cause, Clause, Finding, Gone, Ref, Rule, Value
@@ -47,10 +48,7 @@ def _without_items(rule: Rule, kind: str, graph: Graph) -> Finding:
             words = "List the barriers of each room in shielding.yaml."
         cause = Cause("list", kind, whole, words)
     else:
-        schema = graph.catalogue.kinds.described.kinds[kind]
-        verb = "List every" if schema.form == "list" else "Describe"
-        empty = "; [] if there is none" if schema.form == "list" else ""
-        cause = Cause("list", kind, whole, f"{verb} {schema.title.lower()} in {schema.file}{empty}.")
+        cause = unknown_list(kind, whole, graph.catalogue.kinds)
     return Finding(rule.id, Ref(kind, "all"), "not assessed", causes=(cause,), message=cause.words)
 
 

@@ -46,6 +46,10 @@ GIVEN: Mapping[str, Mapping[str, str]] = {
     "measurement": {"kind": "Kind.", "table": "The readings."},
     "progress": {"task": "Task.", "started_on": "Day begun.", "finished_on": "Day finished."},
 }
+# lists that the tool writes itself: what a person does instead of writing them
+WRITTEN_BY_THE_TOOL: Mapping[str, str] = {
+    "approval": "Approve each document with: readiness approve FOLDER DOCUMENT.",
+}
 PARTS = ("room", "machine", "beam", "degrader", "stand", "couch", "plan")  # of an arrangement
 
 
