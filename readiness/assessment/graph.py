@@ -8,24 +8,22 @@ a default that nobody stated. What a measurement replaced stays visible.
 from collections.abc import Mapping
 from dataclasses import replace
 from datetime import date
-from functools import cached_property
 from typing import Any
 
 from readiness.assessment.absence import unknown_field, unknown_list
 from readiness.assessment.catalogue import Catalogue
 from readiness.assessment.definition import Definition, Measured, Take
+from readiness.assessment.item_index import ItemIndex
 from readiness.assessment.matching import disagreements, void
 from readiness.assessment.records import Cause, Gone, Got, Input, Ref, Value, weakest
 from readiness.assessment.rounding import settled
-from readiness.errors import OutsideValidity, Place
+from readiness.errors import OutsideValidity
 from readiness.program.items import Item, Program
 from readiness.quantities import Table, Uncertain
 from readiness.units import unit_of, words_of
 
-_NOWHERE = Place("")
 
-
-class Graph:
+class Graph(ItemIndex):
     """All values of one program on one day."""
 
     def __init__(
@@ -37,64 +35,11 @@ class Graph:
         limits: Mapping[str, Value],
     ) -> None:
         """Take the program, the items that the assessment made, and local limits of criteria."""
-        self.program = program
+        super().__init__(program, made, catalogue.kinds)
         self.catalogue = catalogue
         self.as_of = as_of
         self._limits = limits
-        self._items: dict[Ref, Item] = {Ref(item.kind, item.id): item for item in (*program.items, *made)}
-        self._children: dict[tuple[str, Ref], list[Ref]] = {}
         self._known: dict[tuple[str, Ref], Got] = {}
-        self._owners: dict[Ref, dict[str, str]] = {}
-        for ref in self._items:
-            for kind, owner in self.owners(ref).items():
-                self._children.setdefault((ref.kind, Ref(kind, owner)), []).append(ref)
-
-    # -- items ---------------------------------------------------------------------------------
-
-    def item(self, ref: Ref) -> Item | None:
-        """Return an item, or None."""
-        return self._items.get(ref)
-
-    def refs(self, kind: str) -> tuple[Ref, ...]:
-        """Return all items of a kind in their order."""
-        return self._by_kind.get(kind, ())
-
-    @cached_property
-    def _by_kind(self) -> dict[str, tuple[Ref, ...]]:
-        found: dict[str, list[Ref]] = {}
-        for ref in self._items:
-            found.setdefault(ref.kind, []).append(ref)
-        return {kind: tuple(refs) for kind, refs in found.items()}
-
-    def owners(self, ref: Ref) -> dict[str, str]:
-        """Return kind -> id of everything the item belongs to, itself included; the nearest wins."""
-        known = self._owners.get(ref)
-        if known is not None:
-            return known
-        found: dict[str, str] = {}
-        waiting = [ref]
-        while waiting:
-            each = waiting.pop(0)
-            if each.kind in found:
-                continue
-            found[each.kind] = each.id
-            item = self._items.get(each)
-            if item is not None:
-                waiting.extend(Ref(kind, owner) for kind, owner in item.owners.items())
-        found.setdefault("program", "program")
-        self._owners[ref] = found
-        return found
-
-    def list_is_known(self, kind: str, owner: Ref) -> bool:
-        """Return whether the list of a kind is present, so that what is not in it does not exist."""
-        if kind in {"arrangement", "exposure", "document", "measurement"}:
-            return True
-        direct = self.catalogue.kinds.owners(kind)[:1]
-        owner_kind = direct[0] if direct else "program"
-        if owner.kind == owner_kind or owner_kind == "program":
-            return (kind, owner.id if owner.kind == owner_kind else "program") in self.program.known_lists
-        holders = self._children.get((owner_kind, owner), [])
-        return bool(holders) and all((kind, holder.id) in self.program.known_lists for holder in holders)
 
     # -- values --------------------------------------------------------------------------------
 
@@ -272,7 +217,7 @@ class Graph:
     def _listed(self, kind: str, ref: Ref) -> tuple[list[Ref], Cause | None]:
         anchor = self.catalogue.kinds.anchor(ref.kind, kind)
         owner = Ref(anchor or "program", self.owners(ref).get(anchor or "program", "program"))
-        found = self._children.get((kind, owner), [])
+        found = self.children(kind, owner)
         if found or self.list_is_known(kind, owner):
             return found, None
         return [], unknown_list(kind, owner, self.catalogue.kinds)
@@ -338,7 +283,7 @@ class Graph:
         if isinstance(claim, Value):
             return claim
         own = claim.causes if claim is not None else ()
-        return Gone(tuple(sorted({*own, *self._wanted(measured, ref, near)})))
+        return Gone(tuple(sorted({*own, *self.wanted(measured, ref, near)})))
 
     def _analysed(self, definition: Definition, measured: Measured, ref: Ref, measurement: Ref) -> Got:
         takes = self.catalogue.measured_takes[definition.name]
@@ -376,62 +321,7 @@ class Graph:
         found.sort()
         return [candidate for _, candidate in found], tuple(near)
 
-    def why_not_measured(self, name: str, ref: Ref) -> tuple[Cause, ...]:
-        """Return what is missing for a value to be measured, itself or what it is worked out from."""
-        causes: set[Cause] = set()
-        seen: set[tuple[str, Ref]] = set()
-        waiting = [(name, ref)]
-        while waiting:
-            each = waiting.pop()
-            if each in seen or self.catalogue.is_choice(each[0]):
-                continue
-            seen.add(each)
-            definition = self.catalogue.definitions.get(each[0])
-            got = self.get(*each)
-            if definition is None or (isinstance(got, Value) and got.basis == "measured"):
-                continue
-            if definition.measured is not None:
-                owner = self._owner_of(*each)
-                _, near = self.measurements(definition.measured, owner)
-                causes.update(self._wanted(definition.measured, owner, near))
-            else:
-                waiting += self._rests_on(definition, got, each[1])
-        owner = self._owner_of(name, ref)
-        words = f"Measure {words_of(name)} of {owner}."
-        return tuple(sorted(causes)) or (Cause("measurement", name, owner, words),)
-
-    def _owner_of(self, name: str, ref: Ref) -> Ref:
-        kind = name.partition(".")[0]
-        return Ref(kind, self.owners(ref).get(kind, ref.id))
-
-    def _rests_on(self, definition: Definition, got: Got, ref: Ref) -> list[tuple[str, Ref]]:
-        """Return what a value is worked out from; where a prediction stands in, what it stands in for."""
-        if isinstance(got, Value) and [each.keyword for each in got.inputs] != ["otherwise"]:
-            return [] if definition.model else [(each.name, each.item) for each in got.inputs]
-        return [(take.name, ref) for _, take in self.catalogue.takes[definition.name] if take.form == "one"]
-
-    def _wanted(self, measured: Measured, ref: Ref, near: tuple[Cause, ...]) -> tuple[Cause, ...]:
+    def wanted(self, measured: Measured, ref: Ref, near: tuple[Cause, ...]) -> tuple[Cause, ...]:
+        """Return the measurement that is asked for, and why those at hand do not count."""
         words = f"Measure {measured.kind.replace('-', ' ')} for {ref}."
         return tuple(sorted({Cause("measurement", measured.kind, ref, words), *near}))
-
-    def assumed_roots(self, name: str, ref: Ref) -> tuple[Cause, ...]:
-        """Return the defaults that a value rests on, as things to state."""
-        found: set[Cause] = set()
-        seen: set[tuple[str, Ref]] = set()
-        waiting = [(name, ref)]
-        while waiting:
-            each = waiting.pop()
-            if each in seen:
-                continue
-            seen.add(each)
-            value = self.get(*each)
-            if not isinstance(value, Value) or value.basis != "assumed":
-                continue
-            if not value.inputs:
-                unit = f" {value.unit}" if value.unit else ""
-                words = f"State {words_of(value.name)} of {value.item}; {value.value}{unit} is only assumed."
-                found.add(Cause("assumed", value.name, value.item, words))
-            waiting.extend(
-                (one.name, one.item) for one in value.inputs if one.name.partition(".")[0] != "criterion"
-            )
-        return tuple(sorted(found))

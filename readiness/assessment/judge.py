@@ -9,6 +9,7 @@ from collections.abc import Iterable, Iterator
 from typing import Any
 
 from readiness.assessment.absence import unknown_list
+from readiness.assessment.causes import assumed_roots, why_not_measured
 from readiness.assessment.conditions import CONDITIONS
 from readiness.assessment.graph import Graph
 from readiness.assessment.records import Cause, Clause, Finding, Gone, Ref, Rule, Value
@@ -109,9 +110,9 @@ def _compared(rule: Rule, item: Ref, observed: Value, limit: Any, graph: Graph) 
     outcome = "met" if holds else "not met"
     causes: tuple[Cause, ...] = ()
     if rule.basis == "measured" and observed.basis != "measured":
-        causes = graph.why_not_measured(rule.subject, item)
+        causes = why_not_measured(graph, rule.subject, item)
     elif observed.basis == "assumed" and holds:
-        causes = graph.assumed_roots(rule.subject, item)
+        causes = assumed_roots(graph, rule.subject, item)
     return Finding(
         rule.id, item, "not assessed" if causes else outcome, _plain(observed.value), limit, observed.basis,
         expected=outcome if causes else "", causes=causes, message=message, where=observed.where,

@@ -94,7 +94,9 @@ def without_a_field(of: Program) -> Iterator[tuple[str, Program]]:
 def without_a_list(of: Program) -> Iterator[tuple[str, Program]]:
     """Yield the program without each of its lists in turn, so that it is unknown."""
     for kind, owner in sorted(of.known_lists):
-        left = tuple(item for item in of.items if item.kind != kind or kind in {"local_limit", "exception"})
+        if owner in LEFT_OUT or kind in {"local_limit", "exception"}:
+            continue
+        left = tuple(item for item in of.items if item.kind != kind or owner not in {*item.owners.values(), "program"})
         yield f"list of {kind} of {owner}", replace(of, items=left, known_lists=of.known_lists - {(kind, owner)})
 
 

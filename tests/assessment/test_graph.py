@@ -5,6 +5,7 @@ from datetime import date
 
 import pytest
 
+from readiness.assessment.causes import assumed_roots, why_not_measured
 from readiness.assessment.definition import Definition, Measured
 from readiness.assessment.records import Gone, Input, Ref, Value
 from readiness.errors import CatalogueError, OutsideValidity
@@ -78,7 +79,7 @@ def test_an_assumption_is_traced_to_what_has_to_be_stated() -> None:
     """Whatever rests on a default names the field that would replace it."""
     model = Definition("room.model_ratio", "A model.", by=lambda *, air_changes_per_h: 1.0,
                        takes={"air_changes_per_h": "room.air_changes_per_h"})  # fmt: skip
-    roots = graph(program(item("room", "a")), model).assumed_roots("room.model_ratio", ROOM)
+    roots = assumed_roots(graph(program(item("room", "a")), model), "room.model_ratio", ROOM)
     assert [root.what for root in roots] == ["room.air_changes_per_h"]
 
 
@@ -190,7 +191,7 @@ def test_a_measurement_with_an_expired_instrument_does_not_count() -> None:
     got = of.get("beam.foil_spread", Ref("beam", "m/e6"))  # type: ignore[attr-defined]
     assert isinstance(got, Value)
     assert got.basis == "stated"
-    causes = of.why_not_measured("beam.foil_spread", Ref("beam", "m/e6"))  # type: ignore[attr-defined]
+    causes = why_not_measured(of, "beam.foil_spread", Ref("beam", "m/e6"))  # type: ignore[attr-defined]
     assert any("out of calibration on 2026-10-01" in cause.words for cause in causes)
 
 
@@ -305,5 +306,5 @@ def test_what_is_worked_out_from_a_prediction_asks_for_the_measurement_of_what_i
         DOUBLE_TILT,
         made=(made,),
     )
-    causes = of.why_not_measured("arrangement.between_axes_deg", Ref("arrangement", "x"))
+    causes = why_not_measured(of, "arrangement.between_axes_deg", Ref("arrangement", "x"))
     assert ["Measure angle sweep for arrangement x."] == [cause.words for cause in causes]
