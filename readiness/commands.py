@@ -58,13 +58,18 @@ def _check_local_rules(program: object) -> None:
     from readiness.program.items import Program
 
     assert isinstance(program, Program)  # noqa: S101 - read_folder returns one
-    if not program.by_kind.get("local_rule") and not program.by_kind.get("local_limit"):
-        return
-    from readiness.assessment.catalogue import catalogue
-    from readiness.assessment.local_rules import with_local
-    from readiness.assessment.ruleset import load_rules
+    own, limits = program.by_kind.get("local_rule"), program.by_kind.get("local_limit")
+    if limits and not own:
+        from readiness.assessment.local_rules import check_limits
+        from readiness.assessment.ruleset import shipped_rules
 
-    with_local(load_rules(catalogue()), program, catalogue())
+        check_limits(shipped_rules(), program)
+    elif own:
+        from readiness.assessment.catalogue import catalogue
+        from readiness.assessment.local_rules import with_local
+        from readiness.assessment.ruleset import load_rules
+
+        with_local(load_rules(catalogue()), program, catalogue())
 
 
 def _problems(problems: tuple[Problem, ...], as_json: bool) -> Answer:

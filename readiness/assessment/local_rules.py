@@ -13,8 +13,9 @@ from typing import Any
 
 from readiness.assessment.catalogue import Catalogue
 from readiness.assessment.conditions import CONDITIONS
+from readiness.assessment.criteria import criteria
 from readiness.assessment.records import Clause, Ref, Rule, RuleSource, Value
-from readiness.assessment.ruleset import check_rule, is_value_name, with_limit
+from readiness.assessment.ruleset import check_rule, with_limit
 from readiness.assessment.schedule import shipped_tasks
 from readiness.errors import CatalogueError, Place, Problem, ProgramProblems
 from readiness.program.items import Item, Program
@@ -32,12 +33,8 @@ class LocalRules:
 
 def with_local(rules: tuple[Rule, ...], program: Program, known: Catalogue) -> LocalRules:
     """Return shipped and local rules together; raise ProgramProblems with everything that does not fit."""
-    problems: list[Problem] = []
-    by_id = {rule.id: rule for rule in rules}
-    limits: dict[str, Value] = {}
-    governs: dict[Ref, bool] = {}
-    for item in program.of_kind("local_limit"):
-        _take_limit(item, by_id, limits, governs, known, problems)
+    local, problems = _with_limits(rules, program)
+    by_id = {rule.id: rule for rule in local.rules}
     shipped = set(by_id)
     for item in program.of_kind("local_rule"):
         rule = _local_rule(item, known, shipped, problems)
@@ -45,7 +42,24 @@ def with_local(rules: tuple[Rule, ...], program: Program, known: Catalogue) -> L
             by_id[rule.id] = rule
     if problems:
         raise ProgramProblems(problems)
-    return LocalRules(tuple(by_id.values()), limits, governs)
+    return LocalRules(tuple(by_id.values()), local.limits, local.governs)
+
+
+def check_limits(rules: tuple[Rule, ...], program: Program) -> None:
+    """Raise ProgramProblems if a local limit does not fit; needs no values, so that it is quick."""
+    _, problems = _with_limits(rules, program)
+    if problems:
+        raise ProgramProblems(problems)
+
+
+def _with_limits(rules: tuple[Rule, ...], program: Program) -> tuple[LocalRules, list[Problem]]:
+    problems: list[Problem] = []
+    by_id = {rule.id: rule for rule in rules}
+    limits: dict[str, Value] = {}
+    governs: dict[Ref, bool] = {}
+    for item in program.of_kind("local_limit"):
+        _take_limit(item, by_id, limits, governs, problems)
+    return LocalRules(tuple(by_id.values()), limits, governs), problems
 
 
 def _near(name: str, names: Iterable[str]) -> str:
@@ -60,26 +74,26 @@ def _place(item: Item, field: str) -> Place:
 
 def _take_limit(
     item: Item, by_id: dict[str, Rule], limits: dict[str, Value], governs: dict[Ref, bool],
-    known: Catalogue, problems: list[Problem],
+     problems: list[Problem],
 ) -> None:  # fmt: skip
     rule_id, criterion = item.get("rule"), item.get("criterion")
     if (rule_id is None) == (criterion is None):
         words = "a local limit names either a rule or a criterion whose limit it replaces"
         problems.append(Problem(item.place, words, "local limit"))
     elif criterion is not None:
-        _take_criterion(item, str(criterion), limits, governs, known, problems)
+        _take_criterion(item, str(criterion), limits, governs, problems)
     else:
-        _take_rule_limit(item, str(rule_id), by_id, governs, known, problems)
+        _take_rule_limit(item, str(rule_id), by_id, governs, problems)
 
 
 def _take_criterion(
-    item: Item, criterion: str, limits: dict[str, Value], governs: dict[Ref, bool], known: Catalogue,
-    problems: list[Problem],
+    item: Item, criterion: str, limits: dict[str, Value], governs: dict[Ref, bool],
+        problems: list[Problem],
 ) -> None:  # fmt: skip
     name = criterion if criterion.startswith("criterion.") else f"criterion.{criterion}"
-    ours = known.criteria.get(name)
+    ours = criteria().get(name)
     if ours is None:
-        words = f"there is no criterion {criterion}{_near(name, known.criteria)}"
+        words = f"there is no criterion {criterion}{_near(name, criteria())}"
         problems.append(Problem(_place(item, "criterion"), words, "local limit"))
         return
     if not _unit_agrees(item, unit_of(name), problems):
@@ -95,8 +109,8 @@ def _take_criterion(
 
 
 def _take_rule_limit(
-    item: Item, rule_id: str, by_id: dict[str, Rule], governs: dict[Ref, bool], known: Catalogue,
-    problems: list[Problem],
+    item: Item, rule_id: str, by_id: dict[str, Rule], governs: dict[Ref, bool],
+        problems: list[Problem],
 ) -> None:  # fmt: skip
     rule = by_id.get(rule_id)
     if rule is None:
@@ -112,8 +126,8 @@ def _take_rule_limit(
         return
     limit = float(item.get("limit"))  # type: ignore[arg-type]
     ours = rule.limit
-    if is_value_name(ours, known):
-        criterion = known.criteria.get(str(ours))
+    if isinstance(ours, str):
+        criterion = criteria().get(ours)
         ours = criterion.value if criterion else None
     strict = ours is None or _at_least_as_strict(limit, float(ours), direction)
     governs[Ref("local_limit", item.id)] = strict
