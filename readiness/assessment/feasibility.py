@@ -1,10 +1,12 @@
 """Which arrangements are possible, in words, and which one is recommended and why."""
 
+from collections import Counter
 from collections.abc import Iterable, Mapping
+from dataclasses import replace
 
 from readiness.assessment.graph import Graph
 from readiness.assessment.kinds import PARTS
-from readiness.assessment.records import FEASIBILITIES, ArrangementRow, Finding, Ref, Rule, Value
+from readiness.assessment.records import FEASIBILITIES, PHASES, ArrangementRow, Finding, Ref, Rule, Value
 
 # what is shown when arrangements are compared, where it is known
 FIGURES = (
@@ -56,7 +58,13 @@ def feasibility(findings: Iterable[Finding], rules: Mapping[str, Rule]) -> tuple
     if unknown:
         return "not enough described", tuple(unknown)
     if open_musts:
-        worst = sorted(open_musts, key=lambda finding: finding.outcome != "not met")
+        worst = sorted(
+            open_musts,
+            key=lambda finding: (
+                finding.outcome != "not met" and finding.expected != "not met",
+                PHASES.index(rules[finding.rule].phase),
+            ),
+        )
         return "feasible when gaps close", tuple(worst)
     return "feasible", ()
 
@@ -91,7 +99,21 @@ def compare(
             FEASIBILITIES.index(words), *(counts[key] for key, _ in _COMPARED), place,
         )  # fmt: skip
         rows.append((order, _row(arrangement, words, deciding, counts, graph)))
-    return tuple(row for _, row in sorted(rows, key=lambda pair: pair[0]))
+    return _own_first(tuple(row for _, row in sorted(rows, key=lambda pair: pair[0])))
+
+
+def _own_first(rows: tuple[ArrangementRow, ...]) -> tuple[ArrangementRow, ...]:
+    """Return the rows with what tells an arrangement from the others before what many of them share."""
+    shared = Counter((finding.rule, finding.message) for row in rows for finding in row.deciding)
+    return tuple(
+        replace(row, deciding=tuple(sorted(row.deciding, key=lambda each: _rank(each, shared))))
+        for row in rows
+    )
+
+
+def _rank(finding: Finding, shared: Counter[tuple[str, str]]) -> tuple[bool, int]:
+    open_only = finding.outcome != "not met" and finding.expected != "not met"
+    return open_only, shared[(finding.rule, finding.message)]
 
 
 def _counts(findings: Iterable[Finding], rules: Mapping[str, Rule]) -> dict[str, int]:

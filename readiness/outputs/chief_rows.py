@@ -5,7 +5,7 @@ from readiness.outputs.assessment_rows import short_item
 from readiness.outputs.words import chosen_row, value_title, with_unit
 from readiness.quantities import Table
 
-MOST_ARRANGEMENTS = 4
+MOST_ARRANGEMENTS = 3
 FIGURES = (
     "program.expected_patients_per_year",
     "program.sessions_per_year",
@@ -48,10 +48,17 @@ def arrangements_not_listed(assessment: Assessment) -> int:
 
 
 def _listed(assessment: Assessment) -> list[ArrangementRow]:
-    """Return the best arrangements, the one that the binder is for always among them."""
-    best = list(assessment.arrangements[:MOST_ARRANGEMENTS])
+    """Return the arrangement that the binder is for, the best others, and the best of each further room."""
     chosen = chosen_row(assessment)
-    return best if chosen is None or chosen in best else [chosen, *best[:-1]]
+    listed = [] if chosen is None else [chosen]
+    listed += [row for row in assessment.arrangements if row not in listed][: MOST_ARRANGEMENTS - len(listed)]
+    rooms = {dict(row.parts)["room"] for row in listed}
+    for row in assessment.arrangements:
+        room = dict(row.parts)["room"]
+        if room not in rooms:
+            rooms.add(room)
+            listed.append(row)
+    return listed
 
 
 def exceptions(assessment: Assessment) -> tuple[tuple[str, str, str], ...]:

@@ -20,9 +20,9 @@ def with_unit(name: str, value: Any) -> str:
     """Return a value with the unit of its name."""
     unit = unit_of(name)
     text = in_words(value)
-    return (
-        f"{text} {unit}".strip() if isinstance(value, (int, float)) and not isinstance(value, bool) else text
-    )
+    if isinstance(value, bool) or not isinstance(value, (int, float)):
+        return text
+    return f"{text}{unit}" if unit == "°" else f"{text} {unit}".strip()
 
 
 def value_title(name: str) -> str:
