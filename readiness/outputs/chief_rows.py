@@ -2,7 +2,7 @@
 
 from readiness.assessment.records import ArrangementRow, Assessment
 from readiness.outputs.assessment_rows import short_item
-from readiness.outputs.words import chosen_row, value_title, with_unit
+from readiness.outputs.words import chosen_row, finding_words, value_title, with_unit
 from readiness.quantities import Table
 
 MOST_ARRANGEMENTS = 3
@@ -32,7 +32,7 @@ def arrangements(assessment: Assessment) -> tuple[tuple[str, str, str, str], ...
         (
             row.title,
             row.feasibility,
-            row.deciding[0].message if row.deciding else "",
+            finding_words(row.deciding[0]) if row.deciding else "",
             "; ".join(
                 f"{value_title(name).lower()} {with_unit(name, value)} ({basis})"
                 for name, value, basis in row.figures[:3]

@@ -66,6 +66,13 @@ def date_words(day: date | None) -> str:
     return day.isoformat() if day else "-"
 
 
+def finding_words(finding: Finding) -> str:
+    """Return a finding's message; a number that is not measured says so."""
+    if not finding.expected:
+        return finding.message
+    return f"{finding.message} That is {finding.basis}, not measured."
+
+
 def outcome_words(finding: Finding) -> str:
     """Return an outcome with what to expect beside it."""
     return f"{finding.outcome} (expected: {finding.expected})" if finding.expected else finding.outcome
