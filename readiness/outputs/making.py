@@ -9,6 +9,7 @@ from readiness.assessment.records import Assessment
 from readiness.outputs import gap_list
 from readiness.outputs.contract import to_json
 from readiness.outputs.documents import render_bodies
+from readiness.outputs.page import make_page
 from readiness.program.items import Program
 
 
@@ -43,6 +44,7 @@ def make_all(assessment: Assessment, program: Program, as_of: date, say: Callabl
     pictures: Mapping[str, str] = {}
     say("writing documents")
     rendered = render_bodies(assessment, program.texts, pictures)
+    files["report.html"] = make_page(assessment, pictures)
     inside = {f"program/{name}": content for name, content in sorted(program.contents.items())}
     inside |= {name: files[name] for name in ("assessment.json", "gaps.csv")}
     try:
