@@ -149,8 +149,7 @@ def _prove_take(
                 raise CatalogueError(f"value {name} takes {take.name}.{column}, which does not exist")
     elif not known.has(take.name):
         raise CatalogueError(f"value {name} takes {take.name}, which does not exist")
-    reachable = (kind, *known.kinds.ancestors(kind), "criterion", *also)
-    if take.form == "one" and take.kind not in reachable:
+    if take.form == "one" and take.kind not in known.kinds.reachable(kind) and take.kind not in also:
         raise CatalogueError(f"value {name} takes {take.name}, but a {kind} does not belong to a {take.kind}")
     if take.form != "one" and known.kinds.anchor(kind, take.kind) is None:
         raise CatalogueError(f"value {name} takes every {take.kind}, which cannot be reached from a {kind}")

@@ -52,7 +52,7 @@ class Graph(ItemIndex):
         kind = name.partition(".")[0]
         if kind == "criterion":
             return self._limit(name)
-        owner = self.owners(asking).get(kind)
+        owner = self.owners(asking).get(kind, kind if kind in self.kinds.sections else None)
         if owner is None:
             words = f"{words_of(kind)} for {asking}"
             return Gone((Cause("item", kind, asking, f"Describe or choose a {words}."),))
@@ -116,7 +116,8 @@ class Graph(ItemIndex):
 
     def _assumed(self, name: str, ref: Ref) -> Value | None:
         field = self.catalogue.kinds.field(name)
-        if field is None or field.assumed is None or ref not in self._items:
+        exists = ref in self._items or ref.kind in self.kinds.sections
+        if field is None or field.assumed is None or not exists:
             return None
         assumed = field.assumed
         return Value(

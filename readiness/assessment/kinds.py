@@ -88,6 +88,16 @@ class Kinds:
         """Return every kind an item belongs to, the program last."""
         return self._closures[kind]
 
+    @cached_property
+    def sections(self) -> frozenset[str]:
+        """Return the kinds that the program has once, which every item may ask for."""
+        kinds = self.described.kinds.values()
+        return frozenset(each.kind for each in kinds if each.form == "section" and each.owner == "program")
+
+    def reachable(self, kind: str) -> frozenset[str]:
+        """Return the kinds of which an item of this kind may ask for a value."""
+        return frozenset((kind, "criterion", *self.ancestors(kind))) | self.sections
+
     def anchor(self, asking: str, listed: str) -> str | None:
         """
         Return the kind whose lists are meant when an item of one kind asks for "each" of another.

@@ -92,8 +92,7 @@ def check_rule(rule: Rule, known: Catalogue, where: str) -> None:
     check_clause(Clause(rule.subject, rule.condition, rule.limit), known, where)
     for clause in rule.applies_when:
         check_clause(clause, known, where)
-        reachable = (rule.kind, *known.kinds.ancestors(rule.kind), "criterion")
-        if clause.subject.partition(".")[0] not in reachable:
+        if clause.subject.partition(".")[0] not in known.kinds.reachable(rule.kind):
             raise CatalogueError(f"{where}: {clause.subject} cannot be asked of a {rule.kind}")
     try:
         rule.message.format(observed="1", limit="2", item="x")

@@ -1,0 +1,386 @@
+"""A barrier seen from an arrangement: dose before and after, against goals, and what would mend it."""
+
+from readiness.assessment.definition import Definition, derived
+from readiness.assessment.values.shielding_workload import VERTICAL
+from readiness.calculations.barrier_distances import BarrierDistances, barrier_distances
+from readiness.calculations.barrier_dose import WeeklyDose, weekly_dose
+from readiness.calculations.beam_on_barrier import beam_spots, nearest_spot_distance_m, primary_belt
+from readiness.calculations.dose_limits import annual_dose_msv, any_hour_dose, goal_margin
+from readiness.calculations.electron_side import first_layer, needs_neutron_remark
+from readiness.calculations.required_thickness import cycles_that_fit, required_thickness
+from readiness.errors import OutsideValidity
+from readiness.quantities import Table
+
+SURVEY_ONLY = ("door", "maze", "penetration")
+MV_OF_MEV = 1.0  # the end point of the x rays is the energy of the electrons
+BARRIERS = (
+    "place", "before_usv_per_week", "after_usv_per_week", "goal_usv_per_week", "in_any_hour_usv", "role",
+    "largest_contribution",
+)  # fmt: skip
+
+
+def design_goal(*, area: str, controlled_msv_per_week: float, uncontrolled_msv_per_week: float) -> float:
+    """Return the weekly design goal of the place beyond a barrier."""
+    return controlled_msv_per_week if area == "controlled" else uncontrolled_msv_per_week
+
+
+def spots_of_fields(
+    *, side_deg: int, tilt_deg: float, source_axis_distance_cm: float, opening_cm: float,
+    collimator_deg: float | None, floor_polygon_cm: tuple[tuple[float, float], ...],
+    isocentre_height_cm: float, ceiling_height_cm: float,
+) -> Table:  # fmt: skip
+    """Return where axes and edges of both tilted fields meet the room."""
+    if side_deg not in (90, 270):
+        raise OutsideValidity("a vertical beam has no tilted fields")
+    return beam_spots(
+        side_deg=side_deg, tilt_deg=tilt_deg, source_axis_distance_cm=source_axis_distance_cm,
+        opening_cm=opening_cm, collimator_angle_deg=collimator_deg or 0.0, floor_polygon_cm=floor_polygon_cm,
+        isocentre_height_cm=isocentre_height_cm, ceiling_height_cm=ceiling_height_cm,
+    ).spots  # fmt: skip
+
+
+def distances(
+    *, surface: str, layers: Table, inner_face_cm: float | None, distance_m: float | None,
+    isocentre_distance_m: float | None, leakage_distance_m: float | None, isocentre_height_cm: float | None,
+    side_deg: int, tilt_deg: float, source_axis_distance_cm: float, plane_distance_cm: float,
+) -> BarrierDistances:  # fmt: skip
+    """Return all distances to a barrier; doors, mazes and penetrations are for the survey."""
+    if side_deg not in (90, 270):
+        raise OutsideValidity(VERTICAL)
+    return barrier_distances(
+        surface=surface, layers=layers, inner_face_cm=inner_face_cm, distance_m=distance_m,
+        isocentre_distance_m=isocentre_distance_m, leakage_distance_m=leakage_distance_m,
+        isocentre_height_cm=isocentre_height_cm, side_deg=side_deg, tilt_deg=tilt_deg,
+        source_axis_distance_cm=source_axis_distance_cm, plane_distance_cm=plane_distance_cm,
+    )  # fmt: skip
+
+
+def week(
+    *, distances: BarrierDistances, surface: str, layers: Table, role: str, occupancy: float,
+    recess_cm: float | None, existing: Table, energy_mev: float, xray_gy_m2_per_week: float,
+    leakage_gy_m2_per_week: float, leakage_percent: float, plane_distance_cm: float, patient_area_m2: float,
+    spots: Table,
+) -> WeeklyDose:  # fmt: skip
+    """Return the dose of the busiest week behind a barrier, contribution by contribution."""
+    lobe = nearest_spot_distance_m(spots=spots, surface=surface, layers=layers)
+    across = surface in ("ceiling", "floor", "y-min-wall", "y-max-wall")
+    return weekly_dose(
+        layers=layers, role=role, occupancy=occupancy, recess_depth_cm=recess_cm or 0.0, existing=existing,
+        primary_distance_m=distances.primary_distance_m,
+        isocentre_distance_m=distances.isocentre_distance_m, beam_energy_mv=energy_mev * MV_OF_MEV,
+        xray_workload_gy_m2_per_week=xray_gy_m2_per_week,
+        xray_distance_m=lobe if across else distances.xray_distance_m,
+        leakage_workload_gy_m2_per_week=leakage_gy_m2_per_week, leakage_percent=leakage_percent,
+        head_distance_m=distances.head_distance_m, plane_distance_cm=plane_distance_cm,
+        patient_area_m2=patient_area_m2, scatter_distance_m=distances.scatter_distance_m,
+        scatter_angle_deg=distances.scatter_angle_deg,
+    )  # fmt: skip
+
+
+def part_of_goal(*, dose_usv_per_week: float, goal_msv_per_week: float, survey_margin: float) -> float:
+    """Return the weekly dose as a part of the design goal."""
+    return goal_margin(
+        dose_usv_per_week=dose_usv_per_week, design_goal_msv_per_week=goal_msv_per_week,
+        survey_margin_ratio=survey_margin,
+    ).share_of_goal  # fmt: skip
+
+
+def hour(
+    *, dose: WeeklyDose, cycles_per_week: float, sessions_per_cycle: int, sessions_in_hour: int,
+    busiest_photon_hour: float,
+) -> float:  # fmt: skip
+    """Return the largest dose in any 60 consecutive minutes, no occupancy counted."""
+    return any_hour_dose(
+        before_rate_usv_per_week=dose.before_rate_usv_per_week,
+        added_rate_usv_per_week=dose.added_rate_usv_per_week, cycles_per_week=cycles_per_week,
+        sessions_per_cycle=sessions_per_cycle, sessions_in_hour=sessions_in_hour, session_room_min=None,
+        busiest_hour_ratio=busiest_photon_hour,
+    ).usv_in_any_hour  # fmt: skip
+
+
+def year(*, dose: WeeklyDose, cycles_per_week: float) -> float:
+    """Return the dose of a year of busiest weeks, an upper bound."""
+    return annual_dose_msv(
+        before_usv_per_week=dose.before_usv_per_week, added_usv_per_week=dose.added_usv_per_week,
+        cycles_per_week=cycles_per_week, cycles_per_year=None,
+    )  # fmt: skip
+
+
+def extra_thickness(*, dose: WeeklyDose, goal_msv_per_week: float) -> Table:
+    """Return what would have to be added outside: tenth-value layers, or one material."""
+    needed = required_thickness(contributions=dose.contributions, limit_usv_per_week=1000 * goal_msv_per_week)
+    row = (needed.extra_tvl, needed.concrete_cm, needed.steel_cm, needed.lead_cm)
+    return Table(("extra_tvl", "concrete_cm", "steel_cm", "lead_cm"), (row,))
+
+
+def fitting_cycles(
+    *, dose: WeeklyDose, cycles_per_week: float, peak_patients: int, goal_msv_per_week: float
+) -> int:
+    """Return how many cycles a week stay within the goal as the barrier is."""
+    found = cycles_that_fit(
+        before_usv_per_week=dose.before_usv_per_week, added_usv_per_week=dose.added_usv_per_week,
+        cycles_per_week=cycles_per_week, patient_cycles_per_week=cycles_per_week / max(1, peak_patients),
+        design_goal_msv_per_week=goal_msv_per_week,
+    )  # fmt: skip
+    if found.cycles_per_week is None:
+        raise OutsideValidity("the program adds nothing behind this barrier")
+    return found.cycles_per_week
+
+
+def belt_spare(
+    *, distances: BarrierDistances, opening_cm: float, distance_m: float | None, belt_width_cm: float
+) -> float:
+    """Return what a primary belt has over the width that the beam needs there; negative is missing."""
+    if not distances.faces_beam:
+        raise OutsideValidity("the beam does not face this barrier")
+    reach_cm = 100 * (distance_m or distances.primary_distance_m)
+    spare = primary_belt(opening_cm=opening_cm, distance_cm=reach_cm, belt_width_cm=belt_width_cm).spare_cm
+    if spare is None:
+        raise OutsideValidity("the width of the thick part is not stated")
+    return spare
+
+
+def low_first(*, layers: Table) -> bool:
+    """Return whether the first layer has a low atomic number."""
+    return first_layer(layers=layers).low_atomic_number
+
+
+def is_survey_only(*, role: str, surface: str) -> bool:
+    """Return whether a place can only be measured: door, maze, penetration."""
+    return role in SURVEY_ONLY or surface in SURVEY_ONLY
+
+
+def neutrons(*, energy_mev: float) -> bool:
+    """Return whether neutrons deserve a remark."""
+    return needs_neutron_remark(energy_mev=energy_mev)
+
+
+def overview(
+    *, places: tuple[str, ...], roles: tuple[str, ...], before: tuple[float | None, ...],
+    after: tuple[float | None, ...], goals: tuple[float | None, ...], hours: tuple[float | None, ...],
+    largest: tuple[str | None, ...],
+) -> Table:  # fmt: skip
+    """Return all barriers of the room, before and after; blank where only a survey can tell."""
+    rows = [
+        (place, was, now, None if goal is None else 1000 * goal, in_hour, role, most)
+        for place, role, was, now, goal, in_hour, most in zip(
+            places, roles, before, after, goals, hours, largest, strict=True
+        )
+    ]
+    return Table(BARRIERS, tuple(rows))
+
+
+def _part(name: str, meaning: str, part: str) -> Definition:
+    return Definition(
+        f"exposure.{name}", meaning, of="exposure.week", part=part, source="ncrp-151", known="memory",
+        formula="H = W x factor x T x B / d^2, summed over contributions",
+    )  # fmt: skip
+
+
+_GEOMETRY = {
+    "side_deg": "arrangement.side_deg",
+    "tilt_deg": "arrangement.room_tilt_deg",
+    "source_axis_distance_cm": "machine.source_axis_distance_cm",
+}
+DEFINITIONS: tuple[Definition, ...] = (
+    derived(
+        "barrier.design_goal_msv_per_week",
+        "Weekly design goal of the place beyond.",
+        design_goal,
+        {
+            "area": "barrier.area",
+            "controlled_msv_per_week": "criterion.controlled_goal_msv_per_week",
+            "uncontrolled_msv_per_week": "criterion.uncontrolled_goal_msv_per_week",
+        },
+    ),
+    derived(
+        "barrier.survey_only",
+        "It can only be measured: a door, maze or penetration.",
+        is_survey_only,
+        {"role": "barrier.role", "surface": "barrier.surface"},
+    ),
+    derived(
+        "barrier.low_atomic_number_first",
+        "Its first layer has a low atomic number.",
+        low_first,
+        {"layers": "barrier.layers"},
+    ),
+    Definition(
+        "arrangement.beam_spots",
+        "Where axes and edges of both tilted fields meet the room.",
+        by=spots_of_fields,
+        takes={
+            **_GEOMETRY,
+            "opening_cm": "beam.opening_cm",
+            "collimator_deg": "beam.collimator_deg?",
+            "floor_polygon_cm": "room.floor_polygon_cm",
+            "isocentre_height_cm": "room.isocentre_height_cm",
+            "ceiling_height_cm": "room.ceiling_height_cm",
+        },
+        source="iec-61217",
+        known="derived",
+    ),
+    Definition(
+        "arrangement.neutron_remark",
+        "The energy is high enough for neutrons to deserve a remark.",
+        by=neutrons,
+        takes={"energy_mev": "beam.energy_at_source_mev"},
+        source="ncrp-151",
+        known="memory",
+    ),
+    Definition(
+        "exposure.distances",
+        "Distances to the barrier from source, head, isocentre and patient.",
+        by=distances,
+        takes={
+            "surface": "barrier.surface",
+            "layers": "barrier.layers",
+            "inner_face_cm": "barrier.inner_face_cm?",
+            "distance_m": "barrier.distance_m?",
+            "isocentre_distance_m": "barrier.isocentre_distance_m?",
+            "leakage_distance_m": "barrier.leakage_distance_m?",
+            "isocentre_height_cm": "room.isocentre_height_cm?",
+            **_GEOMETRY,
+            "plane_distance_cm": "arrangement.study_distance_cm",
+        },
+        internal=True,
+    ),
+    Definition(
+        "exposure.week",
+        "Dose of the busiest week behind the barrier.",
+        by=week,
+        takes={
+            "distances": "exposure.distances",
+            "surface": "barrier.surface",
+            "layers": "barrier.layers",
+            "role": "barrier.role",
+            "occupancy": "barrier.occupancy",
+            "recess_cm": "barrier.recess_cm?",
+            "existing": "barrier.existing_workload",
+            "energy_mev": "beam.energy_at_source_mev",
+            "xray_gy_m2_per_week": "arrangement.xray_workload_gy_m2_per_week",
+            "leakage_gy_m2_per_week": "arrangement.leakage_workload_gy_m2_per_week",
+            "leakage_percent": "beam.leakage_percent",
+            "plane_distance_cm": "arrangement.study_distance_cm",
+            "patient_area_m2": "criterion.patient_area_m2",
+            "spots": "arrangement.beam_spots",
+        },
+        model=True,
+        internal=True,
+    ),
+    _part("before_usv_per_week", "Dose of a week before the program.", "before_usv_per_week"),
+    _part("weekly_dose_usv_per_week", "Dose of the busiest week with the program.", "after_usv_per_week"),
+    _part("added_usv_per_week", "What the program adds in the busiest week.", "added_usv_per_week"),
+    _part("contributions", "What the dose is made of, line by line.", "contributions"),
+    _part("largest_contribution", "The largest contribution.", "largest_contribution"),
+    _part("beam_on_secondary", "The tilted fields meet a barrier built as secondary.", "beam_on_secondary"),
+    Definition(
+        "exposure.goal_ratio",
+        "Dose of the busiest week as a part of the design goal.",
+        by=part_of_goal,
+        takes={
+            "dose_usv_per_week": "exposure.weekly_dose_usv_per_week",
+            "goal_msv_per_week": "barrier.design_goal_msv_per_week",
+            "survey_margin": "criterion.survey_margin_ratio",
+        },
+        source="ncrp-151",
+        known="memory",
+    ),
+    Definition(
+        "exposure.any_hour_dose_usv",
+        "Largest dose in any 60 consecutive minutes, no occupancy counted.",
+        by=hour,
+        takes={
+            "dose": "exposure.week",
+            "cycles_per_week": "program.busiest_week_cycles_per_week",
+            "sessions_per_cycle": "program.fewest_sessions_per_cycle",
+            "sessions_in_hour": "program.sessions_in_busiest_hour",
+            "busiest_photon_hour": "protection.busiest_photon_hour",
+        },
+        source="ncrp-151",
+        known="memory",
+    ),
+    Definition(
+        "exposure.annual_dose_msv_per_year",
+        "Dose of a year of busiest weeks, an upper bound.",
+        by=year,
+        takes={"dose": "exposure.week", "cycles_per_week": "program.busiest_week_cycles_per_week"},
+        source="ncrp-151",
+        known="memory",
+    ),
+    Definition(
+        "exposure.extra_thickness",
+        "What would have to be added outside to keep the design goal; one material alone.",
+        by=extra_thickness,
+        takes={"dose": "exposure.week", "goal_msv_per_week": "barrier.design_goal_msv_per_week"},
+        source="ncrp-151",
+        known="memory",
+    ),
+    Definition(
+        "exposure.cycles_that_fit_per_week",
+        "Cycles a week that keep the design goal with the barrier as it is.",
+        by=fitting_cycles,
+        takes={
+            "dose": "exposure.week",
+            "cycles_per_week": "program.busiest_week_cycles_per_week",
+            "peak_patients": "program.peak_patients",
+            "goal_msv_per_week": "barrier.design_goal_msv_per_week",
+        },
+        source="own-arithmetic",
+        known="derived",
+    ),
+    Definition(
+        "exposure.belt_spare_cm",
+        "What the thick part of the wall has over the width that the beam needs; negative is missing.",
+        by=belt_spare,
+        takes={
+            "distances": "exposure.distances",
+            "opening_cm": "beam.opening_cm",
+            "distance_m": "barrier.distance_m?",
+            "belt_width_cm": "barrier.belt_width_cm",
+        },
+        source="ncrp-151",
+        known="memory",
+    ),
+    derived(
+        "arrangement.barriers",
+        "All barriers of the room before and after; a blank is left for the survey.",
+        overview,
+        {
+            "places": "each exposure.title",
+            "roles": "each exposure.role?",
+            "before": "each exposure.before_usv_per_week?",
+            "after": "each exposure.weekly_dose_usv_per_week?",
+            "goals": "each exposure.goal_msv_per_week?",
+            "hours": "each exposure.any_hour_dose_usv?",
+            "largest": "each exposure.largest_contribution?",
+        },
+    ),
+    derived(
+        "exposure.faces_beam",
+        "The beam faces the barrier.",
+        lambda *, distances: distances.faces_beam,
+        {"distances": "exposure.distances"},
+    ),
+    derived(
+        "barrier.surveys_in_mode",
+        "Surveys of its room in the mode.",
+        lambda *, surveys: surveys,
+        {"surveys": "room.surveys_in_mode"},
+    ),
+    derived(
+        "arrangement.neutrons_covered",
+        "Neutrons and doors are covered by the room's own report.",
+        lambda *, covered: covered,
+        {"covered": "protection.neutron_assessed"},
+    ),
+    derived(
+        "exposure.role", "What the barrier was built for.", lambda *, role: role, {"role": "barrier.role"}
+    ),
+    derived(
+        "exposure.goal_msv_per_week",
+        "Weekly design goal of the place beyond.",
+        lambda *, goal_msv_per_week: goal_msv_per_week,
+        {"goal_msv_per_week": "barrier.design_goal_msv_per_week"},
+    ),
+)
