@@ -10,6 +10,7 @@ from readiness.outputs import gap_list
 from readiness.outputs.contract import to_json
 from readiness.outputs.documents import render_bodies
 from readiness.outputs.page import make_page
+from readiness.outputs.pictures import make_pictures
 from readiness.program.items import Program
 
 
@@ -41,7 +42,7 @@ def make_all(assessment: Assessment, program: Program, as_of: date, say: Callabl
         "gaps.xlsx": gap_list.to_xlsx(assessment),
     }
     say("drawing")
-    pictures: Mapping[str, str] = {}
+    pictures = make_pictures(assessment)
     say("writing documents")
     rendered = render_bodies(assessment, program.texts, pictures)
     files["report.html"] = make_page(assessment, pictures)

@@ -1,0 +1,65 @@
+"""Drawings: to scale, described in words, the same every time, and right about left and right."""
+
+import math
+import re
+from datetime import date
+from pathlib import Path
+from xml.etree import ElementTree
+
+import pytest
+
+from readiness.assessment.records import Assessment
+from readiness.outputs.making import assessed
+from readiness.outputs.pictures import _POSITIONS, make_pictures
+from readiness.program.reading import read_folder
+
+SAMPLE = Path(__file__).resolve().parents[2] / "sample_program"
+
+
+@pytest.fixture(scope="module")
+def sample() -> Assessment:
+    """Return the assessment of the sample."""
+    return assessed(read_folder(SAMPLE), date(2026, 12, 1))
+
+
+def test_drawings_of_the_sample(sample: Assessment) -> None:
+    """Plan, elevation and positions are drawn, each with a title and a description."""
+    drawn = make_pictures(sample)
+    assert {"room-plan", "room-elevation", "six-positions"} == set(drawn)
+    for svg in drawn.values():
+        root = ElementTree.fromstring(svg)
+        assert root.find("{http://www.w3.org/2000/svg}title").text  # type: ignore[union-attr]
+        assert root.find("{http://www.w3.org/2000/svg}desc").text  # type: ignore[union-attr]
+
+
+def test_plan_is_to_scale(sample: Assessment) -> None:
+    """Source and plane are 400 cm apart in the drawing's own centimetres; the plane lies at negative x on side 90."""
+    svg = make_pictures(sample)["room-plan"]
+    source, plane = map(float, re.search(r'<line x1="(-?[\d.]+)" y1="[\d.-]+" x2="(-?[\d.]+)" y2="[\d.-]+" stroke="#000" stroke-width="1.5"/>', svg.split("</defs>")[1]).groups())  # type: ignore[union-attr]
+    assert 400 == pytest.approx(source - plane)
+    assert plane < 0
+
+
+def test_same_drawings_every_time(sample: Assessment) -> None:
+    """The same assessment gives the same drawings."""
+    assert make_pictures(sample) == make_pictures(sample)
+
+
+@pytest.mark.parametrize(("name", "turn", "day"), _POSITIONS)
+def test_the_beam_meets_the_side_that_the_position_names(name: str, turn: int, day: int) -> None:
+    """
+    Seen from above with the beam coming from below, the surface that faces the beam is the named one.
+
+    Worked from directions alone: the nose points along (sin, -cos) of the turn, the right hand lies a
+    quarter turn clockwise of the nose; anterior or right if its direction points toward the beam.
+    """
+    angle = math.radians(180 + turn)  # compass bearing of the nose: 180 is toward the beam, clockwise
+    beam = math.radians(180)
+    anterior = math.cos(angle - beam)
+    right = math.cos(angle + math.pi / 2 - beam)
+    assert ("A" in name) == (anterior > 1e-9) or name == "PA"
+    assert (name.startswith("R")) == (right > 1e-9)
+    assert (name.startswith("L")) == (right < -1e-9)
+    assert day == (1 if name in {"AP", "RPO", "LPO"} else 2)
+    if name == "PA":
+        assert anterior == pytest.approx(-1)
