@@ -139,6 +139,19 @@ def explain(value: str, folder: Path, item: str | None, as_of: date | None) -> N
     _finish(commands.explain(value, folder, item=item, as_of=_day(as_of), width=_width()))
 
 
+@readiness.command(
+    epilog="Example: readiness approve my_program 3.2 --role 'chief physicist' --name 'A. Person'"
+)
+@click.argument("folder", type=_FOLDER)
+@click.argument("document")
+@click.option("--role", required=True, help="Role in which the person approves.")
+@click.option("--name", required=True, help="Name as the person writes it.")
+@_as_of
+def approve(folder: Path, document: str, role: str, name: str, as_of: date | None) -> None:
+    """Record an approval of DOCUMENT in FOLDER; a record, not a signature."""
+    _finish(commands.approve(folder, document, role=role, name=name, as_of=_day(as_of)))
+
+
 def _fail(message: str, status: int) -> int:
     with contextlib.suppress(OSError):
         click.echo(message, err=True)

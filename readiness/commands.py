@@ -157,6 +157,31 @@ def explain(name: str, folder: Path, *, item: str | None, as_of: date, width: in
     return Answer(explain_value(name, assessment, item, width), NOTHING_OPEN)
 
 
+def approve(folder: Path, number: str, *, role: str, name: str, as_of: date) -> Answer:
+    """Record that a person in a role approves the body of a document as it is on a day."""
+    from readiness.outputs.approval import approval_entry
+    from readiness.outputs.documents import render_bodies
+    from readiness.program.appending import append_entry
+    from readiness.program.reading import read_folder
+
+    assessment = _assessed_or_none(folder, as_of)
+    assert assessment is not None  # noqa: S101 - a folder was given
+    program = read_folder(folder)
+    bodies = render_bodies(assessment, program.texts, {})
+    earlier = [
+        (str(item.get("revision")), str(item.get("body_sha256")))
+        for item in program.of_kind("approval")
+        if item.get("document") == number
+    ]
+    entry = approval_entry(assessment, bodies, earlier, number, role=role, name=name, as_of=as_of)
+    append_entry(folder / "approvals.yaml", "approvals", entry)
+    text = (
+        f"Document {number} approved by {name}, {role}, on {as_of.isoformat()}; written to approvals.yaml.\n"
+        "This is a record of approval, not a signature. A change of the document's body voids it.\n"
+    )
+    return Answer(text, NOTHING_OPEN)
+
+
 def _assessed_or_none(folder: Path | None, as_of: date):  # type: ignore[no-untyped-def]
     from readiness.errors import ProgramProblems
     from readiness.outputs.making import assessed

@@ -133,7 +133,7 @@ def _plane_in_plan(lookup: Lookup, left: float) -> dict[str, Any] | None:
         "x": x, "y1": -half - 20, "y2": half + 20, "source": source, "mid": (source + x) / 2,
         "dim": half + 60, "stand": box,
         "fan": _points([(source, 0.0), (x, -half), (x, half)]),
-        "words": f"plane distance {_of(lookup, 'arrangement.study_distance_cm')}",
+        "words": f"plane distance {_of(lookup, 'arrangement.study_distance_cm')}, plan, not as built",
     }  # fmt: skip
 
 
@@ -185,7 +185,8 @@ def _field(got: Mapping[str, float], toward: int, x: float, sign: int) -> dict[s
     return {
         "fan": _points([(source_x, -source_z), *ends]), "x1": source_x, "y1": -source_z, "x2": x,
         "y2": -height(axis),
-        "text_x": source_x - toward * 14, "align": "start" if toward < 0 else "end", "words": "aimed at the head" if sign > 0 else "aimed at the feet",
+        "text_x": source_x - toward * 14, "align": "start" if toward < 0 else "end",
+        "words": "aimed at the head" if sign > 0 else "aimed at the feet",
     }  # fmt: skip
 
 
