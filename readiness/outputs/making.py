@@ -7,6 +7,7 @@ from datetime import date
 from readiness.assessment.assessment import assess
 from readiness.assessment.records import Assessment
 from readiness.outputs import gap_list
+from readiness.outputs.charts import make_charts
 from readiness.outputs.contract import to_json
 from readiness.outputs.documents import render_bodies
 from readiness.outputs.page import make_page
@@ -42,7 +43,7 @@ def make_all(assessment: Assessment, program: Program, as_of: date, say: Callabl
         "gaps.xlsx": gap_list.to_xlsx(assessment),
     }
     say("drawing")
-    pictures = make_pictures(assessment)
+    pictures = {**make_pictures(assessment), **make_charts(assessment)}
     say("writing documents")
     rendered = render_bodies(assessment, program.texts, pictures)
     files["report.html"] = make_page(assessment, pictures)

@@ -1,0 +1,200 @@
+"""Charts of profiles, of the choice of distance and tilt, and of the road; legible without colour."""
+
+import io
+import re
+from collections.abc import Callable
+from datetime import date
+from typing import Any
+
+from readiness.assessment.records import Assessment, Value
+from readiness.outputs.lookup import Lookup
+from readiness.outputs.words import with_unit
+from readiness.quantities import Table
+
+_SIZE_IN = (6.5, 3.6)
+
+
+def make_charts(assessment: Assessment) -> dict[str, str]:
+    """Return the charts by name, as SVG; one whose values are missing is left out."""
+    lookup = Lookup(assessment)
+    makers: dict[str, Callable[[Lookup], str | None]] = {
+        "profile-over-height": _profile_over_height,
+        "profile-across": _profile_across,
+        "distance-and-tilt": _distance_and_tilt,
+        "road": _road,
+    }
+    drawn = {name: maker(lookup) for name, maker in makers.items()}
+    return {name: svg for name, svg in drawn.items() if svg is not None}
+
+
+def _table(lookup: Lookup, name: str) -> Table | None:
+    got = lookup.get(name)
+    return got.value if isinstance(got, Value) and isinstance(got.value, Table) else None
+
+
+def _number(lookup: Lookup, name: str) -> float | None:
+    got = lookup.get(name)
+    return float(got.value) if isinstance(got, Value) and isinstance(got.value, (int, float)) else None
+
+
+def _figure() -> tuple[Any, Any]:
+    from matplotlib import rc_context
+    from matplotlib.figure import Figure
+
+    with rc_context({"font.family": "DejaVu Sans", "font.size": 9}):
+        figure = Figure(figsize=_SIZE_IN, layout="constrained")
+        return figure, figure.add_subplot()
+
+
+def _svg(figure: Any, name: str, title: str, words: str) -> str:
+    from matplotlib import rc_context
+
+    stream = io.StringIO()
+    with rc_context({"svg.fonttype": "none", "svg.hashsalt": name, "font.family": "DejaVu Sans"}):
+        figure.savefig(stream, format="svg", metadata={"Date": None, "Creator": None})
+    text = stream.getvalue()
+    text = text[text.index("<svg") :]
+    text = re.sub(r"<metadata>.*?</metadata>", "", text, flags=re.DOTALL)
+    text = re.sub(r'(id="|url\(#|href="#)', rf"\1{name}-", text)
+    head = f"<title>{title}</title><desc>{words}</desc>"
+    return re.sub(r"(<svg[^>]*>)", lambda found: found[1] + head, text, count=1)
+
+
+def _limits(axes: Any, half_cm: float, percent: float, centre: float) -> None:
+    for sign in (1, -1):
+        level = centre * (1 + sign * percent / 100)
+        axes.plot([-half_cm, half_cm], [level, level], color="black", linewidth=1, linestyle=(0, (6, 3)))
+
+
+def _profile_over_height(lookup: Lookup) -> str | None:
+    table = _table(lookup, "arrangement.profile_height")
+    if table is None:
+        return None
+    rows = [row for row in table.records() if row["predicted"] is not None]
+    figure, axes = _figure()
+    axes.plot([r["height_cm"] for r in rows], [r["predicted"] for r in rows], "k-", label="predicted")
+    band = [r for r in rows if r["low"] is not None and r["high"] is not None]
+    if band:
+        axes.fill_between(
+            [r["height_cm"] for r in band], [r["low"] for r in band], [r["high"] for r in band],
+            color="0.8", label="band of the prediction",
+        )  # fmt: skip
+    half, percent = (
+        _number(lookup, "criterion.uniformity_half_length_cm"),
+        _number(lookup, "criterion.vertical_uniformity_percent"),
+    )
+    if half and percent:
+        _limits(axes, half, percent, 1.0)
+    for height, dose in _measured_at_tilt(lookup):
+        axes.plot([height], [dose], "ko", markersize=4)
+    axes.set(xlabel="height above the isocentre [cm]", ylabel="relative dose", ylim=(0, None))
+    axes.legend(loc="lower center", frameon=False)
+    words = (
+        f"Dual field over height at {_said(lookup, 'arrangement.study_distance_cm')} and tilt "
+        f"{_said(lookup, 'arrangement.study_tilt_deg')}; dashed lines are the limits. "
+        "Curve and band are predicted."
+    )
+    return _svg(figure, "profile-over-height", "Dual field over the height of the patient", words)
+
+
+def _measured_at_tilt(lookup: Lookup) -> list[tuple[float, float]]:
+    """Return the measured points that made the uniformity of the plan measured, if it is."""
+    judged = lookup.get("arrangement.vertical_uniformity_percent")
+    if not isinstance(judged, Value) or judged.basis != "measured" or judged.where is None:
+        return []
+    tilt = _number(lookup, "arrangement.study_tilt_deg")
+    for value in lookup.assessment.values:
+        if (
+            value.name == "measurement.table"
+            and value.where is not None
+            and value.where.file == judged.where.file
+        ):
+            return [
+                (float(row["height_cm"]), float(row["relative_dose"]))
+                for row in value.value.records()
+                if row.get("height_cm") is not None
+                and row.get("relative_dose") is not None
+                and (row.get("tilt_deg") is None or tilt is None or abs(row["tilt_deg"] - tilt) < 0.2)
+            ]
+    return []
+
+
+def _said(lookup: Lookup, name: str) -> str:
+    got = lookup.get(name)
+    return f"{with_unit(name, got.value)} ({got.basis})" if isinstance(got, Value) else "an unknown value"
+
+
+def _profile_across(lookup: Lookup) -> str | None:
+    table = _table(lookup, "arrangement.profile_width")
+    if table is None:
+        return None
+    figure, axes = _figure()
+    axes.plot(table.column("across_cm"), table.column("relative_dose"), "k-", label="predicted")
+    half, percent = (
+        _number(lookup, "criterion.uniformity_half_width_cm"),
+        _number(lookup, "criterion.horizontal_uniformity_percent"),
+    )
+    if half and percent:
+        _limits(axes, half, percent, 1.0)
+    axes.set(xlabel="across the patient [cm]", ylabel="relative dose", ylim=(0, None))
+    axes.legend(loc="lower center", frameon=False)
+    words = (
+        "Dual field across the patient; dashed lines are the limits. Distance, not tilt, evens it. Predicted."
+    )
+    return _svg(figure, "profile-across", "Dual field across the patient", words)
+
+
+def _distance_and_tilt(lookup: Lookup) -> str | None:
+    table = _table(lookup, "arrangement.uniformity_map")
+    limit = _number(lookup, "criterion.vertical_uniformity_percent")
+    if table is None or limit is None:
+        return None
+    figure, axes = _figure()
+    rows = list(table.records())
+    vertical = [r for r in rows if _below(r["vertical_percent"], limit)]
+    both = [r for r in vertical if r["within_both"] is True]
+    axes.plot([r["distance_cm"] for r in vertical], [r["tilt_deg"] for r in vertical], linestyle="none",
+              marker=".", color="0.55", label="vertical limit kept")  # fmt: skip
+    if both:
+        axes.plot([r["distance_cm"] for r in both], [r["tilt_deg"] for r in both], "ks", markersize=4,
+                  label="both limits kept")  # fmt: skip
+    distance, tilt = (
+        _number(lookup, "arrangement.study_distance_cm"),
+        _number(lookup, "arrangement.study_tilt_deg"),
+    )
+    if distance and tilt:
+        axes.plot([distance], [tilt], "k*", markersize=14, markerfacecolor="white", label="plan")
+    reach = _number(lookup, "arrangement.farthest_plane_distance_cm")
+    if reach:
+        axes.axvline(reach, color="black", linewidth=1, linestyle=":", label="farthest plane as the room is")
+    axes.set(xlabel="plane distance [cm]", ylabel="tilt [°]")
+    axes.legend(loc="upper right", frameon=False)
+    words = "Distances and tilts at which the predicted dual field keeps its limits, and the plan."
+    return _svg(figure, "distance-and-tilt", "Plane distance and tilt", words)
+
+
+def _below(entry: object, limit: float) -> bool:
+    return isinstance(entry, (int, float)) and entry <= limit
+
+
+def _road(lookup: Lookup) -> str | None:
+    schedule = lookup.assessment.schedule
+    if schedule is None or not schedule.tasks:
+        return None
+    tasks = sorted(schedule.tasks, key=lambda task: (task.start, task.finish, task.id))
+    figure, axes = _figure()
+    figure.set_size_inches(6.5, 0.9 + 0.17 * len(tasks))
+    for line, task in enumerate(tasks):
+        days = (task.finish - task.start).days + 1
+        axes.barh(line, days, left=task.start.toordinal(), height=0.6, edgecolor="black",
+                  color="0.25" if task.critical else "white")  # fmt: skip
+    axes.set_yticks(range(len(tasks)), [task.title[:58] for task in tasks], fontsize=6)
+    axes.invert_yaxis()
+    ticks = [int(tick) for tick in axes.get_xticks()]
+    axes.set_xticks(ticks, [date.fromordinal(tick).isoformat() for tick in ticks], fontsize=6, rotation=30)
+    if schedule.target:
+        axes.axvline(schedule.target.toordinal(), color="black", linestyle="--", linewidth=1)
+    words = (
+        "Tasks from start to finish; dark bars lie on the critical path; the dashed line is the wanted date."
+    )
+    return _svg(figure, "road", "Road to the first patient", words)
