@@ -66,6 +66,11 @@ def _limits(axes: Any, half_cm: float, percent: float, centre: float) -> None:
         axes.plot([-half_cm, half_cm], [level, level], color="black", linewidth=1, linestyle=(0, (6, 3)))
 
 
+def _measured(axes: Any, table: Table | None, place: str) -> None:
+    if table is not None:
+        axes.plot(table.column(place), table.column("relative_dose"), "ko", markersize=4, label="measured")
+
+
 def _profile_over_height(lookup: Lookup) -> str | None:
     table = _table(lookup, "arrangement.profile_height")
     if table is None:
@@ -85,8 +90,7 @@ def _profile_over_height(lookup: Lookup) -> str | None:
     )
     if half and percent:
         _limits(axes, half, percent, 1.0)
-    for height, dose in _measured_at_tilt(lookup):
-        axes.plot([height], [dose], "ko", markersize=4)
+    _measured(axes, _table(lookup, "arrangement.measured_profile_height"), "height_cm")
     axes.set(xlabel="height above the isocentre [cm]", ylabel="relative dose", ylim=(0, None))
     axes.legend(loc="lower center", frameon=False)
     words = (
@@ -95,28 +99,6 @@ def _profile_over_height(lookup: Lookup) -> str | None:
         "Curve and band are predicted."
     )
     return _svg(figure, "profile-over-height", "Dual field over the height of the patient", words)
-
-
-def _measured_at_tilt(lookup: Lookup) -> list[tuple[float, float]]:
-    """Return the measured points that made the uniformity of the plan measured, if it is."""
-    judged = lookup.get("arrangement.vertical_uniformity_percent")
-    if not isinstance(judged, Value) or judged.basis != "measured" or judged.where is None:
-        return []
-    tilt = _number(lookup, "arrangement.study_tilt_deg")
-    for value in lookup.assessment.values:
-        if (
-            value.name == "measurement.table"
-            and value.where is not None
-            and value.where.file == judged.where.file
-        ):
-            return [
-                (float(row["height_cm"]), float(row["relative_dose"]))
-                for row in value.value.records()
-                if row.get("height_cm") is not None
-                and row.get("relative_dose") is not None
-                and (row.get("tilt_deg") is None or tilt is None or abs(row["tilt_deg"] - tilt) < 0.2)
-            ]
-    return []
 
 
 def _said(lookup: Lookup, name: str) -> str:
@@ -136,6 +118,7 @@ def _profile_across(lookup: Lookup) -> str | None:
     )
     if half and percent:
         _limits(axes, half, percent, 1.0)
+    _measured(axes, _table(lookup, "arrangement.measured_profile_width"), "across_cm")
     axes.set(xlabel="across the patient [cm]", ylabel="relative dose", ylim=(0, None))
     axes.legend(loc="lower center", frameon=False)
     words = (

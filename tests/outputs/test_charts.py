@@ -62,4 +62,20 @@ def test_a_prediction_has_no_measured_points(charts: dict[str, str]) -> None:
     """The pilot readings of the other sheet do not appear beside this plan's curve."""
     words = ElementTree.fromstring(charts["profile-over-height"]).find("{http://www.w3.org/2000/svg}desc").text  # type: ignore[union-attr]
     assert "predicted" in words
-    assert charts["profile-over-height"].count("<use ") < 40
+    assert ">measured<" not in charts["profile-over-height"]
+
+
+def test_measured_points_stand_beside_the_curve(sample: Assessment) -> None:
+    """Planned with the sheet that was measured, the pilot readings are drawn."""
+    program = read_folder(SAMPLE)
+    changed = []
+    for item in program.items:
+        fields = dict(item.fields)
+        if item.kind == "program":
+            chosen = fields["chosen_arrangement"]
+            row = tuple("sheet-10" if each == "sheet-06" else each for each in chosen.value.rows[0])  # type: ignore[union-attr]
+            fields["chosen_arrangement"] = replace(chosen, value=replace(chosen.value, rows=(row,)))  # type: ignore[type-var]
+        changed.append(replace(item, fields=fields))
+    drawn = make_charts(assessed(replace(program, items=tuple(changed)), date(2026, 12, 1)))
+    assert ">measured<" in drawn["profile-over-height"]
+    assert ">measured<" in drawn["profile-across"]

@@ -101,6 +101,34 @@ def sweep_along_height(
     )
 
 
+@lru_cache(maxsize=256)
+def sweep_across(
+    *,
+    kind: str,
+    table: Table,
+    half_width_cm: float,
+    limit_percent: float,
+    metric: str,
+    normalisation: str,
+    smoothing: str,
+) -> AngleSweep | None:
+    """Return a sweep of tilts against the horizontal limit; None for another kind of measurement."""
+    if kind != ANGLE_SWEEP:
+        return None
+    line = rows_on_line(table, "height_cm")
+    return evaluate_angle_sweep(
+        tilts_deg=numbers(line, "tilt_deg"),
+        positions_cm=numbers_or(line, "across_cm", 0.0),
+        readings=numbers(line, "relative_dose"),
+        fields=words(line, "field", "dual"),
+        half_length_cm=half_width_cm,
+        limit_percent=limit_percent,
+        metric=METRICS.get(metric, metric),
+        normalisation=normalisation,
+        smoothing=smoothing,
+    )
+
+
 def profile_at_tilt(*, sweep: AngleSweep, tilt_deg: float) -> JudgedProfile:
     """Return the evenness that a sweep found at the chosen tilt, never between two tilts."""
     rows = [
@@ -144,6 +172,17 @@ DEFINITIONS: tuple[Definition, ...] = (
             **_HEADER,
             "half_length_cm": "criterion.uniformity_half_length_cm",
             "limit_percent": "criterion.vertical_uniformity_percent",
+        },
+        internal=True,
+    ),
+    Definition(
+        "measurement.angle_sweep_across",
+        "Evenness across of each tilt of a sweep.",
+        by=sweep_across,
+        takes={
+            **_HEADER,
+            "half_width_cm": "criterion.uniformity_half_width_cm",
+            "limit_percent": "criterion.horizontal_uniformity_percent",
         },
         internal=True,
     ),

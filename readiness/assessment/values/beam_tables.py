@@ -127,6 +127,11 @@ DEFINITIONS: tuple[Definition, ...] = (
         Measured(ANGLE_SWEEP, takes={"sweep": "measurement.angle_sweep"}, part="tilts"),
     ),
     _measured(
+        "measured_sweep_across",
+        "Evenness across of each measured tilt against the horizontal limit.",
+        Measured(ANGLE_SWEEP, takes={"sweep": "measurement.angle_sweep_across"}, part="tilts"),
+    ),
+    _measured(
         "measured_depth_dose",
         "Points measured with depth on a cylinder from all dual fields.",
         Measured(COMPOSITE, by=points_with_depth, takes=_TABLE),
