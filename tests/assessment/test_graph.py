@@ -52,7 +52,9 @@ def test_absence_travels_as_root_causes() -> None:
     )
     assert isinstance(got, Gone)
     assert [cause.what for cause in got.causes] == ["room.isocentre_height_cm"]
-    assert got.causes[0].words == "State isocentre height (cm) of room a in rooms.yaml."
+    assert got.causes[0].words == (
+        "State isocentre height (cm) of room a in rooms.yaml: height of the isocentre above the floor."
+    )
 
 
 def test_numbers_keep_six_significant_digits() -> None:

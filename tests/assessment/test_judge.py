@@ -33,7 +33,9 @@ def test_what_is_missing_is_not_assessed() -> None:
     """A room without a ceiling height is not assessed, and the cause names field and file."""
     finding = judge_item(rule(), ROOM, graph(program(item("room", "a"))))
     assert finding.outcome == "not assessed"
-    assert finding.message == "State ceiling height (cm) of room a in rooms.yaml."
+    assert finding.message == (
+        "State ceiling height (cm) of room a in rooms.yaml: lowest height of the ceiling above the floor."
+    )
 
 
 def test_a_rule_that_does_not_apply() -> None:
