@@ -152,6 +152,16 @@ def approve(folder: Path, document: str, role: str, name: str, as_of: date | Non
     _finish(commands.approve(folder, document, role=role, name=name, as_of=_day(as_of)))
 
 
+@readiness.command(epilog="Example: readiness compare last_year/binder.pdf my_program")
+@click.argument("first", type=_FOLDER)
+@click.argument("second", type=_FOLDER)
+@_as_of
+@_json
+def compare(first: Path, second: Path, as_of: date | None, as_json: bool) -> None:
+    """Say what differs from FIRST to SECOND: folders, assessment.json files or binders."""
+    _finish(commands.compare(first, second, as_of=_day(as_of), as_json=as_json, width=_width()))
+
+
 def _fail(message: str, status: int) -> int:
     with contextlib.suppress(OSError):
         click.echo(message, err=True)

@@ -157,6 +157,31 @@ def explain(name: str, folder: Path, *, item: str | None, as_of: date, width: in
     return Answer(explain_value(name, assessment, item, width), NOTHING_OPEN)
 
 
+def compare(first: Path, second: Path, *, as_of: date, as_json: bool, width: int) -> Answer:
+    """Say what differs between two folders, assessments or binders."""
+    from readiness.assessment.difference import difference
+    from readiness.outputs.difference_view import difference_json, difference_text
+
+    found = difference(_any_assessment(first, as_of), _any_assessment(second, as_of))
+    text = difference_json(found) if as_json else difference_text(found, str(first), str(second), width)
+    return Answer(text, NOTHING_OPEN if found.is_none else OPEN)
+
+
+def _any_assessment(path: Path, as_of: date):  # type: ignore[no-untyped-def]
+    from readiness.outputs.binder_reading import assessment_in
+    from readiness.outputs.contract import from_json
+
+    if path.is_dir():
+        return _assessed_or_none(path, as_of)
+    if not path.exists():
+        raise UsageError(f"{path} does not exist; name a program folder, an assessment.json or a binder.pdf")
+    with path.open("rb") as stream:
+        is_pdf = stream.read(5) == b"%PDF-"
+    if is_pdf:
+        return assessment_in(path)
+    return from_json(path.read_text(encoding="utf-8", errors="replace"))
+
+
 def approve(folder: Path, number: str, *, role: str, name: str, as_of: date) -> Answer:
     """Record that a person in a role approves the body of a document as it is on a day."""
     from readiness.outputs.approval import approval_entry
