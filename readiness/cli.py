@@ -152,6 +152,13 @@ def approve(folder: Path, document: str, role: str, name: str, as_of: date | Non
     _finish(commands.approve(folder, document, role=role, name=name, as_of=_day(as_of)))
 
 
+@readiness.command(epilog="Example: readiness review out/binder.pdf")
+@click.argument("binder", type=_FOLDER)
+def review(binder: Path) -> None:
+    """Say whether BINDER, a PDF that this tool wrote, agrees with the inputs inside it."""
+    _finish(commands.review(binder, say=_progress))
+
+
 @readiness.command(epilog="Example: readiness compare last_year/binder.pdf my_program")
 @click.argument("first", type=_FOLDER)
 @click.argument("second", type=_FOLDER)

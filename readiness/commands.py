@@ -157,6 +157,49 @@ def explain(name: str, folder: Path, *, item: str | None, as_of: date, width: in
     return Answer(explain_value(name, assessment, item, width), NOTHING_OPEN)
 
 
+def review(path: Path, *, say: Say) -> Answer:
+    """Say whether a binder agrees with the inputs inside it."""
+    import tempfile
+
+    from readiness import __version__
+    from readiness.assessment.difference import difference
+    from readiness.errors import ProgramProblems
+    from readiness.outputs.binder_reading import open_binder
+    from readiness.outputs.binder_review import review_binder, review_text
+    from readiness.outputs.making import assessed, make_all
+    from readiness.program.files import from_mapping
+    from readiness.program.reading import known_yaml, read_program
+
+    if not path.is_file():
+        raise UsageError(f"{path} is not a file; review takes a binder.pdf")
+    say("opening the binder")
+    found = open_binder(path)
+    stored = found.assessment
+    evidence = {name: (sha, size) for name, sha, size in stored.inputs if name.startswith("evidence/")}
+    try:
+        contents, problems = from_mapping(found.inputs, evidence, known_yaml())
+        program = read_program(contents, problems)
+    except ProgramProblems as wrong:
+        lines = [
+            f"{path}: the inputs inside cannot be read any more:",
+            *(f"  - {each}" for each in wrong.problems),
+        ]
+        return Answer("\n".join(lines) + "\n", OPEN)
+    say("recomputing from the inputs inside")
+    recomputed = assessed(program, stored.as_of)
+    made = make_all(recomputed, program, stored.as_of, say)
+    if made.not_written:
+        raise UsageError(f"{made.not_written[0]}; without it the pages cannot be compared")
+    with tempfile.TemporaryDirectory() as folder:
+        again_path = Path(folder) / "binder.pdf"
+        again_path.write_bytes(made.files["binder.pdf"])
+        again = open_binder(again_path)
+    verdict = review_binder(
+        found, again, difference(stored, recomputed), (stored.versions.product, __version__)
+    )
+    return Answer(review_text(verdict, str(path), __version__), NOTHING_OPEN if verdict.agrees else OPEN)
+
+
 def compare(first: Path, second: Path, *, as_of: date, as_json: bool, width: int) -> Answer:
     """Say what differs between two folders, assessments or binders."""
     from readiness.assessment.difference import difference

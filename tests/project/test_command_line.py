@@ -42,7 +42,7 @@ def test_statuses(capsys: pytest.CaptureFixture[str], tmp_path: Path) -> None:
     assert run(["--help"]) == 0
 
 
-@pytest.mark.parametrize("command", ["new", "check", "assess", "binder", "rules", "explain"])
+@pytest.mark.parametrize("command", ["new", "check", "assess", "binder", "rules", "explain", "approve", "review", "compare"])
 def test_help_shows_an_example(command: str, capsys: pytest.CaptureFixture[str]) -> None:
     """Help of each command ends with something to type."""
     assert run([command, "--help"]) == 0
