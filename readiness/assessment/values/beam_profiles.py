@@ -88,17 +88,8 @@ def sweep_along_height(
     if kind != ANGLE_SWEEP:
         return None
     line = rows_on_line(table, "across_cm")
-    return evaluate_angle_sweep(
-        tilts_deg=numbers(line, "tilt_deg"),
-        positions_cm=numbers(line, "height_cm"),
-        readings=numbers(line, "relative_dose"),
-        fields=words(line, "field", "dual"),
-        half_length_cm=half_length_cm,
-        limit_percent=limit_percent,
-        metric=METRICS.get(metric, metric),
-        normalisation=normalisation,
-        smoothing=smoothing,
-    )
+    places = numbers(line, "height_cm")
+    return _sweep(line, places, half_length_cm, limit_percent, metric, normalisation, smoothing)
 
 
 @lru_cache(maxsize=256)
@@ -116,12 +107,20 @@ def sweep_across(
     if kind != ANGLE_SWEEP:
         return None
     line = rows_on_line(table, "height_cm")
+    places = numbers_or(line, "across_cm", 0.0)
+    return _sweep(line, places, half_width_cm, limit_percent, metric, normalisation, smoothing)
+
+
+def _sweep(
+    line: Table, places_cm: list[float], half_cm: float, limit_percent: float, metric: str,
+    normalisation: str, smoothing: str,
+) -> AngleSweep:  # fmt: skip
     return evaluate_angle_sweep(
         tilts_deg=numbers(line, "tilt_deg"),
-        positions_cm=numbers_or(line, "across_cm", 0.0),
+        positions_cm=places_cm,
         readings=numbers(line, "relative_dose"),
         fields=words(line, "field", "dual"),
-        half_length_cm=half_width_cm,
+        half_length_cm=half_cm,
         limit_percent=limit_percent,
         metric=METRICS.get(metric, metric),
         normalisation=normalisation,
