@@ -1,16 +1,17 @@
 "use strict";
-// Filters and sorts the table of gaps. Without this script the table is simply whole.
+// Filters and sorts the table of gaps; opens the part a link points into. Without this script all is there.
 (function () {
   const table = document.getElementById("gap-table");
   const form = document.getElementById("gap-filter");
   if (!table || !form) { return; }
   const body = table.tBodies[0];
   const rows = Array.from(body.rows);
+  const heads = Array.from(table.tHead.rows[0].cells);
   const said = document.getElementById("gap-count");
-  form.hidden = false;
+  let order = "";
   function count() {
     const shown = rows.filter(function (row) { return !row.hidden; }).length;
-    said.textContent = shown + " of " + rows.length + " gaps shown";
+    said.textContent = shown + " of " + rows.length + " gaps shown" + order;
   }
   function filter() {
     rows.forEach(function (row) {
@@ -20,24 +21,63 @@
     });
     count();
   }
-  form.addEventListener("change", filter);
-  form.addEventListener("reset", function () { window.setTimeout(filter, 0); });
-  Array.from(table.tHead.rows[0].cells).forEach(function (head, index) {
+  function key(row, index) {
+    const cell = row.cells[index];
+    return cell.dataset.sort || cell.textContent;
+  }
+  function sort(head, index, words) {
+    const up = head.getAttribute("aria-sort") !== "ascending";
+    heads.forEach(function (other) { other.removeAttribute("aria-sort"); });
+    head.setAttribute("aria-sort", up ? "ascending" : "descending");
+    rows.slice().sort(function (a, b) {
+      const found = key(a, index).localeCompare(key(b, index), "en");
+      return up ? found : -found;
+    }).forEach(function (row) { body.appendChild(row); });
+    order = ", sorted by " + words.toLowerCase() + (up ? "" : ", backwards");
+    count();
+  }
+  heads.forEach(function (head, index) {
     const words = head.textContent;
     const button = document.createElement("button");
     button.type = "button";
     button.textContent = words;
     head.textContent = "";
     head.appendChild(button);
-    button.addEventListener("click", function () {
-      const up = head.getAttribute("aria-sort") !== "ascending";
-      Array.from(table.tHead.rows[0].cells).forEach(function (other) { other.removeAttribute("aria-sort"); });
-      head.setAttribute("aria-sort", up ? "ascending" : "descending");
-      rows.slice().sort(function (a, b) {
-        const order = a.cells[index].textContent.localeCompare(b.cells[index].textContent, "en");
-        return up ? order : -order;
-      }).forEach(function (row) { body.appendChild(row); });
+    button.addEventListener("click", function () { sort(head, index, words); });
+  });
+  form.addEventListener("change", filter);
+  form.addEventListener("submit", function (event) { event.preventDefault(); });
+  form.addEventListener("reset", function () {
+    heads.forEach(function (head) { head.removeAttribute("aria-sort"); });
+    rows.forEach(function (row) { row.hidden = false; body.appendChild(row); });
+    order = "";
+    count();
+  });
+  form.reset();
+  form.hidden = false;
+}());
+(function () {
+  function open() {
+    const id = decodeURIComponent(window.location.hash.slice(1));
+    const target = id && document.getElementById(id);
+    const part = target && target.closest("details");
+    if (part && !part.open) {
+      part.open = true;
+      target.scrollIntoView();
+    }
+  }
+  window.addEventListener("hashchange", open);
+  window.addEventListener("beforeprint", function () {
+    document.querySelectorAll("details:not([open])").forEach(function (part) {
+      part.dataset.closed = "";
+      part.open = true;
     });
   });
-  count();
+  window.addEventListener("afterprint", function () {
+    document.querySelectorAll("details[data-closed]").forEach(function (part) {
+      delete part.dataset.closed;
+      part.open = false;
+    });
+  });
+  open();
 }());
