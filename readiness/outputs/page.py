@@ -9,7 +9,7 @@ from markupsafe import Markup
 
 from readiness.assessment.records import Assessment
 from readiness.outputs import page_rows
-from readiness.outputs.assessment_rows import KNOWN_WORDS, short_item, sources
+from readiness.outputs.assessment_rows import KNOWN_WORDS, short_item
 from readiness.outputs.contract import CAUTION, INVENTED
 from readiness.outputs.words import VERDICT_SENTENCES, blocking, chosen_row, value_title, with_unit
 from readiness.resources import folder, template_file
@@ -48,7 +48,7 @@ def make_page(assessment: Assessment, pictures: Mapping[str, str]) -> bytes:
         excepted=[finding for finding in assessment.findings if finding.outcome == "excepted"],
         topics=page_rows.requirements(assessment),
         how_known=KNOWN_WORDS,
-        sources=sources(assessment, ()),
+        sources=page_rows.cited(assessment),
     )  # fmt: skip
     return html.encode("utf-8")
 
@@ -61,6 +61,7 @@ def _environment(assessment: Assessment) -> Environment:
     environment.filters.update(
         title_of=value_title, with_unit=with_unit, column_title=_column_title, cell=_cell,
         outcomes=page_rows.outcomes, item_words=lambda item: short_item(item, assessment),
+        short=lambda text: page_rows.shortened(text, assessment),
     )  # fmt: skip
     return environment
 

@@ -17,7 +17,7 @@ from readiness.assessment.records import (
     Schedule,
     Value,
 )
-from readiness.outputs.assessment_rows import MatrixRow, matrix, short_item
+from readiness.outputs.assessment_rows import MatrixRow, SourceRow, matrix, short_item, sources
 from readiness.outputs.words import chosen_row, finding_words, known_words
 from readiness.quantities import Table
 
@@ -26,7 +26,7 @@ _BASIS_WORDS = {
     "measured": "measured",
     "stated": "stated by the department, not measured",
     "predicted": "predicted, not measured",
-    "assumed": "assumed: at least one default that nobody has stated stands behind it; not measured",
+    "assumed": "assumed, not measured: at least one default that nobody has stated stands behind them",
 }
 
 
@@ -125,6 +125,14 @@ def ruled_out(assessment: Assessment) -> tuple[Group, ...]:
     return tuple(Group(room, tuple(titles), why) for (room, why), titles in groups.items())
 
 
+def shortened(text: str, assessment: Assessment) -> str:
+    """Return a sentence in which the arrangement that the page is for is not spelled out each time."""
+    chosen = assessment.verdict.arrangement
+    if not chosen:
+        return text
+    return text.replace(f" from {chosen}", "").replace(f"arrangement {chosen}", "this arrangement")
+
+
 def _deciding(assessment: Assessment, findings: Iterable[Finding]) -> tuple[tuple[str, str], ...]:
     rules = {rule.id: rule for rule in assessment.rules}
     return tuple(
@@ -140,7 +148,7 @@ def gap_lines(assessment: Assessment) -> tuple[GapLine, ...]:
     """Return every gap in the order of the assessment."""
     return tuple(
         GapLine(
-            what=gap.what, item=short_item(gap.item, assessment), owner=gap.owner,
+            what=shortened(gap.what, assessment), item=short_item(gap.item, assessment), owner=gap.owner,
             earliest=gap.earliest.isoformat() if gap.earliest else "", strength=gap.strength,
             strength_order=STRENGTHS.index(gap.strength), phase=gap.phase,
             phase_order=PHASES.index(gap.phase),
@@ -227,6 +235,25 @@ def outcomes(lines: list[MatrixRow]) -> str:
     order = ("not met", "not assessed", "excepted", "met", "not applicable")
     plain = [line.outcome.partition(" (")[0] for line in lines]
     return ", ".join(f"{plain.count(word)} {word}" for word in order if word in plain)
+
+
+def cited(assessment: Assessment) -> tuple[SourceRow, ...]:
+    """Return the publications, then what the department cites itself under its local rules."""
+    rows = sources(assessment, ())
+    listed = {row.key for row in rows}
+    local: dict[str, dict[str, list[str]]] = {}
+    for rule in assessment.rules:
+        for source in rule.sources:
+            if source.key not in listed:
+                local.setdefault(source.key, {}).setdefault(source.known, []).append(rule.id)
+    return rows + tuple(
+        SourceRow(key, "as cited by the department", "", ", ".join(found), _flat(found.values()), ())
+        for key, found in sorted(local.items())
+    )
+
+
+def _flat(groups: Iterable[list[str]]) -> tuple[str, ...]:
+    return tuple(dict.fromkeys(each for group in groups for each in group))
 
 
 def drawn(pictures: Mapping[str, str]) -> tuple[Picture, ...]:
