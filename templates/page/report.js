@@ -41,6 +41,7 @@
     const button = document.createElement("button");
     button.type = "button";
     button.textContent = words;
+    head.dataset.words = words; // printed in place of the button, which is not repeated on each sheet
     head.textContent = "";
     head.appendChild(button);
     button.addEventListener("click", function () { sort(head, index, words); });

@@ -392,12 +392,15 @@ def test_print_shows_everything(opened: Any, tmp_path: Path) -> None:
     """On paper the closed parts are open and the filters are gone."""
     opened.emulate_media(media="print")
     assert opened.locator("#gap-filter").is_hidden()
+    opened.set_viewport_size({"width": 703, "height": 1000})  # A4 between the margins
+    assert opened.evaluate("document.documentElement.scrollWidth") <= 703
     printed = tmp_path / "report.pdf"
     opened.pdf(path=str(printed), format="A4")
     with printed.open("rb") as stream:
         words = " ".join(" ".join(page.extract_text() for page in PdfReader(stream).pages).split())
     assert "Door of vault A" in words
     assert "degrader-low-z" in words
+    assert words.count("What is to be done") > 5, "the headings of the gaps are repeated on each sheet"
     opened.emulate_media(media="screen")
     assert opened.locator("details[open]").count() == 0
 
