@@ -8,9 +8,11 @@ from readiness.assessment.document_heads import PARTS
 from readiness.assessment.records import Assessment
 from readiness.outputs import press
 from readiness.outputs.assessment_part import Entry, Sheet, assessment_sheets, contents_sheet, cover_sheet
+from readiness.outputs.binder_manifest import MANIFEST, manifest_bytes
 from readiness.outputs.documents import RenderedDocument
 from readiness.outputs.fonts import missing_characters
 from readiness.outputs.frame import anchor, article, page, resolved, state_words, style
+from readiness.outputs.page_words import Drawn
 
 BINDER = "binder.pdf"
 _FOLDER = "documents"
@@ -69,7 +71,13 @@ def _made(
     pages = [cover, contents, *front, *layouts.values()]
     title = f"Total skin electron program, {assessment.program}"
     described = {name: (content, "Made from this") for name, content in attachments.items()}
-    files[BINDER] = press.write(pages, title, assessment.program, as_of, described)
+    parts = [f"{layout.title}, page {number + 1}" for layout in pages for number in range(layout.pages)]
+
+    def manifest(drawn: Sequence[tuple[Drawn, int]]) -> bytes:
+        marked = [(part, page, fields) for part, (page, fields) in zip(parts, drawn, strict=True)]
+        return manifest_bytes(assessment, attachments, marked, press.made_by())
+
+    files[BINDER] = press.write(pages, title, assessment.program, as_of, described, (MANIFEST, manifest))
     return files
 
 

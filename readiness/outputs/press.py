@@ -7,9 +7,10 @@ which keeps tags, outline, form fields and links from one document to another.
 
 import copy
 import gc
+import hashlib
 import logging
 import re
-from collections.abc import Iterable, Iterator, Mapping, Sequence
+from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
 from contextlib import contextmanager
 from dataclasses import dataclass
 from datetime import date, datetime, timezone
@@ -17,9 +18,12 @@ from functools import cache
 from typing import Any
 
 from readiness.outputs import fonts
+from readiness.outputs.page_words import Drawn
+from readiness.outputs.printed_pages import printed_pages
 
 PACKAGES = "libpango-1.0-0 libpangoft2-1.0-0 libharfbuzz-subset0"
 _LOGGER = "weasyprint"
+Seal = tuple[str, Callable[[Sequence[tuple[Drawn, int]]], bytes]]  # attachment, its content from all pages
 # A space before inline markup is given its own box: WeasyPrint 70 breaks a line after its first word when
 # only such a space does not fit.
 _SPACE_BEFORE_MARKUP = re.compile(r"(?<=[^\s>]) (?=<(?:a|b|em|i|span|strong)\b)")
@@ -65,6 +69,15 @@ def _weasyprint() -> Any:
     return weasyprint
 
 
+def made_by() -> str:
+    """Return what lays out and writes, with versions: with others, lines may break elsewhere."""
+    from weasyprint.text.ffi import pango
+
+    number = int(pango.pango_version())
+    shown = f"{number // 10000}.{number // 100 % 100}.{number % 100}"
+    return f"WeasyPrint {_weasyprint().__version__}, Pango {shown}"
+
+
 def ready() -> None:
     """Raise PressMissing if PDFs cannot be written here."""
     _weasyprint()
@@ -105,6 +118,7 @@ def write(
     author: str,
     day: date,
     attachments: Mapping[str, tuple[bytes, str]] | None = None,
+    seal: Seal | None = None,
 ) -> bytes:
     """
     Return one PDF of all pages: tagged, with outline, fields and attachments, the same bytes every time.
@@ -115,6 +129,7 @@ def write(
         author: Author of the PDF.
         day: The date in the file and of its attachments.
         attachments: Name -> content and description.
+        seal: Name of one more attachment, and what makes its content from the finished pages.
     """
     press = _weasyprint()
     first = layouts[0].document
@@ -124,9 +139,16 @@ def write(
         joined.metadata.title = title
         joined.metadata.authors = [author] if author else []
         joined.metadata.created = joined.metadata.modified = day.isoformat()
-        files = [_attachment(press, name, *each, day) for name, each in sorted((attachments or {}).items())]
+        given = dict(attachments or {}) | ({seal[0]: (b"", "What was written, by hash")} if seal else {})
+        files = [_attachment(press, name, *each, day) for name, each in sorted(given.items())]
+
+        def finish(document: Any, pdf: Any) -> None:
+            _finish(document, pdf)
+            if seal is not None:
+                _put_in(pdf, seal[0], seal[1](printed_pages(pdf)))
+
         written: bytes = joined.write_pdf(
-            pdf_variant="pdf/ua-1", pdf_forms=True, attachments=files, finisher=_finish
+            pdf_variant="pdf/ua-1", pdf_forms=True, attachments=files, finisher=finish
         )
     return written
 
@@ -175,6 +197,16 @@ def _as_sources(pdf: Any) -> None:
         each["AFRelationship"] = "/Source"
     if files:
         pdf.catalog["AF"] = pydyf.Array([each.reference for each in files])
+
+
+def _put_in(pdf: Any, name: str, content: bytes) -> None:
+    """Fill an attachment that was put in empty."""
+    files = (each for each in pdf.objects if isinstance(each, dict) and each.get("Type") == "/Filespec")
+    entry = next(each for each in files if each["UF"].string == name)
+    stream = pdf.objects[int(entry["EF"]["F"].split()[0])]
+    stream.stream = [content]
+    checksum = hashlib.md5(content, usedforsecurity=False).hexdigest()
+    stream.extra["Params"] |= {"Size": len(content), "CheckSum": f"<{checksum}>"}
 
 
 @contextmanager
