@@ -47,6 +47,12 @@ def _json(command: Callable[..., None]) -> Callable[..., None]:
     return click.option("--json", "as_json", is_flag=True, help="Answer as JSON, for programs.")(command)
 
 
+def _page(command: Callable[..., None]) -> Callable[..., None]:
+    return click.option("--page", type=_FOLDER, default=None, help="Write a page (HTML) to this new file too.")(
+        command
+    )
+
+
 def _day(as_of: date | None) -> date:
     return as_of or date.today()
 
@@ -163,10 +169,12 @@ def review(binder: Path) -> None:
 @click.argument("first", type=_FOLDER)
 @click.argument("second", type=_FOLDER)
 @_as_of
+@_page
 @_json
-def compare(first: Path, second: Path, as_of: date | None, as_json: bool) -> None:
+def compare(first: Path, second: Path, as_of: date | None, page: Path | None, as_json: bool) -> None:
     """Say what differs from FIRST to SECOND: folders, assessment.json files or binders."""
-    _finish(commands.compare(first, second, as_of=_day(as_of), as_json=as_json, width=_width()))
+    day = _day(as_of)
+    _finish(commands.compare(first, second, as_of=day, as_json=as_json, width=_width(), page=page))
 
 
 def _fail(message: str, status: int) -> int:

@@ -200,14 +200,27 @@ def review(path: Path, *, say: Say) -> Answer:
     return Answer(review_text(verdict, str(path), __version__), NOTHING_OPEN if verdict.agrees else OPEN)
 
 
-def compare(first: Path, second: Path, *, as_of: date, as_json: bool, width: int) -> Answer:
+def compare(
+    first: Path, second: Path, *, as_of: date, as_json: bool, width: int, page: Path | None = None
+) -> Answer:
     """Say what differs between two folders, assessments or binders."""
     from readiness.assessment.difference import difference
-    from readiness.outputs.difference_view import difference_json, difference_text
+    from readiness.outputs.difference_view import difference_json, difference_page, difference_text
 
     found = difference(_any_assessment(first, as_of), _any_assessment(second, as_of))
-    text = difference_json(found) if as_json else difference_text(found, str(first), str(second), width)
-    return Answer(text, NOTHING_OPEN if found.is_none else OPEN)
+    names = str(first), str(second)
+    text = difference_json(found) if as_json else difference_text(found, *names, width)
+    notes = _page_written(page, lambda: difference_page(found, *names))
+    return Answer(text, NOTHING_OPEN if found.is_none else OPEN, notes)
+
+
+def _page_written(path: Path | None, make: Callable[[], bytes]) -> tuple[str, ...]:
+    from readiness.outputs.folder import write_one
+
+    if path is None:
+        return ()
+    write_one(path, make())
+    return (f"written to {path}",)
 
 
 def _any_assessment(path: Path, as_of: date):  # type: ignore[no-untyped-def]

@@ -1,57 +1,140 @@
-"""The difference of two assessments in words and as JSON."""
+"""The difference of two assessments in words, as JSON and as a page."""
 
 import json
 import textwrap
+from collections.abc import Iterable
+from dataclasses import dataclass
 
-from readiness.assessment.difference import ChangedValue, Difference
+from readiness.assessment.difference import ChangedValue, Difference, TurnedFinding, TurnedGap
 from readiness.outputs.contract import CAUTION, plain
-from readiness.outputs.words import with_unit
+from readiness.outputs.holes import plain as escaped
+from readiness.outputs.plain_page import section, whole_page
+from readiness.outputs.words import item_words, with_unit
 from readiness.quantities import Table
+from readiness.units import unit_of, words_of
+
+
+@dataclass(frozen=True)
+class Group:
+    """One kind of difference: heading and one line for each."""
+
+    heading: str
+    lines: tuple[str, ...]
+
+
+def groups(found: Difference) -> tuple[Group, ...]:
+    """Return what differs in the order in which people ask for it, without empty groups."""
+    all_groups = (
+        Group("Verdict", tuple(_pair(found))),
+        Group("Made by another version (differences may come from it)", found.versions),
+        Group("Findings that turned", tuple(map(finding_line, found.findings))),
+        Group("Gaps opened", tuple(map(_gap, found.gaps_opened))),
+        Group("Gaps closed", tuple(map(_gap, found.gaps_closed))),
+        Group("Documents", tuple(f"{each.number} {each.title}: {each.what}" for each in found.documents)),
+        Group("Values", tuple(map(value_line, found.values))),
+        Group("Input files that differ", found.inputs),
+        Group("Details that differ though no result does", found.elsewhere),
+    )
+    return tuple(group for group in all_groups if group.lines)
+
+
+def _pair(found: Difference) -> Iterable[str]:
+    said = (("", found.verdict), ("arrangement ", found.arrangement), ("first patient ", found.first_patient))
+    for what, (before, after) in said:
+        if before != after:
+            yield f"{what}{before or 'none'}, now {after or 'none'}"
+
+
+def finding_line(found: TurnedFinding) -> str:
+    """Return a turned finding on one line."""
+    strength = f" ({found.strength})" if found.strength else ""
+    return (
+        f"{found.rule}{strength}, {item_words(found.item)}: {found.before or 'not there'}, "
+        f"now {found.after or 'not there'}"
+    )
+
+
+def _gap(gap: TurnedGap) -> str:
+    return f"{gap.what} [{gap.strength}; {gap.owner}]"
+
+
+def value_line(each: ChangedValue) -> str:
+    """Return a changed value on one line, with the size of the change."""
+    head = f"{each.name} of {item_words(each.item)}"
+    if isinstance(each.before, Table) and isinstance(each.after, Table):
+        return f"{head}: {_table_words(each)}"
+    before, after = (
+        _side(each.name, each.before, each.basis_before),
+        _side(each.name, each.after, each.basis_after),
+    )
+    by = f", by {with_unit(each.name, each.change)}" if each.change else ""
+    return f"{head}: {before}, now {after}{by}"
+
+
+def _side(name: str, value: object, basis: str) -> str:
+    if value is None:
+        return "unknown"
+    if isinstance(value, Table):
+        return f"a table of {len(value.rows)} rows ({basis})"
+    return f"{with_unit(name, value)} ({basis})"
+
+
+def _table_words(each: ChangedValue) -> str:
+    if each.columns:
+        said = []
+        for column in each.columns:
+            size = ""
+            if column.largest is not None:
+                size = f" by up to {with_unit(column.column, column.largest)}"
+            unit = unit_of(column.column)
+            name = words_of(column.column) + (f" ({unit})" if unit and not size else "")
+            said.append(f"{name} in {column.rows} row{'s' if column.rows != 1 else ''}{size}")
+        return "its table differs: " + "; ".join(said)
+    if each.before == each.after:
+        return f"its table was {each.basis_before}, is {each.basis_after} now"
+    return f"its table had {len(each.before.rows)} rows, has {len(each.after.rows)} now"
 
 
 def difference_text(found: Difference, first: str, second: str, width: int) -> str:
     """Return what differs, for the terminal."""
     if found.is_none:
-        files = f" {len(found.inputs)} input files differ all the same." if found.inputs else ""
-        return f"{first} and {second} say the same.{files}\n"
-    lines = [f"From {first} to {second}"]
-    if found.verdict[0] != found.verdict[1]:
-        lines += ["", f"VERDICT: {found.verdict[0]}, now {found.verdict[1]}"]
-    lines += _part("MADE BY ANOTHER VERSION (differences may come from it)", list(found.versions), width)
-    lines += _part(
-        "FINDINGS THAT TURNED",
-        [
-            f"{f.rule}, {f.item}: {f.before or 'not there'}, now {f.after or 'not there'}"
-            for f in found.findings
-        ],
-        width,
-    )
-    lines += _part("GAPS OPENED", list(found.gaps_opened), width)
-    lines += _part("GAPS CLOSED", list(found.gaps_closed), width)
-    lines += _part("DOCUMENTS", [f"{number}: {words}" for number, words in found.documents], width)
-    lines += _part("VALUES", [_value(each) for each in found.values], width)
-    lines += _part("INPUT FILES THAT DIFFER", list(found.inputs), width)
+        return textwrap.fill(f"{first} and {second} say the same.{_all_the_same(found)}", width) + "\n"
+    lines = [textwrap.fill(f"From {first} to {second}", width)]
+    for group in groups(found):
+        lines += ["", f"{group.heading.upper()} ({len(group.lines)})"]
+        lines += [
+            textwrap.fill(each, width, initial_indent="  - ", subsequent_indent="    ")
+            for each in group.lines
+        ]
     return "\n".join([*lines, "", textwrap.fill(CAUTION, width)]) + "\n"
 
 
-def _part(heading: str, entries: list[str], width: int) -> list[str]:
-    if not entries:
-        return []
-    told = [textwrap.fill(each, width, initial_indent="  - ", subsequent_indent="    ") for each in entries]
-    return ["", f"{heading} ({len(entries)})", *told]
-
-
-def _value(each: ChangedValue) -> str:
-    if isinstance(each.before, Table) or isinstance(each.after, Table):
-        return f"{each.name} of {each.item}: its table changed"
-    before = (
-        "unknown" if each.before is None else f"{with_unit(each.name, each.before)} ({each.basis_before})"
-    )
-    after = "unknown" if each.after is None else f"{with_unit(each.name, each.after)} ({each.basis_after})"
-    by = f", by {with_unit(each.name, each.change)}" if each.change else ""
-    return f"{each.name} of {each.item}: {before}, now {after}{by}"
+def _all_the_same(found: Difference) -> str:
+    said = ""
+    if found.inputs:
+        said += f" Input files that differ all the same: {', '.join(found.inputs)}."
+    if found.elsewhere:
+        said += f" Details differ, such as the lines where something stands: {', '.join(found.elsewhere)}."
+    return said
 
 
 def difference_json(found: Difference) -> str:
     """Return what differs, for programs."""
-    return json.dumps({"same": found.is_none, **plain(found)}, ensure_ascii=False, indent=1) + "\n"
+    data = {"caution": CAUTION, "same": found.is_none, **plain(found)}
+    return json.dumps(data, ensure_ascii=False, indent=1) + "\n"
+
+
+def difference_section(found: Difference) -> str:
+    """Return what differs as a section of a page."""
+    parts = []
+    for group in groups(found):
+        entries = "".join(f"<li>{escaped(line)}</li>" for line in group.lines)
+        parts.append(f"<h3>{escaped(group.heading)} ({len(group.lines)})</h3><ul>{entries}</ul>")
+    body = "".join(parts) or f"<p>They say the same.{escaped(_all_the_same(found))}</p>"
+    return section("difference", "What differs", body)
+
+
+def difference_page(found: Difference, first: str, second: str) -> bytes:
+    """Return a page of its own."""
+    lead = f"<p>From <b>{escaped(first)}</b> to <b>{escaped(second)}</b>.</p>"
+    return whole_page("What differs between two assessments", lead + difference_section(found))

@@ -37,6 +37,25 @@ def write_outputs(target: Path, files: Mapping[str, bytes]) -> None:
         shutil.rmtree(temporary, ignore_errors=True)
 
 
+def write_one(target: Path, content: bytes) -> None:
+    """Write one new file, whole or not at all; raise UsageError if something stands there already."""
+    if target.exists() or target.is_symlink():
+        raise UsageError(f"{target} exists; name a file that does not, or delete it first")
+    if not target.parent.is_dir():
+        raise UsageError(f"{target.parent} is not a folder; make it first")
+    handle, name = tempfile.mkstemp(prefix=f".{target.name}.", dir=target.parent)
+    temporary = Path(name)
+    try:
+        with os.fdopen(handle, "wb") as stream:
+            stream.write(content)
+            stream.flush()
+            os.fsync(stream.fileno())
+        temporary.chmod(0o644)
+        temporary.replace(target)
+    finally:
+        temporary.unlink(missing_ok=True)
+
+
 def manifest(files: Mapping[str, bytes]) -> bytes:
     """Return the list of files with their hashes, by which we know our own folder again."""
     listed = {name: hashlib.sha256(content).hexdigest() for name, content in sorted(files.items())}

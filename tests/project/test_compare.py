@@ -47,14 +47,14 @@ def test_one_changed_number_shows_what_it_moves(
     assert (1, 2, 1.0) == (value["before"], value["after"], value["change"])
     turned = {each["rule"]: (each["before"], each["after"]) for each in found["findings"]}
     assert turned["two-camera-views"] == ("not met", "met")
-    assert any("two-camera-views" in gap for gap in found["gaps_closed"])
+    assert any("two-camera-views" in gap["id"] for gap in found["gaps_closed"])
     assert found["inputs"] == ["rooms.yaml"]
 
 
 def test_words_for_people(stored: Path, changed: Path, capsys: pytest.CaptureFixture[str]) -> None:
     """The terminal names the turn in words."""
     assert run(["compare", str(stored), str(changed), *DAY]) == 1
-    assert "two-camera-views, room vault-a: not met, now met" in capsys.readouterr().out
+    assert "two-camera-views (must), room vault-a: not met, now met" in capsys.readouterr().out
 
 
 @pytest.mark.parametrize(
