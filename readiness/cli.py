@@ -48,9 +48,7 @@ def _json(command: Callable[..., None]) -> Callable[..., None]:
 
 
 def _page(command: Callable[..., None]) -> Callable[..., None]:
-    return click.option("--page", type=_FOLDER, default=None, help="Write a page (HTML) to this new file too.")(
-        command
-    )
+    return click.option("--page", type=_FOLDER, help="Write a page (HTML) to this new file too.")(command)
 
 
 def _day(as_of: date | None) -> date:
@@ -159,10 +157,23 @@ def approve(folder: Path, document: str, role: str, name: str, as_of: date | Non
 
 
 @readiness.command(epilog="Example: readiness review out/binder.pdf")
-@click.argument("binder", type=_FOLDER)
-def review(binder: Path) -> None:
-    """Say whether BINDER, a PDF that this tool wrote, agrees with the inputs inside it."""
-    _finish(commands.review(binder, say=_progress))
+@click.argument("path", type=_FOLDER)
+@_as_of
+@click.option("--quick", is_flag=True, help="Of a binder, do not lay its pages out again.")
+@_page
+@_json
+def review(path: Path, as_of: date | None, quick: bool, page: Path | None, as_json: bool) -> None:
+    """
+    Review PATH, a program folder or a binder.
+
+    Of a folder: is it complete, and what to look at first. Of a binder, a PDF that this tool wrote: is it as
+    it was written, and does it agree with the inputs inside it.
+    """
+    _finish(
+        commands.review(
+            path, as_of=_day(as_of), as_json=as_json, width=_width(), say=_progress, page=page, quick=quick
+        )
+    )
 
 
 @readiness.command(epilog="Example: readiness compare last_year/binder.pdf my_program")

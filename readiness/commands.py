@@ -157,47 +157,50 @@ def explain(name: str, folder: Path, *, item: str | None, as_of: date, width: in
     return Answer(explain_value(name, assessment, item, width), NOTHING_OPEN)
 
 
-def review(path: Path, *, say: Say) -> Answer:
-    """Say whether a binder agrees with the inputs inside it."""
-    import tempfile
-
-    from readiness import __version__
-    from readiness.assessment.difference import difference
-    from readiness.errors import ProgramProblems
-    from readiness.outputs.binder_reading import open_binder
-    from readiness.outputs.binder_review import review_binder, review_text
-    from readiness.outputs.making import assessed, make_all
-    from readiness.program.files import from_mapping
-    from readiness.program.reading import known_yaml, read_program
-
+def review(
+    path: Path, *, as_of: date, as_json: bool, width: int, say: Say, page: Path | None = None,
+    quick: bool = False,
+) -> Answer:  # fmt: skip
+    """Say whether a folder is complete, or whether a binder agrees with the inputs inside it."""
+    if path.is_dir():
+        return _review_folder(path, as_of, as_json, width, page)
+    if not path.exists():
+        raise UsageError(f"{path} does not exist; name a program folder or a binder.pdf")
     if not path.is_file():
-        raise UsageError(f"{path} is not a file; review takes a binder.pdf")
+        raise UsageError(f"{path} is neither a folder nor a file; name a program folder or a binder.pdf")
+    if page is not None:
+        raise UsageError("a page is written of a folder only; a binder's review is read here or with --json")
+    from readiness.outputs.binder_reading import open_binder
+    from readiness.outputs.binder_review import AGREES, review_binder
+    from readiness.outputs.binder_review_view import review_json, review_text
+
     say("opening the binder")
-    found = open_binder(path)
-    stored = found.assessment
-    evidence = {name: (sha, size) for name, sha, size in stored.inputs if name.startswith("evidence/")}
+    found = review_binder(open_binder(path), quick=quick, say=say)
+    text = review_json(found, str(path)) if as_json else review_text(found, str(path), width)
+    return Answer(text, NOTHING_OPEN if found.outcome == AGREES else OPEN)
+
+
+def _review_folder(path: Path, as_of: date, as_json: bool, width: int, page: Path | None) -> Answer:
+    from readiness.assessment.completeness import completeness
+    from readiness.assessment.evidence import evidence_register
+    from readiness.errors import ProgramProblems
+    from readiness.outputs.completeness_view import completeness_json, completeness_page, completeness_text
+    from readiness.outputs.making import assessed
+    from readiness.program.reading import read_folder
+
     try:
-        contents, problems = from_mapping(found.inputs, evidence, known_yaml())
-        program = read_program(contents, problems)
+        program = read_folder(path)
+        assessment = assessed(program, as_of)
     except ProgramProblems as wrong:
-        lines = [
-            f"{path}: the inputs inside cannot be read any more:",
-            *(f"  - {each}" for each in wrong.problems),
-        ]
-        return Answer("\n".join(lines) + "\n", OPEN)
-    say("recomputing from the inputs inside")
-    recomputed = assessed(program, stored.as_of)
-    made = make_all(recomputed, program, stored.as_of, say)
-    if made.not_written:
-        raise UsageError(f"{made.not_written[0]}; without it the pages cannot be compared")
-    with tempfile.TemporaryDirectory() as folder:
-        again_path = Path(folder) / "binder.pdf"
-        again_path.write_bytes(made.files["binder.pdf"])
-        again = open_binder(again_path)
-    verdict = review_binder(
-        found, again, difference(stored, recomputed), (stored.versions.product, __version__)
-    )
-    return Answer(review_text(verdict, str(path), __version__), NOTHING_OPEN if verdict.agrees else OPEN)
+        return _problems(wrong.problems, as_json)
+    found = completeness(program, assessment, evidence_register(program, assessment, as_of))
+    invented = assessment.invented
+    if as_json:
+        text = completeness_json(found, invented=invented)
+    else:
+        text = completeness_text(found, str(path), width)
+    notes = _page_written(page, lambda: completeness_page(found, invented=invented))
+    return Answer(text, NOTHING_OPEN if found.is_complete else OPEN, notes)
 
 
 def compare(

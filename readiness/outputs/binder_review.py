@@ -1,113 +1,184 @@
 """
-What a reviewer is told of a binder: whether it agrees with the inputs inside it.
+What a reviewer is told of a binder: whether it is as it was written, and whether what it says follows from
+the inputs inside it.
 
-Because the same inputs give the same bytes, the binder is made again from the inputs inside and compared.
 This finds accident and careless edits. It does not prove who made it: somebody who changes the inputs and
 makes the binder again leaves no trace. Only a certificate signature proves that.
 """
 
-from dataclasses import dataclass
+from collections.abc import Callable, Iterator
+from dataclasses import dataclass, replace
+from typing import Any, TypeVar
 
-from readiness.assessment.difference import Difference
+from readiness import __version__
+from readiness.assessment.assessment import CONTRACT, rules_version
+from readiness.assessment.difference import Difference, difference
+from readiness.assessment.records import Assessment, DocumentState, Finding, Gap, Value, Versions
+from readiness.assessment.unaltered import Integrity, Manifest, integrity
+from readiness.errors import ProgramProblems, UsageError
+from readiness.outputs import press
 from readiness.outputs.binder_reading import OpenedBinder
-from readiness.outputs.contract import CAUTION
+from readiness.outputs.recomputing import Recomputed, manifest_again, recompute
 
-AGREES = "agrees with the inputs inside it"
+AGREES, DISAGREES, CANNOT_TELL = "agrees", "does not agree", "cannot tell"
+_Found = TypeVar("_Found")
+
+
+@dataclass(frozen=True)
+class Agreement:
+    """How many of one kind of result are the same when worked out again, and how many are not."""
+
+    what: str
+    same: int
+    different: int
 
 
 @dataclass(frozen=True)
 class BinderReview:
-    """What was found: sentences that speak against the binder, and remarks that do not."""
+    """
+    Everything that was found.
 
-    against: tuple[str, ...]
-    remarks: tuple[str, ...]
-    another_version: str
+    Attributes:
+        written_by: Versions that wrote the binder; None if it does not say.
+        integrity: What is there against what was written; None without a list of contents.
+        no_integrity: Why there is no such comparison.
+        agreements: Results worked out again from the inputs inside, counted.
+        recomputed: From the results in the binder to those worked out again; None if that was not possible.
+        not_recomputed: Why it was not possible.
+        pages_again: The pages in the binder against those made again; None if that was not done.
+        remarks: What was added or not done; nothing here speaks against the binder.
+    """
+
+    ours: Versions
+    written_by: Versions | None = None
+    integrity: Integrity | None = None
+    no_integrity: str = ""
+    agreements: tuple[Agreement, ...] = ()
+    recomputed: Difference | None = None
+    not_recomputed: tuple[str, ...] = ()
+    pages_again: Integrity | None = None
+    remarks: tuple[str, ...] = ()
 
     @property
-    def agrees(self) -> bool:
-        """Return whether nothing speaks against the binder."""
-        return not self.against and not self.another_version
+    def same_version(self) -> bool:
+        """Return whether this version wrote it, as far as it says."""
+        return self.written_by is None or self.written_by == self.ours
+
+    @property
+    def results_agree(self) -> bool:
+        """Return whether the results worked out again are those in the binder."""
+        found = self.recomputed
+        return found is not None and replace(found, versions=()).is_none and not found.elsewhere
+
+    @property
+    def is_as_written(self) -> bool:
+        """Return whether everything is there as the binder's own list says."""
+        return self.integrity is not None and self.integrity.holds
+
+    @property
+    def outcome(self) -> str:
+        """Return one of AGREES, DISAGREES and CANNOT_TELL."""
+        if not self.is_as_written or (self.pages_again is not None and not self.pages_again.holds):
+            return DISAGREES
+        if self.results_agree:
+            return AGREES
+        return DISAGREES if self.same_version else CANNOT_TELL
 
 
 def review_binder(
-    found: OpenedBinder, again: OpenedBinder, recomputed: Difference, versions: tuple[str, str]
+    found: OpenedBinder, *, quick: bool, say: Callable[[str], None] = lambda words: None
 ) -> BinderReview:
     """
-    Return how a binder stands to one made again from the inputs inside it.
+    Return the review of an opened binder.
 
     Args:
-        found: The binder under review.
-        again: The binder made again.
-        recomputed: From the attached assessment to the recomputed one.
-        versions: Version that made the binder, and ours.
+        found: The binder, with its pages.
+        quick: Leave out making its pages again.
+        say: Told what is being done.
     """
-    against = _attachments(found, again) + _pages(found, again) + _assessment(recomputed)
-    remarks = []
-    if found.filled:
-        remarks.append(f"{len(found.filled)} form fields are filled in; that is no alteration.")
-    if found.signatures:
-        remarks.append(f"{found.signatures} signatures were added; that is no alteration.")
-    other = versions[0] if versions[0] != versions[1] else ""
-    return BinderReview(tuple(against), tuple(remarks), other)
-
-
-def _attachments(found: OpenedBinder, again: OpenedBinder) -> list[str]:
-    said = []
-    for name in sorted({*found.attachments, *again.attachments}):
-        mine, other = found.attachments.get(name), again.attachments.get(name)
-        if mine is None:
-            said.append(f"The attachment {name} is missing.")
-        elif other is None:
-            said.append(f"The attachment {name} was not put in by this tool.")
-        elif mine != other:
-            said.append(f"The attachment {name} differs from what the inputs inside give.")
-    return said
-
-
-def _pages(found: OpenedBinder, again: OpenedBinder) -> list[str]:
-    if len(found.pages) != len(again.pages):
-        return [f"It has {len(found.pages)} pages; the inputs inside give {len(again.pages)}."]
-    different = [
-        str(number)
-        for number, (mine, other) in enumerate(zip(found.pages, again.pages, strict=True), 1)
-        if mine != other
-    ]
-    return [f"The text of these pages differs: {', '.join(different)}."] if different else []
-
-
-def _assessment(recomputed: Difference) -> list[str]:
-    if recomputed.is_none:
-        return []
-    counts = (
-        (len(recomputed.values), "values"),
-        (len(recomputed.findings), "findings"),
-        (len(recomputed.gaps_opened) + len(recomputed.gaps_closed), "gaps"),
-        (len(recomputed.documents), "documents"),
-    )
-    said = ", ".join(f"{number} {what}" for number, what in counts if number)
-    return [f"Recomputing from the inputs inside gives other results: {said or 'the verdict'}."]
-
-
-def review_text(review: BinderReview, name: str, ours: str) -> str:
-    """Return the review in words."""
-    if review.another_version:
-        lines = [
-            f"{name} was made by version {review.another_version}, this is version {ours}.",
-            f"What differs came by version or by hand: cannot tell. Install version {review.another_version} "
-            "to tell.",
-            *(f"  - {each}" for each in review.against),
-        ]
-    elif review.against:
-        lines = [
-            f"{name} does not agree with the inputs inside it:",
-            *(f"  - {each}" for each in review.against),
-        ]
+    review = BinderReview(Versions(__version__, rules_version(), CONTRACT), remarks=tuple(_added(found)))
+    manifest, why = _had(lambda: found.manifest)
+    if manifest is None:
+        review = replace(review, no_integrity=why)
     else:
-        lines = [f"{name} {AGREES}: pages, attachments and recomputed results."]
-    lines += list(review.remarks)
-    lines += [
-        "This finds accident and careless edits. Only a certificate signature proves who made it.",
-        "",
-        CAUTION,
-    ]
-    return "\n".join(lines) + "\n"
+        whole = integrity(manifest, found.held)
+        review = replace(review, written_by=manifest.versions, integrity=whole)
+    stored, why = _had(lambda: found.assessment)
+    if stored is None:
+        return replace(review, not_recomputed=(why,))
+    review = replace(review, written_by=review.written_by or stored.versions)
+    say("working the results out again from the inputs inside")
+    try:
+        again = recompute(found, stored)
+    except ProgramProblems as wrong:
+        said = ("The inputs inside cannot be read by this version.", *map(str, wrong.problems))
+        return replace(review, not_recomputed=said)
+    recomputed = difference(stored, again.assessment)
+    agreements = tuple(_agreements(stored, again.assessment, recomputed))
+    review = replace(review, agreements=agreements, recomputed=recomputed)
+    return _with_pages(review, found, manifest, again, quick, say)
+
+
+def _had(get: Callable[[], _Found]) -> tuple[_Found | None, str]:
+    try:
+        return get(), ""
+    except UsageError as wrong:
+        return None, f"{str(wrong)[:1].upper()}{str(wrong)[1:]}."
+
+
+def _added(found: OpenedBinder) -> Iterator[str]:
+    if found.filled:
+        documents = dict.fromkeys(name.split("-")[0] for name in found.filled)
+        yield (
+            f"{len(found.filled)} form fields are filled in ({', '.join(documents)}); that is no alteration."
+        )
+    for signature in found.signatures:
+        yield f"The file was {signature}; that is no alteration, and whose it is was not checked here."
+    for note in found.notes:
+        yield f"A note or comment was added on {note}; look what lies under it."
+
+
+def _agreements(stored: Assessment, again: Assessment, found: Difference) -> Iterator[Agreement]:
+    differ = {
+        "values": len(found.values),
+        "findings": len(found.findings),
+        "gaps": len(found.gaps_opened) + len(found.gaps_closed),
+        "documents": len(found.documents),
+    }
+    for what, different in differ.items():
+        total = len({_key(each) for each in (*getattr(stored, what), *getattr(again, what))})
+        yield Agreement(what, total - different, different)
+
+
+def _key(entry: Value | Finding | Gap | DocumentState) -> tuple[str, Any]:
+    """Return by what an entry of an assessment is known."""
+    if isinstance(entry, Value):
+        return entry.name, entry.item
+    if isinstance(entry, Finding):
+        return entry.rule, entry.item
+    return (entry.id if isinstance(entry, Gap) else entry.number), None
+
+
+def _with_pages(
+    review: BinderReview, found: OpenedBinder, manifest: Manifest | None, again: Recomputed, quick: bool,
+    say: Callable[[str], None],
+) -> BinderReview:  # fmt: skip
+    """Return the review with the pages made again, or with the reason why that was left out."""
+    if review.outcome != AGREES or not review.same_version or manifest is None:
+        return review
+    if quick:
+        reason = "Its pages were compared with its own list only (--quick)."
+        return replace(review, remarks=(*review.remarks, reason))
+    try:
+        ours = press.made_by()
+        if ours != manifest.press:
+            reason = (
+                f"Its pages were laid out by {manifest.press}; this machine has {ours}, which may break "
+                "lines elsewhere: they were compared with its own list only."
+            )
+            return replace(review, remarks=(*review.remarks, reason))
+        made = manifest_again(again, say)
+    except (press.PressMissing, UsageError) as missing:
+        reason = f"Its pages were compared with its own list only. {missing}"
+        return replace(review, remarks=(*review.remarks, reason))
+    return replace(review, pages_again=integrity(made, found.held))
