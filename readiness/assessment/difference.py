@@ -1,6 +1,6 @@
 """What changed between two assessments: values with the size of the change, findings, gaps, documents."""
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass, replace
 from typing import Any, TypeVar
 
@@ -63,12 +63,22 @@ class TurnedGap:
 
 
 @dataclass(frozen=True)
+class Change:
+    """Something that was so before and is so now."""
+
+    what: str
+    before: str
+    after: str
+
+
+@dataclass(frozen=True)
 class DocumentChange:
-    """A document that differs, and how."""
+    """A document that differs, and how; "added" and "no longer shown" have no changes."""
 
     number: str
     title: str
     what: str
+    changes: tuple[Change, ...] = ()
 
 
 @dataclass(frozen=True)
@@ -89,7 +99,7 @@ class Difference:
     gaps_closed: tuple[TurnedGap, ...]
     documents: tuple[DocumentChange, ...]
     inputs: tuple[str, ...]
-    versions: tuple[str, ...]
+    versions: tuple[Change, ...]
     elsewhere: tuple[str, ...] = ()
 
     @property
@@ -200,25 +210,26 @@ def _documents(first: Assessment, second: Assessment) -> tuple[DocumentChange, .
     found = []
     for number in dict.fromkeys((*before, *after)):
         was, now = before.get(number), after.get(number)
-        what = _document(was, now)
-        if what:
-            found.append(DocumentChange(number, (now or was).title, what))  # type: ignore[union-attr]
+        if was is None or now is None:
+            there = was or now
+            assert there is not None  # noqa: S101 - the number comes from one of the two
+            what = "added" if was is None else "no longer shown"
+            found.append(DocumentChange(number, there.title, what))
+        else:
+            what = "body changed" if was.body_sha256 != now.body_sha256 else ""
+            changes = tuple(_document(was, now))
+            if what or changes:
+                found.append(DocumentChange(number, now.title, what, changes))
     return tuple(found)
 
 
-def _document(was: DocumentState | None, now: DocumentState | None) -> str:
-    if was is None or now is None:
-        return "added" if was is None else "no longer shown"
-    said = []
-    if was.body_sha256 != now.body_sha256:
-        said.append("body changed")
+def _document(was: DocumentState, now: DocumentState) -> Iterator[Change]:
     if was.revision != now.revision:
-        said.append(f"revision {was.revision or 'none'}, now {now.revision or 'none'}")
+        yield Change("revision", was.revision or "none", now.revision or "none")
     if was.status != now.status:
-        said.append(f"{was.status}, now {now.status}")
+        yield Change("status", was.status, now.status)
     if was.approvals != now.approvals:
-        said.append(f"{len(was.approvals)} approvals, now {len(now.approvals)}")
-    return "; ".join(said)
+        yield Change("approvals", str(len(was.approvals)), str(len(now.approvals)))
 
 
 def _inputs(first: Assessment, second: Assessment) -> tuple[str, ...]:
@@ -227,13 +238,12 @@ def _inputs(first: Assessment, second: Assessment) -> tuple[str, ...]:
     return tuple(name for name in sorted({*before, *after}) if before.get(name) != after.get(name))
 
 
-def _versions(first: Assessment, second: Assessment) -> tuple[str, ...]:
-    found = []
-    for what in ("product", "rules", "contract"):
-        was, now = getattr(first.versions, what), getattr(second.versions, what)
-        if was != now:
-            found.append(f"{what}: {was}, now {now}")
-    return tuple(found)
+def _versions(first: Assessment, second: Assessment) -> tuple[Change, ...]:
+    each = (
+        (what, getattr(first.versions, what), getattr(second.versions, what))
+        for what in ("product", "rules", "contract")
+    )
+    return tuple(Change(what, was, now) for what, was, now in each if was != now)
 
 
 def _elsewhere(first: Assessment, second: Assessment) -> tuple[str, ...]:

@@ -18,6 +18,7 @@ from readiness.assessment.unaltered import Integrity, Manifest, integrity
 from readiness.errors import ProgramProblems, UsageError
 from readiness.outputs import press
 from readiness.outputs.binder_reading import OpenedBinder
+from readiness.outputs.form_fields import document_of
 from readiness.outputs.recomputing import Recomputed, manifest_again, recompute
 
 AGREES, DISAGREES, CANNOT_TELL = "agrees", "does not agree", "cannot tell"
@@ -128,10 +129,8 @@ def _had(get: Callable[[], _Found]) -> tuple[_Found | None, str]:
 
 def _added(found: OpenedBinder) -> Iterator[str]:
     if found.filled:
-        documents = dict.fromkeys(name.split("-")[0] for name in found.filled)
-        yield (
-            f"{len(found.filled)} form fields are filled in ({', '.join(documents)}); that is no alteration."
-        )
+        documents = ", ".join(dict.fromkeys(map(document_of, found.filled)))
+        yield f"Filled-in form fields: {len(found.filled)} ({documents}); that is no alteration."
     for signature in found.signatures:
         yield f"The file was {signature}; that is no alteration, and whose it is was not checked here."
     for note in found.notes:

@@ -107,9 +107,9 @@ def _recomputed(review: BinderReview) -> Iterator[str]:
         return
     if not review.same_version:
         yield "Differences below came by version or by hand: cannot tell."
-    for group in groups(review.recomputed):
+    for group in groups(review.recomputed, "worked out again"):
         for line in group.lines[:_MOST]:
-            yield f"{group.heading}: {line.replace(', now ', ' in the binder, ')}"
+            yield f"{group.heading}: {line}"
         if len(group.lines) > _MOST:
             yield f"{group.heading}: {len(group.lines) - _MOST} more (--json lists them all)"
 

@@ -5,13 +5,21 @@ import textwrap
 from collections.abc import Iterable
 from dataclasses import dataclass
 
-from readiness.assessment.difference import ChangedValue, Difference, TurnedFinding, TurnedGap
+from readiness.assessment.difference import (
+    Change,
+    ChangedValue,
+    ColumnChange,
+    Difference,
+    DocumentChange,
+    TurnedFinding,
+    TurnedGap,
+)
 from readiness.outputs.contract import CAUTION, plain
 from readiness.outputs.holes import plain as escaped
 from readiness.outputs.plain_page import section, whole_page
 from readiness.outputs.words import item_words, with_unit
 from readiness.quantities import Table
-from readiness.units import unit_of, words_of
+from readiness.units import words_of
 
 
 @dataclass(frozen=True)
@@ -22,35 +30,47 @@ class Group:
     lines: tuple[str, ...]
 
 
-def groups(found: Difference) -> tuple[Group, ...]:
+NOW = "now"  # what stands before the second side
+
+
+def groups(found: Difference, now: str = NOW) -> tuple[Group, ...]:
     """Return what differs in the order in which people ask for it, without empty groups."""
     all_groups = (
-        Group("Verdict", tuple(_pair(found))),
-        Group("Made by another version (differences may come from it)", found.versions),
-        Group("Findings that turned", tuple(map(finding_line, found.findings))),
+        Group("Verdict", tuple(_pair(found, now))),
+        Group("Made by another version (differences may come from it)", _changes(found.versions, now)),
+        Group("Findings that turned", tuple(finding_line(each, now) for each in found.findings)),
         Group("Gaps opened", tuple(map(_gap, found.gaps_opened))),
         Group("Gaps closed", tuple(map(_gap, found.gaps_closed))),
-        Group("Documents", tuple(f"{each.number} {each.title}: {each.what}" for each in found.documents)),
-        Group("Values", tuple(map(value_line, found.values))),
+        Group("Documents", tuple(_document(each, now) for each in found.documents)),
+        Group("Values", tuple(value_line(each, now) for each in found.values)),
         Group("Input files that differ", found.inputs),
         Group("Details that differ though no result does", found.elsewhere),
     )
     return tuple(group for group in all_groups if group.lines)
 
 
-def _pair(found: Difference) -> Iterable[str]:
+def _pair(found: Difference, now: str) -> Iterable[str]:
     said = (("", found.verdict), ("arrangement ", found.arrangement), ("first patient ", found.first_patient))
     for what, (before, after) in said:
         if before != after:
-            yield f"{what}{before or 'none'}, now {after or 'none'}"
+            yield f"{what}{before or 'none'}, {now} {after or 'none'}"
 
 
-def finding_line(found: TurnedFinding) -> str:
+def _changes(changes: Iterable[Change], now: str) -> tuple[str, ...]:
+    return tuple(f"{each.what} {each.before}, {now} {each.after}" for each in changes)
+
+
+def _document(each: DocumentChange, now: str) -> str:
+    said = [each.what] if each.what else []
+    return f"{each.number} {each.title}: {'; '.join((*said, *_changes(each.changes, now)))}"
+
+
+def finding_line(found: TurnedFinding, now: str = NOW) -> str:
     """Return a turned finding on one line."""
     strength = f" ({found.strength})" if found.strength else ""
     return (
         f"{found.rule}{strength}, {item_words(found.item)}: {found.before or 'not there'}, "
-        f"now {found.after or 'not there'}"
+        f"{now} {found.after or 'not there'}"
     )
 
 
@@ -58,17 +78,15 @@ def _gap(gap: TurnedGap) -> str:
     return f"{gap.what} [{gap.strength}; {gap.owner}]"
 
 
-def value_line(each: ChangedValue) -> str:
+def value_line(each: ChangedValue, now: str = NOW) -> str:
     """Return a changed value on one line, with the size of the change."""
     head = f"{each.name} of {item_words(each.item)}"
     if isinstance(each.before, Table) and isinstance(each.after, Table):
-        return f"{head}: {_table_words(each)}"
-    before, after = (
-        _side(each.name, each.before, each.basis_before),
-        _side(each.name, each.after, each.basis_after),
-    )
+        return f"{head}: {_table_words(each, now)}"
+    before = _side(each.name, each.before, each.basis_before)
+    after = _side(each.name, each.after, each.basis_after)
     by = f", by {with_unit(each.name, each.change)}" if each.change else ""
-    return f"{head}: {before}, now {after}{by}"
+    return f"{head}: {before}, {now} {after}{by}"
 
 
 def _side(name: str, value: object, basis: str) -> str:
@@ -79,20 +97,17 @@ def _side(name: str, value: object, basis: str) -> str:
     return f"{with_unit(name, value)} ({basis})"
 
 
-def _table_words(each: ChangedValue) -> str:
+def _table_words(each: ChangedValue, now: str) -> str:
     if each.columns:
-        said = []
-        for column in each.columns:
-            size = ""
-            if column.largest is not None:
-                size = f" by up to {with_unit(column.column, column.largest)}"
-            unit = unit_of(column.column)
-            name = words_of(column.column) + (f" ({unit})" if unit and not size else "")
-            said.append(f"{name} in {column.rows} row{'s' if column.rows != 1 else ''}{size}")
-        return "its table differs: " + "; ".join(said)
+        return "its table differs: " + "; ".join(map(_column, each.columns))
     if each.before == each.after:
-        return f"its table was {each.basis_before}, is {each.basis_after} now"
-    return f"its table had {len(each.before.rows)} rows, has {len(each.after.rows)} now"
+        return f"its table was {each.basis_before}, {now} {each.basis_after}"
+    return f"its table had {len(each.before.rows)} rows, {now} {len(each.after.rows)}"
+
+
+def _column(each: ColumnChange) -> str:
+    rows = f"{words_of(each.column)} in {each.rows} row{'s' if each.rows != 1 else ''}"
+    return rows if each.largest is None else f"{rows} by up to {with_unit(each.column, each.largest)}"
 
 
 def difference_text(found: Difference, first: str, second: str, width: int) -> str:
@@ -103,7 +118,9 @@ def difference_text(found: Difference, first: str, second: str, width: int) -> s
     for group in groups(found):
         lines += ["", f"{group.heading.upper()} ({len(group.lines)})"]
         lines += [
-            textwrap.fill(each, width, initial_indent="  - ", subsequent_indent="    ")
+            textwrap.fill(
+                each, width, initial_indent="  - ", subsequent_indent="    ", break_on_hyphens=False
+            )
             for each in group.lines
         ]
     return "\n".join([*lines, "", textwrap.fill(CAUTION, width)]) + "\n"

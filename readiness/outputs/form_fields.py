@@ -13,6 +13,20 @@ SIGNED = ("Role", "Name", "Date, time", "Signature")
 _MINUS = re.compile(r"(?<![a-z0-9])-(?![a-z])")  # a sign, not a hyphen
 
 
+_FIELD_NAME = re.compile(r"f(\d+)-(\d+)-")
+
+
+def field_prefix(number: str) -> str:
+    """Return what the names of a document's fields begin with; a dot is not allowed in them."""
+    return "f" + number.replace(".", "-")
+
+
+def document_of(field_name: str) -> str:
+    """Return the number of the document whose field it is, or the name itself if it is none of ours."""
+    found = _FIELD_NAME.match(field_name)
+    return f"{found[1]}.{found[2]}" if found else field_name
+
+
 class FormFields:
     """
     The fillable fields of one document.
@@ -23,7 +37,7 @@ class FormFields:
 
     def __init__(self, number: str, holes: Holes) -> None:
         """Take the document's number."""
-        self._prefix = "f" + number.replace(".", "-")
+        self._prefix = field_prefix(number)
         self._holes = holes
         self.names: dict[str, None] = {}
 

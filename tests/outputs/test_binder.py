@@ -1,6 +1,7 @@
 """The binder from outside: same bytes, valid PDF, links, fields, attachments, running heads."""
 
 import io
+import json
 import re
 import shutil
 import subprocess
@@ -213,9 +214,12 @@ def test_the_outline_has_parts_and_documents(reader: PdfReader) -> None:
 
 def test_inputs_are_attached_as_sources(reader: PdfReader) -> None:
     """The files that the binder was made from are inside it, unchanged, marked as its source, with its date."""
-    assert {name: [content] for name, content in ATTACHED.items()} == dict(reader.attachments)
+    attached = dict(reader.attachments)
+    (manifest,) = attached.pop("manifest.json")
+    assert {name: [content] for name, content in ATTACHED.items()} == attached
+    assert sorted(ATTACHED) == [each["name"] for each in json.loads(manifest)["attachments"]]
     associated = reader.trailer["/Root"]["/AF"]
-    assert ["/Source", "/Source"] == [each.get_object()["/AFRelationship"] for each in associated]
+    assert ["/Source"] * 3 == [each.get_object()["/AFRelationship"] for each in associated]
     dates = {str(each.get_object()["/EF"]["/F"]["/Params"]["/ModDate"]) for each in associated}
     assert {"D:20261201000000Z"} == dates
 
