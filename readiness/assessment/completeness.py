@@ -211,10 +211,12 @@ def _unproven(lines: list[Line]) -> tuple[str, ...]:
 
 
 def _predicted(lines: list[Line]) -> tuple[str, ...]:
+    """Return what is only predicted, what is expected to fail before what is expected to hold."""
+    found = [line for line in lines if line.outcome == "not assessed" and line.expected]
+    found.sort(key=lambda line: (line.expected == "met", STRENGTHS.index(line.strength)))
     return tuple(
-        f"{line.rule}: {line.message} Expected: {line.expected}."
-        for line in lines
-        if line.outcome == "not assessed" and line.expected
+        f"{line.rule} ({line.strength}): {line.message} Expected by calculation: {line.expected}."
+        for line in found
     )
 
 

@@ -2,11 +2,12 @@
 
 import json
 import textwrap
+from collections import Counter
 from collections.abc import Iterator
 
 from readiness.assessment.completeness import Completeness, Line
 from readiness.assessment.evidence import EvidenceRow, Register
-from readiness.assessment.records import STRENGTHS
+from readiness.assessment.records import OUTCOMES, STRENGTHS
 from readiness.outputs.contract import CAUTION, INVENTED, plain
 from readiness.outputs.holes import plain as escaped
 from readiness.outputs.plain_page import section, table, whole_page
@@ -103,8 +104,8 @@ def _counts(found: Completeness) -> Iterator[str]:
         for strength in STRENGTHS:
             here = [line for line in found.lines if line.topic == topic and line.strength == strength]
             if here:
-                outcomes = dict.fromkeys(line.outcome for line in here)
-                said = ", ".join(f"{sum(1 for x in here if x.outcome == each)} {each}" for each in outcomes)
+                counted = Counter(line.outcome for line in here)
+                said = ", ".join(f"{counted[each]} {each}" for each in OUTCOMES if counted[each])
                 yield f"  {topic}, {strength}: {said}"
 
 
