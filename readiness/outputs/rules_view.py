@@ -6,11 +6,12 @@ import textwrap
 
 from readiness.assessment.catalogue import catalogue
 from readiness.assessment.conditions import CONDITIONS
+from readiness.assessment.criteria import criteria
 from readiness.assessment.records import Assessment, Clause, Finding, Rule, Value
 from readiness.assessment.ruleset import load_rules
 from readiness.errors import UsageError
 from readiness.outputs.explanation import lines_of_value
-from readiness.outputs.words import how_known, outcome_words
+from readiness.outputs.words import how_known, outcome_words, with_unit
 from readiness.sources import publications
 from readiness.units import unit_of, words_of
 
@@ -65,7 +66,7 @@ def show_rule(rule_id: str, assessment: Assessment | None, width: int, as_json: 
     findings = [each for each in assessment.findings if each.rule == rule_id] if assessment else []
     if as_json:
         return _as_json(rule, findings)
-    lines = _rule_lines(rule, width)
+    lines = _rule_lines(rule, assessment, width)
     if assessment is not None:
         lines += _finding_lines(rule, findings, assessment, width)
     return "\n".join(lines) + "\n"
@@ -80,7 +81,20 @@ def _as_json(rule: Rule, findings: list[Finding]) -> str:
     )
 
 
-def _rule_lines(rule: Rule, width: int) -> list[str]:
+def _limit_words(rule: Rule, assessment: Assessment | None) -> str:
+    """Return the number behind a limit that is a criterion, with its source; "" for any other limit."""
+    criterion = criteria().get(rule.limit) if isinstance(rule.limit, str) else None
+    if criterion is None:
+        return ""
+    used = next((each for each in assessment.values if each.name == rule.limit), None) if assessment else None
+    if used is not None and used.known == "local":
+        place = f", {used.where}" if used.where else ""
+        ours = with_unit(rule.limit, criterion.value)
+        return f"{with_unit(rule.limit, used.value)}, by {used.source}{place}; instead of {ours}"
+    return f"{with_unit(rule.limit, criterion.value)}; {criterion.source}, {criterion.at} ({criterion.known})"
+
+
+def _rule_lines(rule: Rule, assessment: Assessment | None, width: int) -> list[str]:
     def wrapped(label: str, text: str) -> str:
         return textwrap.fill(f"{label}: {text}", width, subsequent_indent="    ")
 
@@ -90,6 +104,8 @@ def _rule_lines(rule: Rule, width: int) -> list[str]:
     lines.append(
         wrapped("Asks", f"{rule.subject}: {asked}" + ("; measured" if rule.basis == "measured" else ""))
     )
+    limit = _limit_words(rule, assessment)
+    lines += [wrapped("Limit", limit)] if limit else []
     for clause in rule.applies_when:
         lines.append(wrapped("Applies when", f"{clause.subject}: {clause_words(clause)}"))
     for source in rule.sources:
