@@ -119,10 +119,17 @@ def assessment_in(path: Path) -> Assessment:
 
 
 def _tried(path: str, read: Callable[[], _Found]) -> _Found:
+    from pypdf.errors import DependencyError
+
     try:
         return read()
     except UsageError:
         raise
+    except DependencyError as error:
+        raise UsageError(
+            f"{path} is encrypted in a way that cannot be opened here; save a copy without encryption "
+            "and review that"
+        ) from error
     except Exception as error:  # any: a broken PDF makes its reader fail in ways that nobody lists
         said = str(error).splitlines()[0][:120] if str(error) else type(error).__name__
         raise UsageError(f"{path} cannot be read as a PDF; it is damaged or cut off ({said})") from error

@@ -3,6 +3,8 @@
 import io
 import json
 import random
+import shutil
+import subprocess
 from collections.abc import Callable
 from dataclasses import dataclass, replace
 from datetime import date
@@ -450,6 +452,18 @@ def test_a_locked_binder_is_refused_and_one_protected_against_changes_is_read(ma
         opened(locked, tmp_path)
     protected = edited(made.content, lambda writer: writer.encrypt("", "owner", algorithm="RC4-128"))
     assert AGREES == reviewed(protected, tmp_path).outcome
+
+
+@pytest.mark.skipif(shutil.which("qpdf") is None, reason="qpdf is not on this machine")
+@pytest.mark.parametrize("password", ["", "secret"])
+def test_a_cipher_that_cannot_be_opened_is_not_called_damage(made: Made, tmp_path: Path, password: str) -> None:
+    """Whoever encrypted the file hears what to do, whether or not a password is needed."""
+    plain, path = tmp_path / "plain.pdf", tmp_path / "b.pdf"
+    plain.write_bytes(made.content)
+    command = ["qpdf", "--encrypt", password, "owner", "256", "--", str(plain), str(path)]
+    subprocess.run(command, check=True)  # noqa: S603 - a fixed command
+    with pytest.raises(UsageError, match="encrypted in a way that cannot be opened here|locked with a password"):
+        open_binder(path)
 
 
 def answer(read: Callable[[], Found]) -> tuple[Found | None, str]:
