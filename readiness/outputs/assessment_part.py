@@ -77,6 +77,7 @@ def assessment_sheets(assessment: Assessment, rendered: Sequence[RenderedDocumen
         "remembered": chief.remembered(assessment),
         "worst_modes": chief.worst_failure_modes(assessment),
         "figures": chief.figures(assessment),
+        "movers": chief.movers(assessment),
         "schedule": assessment.schedule,
         "tasks": rows.tasks(assessment),
         "matrix": rows.matrix(assessment),

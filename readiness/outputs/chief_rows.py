@@ -1,29 +1,29 @@
 """What the chief reads on one page: arrangements, exceptions, remembered sources, risks, hours and money."""
 
-from readiness.assessment.records import ArrangementRow, Assessment
+from readiness.assessment.records import ArrangementRow, Assessment, Value, weakest
 from readiness.outputs.assessment_rows import short_item
 from readiness.outputs.words import chosen_row, finding_words, value_title, with_unit
 from readiness.quantities import Table
 
 MOST_ARRANGEMENTS = 3
+_MOST_FIGURES = 2
+_MOST_MOVERS = 3
 FIGURES = (
-    "program.expected_patients_per_year",
-    "program.sessions_per_year",
-    "program.treatment_days_per_year",
-    "program.busiest_room_hours_per_week_h",
-    "program.free_room_hours_left_h",
-    "program.wait_weeks",
-    *(
-        f"program.{profession}_{what}_fte"
-        for profession in ("oncologist", "physicist", "therapist", "nurse")
-        for what in ("needed", "qualified")
-    ),
-    "program.commissioning_needed_h",
-    "program.commissioning_available_h",
-    "program.cost_once",
-    "program.cost_each_year",
-    "program.cost_per_patient",
-)
+    ("program.expected_patients_per_year",),
+    ("program.sessions_per_year",),
+    ("program.treatment_days_per_year",),
+    ("program.busiest_room_hours_per_week_h",),
+    ("program.free_room_hours_left_h",),
+    ("program.wait_weeks",),
+    ("program.oncologist_needed_fte", "program.oncologist_qualified_fte"),
+    ("program.physicist_needed_fte", "program.physicist_qualified_fte"),
+    ("program.therapist_needed_fte", "program.therapist_qualified_fte"),
+    ("program.nurse_needed_fte", "program.nurse_qualified_fte"),
+    ("program.commissioning_needed_h", "program.commissioning_available_h"),
+    ("program.cost_once",),
+    ("program.cost_each_year",),
+    ("program.cost_per_patient",),
+)  # what is needed, and beside it what there is
 
 
 def arrangements(assessment: Assessment) -> tuple[tuple[str, str, str, str], ...]:
@@ -35,7 +35,7 @@ def arrangements(assessment: Assessment) -> tuple[tuple[str, str, str, str], ...
             finding_words(row.deciding[0]) if row.deciding else "",
             "; ".join(
                 f"{value_title(name).lower()} {with_unit(name, value)} ({basis})"
-                for name, value, basis in row.figures[:3]
+                for name, value, basis in row.figures[:_MOST_FIGURES]
             ),
         )
         for row in _listed(assessment)
@@ -89,16 +89,35 @@ def worst_failure_modes(assessment: Assessment) -> Table | None:
     return found[0] if found and isinstance(found[0], Table) else None
 
 
+def movers(assessment: Assessment) -> tuple[tuple[str, int], ...]:
+    """Return what moves the date of the first patient: title of the task, by up to how many working days."""
+    if assessment.schedule is None:
+        return ()
+    titles = {task.id: task.title for task in assessment.schedule.tasks}
+    return tuple(
+        (titles.get(task, task), round(days)) for task, days in assessment.schedule.movers[:_MOST_MOVERS]
+    )
+
+
 def figures(assessment: Assessment) -> tuple[tuple[str, str, str], ...]:
     """Return money and hours of the program: what, how much, basis."""
     found = {value.name: value for value in assessment.values if value.item.kind == "program"}
     currency = f" {found['program.currency'].value}" if "program.currency" in found else ""
-    return tuple(
-        (
-            value_title(name).lower(),
-            with_unit(name, found[name].value) + (currency if ".cost_" in name else ""),
-            found[name].basis,
-        )
-        for name in FIGURES
-        if name in found
-    )
+    lines = []
+    for names in FIGURES:
+        there = [found[name] for name in names if name in found]
+        if there:
+            numbers = (_number(value, currency) for value in there)
+            what = ", ".join(value_title(value.name).lower() for value in there)
+            lines.append((_shorter(what), "; ".join(numbers), weakest([value.basis for value in there])))
+    return tuple(lines)
+
+
+def _number(value: Value, currency: str) -> str:
+    return with_unit(value.name, value.value) + (currency if ".cost_" in value.name else "")
+
+
+def _shorter(what: str) -> str:
+    """Return "nurse needed, nurse qualified" as "nurse needed, qualified"."""
+    first, _, second = what.partition(", ")
+    return f"{first}, {second.removeprefix(first.rpartition(' ')[0]).strip()}" if second else first
