@@ -2,15 +2,12 @@
 
 import math
 from collections.abc import Mapping
-from functools import cache
 from typing import Any
 
-from jinja2 import Environment, FileSystemLoader, StrictUndefined
-
 from readiness.assessment.records import Assessment, Value
+from readiness.outputs.barrier_picture import draw_barriers
+from readiness.outputs.drawing import drawn, numbers, points, said
 from readiness.outputs.lookup import Lookup
-from readiness.outputs.words import with_unit
-from readiness.resources import folder
 
 _MARGIN_CM = 45.0
 _WIDTH_MM = 165.0
@@ -32,45 +29,10 @@ def make_pictures(assessment: Assessment) -> dict[str, str]:
     found = {
         "room-plan": _plan(lookup),
         "room-elevation": _elevation(lookup),
+        "barriers": draw_barriers(lookup),
         "six-positions": _positions() if lookup.technique in ("", "six-position") else None,
     }
     return {name: svg for name, svg in found.items() if svg is not None}
-
-
-@cache
-def _environment() -> Environment:
-    return Environment(
-        loader=FileSystemLoader(folder("templates") / "pictures"), undefined=StrictUndefined, autoescape=True,
-        trim_blocks=True, finalize=_short,
-    )  # fmt: skip
-
-
-def _short(entry: Any) -> Any:
-    return f"{entry:.1f}".rstrip("0").rstrip(".") if isinstance(entry, float) else entry
-
-
-def _drawn(name: str, entries: Mapping[str, Any]) -> str:
-    return _environment().get_template(f"{name}.svg.j2").render(**entries)
-
-
-def _numbers(lookup: Lookup, names: Mapping[str, str]) -> dict[str, float] | None:
-    """Return the values by key, or None if one of them is missing."""
-    found: dict[str, float] = {}
-    for key, name in names.items():
-        got = lookup.get(name)
-        if not isinstance(got, Value) or not isinstance(got.value, (int, float)):
-            return None
-        found[key] = float(got.value)
-    return found
-
-
-def _of(lookup: Lookup, name: str) -> str:
-    got = lookup.get(name)
-    return with_unit(name, got.value) if isinstance(got, Value) else "not stated"
-
-
-def _points(pairs: list[tuple[float, float]]) -> str:
-    return " ".join(f"{x:.1f},{y:.1f}" for x, y in pairs)
 
 
 def _plan(lookup: Lookup) -> str | None:
@@ -82,11 +44,11 @@ def _plan(lookup: Lookup) -> str | None:
     top, bottom = min(y for _, y in corners), max(y for _, y in corners)
     plane = _plane_in_plan(lookup, left)
     words = f"Floor of the room with {len(_boxes(lookup))} things in it; plane distance "
-    words += f"{_of(lookup, 'arrangement.study_distance_cm')} from the source."
-    return _drawn("room-plan", {
+    words += f"{said(lookup, 'arrangement.study_distance_cm')} from the source."
+    return drawn("room-plan", {
         "prefix": "plan-", "left": left - _MARGIN_CM, "top": top - _MARGIN_CM,
         "wide": right - left + 2 * _MARGIN_CM, "high": bottom - top + 2 * _MARGIN_CM + 20,
-        "width_mm": _WIDTH_MM, "size": _TEXT_CM, "words": words, "floor": _points(corners),
+        "width_mm": _WIDTH_MM, "size": _TEXT_CM, "words": words, "floor": points(corners),
         "boxes": _boxes(lookup), "plane": plane, "bar": {"x": left, "y": bottom + 40},
     })  # fmt: skip
 
@@ -116,7 +78,7 @@ def _is_wide(box: Mapping[str, Any]) -> bool:
 
 
 def _plane_in_plan(lookup: Lookup, left: float) -> dict[str, Any] | None:
-    got = _numbers(lookup, {
+    got = numbers(lookup, {
         "side": "arrangement.side_deg", "distance": "arrangement.study_distance_cm",
         "sad": "machine.source_axis_distance_cm", "opening": "beam.opening_cm",
     })  # fmt: skip
@@ -125,20 +87,20 @@ def _plane_in_plan(lookup: Lookup, left: float) -> dict[str, Any] | None:
     toward = -1 if got["side"] == 90 else 1
     source, x = -toward * got["sad"], toward * (got["distance"] - got["sad"])
     half = got["opening"] / 200 * got["distance"]
-    stand = _numbers(lookup, {"wide": "stand.depth_cm", "high": "stand.width_cm"})
+    stand = numbers(lookup, {"wide": "stand.depth_cm", "high": "stand.width_cm"})
     box = None if stand is None else {
         "x": x - stand["wide"] / 2, "y": -stand["high"] / 2, "wide": stand["wide"], "high": stand["high"],
     }  # fmt: skip
     return {
         "x": x, "y1": -half - 20, "y2": half + 20, "source": source, "mid": (source + x) / 2,
         "dim": half + 60, "stand": box,
-        "fan": _points([(source, 0.0), (x, -half), (x, half)]),
-        "words": f"plane distance {_of(lookup, 'arrangement.study_distance_cm')}, plan, not as built",
+        "fan": points([(source, 0.0), (x, -half), (x, half)]),
+        "words": f"plane distance {said(lookup, 'arrangement.study_distance_cm')}, plan, not as built",
     }  # fmt: skip
 
 
 def _elevation(lookup: Lookup) -> str | None:
-    got = _numbers(lookup, {
+    got = numbers(lookup, {
         "side": "arrangement.side_deg", "distance": "arrangement.study_distance_cm",
         "sad": "machine.source_axis_distance_cm", "opening": "beam.opening_cm",
         "iso": "room.isocentre_height_cm", "ceiling": "room.ceiling_height_cm",
@@ -151,22 +113,22 @@ def _elevation(lookup: Lookup) -> str | None:
     toward = -1 if got["side"] == 90 else 1
     x = toward * (got["distance"] - got["sad"])
     room = {"x": left, "y": -got["ceiling"], "wide": right - left, "high": got["ceiling"]}
-    stand = _numbers(lookup, {"wide": "stand.depth_cm", "high": "stand.height_cm"})
+    stand = numbers(lookup, {"wide": "stand.depth_cm", "high": "stand.height_cm"})
     box = None if stand is None else {
         "x": x - stand["wide"] / 2, "y": -stand["high"], "wide": stand["wide"], "high": stand["high"],
     }  # fmt: skip
     words = (
-        f"Section through the beam axis: ceiling at {_of(lookup, 'room.ceiling_height_cm')}, isocentre at "
-        f"{_of(lookup, 'room.isocentre_height_cm')}, raised hands of the tallest patient at "
-        f"{_of(lookup, 'arrangement.raised_hands_height_cm')}."
+        f"Section through the beam axis: ceiling at {said(lookup, 'room.ceiling_height_cm')}, isocentre at "
+        f"{said(lookup, 'room.isocentre_height_cm')}, raised hands of the tallest patient at "
+        f"{said(lookup, 'arrangement.raised_hands_height_cm')}."
     )
-    return _drawn("room-elevation", {
+    return drawn("room-elevation", {
         "left": left - _MARGIN_CM, "top": -got["ceiling"] - _MARGIN_CM, "wide": right - left + 2 * _MARGIN_CM,
         "high": got["ceiling"] + 2 * _MARGIN_CM + 20, "width_mm": _WIDTH_MM, "size": _TEXT_CM, "words": words,
         "room": room, "fields": [_field(got, toward, x, sign) for sign in (1, -1)], "plane": {"x": x},
         "stand": box, "patient": _patient(lookup, x, toward), "iso": -got["iso"], "bar_y": 40.0,
-        "iso_words": _of(lookup, "room.isocentre_height_cm"),
-        "ceiling_words": _of(lookup, "room.ceiling_height_cm"),
+        "iso_words": said(lookup, "room.isocentre_height_cm"),
+        "ceiling_words": said(lookup, "room.ceiling_height_cm"),
     })  # fmt: skip
 
 
@@ -183,7 +145,7 @@ def _field(got: Mapping[str, float], toward: int, x: float, sign: int) -> dict[s
     axis = sign * tilt
     ends = [(x, -height(axis + each)) for each in (edge, -edge)]
     return {
-        "fan": _points([(source_x, -source_z), *ends]), "x1": source_x, "y1": -source_z, "x2": x,
+        "fan": points([(source_x, -source_z), *ends]), "x1": source_x, "y1": -source_z, "x2": x,
         "y2": -height(axis),
         "text_x": source_x - toward * 14, "align": "start" if toward < 0 else "end",
         "words": "aimed at the head" if sign > 0 else "aimed at the feet",
@@ -191,7 +153,7 @@ def _field(got: Mapping[str, float], toward: int, x: float, sign: int) -> dict[s
 
 
 def _patient(lookup: Lookup, x: float, toward: int) -> dict[str, Any] | None:
-    got = _numbers(lookup, {
+    got = numbers(lookup, {
         "height": "program.tallest_patient_cm", "stand": "stand.height_cm",
         "hands": "arrangement.raised_hands_height_cm",
     })  # fmt: skip
@@ -202,7 +164,7 @@ def _patient(lookup: Lookup, x: float, toward: int) -> dict[str, Any] | None:
         "head": -(feet + tall - 11), "neck": -(feet + tall - 22), "shoulder": -(feet + 0.82 * tall),
         "hip": -(feet + 0.48 * tall), "feet": -feet, "hands": -got["hands"],
         "text_x": x - toward * 40, "align": "start" if toward < 0 else "end",
-        "words": f"raised hands of the tallest patient, {_of(lookup, 'arrangement.raised_hands_height_cm')}",
+        "words": f"raised hands of the tallest patient, {said(lookup, 'arrangement.raised_hands_height_cm')}",
     }  # fmt: skip
 
 
@@ -212,4 +174,4 @@ def _positions() -> str:
         for index, (name, turn, day) in enumerate(_POSITIONS)
     ]
     words = "Six positions 60 degrees apart: AP, RPO and LPO on day 1; PA, RAO and LAO on day 2."
-    return _drawn("six-positions", {"positions": places, "words": words})
+    return drawn("six-positions", {"positions": places, "words": words})

@@ -13,6 +13,7 @@ from readiness.outputs.making import assessed
 from readiness.outputs.pictures import _POSITIONS, make_pictures
 from readiness.program.reading import read_folder
 
+SVG = "{http://www.w3.org/2000/svg}"
 SAMPLE = Path(__file__).resolve().parents[2] / "sample_program"
 
 
@@ -25,7 +26,7 @@ def sample() -> Assessment:
 def test_drawings_of_the_sample(sample: Assessment) -> None:
     """Plan, elevation and positions are drawn, each with a title and a description."""
     drawn = make_pictures(sample)
-    assert {"room-plan", "room-elevation", "six-positions"} == set(drawn)
+    assert {"room-plan", "room-elevation", "barriers", "six-positions"} == set(drawn)
     for svg in drawn.values():
         root = ElementTree.fromstring(svg)
         assert root.find("{http://www.w3.org/2000/svg}title").text  # type: ignore[union-attr]
@@ -38,6 +39,33 @@ def test_plan_is_to_scale(sample: Assessment) -> None:
     source, plane = map(float, re.search(r'<line x1="(-?[\d.]+)" y1="[\d.-]+" x2="(-?[\d.]+)" y2="[\d.-]+" stroke="#000" stroke-width="1.5"/>', svg.split("</defs>")[1]).groups())  # type: ignore[union-attr]
     assert 400 == pytest.approx(source - plane)
     assert plane < 0
+
+
+def test_barriers_are_to_scale(sample: Assessment) -> None:
+    """Walls are as thick as stated, the room as high; spots of the axes lie on the wall of the beam."""
+    root = ElementTree.fromstring(make_pictures(sample)["barriers"])
+    boxes = {(each.get("width"), each.get("height")) for each in root.iter(f"{SVG}rect")}
+    assert {("215", "690"), ("195", "690"), ("695", "110"), ("695", "300")} <= boxes
+    axes = [each for each in root.iter(f"{SVG}circle") if each.get("r") == "7"]
+    assert {("-365", "-234.7"), ("-365", "-25.3")} == {(each.get("cx"), each.get("cy")) for each in axes}
+
+
+def test_bars_are_parts_of_the_goal(sample: Assessment) -> None:
+    """The bar of a place is as long as its dose is of the goal; a door has none and says why."""
+    root = ElementTree.fromstring(make_pictures(sample)["barriers"])
+    bars = [float(each.get("width", "")) for each in root.iter(f"{SVG}rect") if each.get("fill") == "#000"]
+    full = 0.3 * float(root.get("viewBox", "").split()[2])
+    values = {(each.name, each.item): each.value for each in sample.values}
+    arrangement = sample.verdict.arrangement
+    ratios = [
+        value / values["exposure.goal_msv_per_week", item] / 1000
+        for (name, item), value in values.items()
+        if name == "exposure.weekly_dose_usv_per_week" and item.id.endswith(arrangement)
+    ]
+    assert sorted(ratio * full for ratio in ratios) == pytest.approx(sorted(bars), abs=0.06)
+    texts = [each.text for each in root.iter(f"{SVG}text")]
+    assert 1 == texts.count("no prediction: survey in the mode")
+    assert {"Office west of vault A", "Door of vault A"} <= set(texts)
 
 
 def test_same_drawings_every_time(sample: Assessment) -> None:
