@@ -17,6 +17,8 @@ from readiness.assessment.ruleset import is_value_name
 from readiness.assessment.wording import in_words
 from readiness.units import words_of
 
+_NAMED_BY_TITLE = ("barrier", "exposure")
+
 
 def judge(rules: Iterable[Rule], graph: Graph) -> tuple[Finding, ...]:
     """Return every finding, in the order of the rules and their items."""
@@ -106,7 +108,7 @@ def _holds(condition: str, value: Any, limit: Any) -> bool:
 
 def _compared(rule: Rule, item: Ref, observed: Value, limit: Any, graph: Graph) -> Finding:
     holds = _holds(rule.condition, observed.value, limit)
-    message = say(rule, item, observed.value, limit)
+    message = say(rule, item, observed.value, limit, graph)
     outcome = "met" if holds else "not met"
     causes: tuple[Cause, ...] = ()
     if rule.basis == "measured" and observed.basis != "measured":
@@ -125,6 +127,13 @@ def _plain(value: Any) -> Any:
     )
 
 
-def say(rule: Rule, item: Ref, observed: Any, limit: Any) -> str:
+def say(rule: Rule, item: Ref, observed: Any, limit: Any, graph: Graph) -> str:
     """Return the rule's message with what was seen and what is asked."""
-    return rule.message.format(observed=in_words(observed), limit=in_words(limit), item=item.id)
+    name = _name(item, graph)
+    return rule.message.format(observed=in_words(observed), limit=in_words(limit), item=name)
+
+
+def _name(item: Ref, graph: Graph) -> str:
+    """Return an item as a message names it: a place behind a barrier by its title, others by their id."""
+    title = graph.get(f"{item.kind}.title", item) if item.kind in _NAMED_BY_TITLE else None
+    return str(title.value) if isinstance(title, Value) else item.id

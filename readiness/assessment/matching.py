@@ -82,6 +82,11 @@ def _short(item_id: str) -> str:
     return item_id.rpartition("/")[2]
 
 
+def required_header(kind: str) -> tuple[str, ...]:
+    """Return the header keys that a measurement file of a kind must have."""
+    return tuple(key for key, field in measurement_kind(kind).header.items() if field.required)
+
+
 def void(measurement: Item, program: Program) -> str:
     """Return why a measurement does not count at all, or "" if it does."""
     done = measurement.get("date")
@@ -97,6 +102,16 @@ def void(measurement: Item, program: Program) -> str:
         changed = part.get("changed_on") if part else None
         if isinstance(changed, date) and changed > done:
             return f"the {kind} was changed on {changed}, after the measurement of {done}"
+    return _outdated(measurement, program, done)
+
+
+def _outdated(measurement: Item, program: Program, done: date) -> str:
+    for name in measurement_kind(str(measurement.get("kind"))).outdated_by:
+        kind, _, field = name.partition(".")
+        section = program.find(kind, kind)
+        changed = section.get(field) if section else None
+        if isinstance(changed, date) and changed > done:
+            return f"{words_of(name)} {changed} is later than the measurement of {done}"
     return ""
 
 

@@ -192,3 +192,32 @@ def xray_rate_at_1_m(*, per_cycle_gy_m2: float, cycle_mu: float, rate_mu_per_min
     if not (cycle_mu > 0.0 and rate_mu_per_min > 0.0 and per_cycle_gy_m2 >= 0.0):
         raise ValueError("MU and their rate must be above zero and the workload not below it")
     return per_cycle_gy_m2 / (cycle_mu / 2.0) * rate_mu_per_min * 60.0
+
+
+def week_of_tests_usv(
+    *, before_usv_per_week: float, added_usv_per_week: float, added_mu: float, tests_mu: float
+) -> float:
+    """
+    Return the dose of a week in which the mode is used for tests alone.
+
+    H = H_before + H_added x MU of the tests / MU of the addition
+
+    Args:
+        before_usv_per_week: Existing dose of a week. [µSv/week]
+        added_usv_per_week: Added dose of the peak week. [µSv/week]
+        added_mu: All MU that the added dose is of. [MU]
+        tests_mu: MU of the tests in their week. [MU]
+
+    Returns:
+        Dose of that week. [µSv/week]
+
+    Raises:
+        ValueError: If a number is below zero or the addition has no MU.
+
+    Assumes: tests with the same fields as treatments, a scattering body in the patient's place.
+    Source: derived.
+    """
+    known = (before_usv_per_week, added_usv_per_week, tests_mu)
+    if not (all(isfinite(each) and each >= 0.0 for each in known) and added_mu > 0.0):
+        raise ValueError("doses and MU must not be below zero, and the addition needs MU")
+    return before_usv_per_week + added_usv_per_week * tests_mu / added_mu

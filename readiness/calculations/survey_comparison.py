@@ -4,6 +4,7 @@ from dataclasses import dataclass
 from math import isfinite
 from typing import cast
 
+from readiness.errors import OutsideValidity
 from readiness.quantities import Scalar, Table
 
 PREDICTED_COLUMNS = ("barrier", "gantry_deg", "field", "patient", "predicted_usv_per_h", "remark")
@@ -158,6 +159,46 @@ def compare_survey(
         not_predicted=extra,
         rows=Table.of(COMPARED_COLUMNS, rows),
     )
+
+
+def readings_of_fields(
+    *,
+    measured: Table,
+    barrier: str,
+    background_usv_per_h: float,
+    toward_head_deg: float,
+    toward_feet_deg: float,
+) -> tuple[float, float]:
+    """
+    Return the net readings behind one barrier with either field on, the highest where several were taken.
+
+    Args:
+        measured: barrier, gantry_deg, reading_usv_per_h with background.
+        barrier: Name of the barrier.
+        background_usv_per_h: Reading without beam. [µSv/h]
+        toward_head_deg: Gantry angle aimed at the head. [deg]
+        toward_feet_deg: Gantry angle aimed at the feet. [deg]
+
+    Returns:
+        Head, feet. [µSv/h]
+
+    Raises:
+        OutsideValidity: If a field has no reading.
+
+    Assumes: gantry angles within 1 degree are the same; a net reading below zero counts as zero.
+    Source: derived.
+    """
+    found = []
+    for gantry in (toward_head_deg, toward_feet_deg):
+        here = [
+            float(cast(float, row["reading_usv_per_h"])) - background_usv_per_h
+            for row in measured.records()
+            if row["barrier"] == barrier and _near(row, gantry)
+        ]
+        if not here:
+            raise OutsideValidity(f"the survey has no reading of {barrier} at gantry {gantry:g} degrees")
+        found.append(max(0.0, *here))
+    return found[0], found[1]
 
 
 def weekly_dose_from_survey(

@@ -74,18 +74,22 @@ def workload_from_pair_dose(
     cycle_mu: float,
     cycles_per_week: float,
     extra_week_mu: float,
+    depth_cm: float = 0.0,
+    water_attenuation_per_cm: float | None = None,
 ) -> XRayWorkload:
     """
     Return the x-ray workload of one spot from the x-ray dose per MU of the pair at the height of its axis.
 
-    W_x = MU x d^2
+    W_x = MU x exp(mu z) d^2
 
     Args:
-        pair_cgy_per_mu: Highest x-ray dose per MU of the pair over the plane, without water, x. [cGy/MU]
+        pair_cgy_per_mu: Highest x-ray dose per MU of the pair over the plane, x. [cGy/MU]
         plane_distance_cm: From the source to the plane where it was measured, d. [cm]
         cycle_mu: All MU of a cycle, both beams of all dual fields. [MU]
         cycles_per_week: Cycles of all patients in the week. [per week]
         extra_week_mu: MU of quality assurance and commissioning in that week. [MU]
+        depth_cm: Of water in front of the point where it was measured, z. [cm]
+        water_attenuation_per_cm: Of the x rays in water, mu; None assumes that of 6 MeV. [1/cm]
 
     Returns:
         Workload per cycle and week, and the steps.
@@ -93,18 +97,21 @@ def workload_from_pair_dose(
     Raises:
         ValueError: If a distance or MU is not above zero, or another number below zero.
 
+    Valid for: attenuation of 6 MeV, careful for more.
     Assumes: MU counted as the total of both beams; inverse square from the plane.
-    Source: ncrp-151, sec. 3.2.2 for the far plane (memory).
+    Source: ncrp-151, sec. 3.2.2 for the far plane (memory); water derived.
     """
-    _check(above=(plane_distance_cm, cycle_mu), at_least=(pair_cgy_per_mu,))
-    square = (plane_distance_cm / 100.0) ** 2
+    mu = WATER_ATTENUATION_PER_CM if water_attenuation_per_cm is None else water_attenuation_per_cm
+    _check(above=(plane_distance_cm, cycle_mu), at_least=(pair_cgy_per_mu, depth_cm, mu))
+    square, water = (plane_distance_cm / 100.0) ** 2, exp(mu * depth_cm)
     cycles = _all_cycles(cycles_per_week, extra_week_mu, cycle_mu)
     steps: list[tuple[Scalar, ...]] = [
         ("x rays of the pair", "x", pair_cgy_per_mu, "cGy/MU", "as given", "measurement"),
         ("MU of a cycle, both beams", "MU", cycle_mu, "MU", "as given", "program"),
+        ("water in front of it", "exp(mu z)", water, "", _basis(water_attenuation_per_cm), "derived"),
         ("distance of the plane, squared", "d^2", square, "m²", "as given", "program"),
     ]
-    return _workload(cycle_mu * pair_cgy_per_mu / 100.0 * square, cycles, 1.0, steps)
+    return _workload(cycle_mu * pair_cgy_per_mu / 100.0 * water * square, cycles, 1.0, steps)
 
 
 def workload_from_fraction(

@@ -134,10 +134,11 @@ def _functions(showing: Showing, forms: FormFields, lookup: Lookup) -> dict[str,
     """Return what a template may ask for; nothing else is known to it."""
     return {
         "show": showing.show, "critical": showing.critical, "table": showing.table,
-        "listing": showing.listing, "picture": showing.picture, "source": showing.source,
+        "rows": showing.rows, "tables": showing.tables, "listing": showing.listing,
+        "picture": showing.picture, "source": showing.source,
         "failure_modes": showing.failure_modes, "score_scale": showing.score_scale,
         "lines": forms.lines, "line": forms.line, "ticks": forms.ticks, "area": forms.area,
-        "sheet": forms.sheet, "signatures": forms.signatures,
+        "sheet": forms.sheet, "worksheet": forms.worksheet, "signatures": forms.signatures,
         "technique": lambda *names: not lookup.technique or lookup.technique in names,
     }  # fmt: skip
 

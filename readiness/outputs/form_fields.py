@@ -84,6 +84,27 @@ class FormFields:
             f'<table class="{css}"><thead><tr>{heads}</tr></thead><tbody>{body}</tbody></table>'
         )
 
+    def worksheet(
+        self, shown: Sequence[str], rows: Sequence[Sequence[str]], columns: Sequence[str]
+    ) -> Markup:
+        """
+        Return a table whose first cells are given and whose last cells are filled in.
+
+        Args:
+            shown: Headings over the given cells.
+            rows: The given cells of each row.
+            columns: Headings of the cells to fill in.
+        """
+        heads = "".join(f'<th scope="col">{_with_unit(each)}</th>' for each in (*shown, *columns))
+        body = ""
+        for number, row in enumerate(rows, 1):
+            given = "".join(f"<td>{plain(cell)}</td>" for cell in row)
+            fields = "".join(f"<td>{self._input(f'{number}, {each}')}</td>" for each in columns)
+            body += f"<tr>{given}{fields}</tr>"
+        return self._block(
+            f'<table class="sheet given"><thead><tr>{heads}</tr></thead><tbody>{body}</tbody></table>'
+        )
+
     def signatures(self, *roles: str) -> Markup:
         """Return a table for names, dates and signatures of roles."""
         rows = "".join(

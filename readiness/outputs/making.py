@@ -12,6 +12,8 @@ from readiness.outputs.contract import to_json
 from readiness.outputs.documents import render_bodies
 from readiness.outputs.page import make_page
 from readiness.outputs.pictures import make_pictures
+from readiness.outputs.survey_sheet import NAME as SURVEY_SHEET
+from readiness.outputs.survey_sheet import survey_sheet
 from readiness.program.items import Program
 
 
@@ -42,6 +44,8 @@ def make_all(assessment: Assessment, program: Program, as_of: date, say: Callabl
         "gaps.csv": gap_list.to_csv(assessment),
         "gaps.xlsx": gap_list.to_xlsx(assessment),
     }
+    sheet = survey_sheet(assessment)
+    files |= {SURVEY_SHEET: sheet} if sheet is not None else {}
     say("drawing")
     pictures = {**make_pictures(assessment), **make_charts(assessment)}
     say("writing documents")

@@ -80,6 +80,31 @@ class Showing:
         table = html_table([_column_words(column) for column in wanted], rows)
         return self._block(table + f'<p class="basis-line">{plain(found.basis)}</p>')
 
+    def rows(self, name: str) -> tuple[tuple[str, ...], ...]:
+        """Return the cells of a table as text, for a form that is filled in beside them; none if missing."""
+        found = self._lookup.get(name)
+        if isinstance(found, Missing):
+            return ()
+        if not isinstance(found.value, Table):
+            raise CatalogueError(f"{name} holds no table")
+        self.shown[name] = None
+        return tuple(tuple(_cell(entry) for entry in row) for row in found.value.rows)
+
+    def tables(self, name: str, title: str) -> Markup:
+        """Return a table of every item in scope that has it, each under its title."""
+        kind = name.partition(".")[0]
+        parts = []
+        for item in self._lookup.items(kind):
+            found = self._lookup.get(name, item)
+            if isinstance(found, Value) and isinstance(found.value, Table):
+                self.shown[name] = None
+                heads = [_column_words(column) for column in found.value.columns]
+                cells = [[plain(_cell(entry)) for entry in row] for row in found.value.rows]
+                parts.append(f"<h3>{plain(self._lookup.text_of(title, item))}</h3>")
+                parts.append(html_table(heads, cells, "list many" if len(heads) >= MANY else "list"))
+                parts.append(f'<p class="basis-line">{plain(found.basis)}</p>')
+        return self._block("".join(parts) or '<p class="need">Nothing could be calculated yet.</p>')
+
     def listing(self, kind: str, fields: str) -> Markup:
         """Return a table with one row for each item of a kind, some of its fields as columns."""
         names = [f"{kind}.{field}" for field in fields.split()]

@@ -11,7 +11,9 @@ from readiness.program.field_schema import FieldSchema
 from readiness.program.fields import Schemas, check_references, schemas
 from readiness.resources import schema_file
 
-_KEYS = {"kind", "title", "meaning", "attaches_to", "agrees_on", "min_rows", "header", "columns"}
+_OPTIONAL_KEYS: Mapping[str, tuple[str, ...]] = {"outdated_by": ()}
+_NEEDED_KEYS = {"kind", "title", "meaning", "attaches_to", "agrees_on", "min_rows", "header", "columns"}
+_KEYS = _NEEDED_KEYS | set(_OPTIONAL_KEYS)
 _COLUMN_TYPES = {"text", "word", "number", "whole number", "date", "yes or no", "reference"}
 
 
@@ -24,6 +26,7 @@ class MeasurementKind:
         kind: Word in the header of the CSV file.
         attaches_to: Kind of item whose claims it replaces.
         agrees_on: Header keys that must agree with that item's choices before it attaches.
+        outdated_by: Dates of the program (value names) after which a measurement no longer counts.
         min_rows: Fewest rows with which the file can be used at all.
         header: Key -> field, in the order in which people write them.
         columns: Name -> field.
@@ -34,6 +37,7 @@ class MeasurementKind:
     meaning: str
     attaches_to: str
     agrees_on: tuple[str, ...]
+    outdated_by: tuple[str, ...]
     min_rows: int
     header: Mapping[str, FieldSchema]
     columns: Mapping[str, FieldSchema]
@@ -53,6 +57,7 @@ def measurement_kind(kind: str) -> MeasurementKind:
 def load_measurement_kind(path: Path, known: Schemas) -> MeasurementKind:
     """Return the kind described in a file; raise CatalogueError if the description does not fit together."""
     description = read_description(path)
+    description = {**_OPTIONAL_KEYS, **description}
     unknown = set(description) ^ _KEYS
     if unknown:
         raise CatalogueError(f"{path.name}: {sorted(unknown)[0]} is missing or unknown")
@@ -64,6 +69,7 @@ def load_measurement_kind(path: Path, known: Schemas) -> MeasurementKind:
         meaning=" ".join(description["meaning"].split()),
         attaches_to=description["attaches_to"],
         agrees_on=tuple(description["agrees_on"]),
+        outdated_by=tuple(description["outdated_by"]),
         min_rows=description["min_rows"],
         header=_fields(description["header"], known),
         columns=_fields(description["columns"], known),
@@ -94,6 +100,10 @@ def _check(kind: MeasurementKind, where: str, known: Schemas) -> None:
             raise CatalogueError(f"{where}: {field.name} cannot be of type {field.type!r}")
     if kind.attaches_to not in known.kinds and kind.attaches_to != "arrangement":
         raise CatalogueError(f"{where}: attaches to {kind.attaches_to!r}, which does not exist")
+    for name in kind.outdated_by:
+        dated = known.field(name)
+        if dated is None or dated.type != "date":
+            raise CatalogueError(f"{where}: outdated by {name!r}, which is no date of the program folder")
     missing = [name for name in kind.agrees_on if name not in kind.header]
     if missing:
         raise CatalogueError(f"{where}: agrees on {missing[0]!r}, which the header does not hold")

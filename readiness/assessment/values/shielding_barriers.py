@@ -1,4 +1,4 @@
-"""A barrier seen from an arrangement: dose before and after, against goals, and what would mend it."""
+"""A barrier seen from an arrangement: distances, and the dose of the busiest week before and after."""
 
 from readiness.assessment.definition import Definition, derived
 from readiness.assessment.values.shielding_places import GEOMETRY
@@ -6,12 +6,12 @@ from readiness.assessment.values.shielding_workload import VERTICAL
 from readiness.calculations.barrier_distances import BarrierDistances, barrier_distances
 from readiness.calculations.barrier_dose import WeeklyDose, weekly_dose
 from readiness.calculations.beam_on_barrier import nearest_spot_distance_m
-from readiness.calculations.dose_limits import annual_dose_msv, any_hour_dose, goal_margin
-from readiness.calculations.required_thickness import cycles_that_fit, required_thickness
+from readiness.calculations.dose_limits import goal_margin
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 MV_OF_MEV = 1.0  # the end point of the x rays is the energy of the electrons
+WORKED_OUT = ("contribution", "formula", "with_numbers", "dose_usv_per_week", "share_percent", "source")
 BARRIERS = (
     "place", "before_usv_per_week", "after_usv_per_week", "goal_usv_per_week", "in_any_hour_usv", "role",
     "largest_contribution",
@@ -64,46 +64,18 @@ def part_of_goal(*, dose_usv_per_week: float, goal_msv_per_week: float, survey_m
     ).share_of_goal  # fmt: skip
 
 
-def hour(
-    *, dose: WeeklyDose, cycles_per_week: float, sessions_per_cycle: int, sessions_in_hour: int,
-    busiest_photon_hour: float,
-) -> float:  # fmt: skip
-    """Return the largest dose in any 60 consecutive minutes, no occupancy counted."""
-    return any_hour_dose(
-        before_rate_usv_per_week=dose.before_rate_usv_per_week,
-        added_rate_usv_per_week=dose.added_rate_usv_per_week, cycles_per_week=cycles_per_week,
-        sessions_per_cycle=sessions_per_cycle, sessions_in_hour=sessions_in_hour, session_room_min=None,
-        busiest_hour_ratio=busiest_photon_hour,
-    ).usv_in_any_hour  # fmt: skip
-
-
-def year(*, dose: WeeklyDose, cycles_per_week: float) -> float:
-    """Return the dose of a year of busiest weeks, an upper bound."""
-    return annual_dose_msv(
-        before_usv_per_week=dose.before_usv_per_week, added_usv_per_week=dose.added_usv_per_week,
-        cycles_per_week=cycles_per_week, cycles_per_year=None,
-    )  # fmt: skip
-
-
-def extra_thickness(*, dose: WeeklyDose, goal_msv_per_week: float) -> Table:
-    """Return what would have to be added outside: tenth-value layers, or one material."""
-    needed = required_thickness(contributions=dose.contributions, limit_usv_per_week=1000 * goal_msv_per_week)
-    row = (needed.extra_tvl, needed.concrete_cm, needed.steel_cm, needed.lead_cm)
-    return Table(("extra_tvl", "concrete_cm", "steel_cm", "lead_cm"), (row,))
-
-
-def fitting_cycles(
-    *, dose: WeeklyDose, cycles_per_week: float, peak_patients: int, goal_msv_per_week: float
-) -> int:
-    """Return how many cycles a week stay within the goal as the barrier is."""
-    found = cycles_that_fit(
-        before_usv_per_week=dose.before_usv_per_week, added_usv_per_week=dose.added_usv_per_week,
-        cycles_per_week=cycles_per_week, patient_cycles_per_week=cycles_per_week / max(1, peak_patients),
-        design_goal_msv_per_week=goal_msv_per_week,
-    )  # fmt: skip
-    if found.cycles_per_week is None:
-        raise OutsideValidity("the program adds nothing behind this barrier")
-    return found.cycles_per_week
+def worked_out(*, contributions: Table) -> Table:
+    """Return each contribution as its formula, the same with numbers, and what it gives."""
+    rows = []
+    for row in contributions.records():
+        numbers = " x ".join(
+            f"{float(str(row[name])):.4g}"
+            for name in ("workload_gy_m2_per_week", "factor", "occupancy", "transmission")
+        )
+        said = f"{numbers} / {float(str(row['distance_m'])):.4g}^2 x 10^6"
+        dose, share = row["dose_usv_per_week"], row["share_percent"]
+        rows.append((row["contribution"], row["formula"], said, dose, share, row["source"]))
+    return Table(WORKED_OUT, tuple(rows))
 
 
 def overview(
@@ -173,6 +145,12 @@ DEFINITIONS: tuple[Definition, ...] = (
     _part("weekly_dose_usv_per_week", "Dose of the busiest week with the program.", "after_usv_per_week"),
     _part("added_usv_per_week", "What the program adds in the busiest week.", "added_usv_per_week"),
     _part("contributions", "What the dose is made of, line by line.", "contributions"),
+    derived(
+        "exposure.calculation",
+        "Each contribution as its formula, with numbers, and its share.",
+        worked_out,
+        {"contributions": "exposure.contributions"},
+    ),
     _part("largest_contribution", "The largest contribution.", "largest_contribution"),
     _part("beam_on_secondary", "The tilted fields meet a barrier built as secondary.", "beam_on_secondary"),
     Definition(
@@ -186,49 +164,6 @@ DEFINITIONS: tuple[Definition, ...] = (
         },
         source="ncrp-151",
         known="memory",
-    ),
-    Definition(
-        "exposure.any_hour_dose_usv",
-        "Largest dose in any 60 consecutive minutes, no occupancy counted.",
-        by=hour,
-        takes={
-            "dose": "exposure.week",
-            "cycles_per_week": "program.busiest_week_cycles_per_week",
-            "sessions_per_cycle": "program.fewest_sessions_per_cycle",
-            "sessions_in_hour": "program.sessions_in_busiest_hour",
-            "busiest_photon_hour": "protection.busiest_photon_hour",
-        },
-        source="ncrp-151",
-        known="memory",
-    ),
-    Definition(
-        "exposure.annual_dose_msv_per_year",
-        "Dose of a year of busiest weeks, an upper bound.",
-        by=year,
-        takes={"dose": "exposure.week", "cycles_per_week": "program.busiest_week_cycles_per_week"},
-        source="ncrp-151",
-        known="memory",
-    ),
-    Definition(
-        "exposure.extra_thickness",
-        "What would have to be added outside to keep the design goal; one material alone.",
-        by=extra_thickness,
-        takes={"dose": "exposure.week", "goal_msv_per_week": "barrier.design_goal_msv_per_week"},
-        source="ncrp-151",
-        known="memory",
-    ),
-    Definition(
-        "exposure.cycles_that_fit_per_week",
-        "Cycles a week that keep the design goal with the barrier as it is.",
-        by=fitting_cycles,
-        takes={
-            "dose": "exposure.week",
-            "cycles_per_week": "program.busiest_week_cycles_per_week",
-            "peak_patients": "program.peak_patients",
-            "goal_msv_per_week": "barrier.design_goal_msv_per_week",
-        },
-        source="own-arithmetic",
-        known="derived",
     ),
     derived(
         "arrangement.barriers",

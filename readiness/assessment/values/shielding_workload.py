@@ -4,7 +4,11 @@ from readiness.assessment.definition import Definition, derived
 from readiness.assessment.values.dose import LYING, PlannedCycles
 from readiness.calculations import course_consistency
 from readiness.calculations.leakage_workload import LeakageWorkload, leakage_workload
-from readiness.calculations.xray_workload import XRayWorkload, workload_from_fraction
+from readiness.calculations.xray_workload import (
+    XRayWorkload,
+    workload_from_fraction,
+    workload_from_pair_dose,
+)
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
@@ -62,6 +66,22 @@ def xrays(
     )  # fmt: skip
 
 
+def xrays_of_pair(
+    *, technique: str, axis_cgy_per_mu: float, mid_height_cgy_per_mu: float | None, depth_cm: float,
+    water_attenuation: float, plane_distance_cm: float, cycles_per_week: float, extra_mu: float | None,
+    cycle_mu: int,
+) -> XRayWorkload:  # fmt: skip
+    """Return the x-ray workload of one lobe spot from the dose per MU of the pair at its larger place."""
+    if technique == LYING:
+        raise OutsideValidity(VERTICAL)
+    largest = max(axis_cgy_per_mu, mid_height_cgy_per_mu or 0.0)
+    return workload_from_pair_dose(
+        pair_cgy_per_mu=largest, plane_distance_cm=plane_distance_cm, cycle_mu=cycle_mu,
+        cycles_per_week=cycles_per_week, extra_week_mu=extra_mu or 0.0, depth_cm=depth_cm,
+        water_attenuation_per_cm=water_attenuation,
+    )  # fmt: skip
+
+
 def leakage(
     *, technique: str, cycle_mu: int, dose_per_cycle_gy: float, output_cgy_per_mu: float,
     cycles_per_week: float, extra_mu: float | None,
@@ -106,7 +126,26 @@ DEFINITIONS: tuple[Definition, ...] = (
     ),
     Definition(
         "arrangement.xray_workload_record",
-        "X-ray workload of one lobe spot with its steps.",
+        "X-ray workload of one lobe spot: from the dose per MU on the tilted axis, else from f1.",
+        by=xrays_of_pair,
+        takes={
+            "technique": "arrangement.technique",
+            "axis_cgy_per_mu": "arrangement.xray_axis_cgy_per_mu",
+            "mid_height_cgy_per_mu": "arrangement.xray_mid_height_cgy_per_mu?",
+            "depth_cm": "arrangement.pair_xray_depth_cm",
+            "water_attenuation": "criterion.water_attenuation_ratio",
+            "plane_distance_cm": "arrangement.study_distance_cm",
+            "cycles_per_week": "program.busiest_week_cycles_per_week",
+            "extra_mu": "protection.qa_mu_per_week_mu?",
+            "cycle_mu": "arrangement.workload_mu",
+        },
+        otherwise="arrangement.xray_workload_of_fraction",
+        model=True,
+        internal=True,
+    ),
+    Definition(
+        "arrangement.xray_workload_of_fraction",
+        "X-ray workload of one lobe spot from f1 and its three factors, with its steps.",
         by=xrays,
         takes={
             "technique": "arrangement.technique",
@@ -131,7 +170,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         part="per_week_gy_m2_per_week",
         source="own-arithmetic",
         known="derived",
-        formula="W_x = D f1 (6/B) exp(mu z) L d^2 x cycles a week",
+        formula="W_x = MU x exp(mu z) d^2, or D f1 (6/B) exp(mu z) L d^2; x cycles a week",
     ),
     Definition(
         "arrangement.xray_workload_steps",
