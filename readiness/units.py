@@ -5,6 +5,8 @@ This module knows every unit that a field, value or table column may end with, h
 and nothing else: numbers are kept in the unit of their name and never converted silently.
 """
 
+from functools import cache
+
 # ending of the name -> printed unit; the longest ending that fits counts
 UNITS: dict[str, str] = {
     "cgy_per_mu": "cGy/MU",
@@ -76,6 +78,7 @@ UNITS: dict[str, str] = {
 }
 
 
+@cache
 def unit_ending(name: str) -> str:
     """Return the unit ending of a name ("cm" for "plane_distance_cm"), or "" if it has none."""
     last = name.rsplit(".", 1)[-1].split("_")

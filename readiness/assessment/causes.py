@@ -33,25 +33,26 @@ def why_not_measured(graph: Graph, name: str, ref: Ref) -> tuple[Cause, ...]:
 
 def assumed_roots(graph: Graph, name: str, ref: Ref) -> tuple[Cause, ...]:
     """Return the defaults that a value rests on, as things to state."""
+    return tuple(sorted(_assumed(graph, name, ref)))
+
+
+def _assumed(graph: Graph, name: str, ref: Ref) -> frozenset[Cause]:
+    """Return the causes below a value; each value is walked once, since many rest on the same defaults."""
+    known = graph.assumed_below.get((name, ref))
+    if known is not None:
+        return known
+    value = graph.get(name, ref)
     found: set[Cause] = set()
-    seen: set[tuple[str, Ref]] = set()
-    waiting = [(name, ref)]
-    while waiting:
-        each = waiting.pop()
-        if each in seen:
-            continue
-        seen.add(each)
-        value = graph.get(*each)
-        if not isinstance(value, Value) or value.basis != "assumed":
-            continue
+    if isinstance(value, Value) and value.basis == "assumed":
         if not value.inputs:
             unit = f" {value.unit}" if value.unit else ""
             words = f"State {words_of(value.name)} of {value.item}; {value.value}{unit} is only assumed."
             found.add(Cause("assumed", value.name, value.item, words))
-        waiting.extend(
-            (one.name, one.item) for one in value.inputs if one.name.partition(".")[0] != "criterion"
-        )
-    return tuple(sorted(found))
+        for one in value.inputs:
+            if one.name.partition(".")[0] != "criterion":
+                found |= _assumed(graph, one.name, one.item)
+    graph.assumed_below[(name, ref)] = frozenset(found)
+    return graph.assumed_below[(name, ref)]
 
 
 def _owner_of(graph: Graph, name: str, ref: Ref) -> Ref:

@@ -40,6 +40,9 @@ class Graph(ItemIndex):
         self.as_of = as_of
         self._limits = limits
         self._known: dict[tuple[str, Ref], Got] = {}
+        self._choices: dict[str, bool] = {}
+        self._sections = catalogue.kinds.sections
+        self.assumed_below: dict[tuple[str, Ref], frozenset[Cause]] = {}  # kept by causes.py
 
     # -- values --------------------------------------------------------------------------------
 
@@ -52,7 +55,7 @@ class Graph(ItemIndex):
         kind = name.partition(".")[0]
         if kind == "criterion":
             return self._limit(name)
-        owner = self.owners(asking).get(kind, kind if kind in self.kinds.sections else None)
+        owner = self.owners(asking).get(kind) or (kind if kind in self._sections else None)
         if owner is None:
             words = f"{words_of(kind)} for {asking}"
             return Gone((Cause("item", kind, asking, f"Describe or choose a {words}."),))
@@ -71,6 +74,12 @@ class Graph(ItemIndex):
             if isinstance(value, Value) and not self._is_internal(name)
         ]
         return tuple(sorted(shown, key=lambda value: (value.name, value.item)))
+
+    def _is_choice(self, name: str) -> bool:
+        known = self._choices.get(name)
+        if known is None:
+            known = self._choices[name] = self.catalogue.is_choice(name)
+        return known
 
     def _is_internal(self, name: str) -> bool:
         definition = self.catalogue.definitions.get(name)
@@ -197,7 +206,7 @@ class Graph(ItemIndex):
                 given[keyword] = self._each(keyword, take, asking, inputs, bases, causes)
             else:
                 given[keyword] = self._rows(keyword, take, asking, inputs, bases, causes)
-        return given, tuple(inputs), bases, causes
+        return given, tuple(dict.fromkeys(inputs)), bases, causes
 
     def _taken(
         self, keyword: str, take: Take, got: Got, inputs: list[Input], bases: list[str], causes: list[Cause]
@@ -206,8 +215,8 @@ class Graph(ItemIndex):
             if not take.optional:
                 causes.extend(got.causes)
             return None
-        inputs += [each for each in self._shown_inputs(keyword, got) if each not in inputs]
-        if not self.catalogue.is_choice(got.name):
+        inputs.extend(self._shown_inputs(keyword, got))
+        if not self._is_choice(got.name):
             bases.append(got.basis)
         return got.value
 
