@@ -228,8 +228,25 @@ class ScheduledTask:
 
 
 @dataclass(frozen=True)
+class WeekOfWork:
+    """Hours of commissioning that a profession is wanted for in a week, and by which tasks."""
+
+    week_of: date
+    who: str
+    needed_h: float
+    free_h: float
+    missing_h: float
+    tasks: tuple[str, ...]
+
+
+@dataclass(frozen=True)
 class Schedule:
-    """The road to the first patient."""
+    """
+    The road to the first patient.
+
+    Attributes:
+        by_week: Hours of commissioning by week and profession; empty where they are not stated.
+    """
 
     tasks: tuple[ScheduledTask, ...]
     first_patient: date | None
@@ -237,6 +254,7 @@ class Schedule:
     working_days_late: int | None
     movers: tuple[tuple[str, float], ...]
     remarks: tuple[str, ...]
+    by_week: tuple[WeekOfWork, ...] = ()
 
 
 @dataclass(frozen=True)

@@ -5,21 +5,39 @@ Beside values/ this is the other place that calls calculations: a schedule needs
 cannot know.
 """
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import replace
 from datetime import date
 from functools import cache
 
-from readiness.assessment.records import Gap, Schedule, ScheduledTask
-from readiness.calculations.first_patient import road_to_first_patient, what_moves_first_patient
+from readiness.assessment.records import Gap, Schedule, ScheduledTask, WeekOfWork
+from readiness.calculations.first_patient import (
+    NO_CAPACITY,
+    NO_WORK,
+    Road,
+    road_to_first_patient,
+    what_moves_first_patient,
+)
+from readiness.calculations.levelling import CAPACITY
 from readiness.calculations.network_changes import reduced_network
+from readiness.calculations.project_hours import hours_by_week, work_of_phase
+from readiness.calculations.staff_hours import COMMISSION, PROJECT
 from readiness.calculations.task_library import OwnTask, library_tasks, with_own_tasks
 from readiness.calculations.task_network import Task
 from readiness.calculations.task_progress import Progress
 from readiness.calculations.working_days import WorkingDays, working_days
 from readiness.program.items import Program
+from readiness.quantities import Table
+from readiness.units import rounded
 
 _NO_DATE = "No date of a first patient can be given while no arrangement is known to be possible."
+_NOT_SHARED = (
+    "The date is the earliest the order of tasks allows; people's hours are not shared out among tasks."
+)
+_NOT_STATED = (
+    "For the hours of commissioning by week state minutes per commissioning, the hours that each role can "
+    "give to it, and commissioning_weeks."
+)
 _WEEKDAYS = ("monday", "tuesday", "wednesday", "thursday", "friday")
 
 
@@ -69,6 +87,8 @@ def plan_road(
     target = root.get("target_first_patient_date") if root else None
     target = target if isinstance(target, date) else None
     calendar = working_calendar(program)
+    finished = {entry.task for entry in progress if entry.finished}
+    work, capacity = commissioning_work(program, [task for task in tasks if task.id not in finished])
     road = road_to_first_patient(
         tasks=tasks, progress=progress, calendar=calendar, as_of=as_of, target=target
     )
@@ -96,10 +116,42 @@ def plan_road(
     )[:5]
     if not possible:
         return Schedule(scheduled, None, target, None, (), (_NO_DATE,)), gaps
+    by_week = _weeks(road, work, capacity, calendar, as_of) if work.rows else ()
     schedule = Schedule(
-        scheduled, road.first_patient, target, road.late_working_days, movers, _remarks(road.out_of_order)
-    )
+        scheduled, road.first_patient, target, road.late_working_days, movers,
+        _remarks(road, by_week), by_week,
+    )  # fmt: skip
     return schedule, tuple(_dated(gap, scheduled) for gap in gaps)
+
+
+def commissioning_work(program: Program, tasks: Sequence[Task]) -> tuple[Table, Table]:
+    """
+    Return the hours of commissioning by task and profession, and the hours a day that each has for them.
+
+    Hours are those of the department's minutes per commissioning, laid on the tasks of the phase in
+    proportion to their days. Both tables are empty where hours, what roles can give, or weeks are not stated.
+    """
+    root = program.find("program", "program")
+    weeks = root.get("commissioning_weeks") if root else None
+    needed: dict[str, float] = {}
+    for item in program.of_kind("staff_task"):
+        minutes, persons = item.get("minutes_min"), item.get("persons")
+        known = isinstance(minutes, (int, float)) and isinstance(persons, (int, float))
+        if item.get("per") == PROJECT and known:
+            who = str(item.get("profession"))
+            needed[who] = needed.get(who, 0.0) + float(minutes) * float(persons) / 60  # type: ignore[arg-type]
+    given: dict[str, float] = {}
+    for item in program.of_kind("role"):
+        hours = item.get("commissioning_hours_h")
+        if isinstance(hours, (int, float)):
+            who = str(item.get("profession"))
+            given[who] = given.get(who, 0.0) + hours
+    days = any(task.phase == COMMISSION and task.working_days for task in tasks)
+    if not (needed and isinstance(weeks, (int, float)) and given.keys() >= needed.keys() and days):
+        return NO_WORK, NO_CAPACITY
+    hours_of = Table.of(("who", "work_h"), list(needed.items()))
+    daily = [(who, hours / (weeks * len(_WEEKDAYS))) for who, hours in given.items()]
+    return work_of_phase(tasks=tasks, phase=COMMISSION, hours=hours_of), Table.of(CAPACITY, daily)
 
 
 def working_calendar(program: Program) -> WorkingDays:
@@ -114,14 +166,41 @@ def working_calendar(program: Program) -> WorkingDays:
     )
 
 
-def _remarks(out_of_order: tuple[str, ...]) -> tuple[str, ...]:
-    remarks = [
-        "The date is the earliest the order of tasks allows; people's hours are not shared out among tasks.",
-        "A default lead time is common practice; state the department's own under tasks in program.yaml.",
-    ]
-    if out_of_order:
-        remarks.append(f"Finished before what they wait for: {', '.join(out_of_order)}.")
+def _remarks(road: Road, by_week: tuple[WeekOfWork, ...]) -> tuple[str, ...]:
+    remarks = [_NOT_SHARED, _hours_words(by_week)]
+    remarks.append(
+        "A default lead time is common practice; state the department's own under tasks in program.yaml."
+    )
+    if road.out_of_order:
+        remarks.append(f"Finished before what they wait for: {', '.join(road.out_of_order)}.")
     return tuple(remarks)
+
+
+def _weeks(
+    road: Road, work: Table, capacity: Table, calendar: WorkingDays, as_of: date
+) -> tuple[WeekOfWork, ...]:
+    table = hours_by_week(road=road, work=work, capacity=capacity, calendar=calendar, as_of=as_of)
+    return tuple(
+        WeekOfWork(
+            date.fromisoformat(str(week)), str(who), rounded(float(str(needed))), rounded(float(str(free))),
+            rounded(float(str(missing))), tuple(str(tasks).split(", ")),
+        )
+        for week, who, needed, free, missing, tasks in table.rows
+    )  # fmt: skip
+
+
+def _hours_words(by_week: tuple[WeekOfWork, ...]) -> str:
+    """Return in which weeks somebody is wanted for more hours of commissioning than there are."""
+    if not by_week:
+        return _NOT_STATED
+    short = [each for each in by_week if each.missing_h]
+    if not short:
+        return "In no week does commissioning want more hours than there are."
+    said = ", ".join(
+        f"{each.who} in the week of {each.week_of.isoformat()} ({each.missing_h:.0f} h missing)"
+        for each in short
+    )
+    return f"Commissioning wants more hours than there are: {said}."
 
 
 def _dated(gap: Gap, scheduled: tuple[ScheduledTask, ...]) -> Gap:

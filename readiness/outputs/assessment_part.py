@@ -80,6 +80,7 @@ def assessment_sheets(assessment: Assessment, rendered: Sequence[RenderedDocumen
         "movers": chief.movers(assessment),
         "schedule": assessment.schedule,
         "tasks": rows.tasks(assessment),
+        "weeks": rows.commissioning_weeks(assessment),
         "matrix": rows.matrix(assessment),
         "values": rows.values(assessment),
         "evidence": rows.evidence(assessment),

@@ -136,6 +136,22 @@ def tasks(assessment: Assessment) -> tuple[tuple[str, ...], ...]:
     )  # fmt: skip
 
 
+def commissioning_weeks(assessment: Assessment) -> tuple[tuple[str, str, str, str, str, str], ...]:
+    """Return hours of commissioning by week: week of, who, wanted, there, missing, tasks that want them."""
+    schedule = assessment.schedule
+    if schedule is None:
+        return ()
+    titles = {task.id: task.title for task in schedule.tasks}
+    return tuple(
+        (
+            each.week_of.isoformat(), each.who, f"{each.needed_h:.0f} h", f"{each.free_h:.0f} h",
+            f"{each.missing_h:.0f} h" if each.missing_h else "",
+            "; ".join(titles.get(task, task) for task in each.tasks),
+        )
+        for each in schedule.by_week
+    )  # fmt: skip
+
+
 def values(assessment: Assessment) -> tuple[tuple[str, tuple[tuple[str, str, str, str, str], ...]], ...]:
     """Return item -> values not merely stated: name, number, basis, descent, method."""
     by_item: dict[str, list[tuple[str, str, str, str, str]]] = {}

@@ -7,6 +7,7 @@ from datetime import date
 from readiness.assessment.assessment import assess
 from readiness.assessment.records import Assessment
 from readiness.outputs import gap_list
+from readiness.outputs.calendar_file import calendar_files
 from readiness.outputs.charts import make_charts
 from readiness.outputs.contract import to_json
 from readiness.outputs.documents import render_bodies
@@ -46,6 +47,7 @@ def make_all(assessment: Assessment, program: Program, as_of: date, say: Callabl
     }
     sheet = survey_sheet(assessment)
     files |= {SURVEY_SHEET: sheet} if sheet is not None else {}
+    files |= calendar_files(assessment)
     say("drawing")
     pictures = {**make_pictures(assessment), **make_charts(assessment)}
     say("writing documents")

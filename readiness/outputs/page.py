@@ -9,7 +9,7 @@ from markupsafe import Markup
 
 from readiness.assessment.records import Assessment
 from readiness.outputs import page_rows
-from readiness.outputs.assessment_rows import KNOWN_WORDS, short_item
+from readiness.outputs.assessment_rows import KNOWN_WORDS, commissioning_weeks, short_item
 from readiness.outputs.contract import CAUTION, INVENTED
 from readiness.outputs.words import VERDICT_SENTENCES, blocking, chosen_row, value_title, with_unit
 from readiness.resources import folder, template_file
@@ -45,6 +45,7 @@ def make_page(assessment: Assessment, pictures: Mapping[str, str]) -> bytes:
         barriers=page_rows.barriers(assessment),
         road=page_rows.road(assessment.schedule),
         movers=page_rows.movers(assessment.schedule),
+        weeks=commissioning_weeks(assessment),
         excepted=[finding for finding in assessment.findings if finding.outcome == "excepted"],
         topics=page_rows.requirements(assessment),
         how_known=KNOWN_WORDS,
