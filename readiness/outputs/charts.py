@@ -1,17 +1,17 @@
 """Charts of profiles, of the choice of distance and tilt, and of the road; legible without colour."""
 
-import io
-import re
 from collections.abc import Callable
 from datetime import date
 from typing import Any
 
 from readiness.assessment.records import Assessment, Value
+from readiness.outputs.chart_making import figure_of, svg_of
 from readiness.outputs.lookup import Lookup
+from readiness.outputs.session_chart import draw_session
 from readiness.outputs.words import with_unit
 from readiness.quantities import Table
 
-_SIZE_IN = (6.5, 3.6)
+_HEIGHT_IN = 3.6
 
 
 def make_charts(assessment: Assessment) -> dict[str, str]:
@@ -21,6 +21,7 @@ def make_charts(assessment: Assessment) -> dict[str, str]:
         "profile-over-height": _profile_over_height,
         "profile-across": _profile_across,
         "distance-and-tilt": _distance_and_tilt,
+        "session-timeline": draw_session,
         "road": _road,
     }
     drawn = {name: maker(lookup) for name, maker in makers.items()}
@@ -38,26 +39,8 @@ def _number(lookup: Lookup, name: str) -> float | None:
 
 
 def _figure() -> tuple[Any, Any]:
-    from matplotlib import rc_context
-    from matplotlib.figure import Figure
-
-    with rc_context({"font.family": "DejaVu Sans", "font.size": 9}):
-        figure = Figure(figsize=_SIZE_IN, layout="constrained")
-        return figure, figure.add_subplot()
-
-
-def _svg(figure: Any, name: str, title: str, words: str) -> str:
-    from matplotlib import rc_context
-
-    stream = io.StringIO()
-    with rc_context({"svg.fonttype": "none", "svg.hashsalt": name, "font.family": "DejaVu Sans"}):
-        figure.savefig(stream, format="svg", metadata={"Date": None, "Creator": None})
-    text = stream.getvalue()
-    text = text[text.index("<svg") :]
-    text = re.sub(r"<metadata>.*?</metadata>", "", text, flags=re.DOTALL)
-    text = re.sub(r'(id="|url\(#|href="#)', rf"\1{name}-", text)
-    head = f"<title>{title}</title><desc>{words}</desc>"
-    return re.sub(r"(<svg[^>]*>)", lambda found: found[1] + head, text, count=1)
+    figure, (axes,) = figure_of(1, height_in=_HEIGHT_IN)
+    return figure, axes
 
 
 def _limits(axes: Any, half_cm: float, percent: float, centre: float) -> None:
@@ -98,7 +81,7 @@ def _profile_over_height(lookup: Lookup) -> str | None:
         f"{_said(lookup, 'arrangement.study_tilt_deg')}; dashed lines are the limits. "
         "Curve and band are predicted."
     )
-    return _svg(figure, "profile-over-height", "Dual field over the height of the patient", words)
+    return svg_of(figure, "profile-over-height", "Dual field over the height of the patient", words)
 
 
 def _said(lookup: Lookup, name: str) -> str:
@@ -124,7 +107,7 @@ def _profile_across(lookup: Lookup) -> str | None:
     words = (
         "Dual field across the patient; dashed lines are the limits. Distance, not tilt, evens it. Predicted."
     )
-    return _svg(figure, "profile-across", "Dual field across the patient", words)
+    return svg_of(figure, "profile-across", "Dual field across the patient", words)
 
 
 def _distance_and_tilt(lookup: Lookup) -> str | None:
@@ -153,7 +136,7 @@ def _distance_and_tilt(lookup: Lookup) -> str | None:
     axes.set(xlabel="plane distance [cm]", ylabel="tilt [°]")
     axes.legend(loc="upper right", frameon=False)
     words = "Distances and tilts at which the predicted dual field keeps its limits, and the plan."
-    return _svg(figure, "distance-and-tilt", "Plane distance and tilt", words)
+    return svg_of(figure, "distance-and-tilt", "Plane distance and tilt", words)
 
 
 def _below(entry: object, limit: float) -> bool:
@@ -180,4 +163,4 @@ def _road(lookup: Lookup) -> str | None:
     words = (
         "Tasks from start to finish; dark bars lie on the critical path; the dashed line is the wanted date."
     )
-    return _svg(figure, "road", "Road to the first patient", words)
+    return svg_of(figure, "road", "Road to the first patient", words)

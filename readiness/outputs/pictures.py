@@ -6,6 +6,7 @@ from typing import Any
 
 from readiness.assessment.records import Assessment, Value
 from readiness.outputs.barrier_picture import draw_barriers
+from readiness.outputs.body_picture import draw_body
 from readiness.outputs.drawing import drawn, numbers, points, said
 from readiness.outputs.lookup import Lookup
 
@@ -30,6 +31,7 @@ def make_pictures(assessment: Assessment) -> dict[str, str]:
         "room-plan": _plan(lookup),
         "room-elevation": _elevation(lookup),
         "barriers": draw_barriers(lookup),
+        "in-vivo-body": draw_body(lookup),
         "six-positions": _positions() if lookup.technique in ("", "six-position") else None,
     }
     return {name: svg for name, svg in found.items() if svg is not None}

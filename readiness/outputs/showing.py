@@ -90,16 +90,18 @@ class Showing:
         self.shown[name] = None
         return tuple(tuple(_cell(entry) for entry in row) for row in found.value.rows)
 
-    def tables(self, name: str, title: str) -> Markup:
-        """Return a table of every item in scope that has it, each under its title."""
+    def tables(self, name: str, title: str, columns: str = "") -> Markup:
+        """Return a table, whole or some columns, of every item in scope that has it, under its title."""
         kind = name.partition(".")[0]
         parts = []
         for item in self._lookup.items(kind):
             found = self._lookup.get(name, item)
             if isinstance(found, Value) and isinstance(found.value, Table):
                 self.shown[name] = None
-                heads = [_column_words(column) for column in found.value.columns]
-                cells = [[plain(_cell(entry)) for entry in row] for row in found.value.rows]
+                wanted = columns.split() or found.value.columns
+                heads = [_column_words(column) for column in wanted]
+                entries = zip(*(found.value.column(column) for column in wanted), strict=True)
+                cells = [[plain(_cell(entry)) for entry in row] for row in entries]
                 parts.append(f"<h3>{plain(self._lookup.text_of(title, item))}</h3>")
                 parts.append(html_table(heads, cells, "list many" if len(heads) >= MANY else "list"))
                 parts.append(f'<p class="basis-line">{plain(found.basis)}</p>')

@@ -2,6 +2,7 @@
 
 import math
 import re
+from dataclasses import replace
 from datetime import date
 from pathlib import Path
 from xml.etree import ElementTree
@@ -12,6 +13,7 @@ from readiness.assessment.records import Assessment
 from readiness.outputs.making import assessed
 from readiness.outputs.pictures import _POSITIONS, make_pictures
 from readiness.program.reading import read_folder
+from readiness.quantities import Table
 
 SVG = "{http://www.w3.org/2000/svg}"
 SAMPLE = Path(__file__).resolve().parents[2] / "sample_program"
@@ -26,7 +28,7 @@ def sample() -> Assessment:
 def test_drawings_of_the_sample(sample: Assessment) -> None:
     """Plan, elevation and positions are drawn, each with a title and a description."""
     drawn = make_pictures(sample)
-    assert {"room-plan", "room-elevation", "barriers", "six-positions"} == set(drawn)
+    assert {"room-plan", "room-elevation", "barriers", "in-vivo-body", "six-positions"} == set(drawn)
     for svg in drawn.values():
         root = ElementTree.fromstring(svg)
         assert root.find("{http://www.w3.org/2000/svg}title").text  # type: ignore[union-attr]
@@ -66,6 +68,28 @@ def test_bars_are_parts_of_the_goal(sample: Assessment) -> None:
     texts = [each.text for each in root.iter(f"{SVG}text")]
     assert 1 == texts.count("no prediction: survey in the mode")
     assert {"Office west of vault A", "Door of vault A"} <= set(texts)
+
+
+def test_the_body_names_every_site_once(sample: Assessment) -> None:
+    """Each planned site has a number on the outline and a line beside it; without readings nothing is found."""
+    root = ElementTree.fromstring(make_pictures(sample)["in-vivo-body"])
+    (sites,) = [each.value for each in sample.values if each.name == "in_vivo.sites"]
+    numbers = [each.text for each in root.iter(f"{SVG}text") if each.get("font-size") == "9"]
+    assert sorted(map(str, range(1, len(sites) + 1))) == sorted(numbers)  # type: ignore[type-var]
+    spans = [each.text for each in root.iter(f"{SVG}tspan") if each.text]
+    assert {"Umbilicus", "93 to 107", "no range"} <= set(spans)
+    assert "found" not in root.find(f"{SVG}desc").text  # type: ignore[union-attr, operator]
+
+
+def test_readings_stand_beside_the_body(sample: Assessment) -> None:
+    """Mean, spread and action in words for a site that was read; a site without readings says so."""
+    (expected,) = [each for each in sample.values if each.name == "in_vivo.expected_doses"]
+    columns = ("site", "prescription_percent", "sd_percent", "outcome")
+    table = Table(columns, (("umbilicus", 98.24, 2.31, "no action"), ("sole", 61.0, 4.0, "low: a boost is considered")))
+    readings = replace(expected, name="in_vivo.site_results", value=table, basis="measured")
+    drawn = make_pictures(replace(sample, values=(*sample.values, readings)))["in-vivo-body"]
+    spans = [each.text for each in ElementTree.fromstring(drawn).iter(f"{SVG}tspan")]
+    assert {"98.2 ± 2.3; no action", "61 ± 4; low", "no complete reading"} <= set(spans)
 
 
 def test_same_drawings_every_time(sample: Assessment) -> None:

@@ -1,6 +1,7 @@
 """The program's own choices: courses, plans, the chosen arrangement, tasks and costs."""
 
 from collections.abc import Iterator, Mapping
+from functools import cache
 
 from readiness.errors import Problem
 from readiness.program.items import Item, Program
@@ -100,12 +101,28 @@ def closed_dates(program: Program) -> Iterator[Problem]:
 
 
 def countries(program: Program) -> Iterator[Problem]:
-    """A country has a code of two letters."""
+    """A country has a code of two letters whose public holidays are known."""
     for item in program.of_kind("program"):
         code = word(item, "holidays_country")
-        if code is not None and not (len(code) == 2 and code.isalpha() and code.isascii()):
+        if code is None:
+            continue
+        if not (len(code) == 2 and code.isalpha() and code.isascii()):
             message = f"write the two-letter code of the country, not {code}"
             yield impossible(item, "holidays_country", message)
+        elif code not in _known_countries():
+            hint = f" (did you mean {code.upper()}?)" if code.upper() in _known_countries() else ""
+            message = (
+                f"the public holidays of {code} are not known{hint}; write the two letters of ISO 3166-1 in "
+                "capitals, or leave the country out and list the days under closed_dates"
+            )
+            yield impossible(item, "holidays_country", message)
+
+
+@cache
+def _known_countries() -> frozenset[str]:
+    import holidays  # here, because few programs name a country and the import costs time
+
+    return frozenset(holidays.list_supported_countries())
 
 
 def arrangements(program: Program) -> Iterator[Problem]:

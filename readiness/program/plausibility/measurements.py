@@ -10,6 +10,7 @@ from readiness.units import printed
 
 MEASUREMENT = "measurement"
 _PROFILES = {"angle-sweep", "dual-profile", "single-profile", "depth-dose-single", "depth-dose-composite"}
+_HUNDREDTH = 0.03  # readings below this part of the prescription were read in another unit
 _POSITIONS = ("tilt_deg", "height_cm", "across_cm", "depth_mm", "angle_deg")
 
 
@@ -75,4 +76,22 @@ def spans(program: Program) -> Iterator[Problem]:
             yield question(item, "table", message)
 
 
-CHECKS: tuple[Check, ...] = (gaps, media, rooms, positions, spans)
+def in_vivo_units(program: Program) -> Iterator[Problem]:
+    """Readings that all lie a hundredfold below or above what was prescribed have another unit."""
+    for item in program.of_kind(MEASUREMENT):
+        readings, prescribed = table(item, "table"), number(item, "prescribed_per_cycle_gy")
+        if word(item, "kind") != "in-vivo-readings" or readings is None or not prescribed:
+            continue
+        found = (each for each in readings.column("dose_cgy") if isinstance(each, int | float))
+        doses = sorted(each for each in found if each > 0)
+        if not doses:
+            continue
+        middle, whole = doses[len(doses) // 2], 100 * prescribed
+        said = f"the middle reading is {printed(middle)} cGy of {printed(whole)} cGy a cycle"
+        if middle < _HUNDREDTH * whole:
+            yield impossible(item, "table", f"{said}; these are gray under a column in cGy")
+        elif middle > whole / _HUNDREDTH:
+            yield impossible(item, "table", f"{said}; is their unit smaller than cGy?")
+
+
+CHECKS: tuple[Check, ...] = (gaps, media, rooms, positions, spans, in_vivo_units)
