@@ -64,6 +64,7 @@ def calendar_of_course(
     break_after_cycle: int,
     break_weeks: float,
     measured_cycles: Sequence[float] | None,
+    missed_dates: Sequence[date] | None,
 ) -> CourseCalendar:
     """Return a course that starts with the first patient; dose is measured in the first cycle at least."""
     return course_calendar(
@@ -77,8 +78,16 @@ def calendar_of_course(
         dose_per_cycle_gy=dose_per_cycle_gy,
         break_after_cycle=break_after_cycle,
         break_weeks=break_weeks,
+        missed_days=missed_dates or (),
         in_vivo_cycles=(1,) if measured_cycles is None else [round(cycle) for cycle in measured_cycles],
     )
+
+
+def boosts_of_course(
+    *, sessions: Table, boosts: Table, days: TreatmentDays, missed_dates: Sequence[date] | None
+) -> Table:
+    """Return the boosts of a course day by day."""
+    return boost_calendar(sessions=sessions, boosts=boosts, days=days, missed_days=missed_dates or ())
 
 
 def years_without_days_off(
@@ -102,6 +111,7 @@ _CALENDAR = {
     "break_after_cycle": "course.break_after_cycle",
     "break_weeks": "course.break_weeks",
     "measured_cycles": "course.measured_cycles?",
+    "missed_dates": "course.missed_dates?",
 }
 
 
@@ -191,6 +201,7 @@ DEFINITIONS: tuple[Definition, ...] = (
     _part("course.first_date", "First session, if the course is the first patient's.", "first_date"),
     _part("course.end_date", "Last session, if the course is the first patient's.", "end_date"),
     _part("course.duration_weeks", "First to last session, days off included.", "duration_weeks"),
+    _part("course.made_up_sessions", "Sessions that make up for missed days.", "made_up_sessions"),
     _part("course.longest_gap_days", "Longest time between two sessions of one cycle.", "longest_gap_days"),
     Definition(
         "course.years_without_days_off",
@@ -208,11 +219,12 @@ DEFINITIONS: tuple[Definition, ...] = (
     Definition(
         "course.boost_calendar",
         "Boosts of the course day by day.",
-        by=boost_calendar,
+        by=boosts_of_course,
         takes={
             "sessions": "course.calendar",
             "boosts": "course.boosts",
             "days": "program.treatment_days",
+            "missed_dates": "course.missed_dates?",
         },
         source="practice",
         known="practice",

@@ -144,3 +144,23 @@ def test_shields_of_each_session_and_what_they_leave_open() -> None:
     assert "eyes-external" == days[18]["shields"]
     use = {row["organ"]: row["open_dose_gy"] for row in value(of, "course.shield_use").value.records()}
     assert {"eyes-external": 0.0, "nails": 18.0} == use
+
+
+def test_a_missed_day_is_made_up_before_anything_else() -> None:
+    """Tuesday missed: Wednesday gets the day-2 fields of cycle 1, and cycle 2 waits for a pair of days."""
+    of = described(course={"missed_dates": (date(2027, 5, 18),)})
+    second, third = list(value(of, "course.calendar").value.records())[1:3]
+    assert ("2027-05-19", 1, "PA, RAO, LAO", True) == tuple(
+        second[name] for name in ("date", "cycle", "fields", "made_up")
+    )
+    assert ("2027-05-24", 2, "AP, RPO, LPO") == tuple(third[name] for name in ("date", "cycle", "fields"))
+    assert 1 == value(of, "course.made_up_sessions").value
+    assert 0 == value(described(), "course.made_up_sessions").value
+
+
+def test_no_boost_on_a_missed_day() -> None:
+    """Without the missed day a boost would stand on it."""
+    day = date(2027, 5, 27)
+    assert day.isoformat() in value(described(), "course.boost_calendar").value.column("date")
+    moved = described(course={"missed_dates": (day,)})
+    assert day.isoformat() not in value(moved, "course.boost_calendar").value.column("date")
