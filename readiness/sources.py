@@ -39,3 +39,16 @@ def publications() -> Mapping[str, Publication]:
 def exists(key: str) -> bool:
     """Return whether a source key is known."""
     return key in publications()
+
+
+def keys_in(source: str) -> tuple[str, ...]:
+    """Return the keys of a source that may name several, set off by commas."""
+    return tuple(key for key in source.split(", ") if key)
+
+
+def unknown_in(source: str, known: str) -> str:
+    """Return what a source names that does not exist, key or word of how it is known, else nothing."""
+    wrong = [key for key in keys_in(source) if not exists(key)]
+    if known not in HOW_KNOWN and (source or known):
+        wrong.append(known or "how it is known")
+    return ", ".join(wrong)

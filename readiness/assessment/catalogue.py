@@ -16,6 +16,7 @@ from readiness.assessment.definition import Definition, Take, parse_take
 from readiness.assessment.kinds import Kinds, kinds
 from readiness.errors import CatalogueError
 from readiness.program.measurement_kinds import measurement_kind, measurement_kinds
+from readiness.sources import unknown_in
 from readiness.units import unit_ending, words_of
 
 
@@ -94,6 +95,7 @@ def build(entries: tuple[Definition, ...], known: Kinds, limits: Mapping[str, Cr
         if definition.measured
     }
     found = Catalogue(known, definitions, limits, takes, measured)
+    _prove_sources(found)
     for definition in definitions.values():
         _prove(definition, found)
     _prove_no_circle(found)
@@ -104,10 +106,22 @@ def _parsed(takes: Mapping[str, str]) -> tuple[tuple[str, Take], ...]:
     return tuple((keyword, parse_take(text)) for keyword, text in takes.items())
 
 
+def _prove_sources(known: Catalogue) -> None:
+    for criterion in known.criteria.values():
+        if wrong := unknown_in(criterion.source, criterion.known):
+            raise CatalogueError(f"{criterion.name}: its source names what does not exist: {wrong}")
+    for name, field in known.kinds.described.fields.items():
+        assumed = field.assumed
+        if assumed is not None and (wrong := unknown_in(assumed.source, assumed.known)):
+            raise CatalogueError(f"field {name}: its source names what does not exist: {wrong}")
+
+
 def _prove(definition: Definition, known: Catalogue) -> None:
     name = definition.name
     if not definition.meaning.endswith("."):
         raise CatalogueError(f"value {name}: its meaning is not a sentence")
+    if wrong := unknown_in(definition.source, definition.known):
+        raise CatalogueError(f"value {name}: its source names what does not exist: {wrong}")
     if definition.of and definition.of not in known.definitions:
         raise CatalogueError(f"value {name} takes a part of {definition.of}, which is not defined")
     if definition.otherwise:

@@ -16,7 +16,7 @@ from readiness.outputs.words import (
     outcome_words,
     with_unit,
 )
-from readiness.sources import HOW_KNOWN, publications
+from readiness.sources import HOW_KNOWN, keys_in, publications
 from readiness.units import printed
 
 KNOWN_WORDS = tuple(HOW_KNOWN.items())
@@ -202,8 +202,8 @@ def sources(assessment: Assessment, rendered: Sequence[RenderedDocument]) -> tup
             rules.setdefault(source.key, {})[rule.id] = None
             known.setdefault(source.key, {})[source.known] = None
     for value in assessment.values:
-        if value.source:
-            known.setdefault(value.source, {})[value.known] = None
+        for key in keys_in(value.source):
+            known.setdefault(key, {})[value.known] = None
     for document in rendered:
         for key in _SOURCE_LINK.findall(document.html_body):
             documents.setdefault(key, {})[document.number] = None

@@ -9,7 +9,7 @@ from readiness.errors import UsageError
 from readiness.outputs.contract import CAUTION
 from readiness.outputs.words import chosen_row, with_unit
 from readiness.quantities import Table
-from readiness.sources import HOW_KNOWN, publications
+from readiness.sources import HOW_KNOWN
 from readiness.units import printed, unit_of, words_of
 
 _DEEPEST = 8
@@ -105,9 +105,7 @@ def one_line(value: Value) -> str:
     if value.where is not None and value.where.file:
         text += f", {value.where}"
     if value.source:
-        publication = publications().get(value.source)
-        cited = value.source if publication is None else publication.key
-        text += f"; {cited} ({value.known}: {HOW_KNOWN.get(value.known, value.known)})"
+        text += f"; {value.source} ({value.known}: {HOW_KNOWN.get(value.known, value.known)})"
     return text + "]"
 
 

@@ -216,6 +216,9 @@ def test_a_measurement_older_than_a_change_does_not_count() -> None:
         (Definition("room.x_cm", "X.", by=lambda *, x_cm: x_cm, takes={"x_cm": "room.y_cm"}), "does not exist"),
         (Definition("room.x_cm", "X", by=lambda: 1), "not a sentence"),
         (Definition("room.x_cm", "X."), "says nothing"),
+        (Definition("room.x_cm", "X.", by=lambda: 1, source="tg-25, nowhere", known="memory"), "not exist: nowhere"),
+        (Definition("room.x_cm", "X.", by=lambda: 1, source="tg-25", known="heard"), "not exist: heard"),
+        (Definition("room.x_cm", "X.", by=lambda: 1, source="tg-25"), "not exist: how it is known"),
         (Definition("nothing.x_cm", "X.", by=lambda: 1), "kind that does not exist"),
     ],
 )  # fmt: skip
