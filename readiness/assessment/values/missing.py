@@ -1,0 +1,191 @@
+"""What is asked for together and answered one by one: a rule asks for nothing missing and names what is."""
+
+import inspect
+from collections.abc import Callable, Mapping
+
+from readiness.assessment.definition import Definition, derived
+
+NOTHING = "nothing"
+
+
+def lacking(words: Mapping[str, str]) -> Callable[..., str]:
+    """Return a function that names, of answers by keyword, those that are no."""
+
+    def missing(**answers: bool) -> str:
+        """Return the words of every answer that is no, nothing if there is none."""
+        return ", ".join(words[key] for key, answer in answers.items() if not answer) or NOTHING
+
+    missing.__signature__ = inspect.Signature(  # type: ignore[attr-defined]
+        [inspect.Parameter(key, inspect.Parameter.KEYWORD_ONLY, annotation=bool) for key in words]
+    )
+    return missing
+
+
+def _missing(name: str, meaning: str, words: Mapping[str, str]) -> Definition:
+    """Return the list of what is not there; ``words`` name each field, which is yes or no."""
+    kind = name.partition(".")[0]
+    fields = {entry if "." in entry else f"{kind}.{entry}": said for entry, said in words.items()}
+    by_key = {entry.partition(".")[2]: said for entry, said in fields.items()}
+    return derived(name, meaning, lacking(by_key), {entry.partition(".")[2]: entry for entry in fields})
+
+
+def feet_and_sound(*, camera_shows_feet: bool, intercom: str) -> str:
+    """Return what is missing, beside two views, to see and hear a patient who is alone in the room."""
+    found = {
+        "a view of the feet": camera_shows_feet,
+        "two-way sound": intercom == "two-way",
+    }
+    return ", ".join(words for words, there in found.items() if not there) or NOTHING
+
+
+def against_falls(*, rails: bool, grip: bool, non_slip: bool, steps: int, steps_needed: int) -> str:
+    """Return what a stand lacks of what keeps a patient from falling."""
+    found = {
+        "rails": rails,
+        "a grip in every position": grip,
+        "a surface that does not slip": non_slip,
+        f"steps ({steps} of {steps_needed})": steps >= steps_needed,
+    }
+    return ", ".join(words for words, there in found.items() if not there) or NOTHING
+
+
+def control_of_mode(*, own_key: bool, enabled_by: str) -> str:
+    """Return what is missing before the mode can be entered on purpose only; who enables it must be known."""
+    return NOTHING if own_key and enabled_by else "a key or code of its own"
+
+
+def rules_of_documents(
+    *, review_interval_months: float, longest_months: float, retention_years: float, read_and_understood: bool
+) -> str:
+    """Return what is missing in the control of documents; how long records are kept must be known."""
+    found = {
+        f"review every {longest_months:g} months": review_interval_months <= longest_months,
+        "a time for which records are kept": retention_years > 0,
+        "signatures that each revision was read": read_and_understood,
+    }
+    return ", ".join(words for words, there in found.items() if not there) or NOTHING
+
+
+def rules_when_something_fails(
+    *, interrupted_cycle: bool, machine_down: bool, physicist_absent: bool, lapse_days: float
+) -> str:
+    """Return which rules for the day when something fails are missing; the days of a lapse must be known."""
+    found = {
+        "an interrupted cycle": interrupted_cycle,
+        "a machine that fails between the days of a cycle": machine_down,
+        "an absent physicist": physicist_absent,
+        "a lapse": lapse_days > 0,
+    }
+    return ", ".join(words for words, there in found.items() if not there) or NOTHING
+
+
+DEFINITIONS: tuple[Definition, ...] = (
+    derived(
+        "stand.fall_protection_missing",
+        "What it lacks of what keeps a patient from falling.",
+        against_falls,
+        {
+            "rails": "stand.rails",
+            "grip": "stand.grip",
+            "non_slip": "stand.non_slip",
+            "steps": "stand.steps",
+            "steps_needed": "stand.steps_needed",
+        },
+    ),
+    derived(
+        "room.watching_missing",
+        "What is missing, beside two camera views, to see and hear the patient.",
+        feet_and_sound,
+        {
+            "camera_shows_feet": "room.camera_shows_feet",
+            "intercom": "room.intercom",
+        },
+    ),
+    derived(
+        "beam.mode_control_missing",
+        "What is missing before the mode can be entered on purpose only.",
+        control_of_mode,
+        {"own_key": "beam.mode_own_key", "enabled_by": "beam.mode_enabled_by"},
+    ),
+    derived(
+        "document_control.rules_missing",
+        "What is missing in the control of documents.",
+        rules_of_documents,
+        {
+            "review_interval_months": "document_control.review_interval_months",
+            "longest_months": "criterion.review_interval_months",
+            "retention_years": "document_control.retention_years",
+            "read_and_understood": "document_control.read_and_understood",
+        },
+    ),
+    derived(
+        "contingency.rules_missing",
+        "Rules that are missing for the day when something fails.",
+        rules_when_something_fails,
+        {
+            "interrupted_cycle": "contingency.interrupted_cycle_rule",
+            "machine_down": "contingency.machine_down_rule",
+            "physicist_absent": "contingency.physicist_absent_rule",
+            "lapse_days": "program.lapse_days",
+        },
+    ),
+    _missing(
+        "room.safety_devices_missing",
+        "Safety devices that the room lacks.",
+        {
+            "last_person_out_button": "a search button",
+            "emergency_off_reachable": "an emergency off at the stand",
+            "beam_on_light": "a beam-on light inside and outside",
+        },
+    ),
+    _missing(
+        "patient_safety.stop_rule_missing",
+        "What the stop rule lacks.",
+        {
+            "stop_rule": "anyone may stop, and when the beam must be stopped",
+            "lost_view_stops_beam": "beam off when sight or sound is lost",
+        },
+    ),
+    _missing(
+        "patient_safety.dignity_missing",
+        "What is missing for the patient's dignity.",
+        {"no_recording": "no recording and shaded screens", "chaperone": "the offer of a chaperone"},
+    ),
+    _missing(
+        "clinical.course_record_missing",
+        "What is missing of the record that goes along with a course.",
+        {
+            "lymphoma_board": "decision at a lymphoma board",
+            "skin_score_and_photographs": "skin score and photographs",
+            "lifetime_skin_dose_record": "earlier radiation to the skin",
+        },
+    ),
+    _missing(
+        "in_vivo.occasions_missing",
+        "Occasions on which the dose on the patient is not measured.",
+        {"first_cycle_measured": "the first full cycle", "repeat_after_change": "the cycle after a change"},
+    ),
+    _missing(
+        "in_vivo.holds_missing",
+        "Holds until readings are seen that are missing.",
+        {"day_one_gate": "before day 2 of the first cycle", "signed_by_both": "before the next cycle"},
+    ),
+    _missing(
+        "records_security.measures_missing",
+        "What is missing to keep patients' records whole and private.",
+        {
+            "access_limited": "access for named roles only",
+            "photographs_protected": "photographs in the clinical record only",
+            "in_vivo_readings_in_record": "in-vivo readings in the patient's record",
+        },
+    ),
+    _missing(
+        "quality.chart_checks_missing",
+        "Checks of the chart that are not made.",
+        {
+            "chart_check_before_start": "before the first session",
+            "chart_check_weekly": "every week",
+            "chart_check_at_end": "at the end",
+        },
+    ),
+)
