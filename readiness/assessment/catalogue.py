@@ -127,7 +127,10 @@ def _prove(definition: Definition, known: Catalogue) -> None:
     if definition.otherwise:
         take = Take("one", definition.otherwise, optional=False)
         _prove_take(name, definition.kind, name, take, known, ())
-    if not (definition.by or definition.of or definition.measured or definition.otherwise):
+    for stands_for in definition.by_technique.values():
+        _prove_take(name, definition.kind, name, Take("one", stands_for, optional=False), known, ())
+    found_by = (definition.by, definition.of, definition.measured, definition.otherwise)
+    if not (any(found_by) or definition.by_technique):
         raise CatalogueError(f"value {name} says nothing of how it is found")
     if definition.by:
         _prove_takes(name, definition.kind, definition.by, known.takes[name], known, ())
@@ -176,6 +179,7 @@ def _needs(name: str, known: Catalogue) -> Iterator[str]:
     if definition is None:
         return
     yield from (each for each in (definition.of, definition.otherwise) if each)
+    yield from definition.by_technique.values()
     for _, take in (*known.takes.get(name, ()), *known.measured_takes.get(name, ())):
         if take.form == "rows":
             yield from (f"{take.name}.{column}" for column, _ in take.columns)

@@ -62,6 +62,13 @@ def _owner_of(graph: Graph, name: str, ref: Ref) -> Ref:
 
 def _rests_on(graph: Graph, definition: Definition, got: Got, ref: Ref) -> list[tuple[str, Ref]]:
     """Return what a value is worked out from; where a prediction stands in, what it stands in for."""
+    if definition.by_technique:
+        technique = graph.get("arrangement.technique", ref)
+        return [
+            (name, ref)
+            for word, name in definition.by_technique.items()
+            if isinstance(technique, Value) and word == technique.value
+        ]
     if isinstance(got, Value) and [each.keyword for each in got.inputs] != ["otherwise"]:
         return [] if definition.model else [(each.name, each.item) for each in got.inputs]
     return [(take.name, ref) for _, take in graph.catalogue.takes[definition.name] if take.form == "one"]

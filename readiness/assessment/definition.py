@@ -48,6 +48,7 @@ class Definition:
         of, part: Take an attribute of the record that another (internal) value holds.
         otherwise: Value that stands in, with its own basis, where this one cannot be had: a prediction for
             what is neither measured nor stated.
+        by_technique: Technique -> value that this one is, for one question asked of all techniques.
         model: The result is a prediction whatever its inputs.
         critical: A treatment-critical number.
         internal: Holds a record for other values; never shown.
@@ -62,6 +63,7 @@ class Definition:
     of: str = ""
     part: str = ""
     otherwise: str = ""
+    by_technique: Mapping[str, str] = field(default_factory=dict)
     model: bool = False
     critical: bool = False
     internal: bool = False
@@ -79,6 +81,12 @@ class Definition:
 def derived(name: str, meaning: str, by: Callable[..., Any], takes: Mapping[str, str]) -> Definition:
     """Return a value that follows from its inputs by definition, without a source or a model of its own."""
     return Definition(name, meaning, by=by, takes=takes, source="definition", known="derived")
+
+
+def one_of_techniques(name: str, meaning: str, *, standing: str, lying: str) -> Definition:
+    """Return a value that is another one for a standing patient than for a lying one."""
+    techniques = {"six-position": standing, "rotating-platform": standing, "moving-couch": lying}
+    return Definition(name, meaning, by_technique=techniques, source="definition", known="derived")
 
 
 @dataclass(frozen=True)

@@ -96,6 +96,8 @@ class Graph(ItemIndex):
 
     def _work_out(self, name: str, ref: Ref) -> Got:
         definition = self.catalogue.definitions.get(name)
+        if definition is not None and definition.by_technique:
+            return self._by_technique(definition, ref)
         stated = self._stated(name, ref)
         claim: Got | None = stated
         if definition is not None and claim is None and (definition.by or definition.of):
@@ -164,6 +166,17 @@ class Graph(ItemIndex):
             return Gone(tuple(sorted({*own, *stands_in.causes})))
         inputs = (Input("otherwise", stands_in.name, stands_in.item),)
         return replace(stands_in, name=definition.name, item=ref, inputs=inputs)
+
+    def _by_technique(self, definition: Definition, ref: Ref) -> Got:
+        technique = self.get("arrangement.technique", ref)
+        if isinstance(technique, Gone):
+            return technique
+        stands_for = definition.by_technique.get(str(technique.value))
+        found = self.get(stands_for, ref) if stands_for else self._no_answer(definition, ref)
+        if isinstance(found, Gone):
+            return found
+        inputs = (Input("by technique", found.name, found.item),)
+        return replace(found, name=definition.name, item=ref, inputs=inputs, instead_of=None)
 
     def _run(
         self,

@@ -6,7 +6,7 @@ from datetime import date
 import pytest
 
 from readiness.assessment.causes import assumed_roots, why_not_measured
-from readiness.assessment.definition import Definition, Measured
+from readiness.assessment.definition import Definition, Measured, one_of_techniques
 from readiness.assessment.records import Gone, Input, Ref, Value
 from readiness.errors import CatalogueError, OutsideValidity
 from readiness.quantities import Table, Uncertain
@@ -313,3 +313,26 @@ def test_what_is_worked_out_from_a_prediction_asks_for_the_measurement_of_what_i
     )
     causes = why_not_measured(of, "arrangement.between_axes_deg", Ref("arrangement", "x"))
     assert ["Measure angle sweep for arrangement x."] == [cause.words for cause in causes]
+
+
+def test_one_question_is_answered_by_the_technique_of_each_arrangement() -> None:
+    """A standing arrangement is asked of its stand, a lying one of its couch; what is missing is named there."""
+    load = one_of_techniques(
+        "arrangement.tested_load_kg",
+        "Tested load.",
+        standing="stand.tested_load_kg",
+        lying="couch.tested_load_kg",
+    )
+    made = tuple(
+        item("arrangement", name, {"stand": "s", "couch": "c"}, technique=technique)
+        for name, technique in (("up", "six-position"), ("turning", "rotating-platform"), ("down", "moving-couch"))
+    )
+    of = graph(program(item("stand", "s", tested_load_kg=150.0), item("couch", "c")), load, made=made)
+    for name in ("up", "turning"):
+        got = of.get("arrangement.tested_load_kg", Ref("arrangement", name))
+        assert isinstance(got, Value)
+        assert (150.0, "stated", "arrangement.tested_load_kg") == (got.value, got.basis, got.name)
+        assert ["stand.tested_load_kg"] == [each.name for each in got.inputs]
+    missing = of.get("arrangement.tested_load_kg", Ref("arrangement", "down"))
+    assert isinstance(missing, Gone)
+    assert ["couch.tested_load_kg"] == [cause.what for cause in missing.causes]
