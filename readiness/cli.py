@@ -109,10 +109,14 @@ def assess(folder: Path, as_of: date | None, as_json: bool) -> None:
 @readiness.command(epilog="Example: readiness binder sample_program --out out --as-of 2026-12-01")
 @click.argument("folder", type=_FOLDER)
 @click.option("--out", type=_FOLDER, required=True, help="Folder to write into; replaced if it is ours.")
+@click.option("--no-cache", is_flag=True, help="Lay out every page, also those printed before.")
 @_as_of
-def binder(folder: Path, out: Path, as_of: date | None) -> None:
+def binder(folder: Path, out: Path, no_cache: bool, as_of: date | None) -> None:
     """Write the binder, report page, gap list and assessment of FOLDER."""
-    _finish(commands.binder(folder, out, as_of=_day(as_of), width=_width(), say=_progress))
+    day = _day(as_of)
+    _finish(
+        commands.binder(folder, out, as_of=day, width=_width(), say=_progress, use_cache=not no_cache)
+    )
 
 
 @readiness.command(epilog="Example: readiness rules plane-distance sample_program")

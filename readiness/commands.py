@@ -107,11 +107,14 @@ def assess(folder: Path, *, as_of: date, as_json: bool, width: int) -> Answer:
     return Answer(text, NOTHING_OPEN if assessment.verdict.words == "ready" else OPEN)
 
 
-def binder(folder: Path, out: Path, *, as_of: date, width: int, say: Say) -> Answer:
+def binder(
+    folder: Path, out: Path, *, as_of: date, width: int, say: Say, use_cache: bool = True
+) -> Answer:
     """Assess and write everything in all formats."""
     from readiness.errors import ProgramProblems
     from readiness.outputs.folder import write_outputs
     from readiness.outputs.making import assessed, make_all
+    from readiness.outputs.press_cache import user_cache
     from readiness.program.reading import read_folder
 
     say("reading the program folder")
@@ -121,7 +124,7 @@ def binder(folder: Path, out: Path, *, as_of: date, width: int, say: Say) -> Ans
         assessment = assessed(program, as_of)
     except ProgramProblems as found:
         return _problems(found.problems, False)
-    made = make_all(assessment, program, as_of, say)
+    made = make_all(assessment, program, as_of, say, user_cache() if use_cache else None)
     write_outputs(out, made.files)
     lines = [f"Written to {out}:"]
     lines += [f"  {name}" for name in _main_files(made.files)]

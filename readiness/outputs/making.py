@@ -13,6 +13,7 @@ from readiness.outputs.contract import to_json
 from readiness.outputs.documents import render_bodies
 from readiness.outputs.page import make_page
 from readiness.outputs.pictures import make_pictures
+from readiness.outputs.press_cache import PrintCache
 from readiness.outputs.survey_sheet import NAME as SURVEY_SHEET
 from readiness.outputs.survey_sheet import survey_sheet
 from readiness.program.items import Program
@@ -36,8 +37,20 @@ def assessed(program: Program, as_of: date) -> Assessment:
     return assess(program, as_of, bodies)
 
 
-def make_all(assessment: Assessment, program: Program, as_of: date, say: Callable[[str], None]) -> Made:
-    """Return every output; if Pango is missing, everything but the PDFs."""
+def make_all(
+    assessment: Assessment, program: Program, as_of: date, say: Callable[[str], None],
+    kept: PrintCache | None = None,
+) -> Made:  # fmt: skip
+    """
+    Return every output; if Pango is missing, everything but the PDFs.
+
+    Args:
+        assessment: What the outputs show.
+        program: Where its texts and files come from.
+        as_of: The date in the files.
+        say: Told what is being done.
+        kept: Printed files of earlier runs; without it every page is laid out.
+    """
     from readiness.outputs import binder, press
 
     files = {
@@ -56,7 +69,7 @@ def make_all(assessment: Assessment, program: Program, as_of: date, say: Callabl
     inside = {f"program/{name}": content for name, content in sorted(program.contents.items())}
     inside |= {name: files[name] for name in ("assessment.json", "gaps.csv")}
     try:
-        files |= binder.make(assessment, rendered, inside, as_of, say)
+        files |= binder.make(assessment, rendered, inside, as_of, say, kept)
     except press.PressMissing as missing:
         files |= binder.html_files(assessment, rendered)
         return Made(files, (str(missing), "not written: binder.pdf, documents/*.pdf"))
