@@ -19,6 +19,7 @@ from readiness.assessment.records import Cause, Gone, Got, Input, Ref, Value, we
 from readiness.assessment.rounding import settled
 from readiness.errors import OutsideValidity
 from readiness.program.items import Item, Program
+from readiness.program.measurement_kinds import measurement_kind
 from readiness.quantities import Table, Uncertain
 from readiness.units import unit_of, words_of
 
@@ -346,5 +347,7 @@ class Graph(ItemIndex):
 
     def wanted(self, measured: Measured, ref: Ref, near: tuple[Cause, ...]) -> tuple[Cause, ...]:
         """Return the measurement that is asked for, and why those at hand do not count."""
-        words = f"Measure {measured.kind.replace('-', ' ')} for {ref}."
-        return tuple(sorted({Cause("measurement", measured.kind, ref, words), *near}))
+        kind = measurement_kind(measured.kind).attaches_to
+        whole = Ref(kind, self.owners(ref).get(kind, ref.id))
+        words = f"Measure {measured.kind.replace('-', ' ')} for {whole}."
+        return tuple(sorted({Cause("measurement", measured.kind, whole, words), *near}))

@@ -110,6 +110,9 @@ def _compared(rule: Rule, item: Ref, observed: Value, limit: Any, graph: Graph) 
     holds = _holds(rule.condition, observed.value, limit)
     message = say(rule, item, observed.value, limit, graph)
     outcome = "met" if holds else "not met"
+    if rule.would_do and not holds:
+        instead = graph.get(rule.would_do, item)
+        message += f" {instead.value}" if isinstance(instead, Value) else ""
     causes: tuple[Cause, ...] = ()
     if rule.basis == "measured" and observed.basis != "measured":
         causes = why_not_measured(graph, rule.subject, item)

@@ -114,7 +114,13 @@ class Clause:
 
 @dataclass(frozen=True)
 class Rule:
-    """One requirement."""
+    """
+    One requirement.
+
+    Attributes:
+        would_do: Value in words, of the same item, that follows the message where the rule is not met: what
+            would do instead, with numbers. "" where the remedy says it all.
+    """
 
     id: str
     title: str
@@ -138,6 +144,7 @@ class Rule:
     cases: Any = None
     origin: str = "shipped"
     where: Place | None = None
+    would_do: str = ""
 
     @property
     def kind(self) -> str:

@@ -25,8 +25,11 @@ _KNOWN = ("read", "memory", "practice", "derived")
 _KEYS = {
     "id", "title", "strength", "sources", "applies_when", "subject", "condition", "limit", "basis",
     "physical", "exceptable", "message", "remedy", "evidence", "owner", "task", "phase", "documents", "cases",
+    "would_do",
 }  # fmt: skip
-_REQUIRED = _KEYS - {"applies_when", "limit", "basis", "physical", "exceptable", "evidence", "documents"}
+_REQUIRED = _KEYS - {
+    "applies_when", "limit", "basis", "physical", "exceptable", "evidence", "documents", "would_do",
+}  # fmt: skip
 
 
 @cache
@@ -70,6 +73,7 @@ def _rule(entry: Mapping[str, Any], topic: str, file: str) -> Rule:
         documents=tuple(str(number) for number in entry.get("documents", ())),
         topic=topic,
         cases=_tupled(entry["cases"]),
+        would_do=entry.get("would_do", ""),
     )
 
 
@@ -94,6 +98,8 @@ def check_rule(rule: Rule, known: Catalogue, where: str) -> None:
         check_clause(clause, known, where)
         if clause.subject.partition(".")[0] not in known.kinds.reachable(rule.kind):
             raise CatalogueError(f"{where}: {clause.subject} cannot be asked of a {rule.kind}")
+    if rule.would_do and not (known.has(rule.would_do) and rule.would_do.startswith(f"{rule.kind}.")):
+        raise CatalogueError(f"{where}: {rule.would_do} is no value of a {rule.kind}")
     try:
         rule.message.format(observed="1", limit="2", item="x")
     except (KeyError, IndexError, ValueError) as error:

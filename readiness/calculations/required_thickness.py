@@ -28,6 +28,14 @@ class FittingCycles:
     patients: int | None
 
 
+@dataclass(frozen=True)
+class FittingSessions:
+    """How many sessions stay within the limit of an hour; None where photon work alone exceeds it."""
+
+    extra_tvl: float
+    sessions: int | None
+
+
 def required_thickness(*, contributions: Table, limit_usv_per_week: float) -> RequiredThickness:
     """
     Return the material that brings the sum of all contributions down to a limit.
@@ -100,6 +108,43 @@ def cycles_that_fit(
         return FittingCycles(True, None, None)
     cycles = floor(left / (added_usv_per_week / cycles_per_week) + 1e-9)
     return FittingCycles(True, cycles, floor(cycles / patient_cycles_per_week + 1e-9))
+
+
+def sessions_that_fit(
+    *,
+    usv_in_any_hour: float,
+    photon_usv_in_any_hour: float,
+    session_usv: float,
+    limit_usv_in_any_hour: float,
+) -> FittingSessions:
+    """
+    Return what the limit of an hour lacks: tenth-value layers, or how many sessions an hour may hold.
+
+    extra TVL = log10(R_h / limit); n = (limit - photon part) / dose of a session
+
+    Args:
+        usv_in_any_hour: Largest dose in 60 minutes, R_h. [µSv in any one hour]
+        photon_usv_in_any_hour: Of it from photon work beside the sessions. [µSv in any one hour]
+        session_usv: Dose of one session. [µSv]
+        limit_usv_in_any_hour: What the hour may give. [µSv in any one hour]
+
+    Returns:
+        Tenth-value layers, zero where nothing is lacking, and whole sessions.
+
+    Raises:
+        ValueError: If a dose is below zero or the limit not above it.
+
+    Source: derived.
+    """
+    if not (usv_in_any_hour >= 0.0 and photon_usv_in_any_hour >= 0.0 and session_usv >= 0.0):
+        raise ValueError("a dose must not be below zero")
+    if not limit_usv_in_any_hour > 0.0:
+        raise ValueError(f"a limit must be above zero, not {limit_usv_in_any_hour:g}")
+    missing = max(0.0, log10(usv_in_any_hour / limit_usv_in_any_hour)) if usv_in_any_hour else 0.0
+    left = limit_usv_in_any_hour - photon_usv_in_any_hour
+    if left < 0.0 or not session_usv:
+        return FittingSessions(missing, None)
+    return FittingSessions(missing, floor(left / session_usv + 1e-9))
 
 
 def _added_cm(contributions: Table, limit: float, material: str) -> float:

@@ -152,6 +152,7 @@ def test_a_later_phase_is_due_later() -> None:
         ({"subject": "room.ceiling"}, "does not exist"), ({"condition": "is_big"}, "does not exist"),
         ({"limit": "high"}, "does not fit"), ({"strength": "shall"}, "none of"),
         ({"message": "The {ceiling} is low."}, "hole"),
+        ({"would_do": "stand.width_cm"}, "no value of a room"),
         ({"applies_when": (Clause("stand.width_cm", "at_least", 1),)}, "cannot be asked"),
     ],
 )  # fmt: skip

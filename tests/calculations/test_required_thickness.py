@@ -4,7 +4,11 @@ from math import log10
 
 import pytest
 
-from readiness.calculations.required_thickness import cycles_that_fit, required_thickness
+from readiness.calculations.required_thickness import (
+    cycles_that_fit,
+    required_thickness,
+    sessions_that_fit,
+)
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
@@ -92,3 +96,26 @@ def test_impossible_cycles(name):
     """Numbers below zero are refused."""
     with pytest.raises(ValueError, match="must"):
         cycles_that_fit(**{**FIT, name: -1.0})
+
+
+HOUR = {"photon_usv_in_any_hour": 2.0, "session_usv": 6.0, "limit_usv_in_any_hour": 20.0}
+
+
+def test_sessions_of_an_hour():
+    """Two from photons and 6 a session leave three sessions below 20; nothing is lacking at 20."""
+    at_limit = sessions_that_fit(usv_in_any_hour=20.0, **HOUR)
+    assert (0.0, 3) == (at_limit.extra_tvl, at_limit.sessions)
+    assert pytest.approx(1.0) == sessions_that_fit(usv_in_any_hour=200.0, **HOUR).extra_tvl
+
+
+def test_photon_work_alone_above_the_limit_leaves_no_session():
+    """Fewer sessions do not help where photon work exceeds the limit of the hour by itself."""
+    assert sessions_that_fit(usv_in_any_hour=30.0, **{**HOUR, "photon_usv_in_any_hour": 25.0}).sessions is None
+
+
+def test_negative_doses_of_an_hour_are_refused():
+    """A dose below zero or a limit of zero is refused."""
+    with pytest.raises(ValueError, match="below zero"):
+        sessions_that_fit(usv_in_any_hour=-1.0, **HOUR)
+    with pytest.raises(ValueError, match="above zero"):
+        sessions_that_fit(usv_in_any_hour=1.0, **{**HOUR, "limit_usv_in_any_hour": 0.0})

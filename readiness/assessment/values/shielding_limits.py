@@ -2,7 +2,12 @@
 
 from readiness.assessment.definition import Definition, derived
 from readiness.calculations.barrier_dose import WeeklyDose
-from readiness.calculations.dose_limits import annual_dose_msv, any_hour_dose, week_of_tests_usv
+from readiness.calculations.dose_limits import (
+    AnyHourDose,
+    annual_dose_msv,
+    any_hour_dose,
+    week_of_tests_usv,
+)
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
@@ -15,14 +20,14 @@ LIMITS = (
 def hour(
     *, dose: WeeklyDose, cycles_per_week: float, sessions_per_cycle: int, sessions_in_hour: int,
     busiest_photon_hour: float,
-) -> float:  # fmt: skip
+) -> AnyHourDose:  # fmt: skip
     """Return the largest dose in any 60 consecutive minutes, no occupancy counted."""
     return any_hour_dose(
         before_rate_usv_per_week=dose.before_rate_usv_per_week,
         added_rate_usv_per_week=dose.added_rate_usv_per_week, cycles_per_week=cycles_per_week,
         sessions_per_cycle=sessions_per_cycle, sessions_in_hour=sessions_in_hour, session_room_min=None,
         busiest_hour_ratio=busiest_photon_hour,
-    ).usv_in_any_hour  # fmt: skip
+    )  # fmt: skip
 
 
 def year(*, dose: WeeklyDose, cycles_per_week: float) -> float:
@@ -64,10 +69,39 @@ def highest_reading(*, readings: Table) -> float:
     return max(rates)
 
 
+HOUR = (
+    (
+        "any_hour_dose_usv",
+        "Largest dose in any 60 consecutive minutes, no occupancy counted.",
+        "usv_in_any_hour",
+        "R_h = larger of (M/40) R_w and n H_session + (M/40) R_w; without occupancy",
+    ),
+    (
+        "photon_hour_usv",
+        "Dose of the busiest hour of photon work alone, no occupancy counted.",
+        "photon_only_usv_in_any_hour",
+        "R_h = (M/40) R_w",
+    ),
+    (
+        "session_usv",
+        "Dose of one session of the program, no occupancy counted.",
+        "per_session_usv",
+        "H_session = H_added / (T cycles a week x sessions a cycle)",
+    ),
+)
+
+
+def _part_of_hour(name: str, meaning: str, part: str, formula: str) -> Definition:
+    return Definition(
+        f"exposure.{name}", meaning, of="exposure.hour", part=part, source="ncrp-151", known="memory",
+        formula=formula,
+    )  # fmt: skip
+
+
 DEFINITIONS: tuple[Definition, ...] = (
     Definition(
-        "exposure.any_hour_dose_usv",
-        "Largest dose in any 60 consecutive minutes, no occupancy counted.",
+        "exposure.hour",
+        "Largest dose in any 60 consecutive minutes and its parts.",
         by=hour,
         takes={
             "dose": "exposure.week",
@@ -76,9 +110,9 @@ DEFINITIONS: tuple[Definition, ...] = (
             "sessions_in_hour": "program.sessions_in_busiest_hour",
             "busiest_photon_hour": "protection.busiest_photon_hour",
         },
-        source="ncrp-151",
-        known="memory",
+        internal=True,
     ),
+    *(_part_of_hour(*each) for each in HOUR),
     Definition(
         "exposure.annual_dose_msv_per_year",
         "Dose of a year of busiest weeks, an upper bound.",

@@ -3,6 +3,7 @@
 from dataclasses import replace
 from datetime import date
 from math import exp
+from typing import Any
 
 import pytest
 
@@ -10,6 +11,8 @@ from readiness.assessment.candidates import arrangements, exposures, measurement
 from readiness.assessment.catalogue import catalogue
 from readiness.assessment.graph import Graph
 from readiness.assessment.records import Finding, Gone, Ref, Value
+from readiness.assessment.values.shielding_remedies import hour_would_do, would_do
+from readiness.calculations.dose_limits import AnyHourDose
 from readiness.errors import Place
 from readiness.program.items import Item, Program, Stated
 from readiness.program.reading import read_folder
@@ -112,6 +115,67 @@ def test_remedies_of_a_thin_wall_name_material_and_shorter_lists() -> None:
     assert row["extra_tvl"] > 0
     assert row["or_concrete_cm"] > row["or_steel_cm"] > row["or_lead_cm"] > 0
     assert 0 <= row["or_cycles_at_most_per_week"] < 4
+
+
+def thin_control(cm: float) -> Graph:
+    """Return the sample with a control wall of so much concrete and next to no photon work."""
+    layers = Table(("material", "thickness_cm", "density_g_per_cm3"), (("concrete", cm, 2.35),))
+    columns = ("energy_mv", "kind", "workload_gy_per_week", "use_factor", "distance_m")
+    existing = Table(columns, ((6.0, "leakage", 1.0, None, None),))
+    return graph(changed("barrier", "a-control", layers=layers, existing_workload=existing))
+
+
+def test_a_failing_wall_says_with_numbers_what_would_do_instead() -> None:
+    """Message: material, cycles and patients, and the arrangement elsewhere that keeps every goal."""
+    found = finding(thin_control(60.0), "weekly-goal", "a-control")
+    assert "not met" == found.outcome
+    table = thin_control(60.0).get("arrangement.barrier_remedies", ARRANGEMENT)
+    assert isinstance(table, Value)
+    (row,) = [each for each in table.value.records() if each["place"] == "Control room of vault A"]
+    assert f"{row['or_concrete_cm']:.3g} cm of concrete outside" in found.message
+    assert f"at most {row['or_cycles_at_most_per_week']} cycles a week" in found.message
+    assert "side-270" not in found.message  # said by title, not by id
+
+
+def test_a_wall_that_keeps_its_goal_needs_nothing() -> None:
+    """What would do is said only where something is lacking."""
+    found = graph(read_folder(SAMPLE))
+    got = found.get("exposure.would_do", Ref("exposure", f"a-control from {CHOSEN}"))
+    assert isinstance(got, Value)
+    assert "Nothing is needed: the goal of the week is kept." == got.value
+    assert "cm of concrete" not in finding(found, "weekly-goal", "a-control").message
+
+
+def test_what_would_do_elsewhere_names_the_best_arrangement_that_keeps_every_goal() -> None:
+    """The first of the others that stays at or below its goals; none that exceeds one."""
+    columns = ("arrangement", "worst_place", "part_of_goal_ratio")
+    extra = Table(("extra_tvl", "concrete_cm", "steel_cm", "lead_cm"), ((1.0, 33.0, 10.0, 5.7),))
+    asked: dict[str, Any] = {"extra": extra, "cycles_per_week": 3, "patients": 1, "arrangement": "here"}
+    both = Table(columns, (("here", "wall", 0.1), ("there", "store", 0.4), ("far", "roof", 2.0)))
+    assert "there takes at most 0.4 of a goal, at store" in would_do(**asked, others=both)
+    none = Table(columns, (("here", "wall", 0.1), ("far", "roof", 2.0)))
+    assert "No other arrangement" in would_do(**asked, others=none)
+    assert "no shorter list" in would_do(**{**asked, "cycles_per_week": 0, "patients": 0}, others=None)
+
+
+def test_an_hour_that_gives_too_much_says_how_many_sessions_it_may_hold() -> None:
+    """Two sessions of 15 beside 2 of photon work exceed 20; one does not."""
+    hour = AnyHourDose(32.0, 2.0, 15.0, 30.0, 2.0, "sessions of the added program")
+    assert "It would take 0.204 tenth-value layers outside, or at most 1 sessions in 60 minutes." == hour_would_do(
+        hour=hour, limit_usv=20.0
+    )
+
+
+def test_a_survey_that_is_missing_is_one_thing_to_do() -> None:
+    """Every place waits for the same survey of the room."""
+    found = graph(read_folder(SAMPLE))
+    causes = {
+        cause
+        for place in ("a-west", "a-east", "a-control")
+        for cause in finding(found, "survey-within-goal", place).causes
+        if cause.kind == "measurement"
+    }
+    assert {Ref("room", "vault-a")} == {cause.item for cause in causes}
 
 
 def test_another_side_is_compared() -> None:
