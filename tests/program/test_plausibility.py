@@ -105,6 +105,13 @@ ASKED = {
         "rooms": room(),
         "shielding": barrier(inner_face_cm=-365, distance_m=6.1, layers="[{material: concrete, thickness_cm: 215}]"),
     },
+    "25 MV lies outside the tables of tenth-value layers (4 to 18 MV)": {
+        "rooms": room(),
+        "shielding": barrier(existing_workload="[{energy_mv: 25, kind: leakage, workload_gy_per_week: 200}]"),
+    },
+    "7500 µSv/h is far from usual limits, 0.1 to 1000: off by 1000?": {
+        "shielding": "protection: {instantaneous_limit_usv_per_h: 7500}\n"
+    },
     "20 mSv/week is far from usual limits, 0.001 to 4: off by 1000?": {
         "local_rules": 'limits: [{id: l, rule: r, limit: 20, unit: "mSv/week", source: law}]\n'
     },

@@ -22,6 +22,8 @@ _DENSITIES = {
     "lead": (10.5, 11.5),
     "earth": (0.8, 2.4),
 }
+_ENERGIES_MV = (4, 18)  # where the tables of tenth-value layers hold (ncrp-151, memory)
+_RATES_USV_PER_H = (0.1, 1000)  # practice: limits of the dose rate in use lie between 0.5 and 100
 _WALLS = {"x-min-wall": (0, -1), "x-max-wall": (2, 1), "y-min-wall": (1, -1), "y-max-wall": (3, 1)}
 
 
@@ -51,11 +53,18 @@ def layers(program: Program) -> Iterator[Problem]:
 
 
 def workloads(program: Program) -> Iterator[Problem]:
-    """Leakage reaches every barrier: its use factor is 1."""
+    """Leakage reaches every barrier: its use factor is 1; tables of layers hold for some energies only."""
+    low, high = _ENERGIES_MV
     for barrier in program.of_kind("barrier"):
         found = table(barrier, "existing_workload")
         for row in found.records() if found is not None else ():
-            use = cell(row, "use_factor")
+            use, energy = cell(row, "use_factor"), cell(row, "energy_mv")
+            if energy is not None and not low <= energy <= high:
+                message = (
+                    f"{printed(energy)} MV lies outside the tables of tenth-value layers ({low} to {high} MV):"
+                    " no dose behind this barrier will be calculated"
+                )
+                yield question(barrier, "existing_workload", message)
             if row.get("kind") == "leakage" and use is not None and use != 1:
                 message = f"leakage has a use factor of 1, not {printed(use)}"
                 yield question(barrier, "existing_workload", message)
@@ -112,6 +121,16 @@ def limits(program: Program) -> Iterator[Problem]:
             yield question(limit, "limit", message)
 
 
+def dose_rates(program: Program) -> Iterator[Problem]:
+    """A limit of the dose rate has the size that such limits have."""
+    low, high = _RATES_USV_PER_H
+    for protection in program.of_kind("protection"):
+        limit = number(protection, "instantaneous_limit_usv_per_h")
+        if limit is not None and not low <= limit <= high:
+            message = f"{printed(limit)} µSv/h is far from usual limits, {low} to {high}: off by 1000?"
+            yield question(protection, "instantaneous_limit_usv_per_h", message)
+
+
 # practice: from a tenth of the strictest to ten times the loosest design goals in use
 _DOSE_LIMITS = {
     "mSv/week": (0.001, 4),
@@ -147,4 +166,4 @@ def _source_axis(program: Program, barrier: Item) -> float:
     return next((each for each in stated if each is not None), SOURCE_AXIS_CM)
 
 
-CHECKS: tuple[Check, ...] = (layers, workloads, faces, distances, limits, local_rules)
+CHECKS: tuple[Check, ...] = (layers, workloads, faces, distances, limits, dose_rates, local_rules)

@@ -232,3 +232,12 @@ def test_neither_measured_nor_stated_names_both_ways() -> None:
     got = graph(program).get("arrangement.xray_workload_gy_m2_per_week", ARRANGEMENT)
     assert isinstance(got, Gone)
     assert {"xray-component", "beam.xray_fraction_percent"} <= {cause.what for cause in got.causes}
+
+
+def test_work_at_an_energy_outside_the_tables_leaves_the_wall_not_assessed() -> None:
+    """At 25 MV nothing is calculated behind the wall; the cause names the energies of the table."""
+    columns = ("energy_mv", "kind", "workload_gy_per_week", "use_factor", "distance_m")
+    existing = Table(columns, ((25.0, "leakage", 100.0, None, None),))
+    found = finding(graph(changed("barrier", "a-west", existing_workload=existing)), "weekly-goal")
+    assert "not assessed" == found.outcome
+    assert any("from 4 to 18, not 25" in cause.words for cause in found.causes)
