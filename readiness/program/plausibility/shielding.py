@@ -61,8 +61,8 @@ def workloads(program: Program) -> Iterator[Problem]:
             use, energy = cell(row, "use_factor"), cell(row, "energy_mv")
             if energy is not None and not low <= energy <= high:
                 message = (
-                    f"{printed(energy)} MV lies outside the tables of tenth-value layers ({low} to {high} MV):"
-                    " no dose behind this barrier will be calculated"
+                    f"{printed(energy)} MV lies outside the tables of tenth-value layers ({low} to {high} MV)"
+                    ": no dose behind this barrier will be calculated"
                 )
                 yield question(barrier, "existing_workload", message)
             if row.get("kind") == "leakage" and use is not None and use != 1:
