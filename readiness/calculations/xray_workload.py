@@ -7,6 +7,7 @@ from readiness.errors import OutsideValidity
 from readiness.quantities import Scalar, Table
 
 WATER_ATTENUATION_PER_CM = 0.058  # x rays of a 6 MeV electron beam at distance (derived)
+NEAR_6_MEV = (5.0, 8.0)  # where that attenuation is used as it stands (practice)
 LOBE_ALLOWANCE = 2.0  # the lobes miss the body in which the fraction was measured (assumed)
 FIELDS = ("one-dual", "all-dual")
 STEP_COLUMNS = ("step", "symbol", "amount", "unit", "basis", "source")
@@ -21,6 +22,37 @@ class XRayWorkload:
     cycles_per_week: float
     factor_over_plain: float
     steps: Table
+
+
+def attenuation_basis(*, beam_energy_mev: float, depth_cm: float) -> str:
+    """
+    Return how far the attenuation in water near 6 MeV holds for the x rays of a beam.
+
+    Args:
+        beam_energy_mev: Of the electrons at the source, the end point of the x rays. [MeV]
+        depth_cm: Of water in front of the point where the x rays were measured. [cm]
+
+    Returns:
+        Words for the steps: as given near 6 MeV and without water; careful above, where water takes less.
+
+    Raises:
+        ValueError: If the energy is not above zero or the depth below it.
+        OutsideValidity: Below 5 MeV, where water takes more and the workload would come out too small.
+
+    Valid for: electrons of 5 MeV or more.
+    Source: practice.
+    """
+    _check(above=(beam_energy_mev,), at_least=(depth_cm,))
+    low, high = NEAR_6_MEV
+    if depth_cm == 0.0 or low <= beam_energy_mev <= high:
+        return "as given"
+    if beam_energy_mev < low:
+        raise OutsideValidity(
+            f"the attenuation of x rays in water is that near 6 MeV; for {beam_energy_mev:.3g} MeV it would "
+            f"understate what {depth_cm:g} cm of water took away: let the qualified expert state the x rays "
+            "at the plane without water"
+        )
+    return "of 6 MeV, careful above 8 MeV"
 
 
 def workload_from_axis_dose(
@@ -76,6 +108,7 @@ def workload_from_pair_dose(
     extra_week_mu: float,
     depth_cm: float = 0.0,
     water_attenuation_per_cm: float | None = None,
+    water_basis: str = "as given",
 ) -> XRayWorkload:
     """
     Return the x-ray workload of one spot from the x-ray dose per MU of the pair at the height of its axis.
@@ -90,6 +123,7 @@ def workload_from_pair_dose(
         extra_week_mu: MU of quality assurance and commissioning in that week. [MU]
         depth_cm: Of water in front of the point where it was measured, z. [cm]
         water_attenuation_per_cm: Of the x rays in water, mu; None assumes that of 6 MeV. [1/cm]
+        water_basis: How that attenuation is known, in words.
 
     Returns:
         Workload per cycle and week, and the steps.
@@ -104,11 +138,12 @@ def workload_from_pair_dose(
     mu = WATER_ATTENUATION_PER_CM if water_attenuation_per_cm is None else water_attenuation_per_cm
     _check(above=(plane_distance_cm, cycle_mu), at_least=(pair_cgy_per_mu, depth_cm, mu))
     square, water = (plane_distance_cm / 100.0) ** 2, exp(mu * depth_cm)
+    basis = _basis(water_attenuation_per_cm, water_basis)
     cycles = _all_cycles(cycles_per_week, extra_week_mu, cycle_mu)
     steps: list[tuple[Scalar, ...]] = [
         ("x rays of the pair", "x", pair_cgy_per_mu, "cGy/MU", "as given", "measurement"),
         ("MU of a cycle, both beams", "MU", cycle_mu, "MU", "as given", "program"),
-        ("water in front of it", "exp(mu z)", water, "", _basis(water_attenuation_per_cm), "derived"),
+        ("water in front of it", "exp(mu z)", water, "", basis, "derived"),
         ("distance of the plane, squared", "d^2", square, "m²", "as given", "program"),
     ]
     return _workload(cycle_mu * pair_cgy_per_mu / 100.0 * water * square, cycles, 1.0, steps)
@@ -127,6 +162,7 @@ def workload_from_fraction(
     cycles_per_week: float,
     extra_week_mu: float,
     cycle_mu: float | None,
+    water_basis: str = "as given",
 ) -> XRayWorkload:
     """
     Return the x-ray workload of one spot from an x-ray fraction, with the three factors that belong to it.
@@ -147,6 +183,7 @@ def workload_from_fraction(
         cycles_per_week: Cycles of all patients in the week. [per week]
         extra_week_mu: MU of quality assurance and commissioning in that week. [MU]
         cycle_mu: All MU of a cycle; needed only for extra MU. [MU]
+        water_basis: How the attenuation in water is known, in words.
 
     Returns:
         Workload per cycle and week, the factor over the plain fraction, and the steps.
@@ -176,7 +213,7 @@ def workload_from_fraction(
     _check(above=(dose_per_cycle_gy, multiple_field_factor, plane_distance_cm))
     _check(above=(lobe,), at_least=(mu, depth_cm))
     turned = 6.0 / multiple_field_factor if fields == "one-dual" else 1.0
-    water = exp(mu * depth_cm)
+    water, basis = exp(mu * depth_cm), _basis(water_attenuation_per_cm, water_basis)
     square = (plane_distance_cm / 100.0) ** 2
     plain = dose_per_cycle_gy * xray_fraction_percent / 100.0 * square
     symbol = "f1" if fields == "one-dual" else "F"
@@ -184,7 +221,7 @@ def workload_from_fraction(
         ("skin dose of a cycle", "D", dose_per_cycle_gy, "Gy", "as given", "program"),
         ("x-ray fraction", symbol, xray_fraction_percent, "%", "as given", "measurement"),
         ("six dual fields against the skin dose", "6/B", turned, "", "as given", "derived"),
-        ("water in front of it", "exp(mu z)", water, "", _basis(water_attenuation_per_cm), "derived"),
+        ("water in front of it", "exp(mu z)", water, "", basis, "derived"),
         ("lobes that miss the body", "L", lobe, "", _basis(lobe_allowance), "derived"),
         ("distance of the plane, squared", "d^2", square, "m²", "as given", "program"),
     ]
@@ -217,9 +254,9 @@ def _all_cycles(cycles_per_week: float, extra_week_mu: float, cycle_mu: float | 
     return cycles_per_week + extra_week_mu / cycle_mu
 
 
-def _basis(given: float | None) -> str:
+def _basis(given: float | None, words: str = "as given") -> str:
     """Return whether a factor was given or assumed."""
-    return "assumed" if given is None else "as given"
+    return "assumed" if given is None else words
 
 
 def _check(*, above: tuple[float, ...] = (), at_least: tuple[float, ...] = ()) -> None:

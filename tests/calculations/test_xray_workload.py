@@ -5,6 +5,7 @@ from math import exp
 import pytest
 
 from readiness.calculations.xray_workload import (
+    attenuation_basis,
     workload_from_axis_dose,
     workload_from_fraction,
     workload_from_pair_dose,
@@ -145,3 +146,22 @@ def test_unknown_definition():
     """A definition that is none of the two is refused."""
     with pytest.raises(ValueError, match="one-dual or all-dual"):
         workload_from_fraction(**{**FRACTION, "fields": "single"})
+
+
+def test_attenuation_in_water_is_that_near_6_mev():
+    """From 5 to 8 MeV as given; above, where water takes less, careful; without water at any energy."""
+    assert ["as given"] * 3 == [attenuation_basis(beam_energy_mev=each, depth_cm=10.0) for each in (5.0, 6.4, 8.0)]
+    assert "careful" in attenuation_basis(beam_energy_mev=9.0, depth_cm=10.0)
+    assert "as given" == attenuation_basis(beam_energy_mev=3.0, depth_cm=0.0)
+
+
+def test_attenuation_below_5_mev_would_understate_and_is_refused():
+    """Water takes more from softer x rays: the factor would come out too small."""
+    with pytest.raises(OutsideValidity, match="near 6 MeV; for 4 MeV it would understate what 10 cm"):
+        attenuation_basis(beam_energy_mev=4.0, depth_cm=10.0)
+
+
+def test_the_steps_say_how_the_attenuation_is_known():
+    """A careful attenuation stands as such beside its factor."""
+    steps = workload_from_fraction(**{**FRACTION, "water_attenuation_per_cm": 0.058}, water_basis="careful").steps
+    assert ["careful"] == [row["basis"] for row in steps.records() if row["symbol"] == "exp(mu z)"]

@@ -8,6 +8,7 @@ from readiness.calculations.b_factor import BFactor, analyse_b_factor
 from readiness.calculations.beam_geometry import axis_height_at_plane_cm
 from readiness.calculations.course_xray_dose import composite_xray_percent
 from readiness.calculations.field_factor import b_factor_question, rotating_factor
+from readiness.calculations.monitor_units import ON_EACH
 from readiness.calculations.xray_component import XrayComponent, analyse_xray_component
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table, Uncertain
@@ -64,6 +65,11 @@ def depth_of_readings(*, xrays: XrayComponent) -> float | None:
     return None if xrays.pair_depth_mm is None else xrays.pair_depth_mm / 10
 
 
+def depth_on_axis(*, xrays: XrayComponent) -> float | None:
+    """Return the depth at which the dose per MU on the tilted axis was measured."""
+    return None if xrays.tilted_axis_depth_mm is None else xrays.tilted_axis_depth_mm / 10
+
+
 @lru_cache(maxsize=256)
 def xrays_of_readings(
     *,
@@ -73,21 +79,25 @@ def xrays_of_readings(
     tilt_deg: float,
     source_axis_distance_cm: float,
     rp_cm: float | None,
+    mu_convention: str | None,
 ) -> XrayComponent | None:
     """
     Return what readings behind the electrons' range give; None for another kind of measurement.
 
-    The beam's range at 100 cm bounds the one at the plane.
+    The beam's range at 100 cm bounds the one at the plane. Doses per MU are brought to the MU of both beams
+    together; without a word of how MU were counted they are taken as that.
     """
     if kind != XRAYS:
         return None
+    per_mu = 0.5 if mu_convention == ON_EACH else 1.0
+    doses = [number_or_none(entry) for entry in table.column("xray_cgy_per_mu")]
     return analyse_xray_component(
         fields=words(table, "fields", ""),
         depths_mm=numbers(table, "depth_mm"),
         heights_cm=numbers(table, "height_cm"),
         across_cm=numbers_or(table, "across_cm", 0.0),
         xray_percent=[number_or_none(entry) for entry in table.column("xray_percent")],
-        xray_cgy_per_mu=[number_or_none(entry) for entry in table.column("xray_cgy_per_mu")],
+        xray_cgy_per_mu=[None if dose is None else per_mu * dose for dose in doses],
         axis_height_cm=axis_height_at_plane_cm(
             plane_distance_cm=distance_cm,
             source_axis_distance_cm=source_axis_distance_cm,
@@ -204,6 +214,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             "tilt_deg": "measurement.tilt_deg",
             "source_axis_distance_cm": "machine.source_axis_distance_cm",
             "rp_cm": "beam.rp_cm?",
+            "mu_convention": "measurement.mu_convention?",
         },
         internal=True,
         source="aapm-23",
@@ -243,13 +254,20 @@ DEFINITIONS: tuple[Definition, ...] = (
     ),
     _xrays(
         "xray_mid_height_cgy_per_mu",
-        "X-ray dose of one dual field at mid-height per MU of the pair.",
+        "X-ray dose of one dual field at mid-height per MU of both beams together.",
         "mid_height_cgy_per_mu",
     ),
     _xrays(
         "xray_axis_cgy_per_mu",
-        "X-ray dose of one dual field on the tilted axis per MU of the pair.",
+        "X-ray dose of one dual field on the tilted axis per MU of both beams together.",
         "tilted_axis_cgy_per_mu",
+    ),
+    Definition(
+        "arrangement.xray_axis_depth_cm",
+        "Depth at which the x-ray dose on the tilted axis was measured.",
+        measured=Measured(XRAYS, by=depth_on_axis, takes={"xrays": "measurement.xray_readings"}),
+        source="aapm-23",
+        known="memory",
     ),
     _xrays(
         "xray_axis_ratio",

@@ -6,6 +6,7 @@ from readiness.calculations import course_consistency
 from readiness.calculations.leakage_workload import LeakageWorkload, leakage_workload
 from readiness.calculations.xray_workload import (
     XRayWorkload,
+    attenuation_basis,
     workload_from_fraction,
     workload_from_pair_dose,
 )
@@ -51,8 +52,7 @@ def most_mu_per_cycle(*, planned: PlannedCycles) -> int:
 def xrays(
     *, technique: str, xray_fraction_percent: float, depth_cm: float, dose_per_cycle_gy: float,
     b_factor: float, plane_distance_cm: float, water_attenuation: float, lobe_allowance: float,
-    cycles_per_week: float,
-    extra_mu: float | None, cycle_mu: int,
+    cycles_per_week: float, extra_mu: float | None, cycle_mu: int, energy_mev: float,
 ) -> XRayWorkload:  # fmt: skip
     """Return the x-ray workload of one lobe spot from f1 and its three factors."""
     if technique == LYING:
@@ -62,14 +62,14 @@ def xrays(
         dose_per_cycle_gy=dose_per_cycle_gy, multiple_field_factor=b_factor,
         plane_distance_cm=plane_distance_cm, water_attenuation_per_cm=water_attenuation,
         lobe_allowance=lobe_allowance, cycles_per_week=cycles_per_week, extra_week_mu=extra_mu or 0.0,
-        cycle_mu=cycle_mu,
+        cycle_mu=cycle_mu, water_basis=attenuation_basis(beam_energy_mev=energy_mev, depth_cm=depth_cm),
     )  # fmt: skip
 
 
 def xrays_of_pair(
     *, technique: str, axis_cgy_per_mu: float, mid_height_cgy_per_mu: float | None, depth_cm: float,
     water_attenuation: float, plane_distance_cm: float, cycles_per_week: float, extra_mu: float | None,
-    cycle_mu: int,
+    cycle_mu: int, energy_mev: float,
 ) -> XRayWorkload:  # fmt: skip
     """Return the x-ray workload of one lobe spot from the dose per MU of the pair at its larger place."""
     if technique == LYING:
@@ -79,6 +79,7 @@ def xrays_of_pair(
         pair_cgy_per_mu=largest, plane_distance_cm=plane_distance_cm, cycle_mu=cycle_mu,
         cycles_per_week=cycles_per_week, extra_week_mu=extra_mu or 0.0, depth_cm=depth_cm,
         water_attenuation_per_cm=water_attenuation,
+        water_basis=attenuation_basis(beam_energy_mev=energy_mev, depth_cm=depth_cm),
     )  # fmt: skip
 
 
@@ -132,12 +133,13 @@ DEFINITIONS: tuple[Definition, ...] = (
             "technique": "arrangement.technique",
             "axis_cgy_per_mu": "arrangement.xray_axis_cgy_per_mu",
             "mid_height_cgy_per_mu": "arrangement.xray_mid_height_cgy_per_mu?",
-            "depth_cm": "arrangement.pair_xray_depth_cm",
+            "depth_cm": "arrangement.xray_axis_depth_cm",
             "water_attenuation": "criterion.water_attenuation_ratio",
             "plane_distance_cm": "arrangement.study_distance_cm",
             "cycles_per_week": "program.busiest_week_cycles_per_week",
             "extra_mu": "protection.qa_mu_per_week_mu?",
             "cycle_mu": "arrangement.workload_mu",
+            "energy_mev": "beam.energy_at_source_mev",
         },
         otherwise="arrangement.xray_workload_of_fraction",
         model=True,
@@ -159,6 +161,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             "cycles_per_week": "program.busiest_week_cycles_per_week",
             "extra_mu": "protection.qa_mu_per_week_mu?",
             "cycle_mu": "arrangement.workload_mu",
+            "energy_mev": "beam.energy_at_source_mev",
         },
         model=True,
         internal=True,

@@ -12,8 +12,9 @@ from readiness.assessment.catalogue import catalogue
 from readiness.assessment.graph import Graph
 from readiness.assessment.records import Finding, Gone, Ref, Value
 from readiness.assessment.values.shielding_remedies import hour_would_do, would_do
+from readiness.assessment.values.shielding_workload import xrays
 from readiness.calculations.dose_limits import AnyHourDose
-from readiness.errors import Place
+from readiness.errors import OutsideValidity, Place
 from readiness.program.items import Item, Program, Stated
 from readiness.program.reading import read_folder
 from readiness.quantities import Table
@@ -187,7 +188,7 @@ def test_another_side_is_compared() -> None:
     assert any("side 270" in title for title in found.value.column("arrangement"))
 
 
-def xray_readings(**given: float | None) -> Graph:
+def xray_readings(convention: str | None = None, **given: float | None) -> Graph:
     """Return the sample's values with x rays measured on and off the tilted axis, 5 cm deep (invented)."""
     program = read_folder(SAMPLE)
     single = next(item for item in program.items if item.kind == "measurement" and item.get("kind") == "single-profile")
@@ -202,6 +203,8 @@ def xray_readings(**given: float | None) -> Graph:
         "table": Table(columns, rows),
     }  # fmt: skip
     place = Place("measurements/x.csv", 1, 1)
+    if convention is not None:
+        stated["mu_convention"] = convention
     fields = {name: Stated(value, place) for name, value in stated.items()}  # type: ignore[arg-type]
     owners = {**single.owners, "degrader": "sheet-06", "instrument": "cylindrical-chamber"}
     return graph(replace(program, items=(*program.items, Item("measurement", "x", fields, owners, place))))
@@ -217,6 +220,30 @@ def test_the_measured_dose_on_the_axis_comes_before_the_fraction() -> None:
     week_mu = float(leakage.value) * 100
     expected = week_mu * 2.0e-4 / 100 * exp(0.058 * 5) * 16
     assert expected == pytest.approx(float(got.value), rel=1e-3)
+
+
+def test_mu_set_on_each_beam_are_counted_together() -> None:
+    """The same dose for MU set on each of both beams is half as much per MU of both."""
+    total, each = (
+        xray_readings(mid=1.5e-4, axis=2.0e-4, convention=word).get("arrangement.xray_axis_cgy_per_mu", ARRANGEMENT)
+        for word in ("total-of-both-beams", "on-each-beam")
+    )
+    assert isinstance(total, Value)
+    assert isinstance(each, Value)
+    assert 1.0e-4 == pytest.approx(float(each.value))
+    assert 2.0e-4 == pytest.approx(float(total.value))
+
+
+def test_a_fraction_of_4_mev_behind_water_is_not_enough() -> None:
+    """The attenuation near 6 MeV would understate it: no workload, with the reason."""
+    asked: dict[str, Any] = {
+        "technique": "six-position", "xray_fraction_percent": 0.9, "depth_cm": 10.0, "dose_per_cycle_gy": 2.0,
+        "b_factor": 2.7, "plane_distance_cm": 400.0, "water_attenuation": 0.058, "lobe_allowance": 2.0,
+        "cycles_per_week": 4.0, "extra_mu": None, "cycle_mu": 20000,
+    }  # fmt: skip
+    with pytest.raises(OutsideValidity, match="would understate"):
+        xrays(**asked, energy_mev=4.4)
+    assert xrays(**asked, energy_mev=6.4).per_week_gy_m2_per_week > 0
 
 
 def test_without_it_the_fraction_with_its_three_factors_stands() -> None:
