@@ -15,7 +15,7 @@ from readiness.assessment.candidates import arrangements, exposures, measurement
 from readiness.assessment.catalogue import catalogue
 from readiness.assessment.document_heads import document_heads
 from readiness.assessment.documents import document_items, document_states, is_shown
-from readiness.assessment.exceptions import excepted
+from readiness.assessment.exceptions import excepted, may_be_granted
 from readiness.assessment.feasibility import compare, reasons
 from readiness.assessment.gaps import find_gaps
 from readiness.assessment.graph import Graph
@@ -139,8 +139,10 @@ def _supply_late(
         graph.supply("document.approved", ref, state is not None and state.status == "approved")
         changed = state is not None and state.status == "changed after approval"
         graph.supply("document.changed_after_approval", ref, changed)
+    granted = may_be_granted(graph.program, {rule.id: rule for rule in local.rules})
     for ref, answered in answers.items():
         graph.supply("exception.answers_a_finding", ref, answered)
+        graph.supply("exception.may_be_granted", ref, granted[ref])
     for ref, governs in local.governs.items():
         graph.supply("local_limit.governs", ref, governs)
 

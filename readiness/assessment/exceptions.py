@@ -20,6 +20,12 @@ def in_force(exception: Item, as_of: date) -> bool:
     )
 
 
+def may_be_granted(program: Program, rules: Mapping[str, Rule]) -> Mapping[Ref, bool]:
+    """Return for each exception whether its rule exists and is neither physical nor not exceptable."""
+    found = {item.id: rules.get(str(item.get("rule"))) for item in program.of_kind("exception")}
+    return {Ref("exception", name): rule is not None and rule.exceptable for name, rule in found.items()}
+
+
 def excepted(
     findings: tuple[Finding, ...], rules: Mapping[str, Rule], program: Program, as_of: date
 ) -> tuple[tuple[Finding, ...], Mapping[Ref, bool]]:

@@ -35,7 +35,10 @@ GIVEN: Mapping[str, Mapping[str, str]] = {
     },
     "exposure": {"title": "Barrier and arrangement in words."},
     "local_limit": {"governs": "It is at least as strict as the limit that ships with the tool."},
-    "exception": {"answers_a_finding": "The rule would not be met without it."},
+    "exception": {
+        "answers_a_finding": "The rule would not be met without it.",
+        "may_be_granted": "Its rule is one that may be excepted.",
+    },
     "document": {
         "title": "Title.",
         "number": "Number.",

@@ -50,6 +50,7 @@ from readiness.assessment.values import (
     staff_time,
     stand_checks,
     tools,
+    worst_of,
 )
 
 ALL: tuple[Definition, ...] = (
@@ -101,4 +102,5 @@ ALL: tuple[Definition, ...] = (
     *staff_time.DEFINITIONS,
     *stand_checks.DEFINITIONS,
     *tools.DEFINITIONS,
+    *worst_of.DEFINITIONS,
 )

@@ -6,6 +6,7 @@ from readiness.assessment.definition import Definition
 from readiness.quantities import Scalar, Table
 
 PLANE_PARALLEL = "plane-parallel-chamber"
+TG51, TRS398 = "tg-51", "trs-398"  # editions that ask for such a chamber
 REPORT, REVIEW = "commissioning-report", "second-physicist-review"
 
 
@@ -33,6 +34,12 @@ def _in_calibration(instrument: dict[str, Scalar], as_of_date: date) -> bool:
     """Return whether an instrument's calibration holds on a day; without dates it does not."""
     since, until = instrument["calibrated_on"], instrument["calibration_due_on"]
     return isinstance(since, date) and isinstance(until, date) and since <= as_of_date <= until
+
+
+def chamber_suits(*, protocol: str, r50_cm: float, chambers: int, tg51_cm: float, trs398_cm: float) -> bool:
+    """Return whether a plane-parallel chamber is in calibration where the protocol's edition asks for one."""
+    asked = (protocol == TG51 and r50_cm <= tg51_cm) or (protocol == TRS398 and r50_cm < trs398_cm)
+    return chambers >= 1 or not asked
 
 
 def reports_on_arrangement(*, evidence: Table, machine: str, beam: str, room: str, as_of_date: date) -> int:
@@ -105,6 +112,20 @@ DEFINITIONS: tuple[Definition, ...] = (
         takes={
             "instruments": "rows instrument: type? calibrated_on? calibration_due_on?",
             "as_of_date": "program.as_of_date",
+        },
+        source="definition",
+        known="derived",
+    ),
+    Definition(
+        "beam.chamber_suits_protocol",
+        "A plane-parallel chamber is in calibration where the edition of the protocol asks for one.",
+        by=chamber_suits,
+        takes={
+            "protocol": "program.protocol",
+            "r50_cm": "beam.r50_cm",
+            "chambers": "beam.plane_parallel_chambers",
+            "tg51_cm": "criterion.plane_parallel_r50_cm",
+            "trs398_cm": "criterion.plane_parallel_trs_r50_cm",
         },
         source="definition",
         known="derived",

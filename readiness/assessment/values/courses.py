@@ -99,6 +99,11 @@ def years_without_days_off(
     return len(years_without_closed_dates(closed_dates=closed_dates, first_day=first_date, last_day=end_date))
 
 
+def prescribed_at(*, point: str, depth_mm: float) -> str:
+    """Return where the dose is prescribed, in words."""
+    return f"{point}, {depth_mm:g} mm"
+
+
 _CALENDAR = {
     "target_first_patient_date": "program.target_first_patient_date",
     "days": "program.treatment_days",
@@ -140,6 +145,14 @@ DEFINITIONS: tuple[Definition, ...] = (
             "holidays_country": "program.holidays_country?",
         },
         internal=True,
+    ),
+    Definition(
+        "course.prescribed_at",
+        "Point and depth at which the dose is prescribed.",
+        by=prescribed_at,
+        takes={"point": "course.prescription_point", "depth_mm": "course.prescription_depth_mm"},
+        source="definition",
+        known="derived",
     ),
     Definition(
         "course.dose_from_cycles_gy",

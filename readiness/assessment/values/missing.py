@@ -161,6 +161,44 @@ DEFINITIONS: tuple[Definition, ...] = (
         },
     ),
     _missing(
+        "clinical.excluded_or_covered_missing",
+        "Written procedures that are missing for pregnancy and implants.",
+        {"pregnancy_procedure": "pregnancy is excluded", "device_procedure": "pacemakers and other implants"},
+    ),
+    _missing(
+        "clinical.fit_missing",
+        "What is not looked at before a patient is planned and before each session.",
+        {
+            "patient_fit_check": "height, reach, weight, standing time, sight and hearing",
+            "patient_safety.fall_risk_check": "risk of a fall, before the course and before each session",
+            "patient_safety.dressings_rule": "dressings, ointment, piercings and lines",
+        },
+    ),
+    _missing(
+        "contingency.referral_missing",
+        "What is not agreed with another center.",
+        {
+            "referral_agreement": "a written agreement on who takes over a started course",
+            "lying_referral_route": "a route for patients who cannot stand",
+        },
+    ),
+    _missing(
+        "quality.incident_learning_missing",
+        "What is missing to learn from incidents.",
+        {
+            "incident_system": "reports of incidents and near misses",
+            "corrective_actions_closed": "owner, date and closure of each corrective action",
+        },
+    ),
+    _missing(
+        "patient_safety.two_persons_missing",
+        "Where two persons are not planned.",
+        {
+            "two_persons_at_console": "two qualified persons at the console whenever the beam is on",
+            "two_persons_can_enter": "two persons who can enter within seconds",
+        },
+    ),
+    _missing(
         "in_vivo.occasions_missing",
         "Occasions on which the dose on the patient is not measured.",
         {"first_cycle_measured": "the first full cycle", "repeat_after_change": "the cycle after a change"},

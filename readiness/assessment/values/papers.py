@@ -51,6 +51,23 @@ def runs_out_soon(*, expires_on: date | None, as_of_date: date, notice_days: flo
     return expires_on is not None and as_of_date <= expires_on <= last
 
 
+def out_of_date(*, expires_on: date | None, next_review_on: date | None, as_of_date: date) -> str:
+    """Return what of a paper's dates has passed."""
+    found = {"its last day": expires_on, "the date of its review": next_review_on}
+    return ", ".join(words for words, day in found.items() if day is not None and day < as_of_date) or NOTHING
+
+
+def running_out(*, papers: Table, instruments: Table, as_of_date: date, notice_days: float) -> str:
+    """Return the papers and calibrations that hold today and run out within the notice."""
+    last = as_of_date + timedelta(days=notice_days)
+    dates = [
+        *((str(row["id"]), row["expires_on"]) for row in papers.records()),
+        *((f"calibration of {row['id']}", row["calibration_due_on"]) for row in instruments.records()),
+    ]
+    found = [name for name, day in dates if isinstance(day, date) and as_of_date <= day <= last]
+    return ", ".join(found) or NOTHING
+
+
 def reviewed_in_time(*, next_review_on: date | None, as_of_date: date) -> bool:
     """Return whether the date of a paper's next review, if it has one, has not passed."""
     return next_review_on is None or next_review_on >= as_of_date
@@ -58,6 +75,7 @@ def reviewed_in_time(*, next_review_on: date | None, as_of_date: date) -> bool:
 
 def particulars_missing(
     *,
+    file: str | None,
     type_word: str | None,
     revision: str | None,
     owner: str | None,
@@ -66,17 +84,32 @@ def particulars_missing(
 ) -> str:
     """Return which particulars of a paper are not entered."""
     return _missing(
-        {"type": type_word, "revision": revision, "owner": owner, "date": dated_on, "what it covers": covers}
+        {
+            "file": file,
+            "type": type_word,
+            "revision": revision,
+            "owner": owner,
+            "date": dated_on,
+            "what it covers": covers,
+        }  # fmt: skip
     )
 
 
-def exception_missing(
-    *, reason: str | None, compensation: str | None, approver: str | None, approved_on: date | None
-) -> str:
-    """Return which particulars of an exception are not entered."""
-    return _missing(
-        {"reason": reason, "compensation": compensation, "approver": approver, "date granted": approved_on}
-    )
+def exception_faults(
+    *, reason: str | None, compensation: str | None, approver: str | None, approved_on: date | None,
+    expires_on: date | None, as_of_date: date,
+) -> str:  # fmt: skip
+    """Return why an exception does not hold: what is not entered, not yet granted or run out."""
+    found: dict[str, object] = {
+        "no reason": reason,
+        "no compensation": compensation,
+        "no approver": approver,
+        "no date granted": approved_on,
+        "granted in the future": approved_on is None or approved_on <= as_of_date,
+        "no last day": expires_on,
+        f"run out on {expires_on}": expires_on is None or expires_on >= as_of_date,
+    }
+    return _missing(found)
 
 
 def _missing(particulars: Mapping[str, object]) -> str:
@@ -133,6 +166,23 @@ DEFINITIONS: tuple[Definition, ...] = (
         {"expires_on": "evidence.expires_on?", "notice_days": "criterion.expiry_notice_days", **_TODAY},
     ),
     derived(
+        "evidence.out_of_date",
+        "Which of its dates has passed.",
+        out_of_date,
+        {"expires_on": "evidence.expires_on?", "next_review_on": "evidence.next_review_on?", **_TODAY},
+    ),
+    derived(
+        "program.runs_out_soon",
+        "Papers and calibrations that hold today and run out within the notice.",
+        running_out,
+        {
+            "papers": "rows evidence: id expires_on?",
+            "instruments": "rows instrument: id calibration_due_on?",
+            "notice_days": "criterion.expiry_notice_days",
+            **_TODAY,
+        },
+    ),
+    derived(
         "evidence.reviewed_in_time",
         "The date of its next review has not passed.",
         reviewed_in_time,
@@ -143,6 +193,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Particulars that are not entered.",
         particulars_missing,
         {
+            "file": "evidence.file?",
             "type_word": "evidence.type?",
             "revision": "evidence.revision?",
             "owner": "evidence.owner?",
@@ -162,14 +213,16 @@ DEFINITIONS: tuple[Definition, ...] = (
         },
     ),
     derived(
-        "exception.particulars_missing",
-        "Particulars that are not entered.",
-        exception_missing,
+        "exception.faults",
+        "Why it does not hold: what is not entered, not yet granted or run out.",
+        exception_faults,
         {
             "reason": "exception.reason?",
             "compensation": "exception.compensation?",
             "approver": "exception.approver?",
             "approved_on": "exception.approved_on?",
+            "expires_on": "exception.expires_on?",
+            **_TODAY,
         },
     ),
 )

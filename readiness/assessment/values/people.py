@@ -4,6 +4,7 @@ from collections.abc import Callable, Sequence
 from datetime import date
 
 from readiness.assessment.definition import Definition, derived
+from readiness.assessment.values.naming import named
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
@@ -22,15 +23,26 @@ def listed(*, people: Sequence[str]) -> int:
     return len(people)
 
 
-def competency_holds(
-    *, competency_on: date, intervals_months: Sequence[float], as_of_date: date
-) -> bool:
+def competency_holds(*, competency_on: date, intervals_months: Sequence[float], as_of_date: date) -> bool:
     """Return whether a competency check was made and its interval has not passed."""
     if not intervals_months:
         raise OutsideValidity("State competency interval (months) of training in staffing.yaml.")
     months = competency_on.year * 12 + competency_on.month - 1 + round(min(intervals_months))
     end = (months // 12, months % 12 + 1, competency_on.day)
     return competency_on <= as_of_date and (as_of_date.year, as_of_date.month, as_of_date.day) <= end
+
+
+def qualification_missing(
+    *, licensed: bool, trained_on: date, competency_holds: bool, papers: Sequence[str], as_of_date: date
+) -> str:
+    """Return what a person still needs before taking part."""
+    found = {
+        "licence": licensed,
+        "training": trained_on <= as_of_date,
+        "a competency check in force": competency_holds,
+        "its record on file": RECORD in papers,
+    }
+    return named(words for words, there in found.items() if not there)
 
 
 def without_record(*, people: Table) -> str:
@@ -46,9 +58,7 @@ def _types(papers: object) -> tuple[str, ...]:
 def _qualified_of(profession: str) -> Callable[..., int]:
     def count(*, people: Table) -> int:
         """Return how many of the profession are known to be qualified."""
-        return sum(
-            row["profession"] == profession and row["qualified"] is True for row in people.records()
-        )
+        return sum(row["profession"] == profession and row["qualified"] is True for row in people.records())
 
     return count
 
@@ -61,6 +71,18 @@ DEFINITIONS: tuple[Definition, ...] = (
         {
             "competency_on": "person.competency_on",
             "intervals_months": "each training.competency_interval_months",
+            "as_of_date": "program.as_of_date",
+        },
+    ),
+    derived(
+        "person.qualification_missing",
+        "What the person still needs before taking part.",
+        qualification_missing,
+        {
+            "licensed": "person.licensed",
+            "trained_on": "person.trained_on",
+            "competency_holds": "person.competency_holds",
+            "papers": "person.papers",
             "as_of_date": "program.as_of_date",
         },
     ),

@@ -13,11 +13,74 @@ FREQUENCIES = {
 }  # fmt: skip
 
 
+# tests for which guidance or practice gives a tolerance, and its unit
+TOLERANCES = {
+    ("output", "treatment-day"): "%", ("distance", "treatment-day"): "mm",
+    ("output", "month"): "%", ("monitor", "month"): "%", ("profile", "month"): "%", ("energy", "month"): "mm",
+    ("output", "year"): "%", ("energy", "year"): "mm", ("stand", "year"): "°", ("degrader", "year"): "mm",
+}  # fmt: skip
+FUNCTIONAL = ("safety", "audio-visual", "after-change")  # work or do not work: no baseline, no tolerance
+NOTHING = "nothing"
+
+
 def has_tolerance(
     *, tolerance_percent: float | None, tolerance_mm: float | None, tolerance_deg: float | None
 ) -> bool:
     """Return whether a test has a tolerance in any unit."""
     return any(each is not None for each in (tolerance_percent, tolerance_mm, tolerance_deg))
+
+
+def particulars_missing(
+    *, quantity: str, baseline: str | None, baseline_on: date | None, tolerance_percent: float | None,
+    tolerance_mm: float | None, tolerance_deg: float | None, action_level: str | None,
+    release_role: str | None, as_of_date: date,
+) -> str:  # fmt: skip
+    """Return what is not entered for a test: baseline, tolerance where it measures, action, release."""
+    toleranced = has_tolerance(
+        tolerance_percent=tolerance_percent, tolerance_mm=tolerance_mm, tolerance_deg=tolerance_deg
+    )
+    found = {
+        "baseline": bool(baseline) or quantity in FUNCTIONAL,
+        "date of the baseline": quantity in FUNCTIONAL
+        or (baseline_on is not None and baseline_on <= as_of_date),
+        "tolerance": toleranced or quantity in FUNCTIONAL,
+        "what is done beyond it": bool(action_level),
+        "who may release": bool(release_role),
+    }
+    return ", ".join(words for words, there in found.items() if not there) or NOTHING
+
+
+def tolerance_is_known(*, quantity: str, frequency: str) -> bool:
+    """Return whether guidance or practice gives a tolerance for such a test."""
+    return (quantity, frequency) in TOLERANCES
+
+
+def tolerance_over_expected(
+    *, quantity: str, frequency: str, tolerance_percent: float | None, tolerance_mm: float | None,
+    tolerance_deg: float | None, daily_output_percent: float, monthly_output_percent: float,
+    monthly_profile_percent: float, monthly_energy_mm: float, yearly_output_percent: float,
+    yearly_depth_mm: float, daily_distance_cm: float, index_deg: float, thickness_mm: float,
+) -> float:  # fmt: skip
+    """Return a test's tolerance over the one that is expected of such a test."""
+    expected = {
+        ("output", "treatment-day"): daily_output_percent,
+        ("distance", "treatment-day"): 10 * daily_distance_cm,
+        ("output", "month"): monthly_output_percent,
+        ("monitor", "month"): monthly_output_percent,
+        ("profile", "month"): monthly_profile_percent,
+        ("energy", "month"): monthly_energy_mm,
+        ("output", "year"): yearly_output_percent,
+        ("energy", "year"): yearly_depth_mm,
+        ("stand", "year"): index_deg,
+        ("degrader", "year"): thickness_mm,
+    }
+    unit = TOLERANCES.get((quantity, frequency))
+    if unit is None:
+        raise OutsideValidity("no tolerance is known for such a test")
+    stated = {"%": tolerance_percent, "mm": tolerance_mm, "°": tolerance_deg}[unit]
+    if stated is None:
+        raise OutsideValidity(f"state its tolerance in {unit}")
+    return stated / expected[quantity, frequency]
 
 
 def done_in_time(
@@ -64,6 +127,12 @@ def _words(frequency: str) -> str:
 
 _TESTS = "rows periodic_test: quantity frequency in_mode"
 _TODAY = {"as_of_date": "program.as_of_date"}
+_TEST = {"quantity": "periodic_test.quantity", "frequency": "periodic_test.frequency"}
+_TOLERANCE = {
+    "tolerance_percent": "periodic_test.tolerance_percent?",
+    "tolerance_mm": "periodic_test.tolerance_mm?",
+    "tolerance_deg": "periodic_test.tolerance_deg?",
+}
 
 DEFINITIONS: tuple[Definition, ...] = (
     *(
@@ -85,13 +154,41 @@ DEFINITIONS: tuple[Definition, ...] = (
         for frequency, words in FREQUENCIES.items()
     ),
     derived(
-        "periodic_test.has_tolerance",
-        "It has a tolerance.",
-        has_tolerance,
+        "periodic_test.particulars_missing",
+        "What is not entered: baseline with its date, tolerance, action, release.",
+        particulars_missing,
         {
-            "tolerance_percent": "periodic_test.tolerance_percent?",
-            "tolerance_mm": "periodic_test.tolerance_mm?",
-            "tolerance_deg": "periodic_test.tolerance_deg?",
+            "quantity": "periodic_test.quantity",
+            "baseline": "periodic_test.baseline?",
+            "baseline_on": "periodic_test.baseline_on?",
+            **_TOLERANCE,
+            "action_level": "periodic_test.action_level?",
+            "release_role": "periodic_test.release_role?",
+            **_TODAY,
+        },
+    ),
+    derived(
+        "periodic_test.tolerance_is_known",
+        "Guidance or practice gives a tolerance for such a test.",
+        tolerance_is_known,
+        _TEST,
+    ),
+    derived(
+        "periodic_test.tolerance_ratio",
+        "Its tolerance over the one that is expected of such a test.",
+        tolerance_over_expected,
+        {
+            **_TEST,
+            **_TOLERANCE,
+            "daily_output_percent": "criterion.daily_output_percent",
+            "monthly_output_percent": "criterion.monthly_output_percent",
+            "monthly_profile_percent": "criterion.monthly_profile_percent",
+            "monthly_energy_mm": "criterion.monthly_energy_mm",
+            "yearly_output_percent": "criterion.yearly_output_percent",
+            "yearly_depth_mm": "criterion.yearly_depth_mm",
+            "daily_distance_cm": "criterion.daily_distance_cm",
+            "index_deg": "criterion.index_tolerance_deg",
+            "thickness_mm": "criterion.thickness_agreement_mm",
         },
     ),
     derived(

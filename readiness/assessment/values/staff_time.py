@@ -26,6 +26,7 @@ from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 ALWAYS_NEEDED = ("oncologist", "physicist", "therapist")
+SHORT_OF_TIME = ("oncologist", "physicist", "therapist", "nurse")
 PROFESSIONS = ("oncologist", "physicist", "therapist", "nurse", "dosimetrist")
 NO_INTERVAL = "State competency interval (months) of training in staffing.yaml."
 _TASKS = "rows staff_task: id profession per minutes_min persons"
@@ -115,6 +116,25 @@ def person_is_qualified(
     ends = (months // 12, months % 12 + 1, competency_on.day)
     today = (as_of_date.year, as_of_date.month, as_of_date.day)
     return licensed and trained_on <= as_of_date and competency_on <= as_of_date and today <= ends
+
+
+def short_of_time(
+    *,
+    oncologist_needed_fte: float, oncologist_fte: float, physicist_needed_fte: float, physicist_fte: float,
+    therapist_needed_fte: float, therapist_fte: float, nurse_needed_fte: float, nurse_fte: float,
+) -> str:  # fmt: skip
+    """Return the professions whose qualified people have less time than the program takes."""
+    time = {
+        "oncologist": (oncologist_fte, oncologist_needed_fte),
+        "physicist": (physicist_fte, physicist_needed_fte),
+        "therapist": (therapist_fte, therapist_needed_fte),
+        "nurse": (nurse_fte, nurse_needed_fte),
+    }
+    return named(
+        f"{who} ({there:.3g} of {needed:.3g} full-time equivalents)"
+        for who, (there, needed) in time.items()
+        if there < needed
+    )
 
 
 def _needed(profession: str) -> Callable[..., float]:
@@ -222,6 +242,19 @@ DEFINITIONS: tuple[Definition, ...] = (
         "The same, with one of them away.",
         qualified_at_console_with_one_away,
         {"people": "program.people", "console_professions": "program.console_professions"},
+    ),
+    derived(
+        "program.professions_short_of_time",
+        "Professions whose qualified people have less time than the program takes.",
+        short_of_time,
+        {
+            keyword: name
+            for who in SHORT_OF_TIME
+            for keyword, name in (
+                (f"{who}_needed_fte", f"program.{who}_needed_fte"),
+                (f"{who}_fte", f"program.{who}_qualified_fte"),
+            )
+        },
     ),
     derived(
         "program.commissioning_needed_h",

@@ -21,6 +21,7 @@ AS_BUILT = {
     "thickness gauge": ("thickness-gauge",),
 }  # fmt: skip
 NOTHING = "nothing"
+YEARLY = ("survey-meter", "barometer", "thermometer", "barometer-with-thermometer")
 PHANTOMS = {
     "cylinders": ("cylinders", ("cylinder",)),
     "anthropomorphic_phantoms": ("anthropomorphic phantoms", ("anthropomorphic",)),
@@ -68,6 +69,34 @@ def _holds(row: dict[str, Scalar], as_of_date: date) -> bool:
 def in_vivo_detector_types(*, instruments: Table) -> int:
     """Return with how many kinds of detector dose on the skin can be measured."""
     return len({row["type"] for row in instruments.records()} & set(IN_VIVO))
+
+
+def longest_interval(
+    *, type_word: str, purpose: str | None, reference_days: float, yearly_days: float
+) -> float | None:
+    """Return for how long a calibration may be given; None for what has no such interval."""
+    if type_word in (*CHAMBERS, "electrometer"):
+        return reference_days if purpose == "reference" else None
+    return yearly_days if type_word in YEARLY else None
+
+
+def has_interval(*, type_word: str, purpose: str | None) -> bool:
+    """Return whether there is a longest time between calibrations of an instrument."""
+    return type_word in YEARLY or (type_word in (*CHAMBERS, "electrometer") and purpose == "reference")
+
+
+def phantoms_missing(*, phantoms: Table, usual_cm: float, agreement_cm: float) -> str:
+    """Return which phantoms the department has not: a cylinder of a trunk's size, a body with its shape."""
+    owned = [row for row in phantoms.records() if row["owned"] is True]
+    cylinder = any(
+        row["type"] == "cylinder"
+        and isinstance(row["diameter_cm"], (int, float))
+        and abs(row["diameter_cm"] - usual_cm) <= agreement_cm
+        for row in owned
+    )
+    body = any(row["type"] == "anthropomorphic" for row in owned)
+    found = {f"a cylinder of about {usual_cm:g} cm": cylinder, "an anthropomorphic phantom": body}
+    return ", ".join(words for words, there in found.items() if not there) or NOTHING
 
 
 def off_usual(*, diameter_cm: float, usual_cm: float) -> float:
@@ -130,6 +159,33 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Number of kinds of detector with which dose on the skin can be measured.",
         in_vivo_detector_types,
         {"instruments": "rows instrument: type"},
+    ),
+    derived(
+        "instrument.has_calibration_interval",
+        "There is a longest time between calibrations of such an instrument.",
+        has_interval,
+        {"type_word": "instrument.type", "purpose": "instrument.purpose?"},
+    ),
+    derived(
+        "instrument.longest_interval_days",
+        "Longest time between calibrations of such an instrument.",
+        longest_interval,
+        {
+            "type_word": "instrument.type",
+            "purpose": "instrument.purpose?",
+            "reference_days": "criterion.reference_calibration_interval_days",
+            "yearly_days": "criterion.yearly_calibration_interval_days",
+        },
+    ),
+    derived(
+        "program.phantoms_missing",
+        "Phantoms that the department has not: a cylinder of a trunk's size and a body.",
+        phantoms_missing,
+        {
+            "phantoms": "rows phantom: type owned diameter_cm?",
+            "usual_cm": "criterion.cylinder_diameter_cm",
+            "agreement_cm": "criterion.cylinder_agreement_cm",
+        },
     ),
     *(
         derived(

@@ -113,9 +113,10 @@ def test_a_measurement_behind_another_degrader_is_named_not_used() -> None:
 
 def test_a_profile_in_a_phantom_is_none_in_air() -> None:
     """The rule on uniformity in air takes only a profile measured in air."""
-    assert "met" == finding(department(across(EVEN)), "horizontal-uniformity-in-air").outcome
-    in_phantom = department(across(EVEN, medium="phantom"))
-    assert "not assessed" == finding(in_phantom, "horizontal-uniformity-in-air").outcome
+    both = department(across(EVEN), vertical(bowl(0.02)))
+    assert "met" == finding(both, "uniformity-in-air").outcome
+    in_phantom = department(across(EVEN, medium="phantom"), vertical(bowl(0.02)))
+    assert "not assessed" == finding(in_phantom, "uniformity-in-air").outcome
 
 
 def test_the_length_measured_is_that_covered_on_both_sides() -> None:

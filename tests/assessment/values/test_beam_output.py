@@ -156,13 +156,14 @@ def test_xrays_on_the_tilted_axis_are_compared_with_mid_height() -> None:
     [
         ("tg-51", date(2026, 9, 16), "not met"),
         ("tg-51", date(2027, 9, 16), "met"),
-        ("tg-51-addendum", date(2026, 9, 16), "not applicable"),
+        ("tg-51-addendum", date(2026, 9, 16), "met"),
+        ("trs-398", date(2026, 9, 16), "not met"),
     ],
 )
 def test_the_protocol_edition_decides_on_the_chamber(protocol: str, due: date, outcome: str) -> None:
-    """TG-51 as first published needs a plane-parallel chamber in calibration; its addendum does not."""
+    """TG-51 as first published and TRS-398 need a plane-parallel chamber in calibration; the addendum does not."""
     of = department(program={"protocol": protocol}, chamber={"calibration_due_on": due})
-    assert outcome == finding(of, "plane-parallel-chamber-tg-51").outcome
+    assert outcome == finding(of, "chamber-suits-protocol").outcome
 
 
 def test_the_calibration_of_another_beam_is_not_that_of_this_one() -> None:

@@ -83,3 +83,10 @@ def test_a_mode_without_its_own_key_can_be_entered_by_mistake() -> None:
     assert "nothing" == got(program(item("beam", mode_own_key=True, mode_enabled_by="physicist")), "beam.mode_control_missing")
     assert "a key or code of its own" == missing.control_of_mode(own_key=False, enabled_by="physicist")
     assert isinstance(got(program(item("beam", mode_own_key=True)), "beam.mode_control_missing"), Gone)
+
+
+def test_fit_fall_risk_and_dressings_come_from_two_sections() -> None:
+    """The rule on fit asks clinical practice and safety of the patient at once."""
+    safe = item("patient_safety", fall_risk_check=False, dressings_rule=True)
+    found = got(program(item("clinical", patient_fit_check=True), safe), "clinical.fit_missing")
+    assert "risk of a fall, before the course and before each session" == found

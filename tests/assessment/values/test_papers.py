@@ -80,10 +80,45 @@ def test_particulars_that_are_not_entered() -> None:
     """What is missing is named in words."""
     ref = Ref("evidence", "drawing")
     assert "nothing" == got(program(paper()), "evidence.particulars_missing", ref)
-    bare = paper(revision=None, covers=None)
-    assert "revision, what it covers" == got(program(bare), "evidence.particulars_missing", ref)
-    exception = item("exception", "x", rule="r", item="i", reason="why", approved_on=date(2026, 11, 1))
-    assert "compensation, approver" == got(program(exception), "exception.particulars_missing", Ref("exception", "x"))
+    bare = paper(file=None, revision=None, covers=None)
+    assert "file, revision, what it covers" == got(program(bare), "evidence.particulars_missing", ref)
+
+
+@pytest.mark.parametrize(
+    ("changes", "faults"),
+    [
+        ({}, "nothing"),
+        ({"compensation": None, "approver": None}, "no compensation, no approver"),
+        ({"expires_on": date(2026, 11, 30)}, "run out on 2026-11-30"),
+        ({"expires_on": None}, "no last day"),
+        ({"approved_on": date(2026, 12, 2)}, "granted in the future"),
+    ],
+)  # fmt: skip
+def test_why_an_exception_does_not_hold(changes: dict[str, Any], faults: str) -> None:
+    """What is not entered, not yet granted or run out is named; the last day counts."""
+    fields = {
+        "rule": "r", "item": "i", "reason": "why", "compensation": "instead", "approver": "chief",
+        "approved_on": date(2026, 11, 1), "expires_on": date(2026, 12, 1), **changes,
+    }  # fmt: skip
+    exception = item("exception", "x", **{key: value for key, value in fields.items() if value is not None})
+    assert faults == got(program(exception), "exception.faults", Ref("exception", "x"))
+
+
+def test_which_date_of_a_paper_has_passed() -> None:
+    """Its last day and its review are told apart; a paper without dates does not age."""
+    ref = Ref("evidence", "drawing")
+    passed: dict[str, Any] = {"expires_on": date(2026, 11, 30), "next_review_on": date(2026, 11, 1)}
+    assert "its last day, the date of its review" == got(program(paper(**passed)), "evidence.out_of_date", ref)
+    assert "nothing" == got(program(paper()), "evidence.out_of_date", ref)
+
+
+def test_what_runs_out_within_sixty_days() -> None:
+    """A paper of January and a calibration of the last day of the notice are named, one of March is not."""
+    of = program(
+        paper("early", expires_on=date(2027, 1, 15)), paper("late", expires_on=date(2027, 3, 1)),
+        item("instrument", "meter", calibration_due_on=date(2027, 1, 30)),
+    )  # fmt: skip
+    assert "early, calibration of meter" == got(of, "program.runs_out_soon", PROGRAM)
 
 
 def test_an_approval_before_the_paper_existed() -> None:

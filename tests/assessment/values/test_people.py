@@ -1,12 +1,12 @@
 """People one by one, and how many of each profession are qualified."""
 
-from datetime import date
+from datetime import date, timedelta
 from typing import Any
 
 from readiness.assessment.records import PROGRAM, Gone, Ref, Value
 from readiness.assessment.values import papers, people, staff_time
 from readiness.program.items import Item, Program
-from tests.assessment.small import graph, item, program
+from tests.assessment.small import DAY, graph, item, program
 
 WANTED = {"person.qualified", "program.people"}
 DEFINITIONS = (
@@ -77,3 +77,11 @@ def test_unknown_people_are_asked_for() -> None:
     found = got(program(), "program.people_trained")
     assert isinstance(found, Gone)
     assert ["person"] == [cause.what for cause in found.causes]
+
+
+def test_what_a_person_still_needs() -> None:
+    """Licence, training, competency and record are named one by one."""
+    good = {"licensed": True, "trained_on": DAY, "competency_holds": True, "papers": ("competency-record",), "as_of_date": DAY}
+    assert "none" == people.qualification_missing(**good)  # type: ignore[arg-type]
+    bare = {**good, "licensed": False, "trained_on": DAY + timedelta(days=1), "competency_holds": False, "papers": ()}
+    assert "licence, training, a competency check in force, its record on file" == people.qualification_missing(**bare)  # type: ignore[arg-type]

@@ -60,11 +60,64 @@ def test_done_in_time(frequency: str, done: date, in_time: bool) -> None:
     assert in_time is got(of, "periodic_test.done_in_time", ONE)
 
 
-def test_a_tolerance_in_any_unit() -> None:
-    """Per cent, millimetres or degrees will do; none of them is none."""
+COMPLETE: dict[str, Any] = {
+    "baseline": "annual report", "baseline_on": date(2026, 2, 12), "action_level": "stop", "release_role": "physicist",
+}  # fmt: skip
+
+
+def test_a_tolerance_in_any_unit_completes_a_test() -> None:
+    """Per cent, millimetres or degrees will do; none of them is missing."""
+    name = "periodic_test.particulars_missing"
     for field in ("tolerance_percent", "tolerance_mm", "tolerance_deg"):
-        assert got(program(check_of("output", "month", "one", **{field: 2.0})), "periodic_test.has_tolerance", ONE) is True
-    assert got(program(check_of("output", "month", "one")), "periodic_test.has_tolerance", ONE) is False
+        assert "nothing" == got(program(check_of("output", "month", "one", **COMPLETE, **{field: 2.0})), name, ONE)
+    assert "tolerance" == got(program(check_of("output", "month", "one", **COMPLETE)), name, ONE)
+
+
+def test_a_test_of_function_needs_no_baseline() -> None:
+    """An interlock works or does not; who releases must still be written."""
+    name = "periodic_test.particulars_missing"
+    assert "who may release" == got(program(check_of("safety", "treatment-day", "one", action_level="stop")), name, ONE)
+
+
+def test_a_baseline_of_tomorrow_is_none() -> None:
+    """A baseline with a date in the future was not taken."""
+    of = program(check_of("output", "month", "one", **{**COMPLETE, "baseline_on": date(2026, 12, 2)}, tolerance_percent=2.0))
+    assert "date of the baseline" == got(of, "periodic_test.particulars_missing", ONE)
+
+
+@pytest.mark.parametrize(
+    ("quantity", "frequency", "stated", "ratio"),
+    [
+        ("output", "treatment-day", {"tolerance_percent": 3.0}, 1.0), ("output", "month", {"tolerance_percent": 3.0}, 1.5),
+        ("monitor", "month", {"tolerance_percent": 2.0}, 1.0), ("profile", "month", {"tolerance_percent": 2.0}, 2.0),
+        ("energy", "month", {"tolerance_mm": 2.0}, 1.0), ("output", "year", {"tolerance_percent": 2.0}, 1.0),
+        ("energy", "year", {"tolerance_mm": 2.0}, 2.0), ("distance", "treatment-day", {"tolerance_mm": 20.0}, 1.0),
+        ("stand", "year", {"tolerance_deg": 4.0}, 2.0), ("degrader", "year", {"tolerance_mm": 0.2}, 1.0),
+    ],
+)  # fmt: skip
+def test_a_tolerance_against_the_one_expected(
+    quantity: str, frequency: str, stated: dict[str, float], ratio: float
+) -> None:
+    """Each test of which guidance or practice gives a tolerance is held against it, in its own unit."""
+    of = program(check_of(quantity, frequency, "one", **stated))
+    assert got(of, "periodic_test.tolerance_is_known", ONE) is True
+    assert ratio == pytest.approx(got(of, "periodic_test.tolerance_ratio", ONE))
+
+
+def test_a_tolerance_in_another_unit_is_asked_for() -> None:
+    """A monthly output in millimetres is not judged; a test without a known tolerance is left alone."""
+    found = got(program(check_of("output", "month", "one", tolerance_mm=2.0)), "periodic_test.tolerance_ratio", ONE)
+    assert isinstance(found, Gone)
+    assert "state its tolerance in %" in found.causes[0].words
+    assert got(program(check_of("xray", "year", "one")), "periodic_test.tolerance_is_known", ONE) is False
+
+
+def test_every_known_tolerance_has_a_number() -> None:
+    """The list of known tolerances and their numbers do not drift apart."""
+    for (quantity, frequency), unit in periodic_tests.TOLERANCES.items():
+        field = {"%": "tolerance_percent", "mm": "tolerance_mm", "°": "tolerance_deg"}[unit]
+        found = got(program(check_of(quantity, frequency, "one", **{field: 1.0})), "periodic_test.tolerance_ratio", ONE)
+        assert found > 0
 
 
 def test_the_external_audit() -> None:

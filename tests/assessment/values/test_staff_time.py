@@ -184,3 +184,13 @@ def test_commissioning_within_its_weeks_needs_more_people() -> None:
 def test_what_is_missing_is_named_and_never_taken_for_zero(of: Program, name: str, root: str) -> None:
     """A blank of hours, persons, time or professions is the cause."""
     assert [root] == causes(of, name)
+
+
+def test_professions_short_of_time_are_named_with_both_numbers() -> None:
+    """A physicist with 0.1 of 0.156 is short; a nurse of whom nothing is needed is not."""
+    time = {
+        "oncologist_needed_fte": 0.05, "oncologist_fte": 0.1, "physicist_needed_fte": 0.156, "physicist_fte": 0.1,
+        "therapist_needed_fte": 0.3, "therapist_fte": 0.3, "nurse_needed_fte": 0.0, "nurse_fte": 0.0,
+    }  # fmt: skip
+    assert "physicist (0.1 of 0.156 full-time equivalents)" == staff_time.short_of_time(**time)
+    assert "none" == staff_time.short_of_time(**{**time, "physicist_fte": 0.2})

@@ -3,6 +3,8 @@
 from datetime import date
 from typing import Any
 
+import pytest
+
 from readiness.assessment.records import PROGRAM, Gone, Ref, Value
 from readiness.assessment.values import tools
 from readiness.program.items import Item, Program
@@ -83,6 +85,29 @@ def test_phantoms_at_hand() -> None:
         item("phantom", "a", type="cylinder", owned=True, diameter_cm=26.0),
         item("phantom", "b", type="cylinder", owned=False),
     )
+    assert "an anthropomorphic phantom" == got(of, "program.phantoms_missing")
     assert 1 == got(of, "program.cylinders")
     assert 0 == got(of, "program.anthropomorphic_phantoms")
     assert 4.0 == got(of, "phantom.off_usual_diameter_cm", Ref("phantom", "a"))
+
+
+def test_a_thin_cylinder_is_not_one_of_a_trunk() -> None:
+    """A cylinder of 20 cm and a borrowed body are a body and no cylinder of about 30 cm."""
+    of = program(
+        item("phantom", "a", type="cylinder", owned=True, diameter_cm=20.0),
+        item("phantom", "b", type="anthropomorphic", owned=True),
+    )
+    assert "a cylinder of about 30 cm" == got(of, "program.phantoms_missing")
+
+
+@pytest.mark.parametrize(
+    ("kind", "purpose", "days"),
+    [("electrometer", "reference", 731), ("electrometer", "field", None), ("survey-meter", None, 366), ("film", None, None)],
+)
+def test_how_long_a_calibration_may_be_given(kind: str, purpose: str | None, days: int | None) -> None:
+    """Reference instruments two years, meters for radiation and air one; others have no interval here."""
+    fields = {"type": kind} if purpose is None else {"type": kind, "purpose": purpose}
+    of, ref = program(item("instrument", "x", **fields)), Ref("instrument", "x")
+    assert got(of, "instrument.has_calibration_interval", ref) is (days is not None)
+    found = got(of, "instrument.longest_interval_days", ref)
+    assert days == found if days is not None else isinstance(found, Gone)
