@@ -18,7 +18,7 @@ from readiness.assessment.documents import document_items, document_states, is_s
 from readiness.assessment.exceptions import excepted, may_be_granted
 from readiness.assessment.feasibility import compare, reasons
 from readiness.assessment.gaps import find_gaps
-from readiness.assessment.graph import Graph
+from readiness.assessment.graph import Graph, Memory
 from readiness.assessment.judge import judge
 from readiness.assessment.local_rules import LocalRules, with_local
 from readiness.assessment.records import (
@@ -47,7 +47,10 @@ _LATE = ("document", "exception", "local_limit")  # judged when documents, excep
 Bodies = Callable[[Assessment], Mapping[str, str]]
 
 
-def assess(program: Program, as_of: date, bodies: Bodies | None = None) -> Assessment:
+def assess(
+    program: Program, as_of: date, bodies: Bodies | None = None, memory: Memory | None = None,
+    wanted: tuple[str, ...] | None = None,
+) -> Assessment:  # fmt: skip
     """
     Return the whole assessment of a program on a day.
 
@@ -56,6 +59,8 @@ def assess(program: Program, as_of: date, bodies: Bodies | None = None) -> Asses
         as_of: The day; the only date that enters.
         bodies: Gives number -> SHA-256 of each document's body for an assessment; without it no document
             counts as approved.
+        memory: What calculations gave before, shared by assessments of programs that are nearly the same.
+        wanted: Values to work out besides those that rules ask for; None works out everything.
 
     Raises:
         ProgramProblems: If local rules or limits do not fit.
@@ -65,13 +70,13 @@ def assess(program: Program, as_of: date, bodies: Bodies | None = None) -> Asses
     by_id = {rule.id: rule for rule in local.rules}
     made = arrangements(program)
     items = (*made, *exposures(program, made), *measurements(program), *document_items())
-    graph = Graph(program, items, known, as_of, local.limits)
+    graph = Graph(program, items, known, as_of, local.limits, memory)
     early = judge((rule for rule in local.rules if rule.kind not in _LATE), graph)
     early, answers = excepted(early, by_id, program, as_of)
     rows = compare(early, by_id, graph)
     chosen, rows = _choose(rows)
     of_concern = concerned(chosen.item if chosen else None, graph)
-    _work_out_everything(graph, of_concern)
+    _work_out(graph, of_concern, wanted)
     shown = tuple(finding for finding in early if _concerns(finding, of_concern))
     first = _assemble(program, as_of, graph, local, rows, shown, of_concern)
     states = document_states(program, chosen, local.rules, bodies(first) if bodies else {})
@@ -101,10 +106,11 @@ def _phase(program: Program) -> str:
     return str(root.get("phase") or "decide") if root else "decide"
 
 
-def _work_out_everything(graph: Graph, of_concern: set[Ref]) -> None:
-    """Ask for every value of the items of concern, so that documents and descents can show them."""
-    fields = graph.catalogue.kinds.described.fields
-    for name in (*graph.catalogue.definitions, *fields, *graph.catalogue.criteria):
+def _work_out(graph: Graph, of_concern: set[Ref], wanted: tuple[str, ...] | None) -> None:
+    """Ask for values of the items of concern, so that documents and descents can show them."""
+    known = graph.catalogue
+    everything = (*known.definitions, *known.kinds.described.fields, *known.criteria)
+    for name in everything if wanted is None else wanted:
         kind = name.partition(".")[0]
         if kind == "criterion":
             graph.get(name, PROGRAM)

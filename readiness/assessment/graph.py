@@ -24,6 +24,9 @@ from readiness.quantities import Table, Uncertain
 from readiness.units import unit_of, words_of
 
 
+Memory = dict[Any, Any]
+
+
 class Graph(ItemIndex):
     """All values of one program on one day."""
 
@@ -34,8 +37,15 @@ class Graph(ItemIndex):
         catalogue: Catalogue,
         as_of: date,
         limits: Mapping[str, Value],
+        memory: Memory | None = None,
     ) -> None:
-        """Take the program, the items that the assessment made, and local limits of criteria."""
+        """
+        Take the program, the items that the assessment made, and local limits of criteria.
+
+        ``memory`` holds what calculations gave for which inputs; graphs of programs that are nearly the same
+        share it.
+        """
+        self._memory = memory
         super().__init__(program, made, catalogue.kinds)
         self.catalogue = catalogue
         self.as_of = as_of
@@ -192,7 +202,7 @@ class Graph(ItemIndex):
         if causes:
             return Gone(tuple(sorted(set(causes))))
         try:
-            result = by(**given)
+            result = self._worked_out(by, given)
         except OutsideValidity as outside:
             return Gone((Cause("validity", definition.name, ref, str(outside)),))
         except ValueError as contradiction:
@@ -203,6 +213,18 @@ class Graph(ItemIndex):
             return self._no_answer(definition, ref)
         basis = "measured" if measurement else weakest(bases + (["predicted"] if definition.model else []))
         return self._value(definition, ref, result, inputs, basis, measurement)
+
+    def _worked_out(self, by: Any, given: dict[str, Any]) -> Any:
+        """Return what a calculation gives, from the memory where the same inputs were worked out before."""
+        if self._memory is None:
+            return by(**given)
+        try:
+            key = (by, tuple(given.items()))
+            if key not in self._memory:
+                self._memory[key] = by(**given)
+            return self._memory[key]
+        except TypeError:  # an input that has no hash
+            return by(**given)
 
     def _gather(
         self, takes: tuple[tuple[str, Take], ...], ref: Ref, measurement: Ref | None

@@ -6,6 +6,7 @@ from datetime import date
 
 from readiness.assessment.assessment import assess
 from readiness.assessment.records import Assessment
+from readiness.assessment.what_if import what_ifs
 from readiness.outputs import gap_list
 from readiness.outputs.calendar_file import calendar_files
 from readiness.outputs.charts import make_charts
@@ -39,7 +40,7 @@ def assessed(program: Program, as_of: date) -> Assessment:
 
 def make_all(
     assessment: Assessment, program: Program, as_of: date, say: Callable[[str], None],
-    kept: PrintCache | None = None,
+    kept: PrintCache | None = None, *, with_what_ifs: bool = True,
 ) -> Made:  # fmt: skip
     """
     Return every output; if Pango is missing, everything but the PDFs.
@@ -50,6 +51,7 @@ def make_all(
         as_of: The date in the files.
         say: Told what is being done.
         kept: Printed files of earlier runs; without it every page is laid out.
+        with_what_ifs: Assess the program again with single choices changed, for the report page.
     """
     from readiness.outputs import binder, press
 
@@ -65,7 +67,8 @@ def make_all(
     pictures = {**make_pictures(assessment), **make_charts(assessment)}
     say("writing documents")
     rendered = render_bodies(assessment, program.texts, pictures)
-    files["report.html"] = make_page(assessment, pictures)
+    variants = what_ifs(program, as_of, say) if with_what_ifs else ()
+    files["report.html"] = make_page(assessment, pictures, variants)
     inside = {f"program/{name}": content for name, content in sorted(program.contents.items())}
     inside |= {name: files[name] for name in ("assessment.json", "gaps.csv")}
     try:

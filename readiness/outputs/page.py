@@ -2,27 +2,32 @@
 
 import base64
 import hashlib
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 
 from jinja2 import Environment, FileSystemLoader, StrictUndefined
 from markupsafe import Markup
 
 from readiness.assessment.records import Assessment
+from readiness.assessment.what_if import Variant
 from readiness.outputs import page_rows
 from readiness.outputs.assessment_rows import KNOWN_WORDS, commissioning_weeks, short_item
 from readiness.outputs.contract import CAUTION, INVENTED
+from readiness.outputs.what_if_rows import questions
 from readiness.outputs.words import VERDICT_SENTENCES, blocking, chosen_row, value_title, with_unit
 from readiness.resources import folder, template_file
 from readiness.units import printed, unit_of, words_of
 
 
-def make_page(assessment: Assessment, pictures: Mapping[str, str]) -> bytes:
+def make_page(
+    assessment: Assessment, pictures: Mapping[str, str], variants: Sequence[Variant] = ()
+) -> bytes:
     """
     Return the page.
 
     Args:
         assessment: What it shows.
         pictures: Drawings by name, as SVG of our own with title and description inside.
+        variants: Assessments with one choice changed.
     """
     gaps = page_rows.gap_lines(assessment)
     script = _text("report.js")
@@ -39,6 +44,7 @@ def make_page(assessment: Assessment, pictures: Mapping[str, str]) -> bytes:
         arrangements=page_rows.possible(assessment),
         ruled_out=page_rows.ruled_out(assessment),
         pictures=page_rows.drawn(pictures),
+        what_if=questions(variants),
         blocking=blocking(assessment),
         gaps=gaps,
         filters=page_rows.choices(gaps),

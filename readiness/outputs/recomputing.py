@@ -44,7 +44,9 @@ def manifest_again(recomputed: Recomputed, say: Callable[[str], None]) -> Manife
     Raises:
         UsageError: If pages cannot be laid out on this machine.
     """
-    made = make_all(recomputed.assessment, recomputed.program, recomputed.assessment.as_of, say)
+    made = make_all(
+        recomputed.assessment, recomputed.program, recomputed.assessment.as_of, say, with_what_ifs=False
+    )
     if made.not_written:
         raise UsageError(made.not_written[0])
     return read_binder(io.BytesIO(made.files["binder.pdf"]), "binder.pdf", with_pages=False).manifest
