@@ -43,8 +43,8 @@ CRITICAL: Mapping[str, Critical] = {
     "arrangement.pair_output_cgy_per_mu": Critical(
         "arrangement.pair_output_cgy_per_mu", ("arrangement.output_difference_percent",)
     ),
-    "arrangement.b_factor": Critical("arrangement.b_factor"),
-    "arrangement.rotating_factor": Critical("arrangement.b_factor"),
+    "arrangement.b_factor": Critical("arrangement.b_factor_understood"),
+    "arrangement.rotating_factor": Critical("arrangement.b_factor_understood"),
     "patient_shield.thickness_mm": Critical(
         "patient_shield.transmission_percent", ("patient_shield.cover_margin_mm",), "transmission measured"
     ),

@@ -57,17 +57,6 @@ def out_of_date(*, expires_on: date | None, next_review_on: date | None, as_of_d
     return ", ".join(words for words, day in found.items() if day is not None and day < as_of_date) or NOTHING
 
 
-def running_out(*, papers: Table, instruments: Table, as_of_date: date, notice_days: float) -> str:
-    """Return the papers and calibrations that hold today and run out within the notice."""
-    last = as_of_date + timedelta(days=notice_days)
-    dates = [
-        *((str(row["id"]), row["expires_on"]) for row in papers.records()),
-        *((f"calibration of {row['id']}", row["calibration_due_on"]) for row in instruments.records()),
-    ]
-    found = [name for name, day in dates if isinstance(day, date) and as_of_date <= day <= last]
-    return ", ".join(found) or NOTHING
-
-
 def reviewed_in_time(*, next_review_on: date | None, as_of_date: date) -> bool:
     """Return whether the date of a paper's next review, if it has one, has not passed."""
     return next_review_on is None or next_review_on >= as_of_date
@@ -170,17 +159,6 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Which of its dates has passed.",
         out_of_date,
         {"expires_on": "evidence.expires_on?", "next_review_on": "evidence.next_review_on?", **_TODAY},
-    ),
-    derived(
-        "program.runs_out_soon",
-        "Papers and calibrations that hold today and run out within the notice.",
-        running_out,
-        {
-            "papers": "rows evidence: id expires_on?",
-            "instruments": "rows instrument: id calibration_due_on?",
-            "notice_days": "criterion.expiry_notice_days",
-            **_TODAY,
-        },
     ),
     derived(
         "evidence.reviewed_in_time",

@@ -94,11 +94,11 @@ def test_a_prediction_never_becomes_the_output() -> None:
 def test_the_factor_is_predicted_until_it_is_measured() -> None:
     """A cylinder with 52 cGy around against 20 cGy at the point gives B = 2.6 and replaces the prediction."""
     assert "predicted" == value(department(), "arrangement.b_factor").basis
-    assert "not assessed" == finding(department(), "b-factor-definition").outcome
+    assert "not assessed" == finding(department(), "b-factor-measured").outcome
     of = department(cylinder(52.0, 20.0))
     found = value(of, "arrangement.b_factor")
     assert ("measured", pytest.approx(2.6)) == (found.basis, found.value)
-    assert "met" == finding(of, "b-factor-definition").outcome
+    assert "met" == finding(of, "b-factor-measured").outcome
     assert pytest.approx(2.6 / 6, rel=1e-5) == value(of, "arrangement.rotating_factor").value
 
 
@@ -111,7 +111,7 @@ def test_a_factor_of_another_definition_is_asked_about() -> None:
 
 def test_a_factor_on_a_rotating_platform_is_no_factor_of_six_positions() -> None:
     """The technique must agree; the near miss is named."""
-    found = finding(department(cylinder(52.0, 20.0, technique="rotating-platform")), "b-factor-definition")
+    found = finding(department(cylinder(52.0, 20.0, technique="rotating-platform")), "b-factor-measured")
     assert any("rotating-platform" in cause.words for cause in found.causes)
 
 

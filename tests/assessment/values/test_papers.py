@@ -112,15 +112,6 @@ def test_which_date_of_a_paper_has_passed() -> None:
     assert "nothing" == got(program(paper()), "evidence.out_of_date", ref)
 
 
-def test_what_runs_out_within_sixty_days() -> None:
-    """A paper of January and a calibration of the last day of the notice are named, one of March is not."""
-    of = program(
-        paper("early", expires_on=date(2027, 1, 15)), paper("late", expires_on=date(2027, 3, 1)),
-        item("instrument", "meter", calibration_due_on=date(2027, 1, 30)),
-    )  # fmt: skip
-    assert "early, calibration of meter" == got(of, "program.runs_out_soon", PROGRAM)
-
-
 def test_an_approval_before_the_paper_existed() -> None:
     """A paper cannot be approved before its own date or after today."""
     ref = Ref("evidence", "drawing")
