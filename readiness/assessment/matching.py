@@ -66,6 +66,8 @@ def _disagreement(
         return []
     value = get(name, item)
     if not isinstance(value, Value):
+        if key == "tilt_deg" and stated == 0 and measurement.get("side_deg") == 0:
+            return []  # a vertical beam has no tilt to state
         return [] if key in _OPTIONAL else [f"the plan states no {words_of(key)} to compare with"]
     if allowed is None:
         return [] if value.value == stated else [f"measured as {stated}, the plan is {value.value}"]

@@ -8,8 +8,8 @@ from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 BEYOND_CM = 30.0  # from the outer face to the point that is protected (ncrp-151, memory)
-FACED_FROM = {"x-min-wall": 90.0, "x-max-wall": 270.0}  # beam side that faces the wall
-SURFACES = (*FACED_FROM, "y-min-wall", "y-max-wall", "ceiling", "floor")
+IN_LINE = {90.0: ("x-min-wall", "x-max-wall"), 270.0: ("x-max-wall", "x-min-wall"), 0.0: ("floor", "ceiling")}
+SURFACES = ("x-min-wall", "x-max-wall", "y-min-wall", "y-max-wall", "ceiling", "floor")
 SURVEY_ONLY = ("door", "maze", "penetration")
 
 
@@ -51,7 +51,7 @@ def barrier_distances(
     For the wall that the beam faces: source and head at d_iso + SAD, patient at d_iso - (D - SAD). For the
     opposite one: head at d_iso - SAD, a metre nearer than the isocentre, patient at d_iso + (D - SAD). Across
     the beam, above and below, the nearest point counts, opposite to head, isocentre or patient; above and
-    below the tilted head is nearer by SAD sin t.
+    below the tilted head is nearer by SAD sin t. A vertical beam faces the floor, with the ceiling opposite.
 
     Args:
         surface: ``x-min-wall`` (faced at gantry 90), ``x-max-wall`` (270), ``y-min-wall``, ``y-max-wall``,
@@ -61,11 +61,11 @@ def barrier_distances(
             the floor; None if not stated. [cm]
         distance_m: From the source through the isocentre to 0.3 m beyond; None if not stated. [m]
         isocentre_distance_m: From the isocentre to 0.3 m beyond; None if not stated. [m]
-        leakage_distance_m: From the head to 0.3 m beyond, taken where the head is beside the barrier; in
-            line with the beam it follows from the side. None if not stated. [m]
+        leakage_distance_m: From the head to 0.3 m beyond at gantry 90 or 270, taken where the head is beside
+            the barrier; in line with the beam it follows from the side. None if not stated. [m]
         isocentre_height_cm: Of the isocentre above the floor, for ceiling and floor; None if not stated. [cm]
-        side_deg: Beam side as gantry angle, 90 or 270. [deg]
-        tilt_deg: Half angle between the two axes, t. [deg]
+        side_deg: Beam side as gantry angle, 90 or 270; 0 for a vertical beam. [deg]
+        tilt_deg: Half angle between the two axes, t; 0 for a vertical beam. [deg]
         source_axis_distance_cm: From the source to the isocentre, SAD. [cm]
         plane_distance_cm: From the nominal source to the patient's plane, D. [cm]
 
@@ -84,19 +84,21 @@ def barrier_distances(
     _check(surface, side_deg, tilt_deg, (source_axis_distance_cm, plane_distance_cm))
     axis, beyond = source_axis_distance_cm / 100.0, (plane_distance_cm - source_axis_distance_cm) / 100.0
     iso = isocentre_distance_m
-    if iso is None and distance_m is not None and surface in FACED_FROM:
+    if iso is None and distance_m is not None and surface.startswith("x-"):
         iso = distance_m - axis
     if iso is None:
         iso = _from_inner_face(surface, layers, inner_face_cm, isocentre_height_cm)
     source = iso + axis if distance_m is None else distance_m
-    faces = FACED_FROM.get(surface) == side_deg
+    faced, opposite = IN_LINE[side_deg]
+    faces = surface == faced
     if faces:
         head, patient, angle = source, source - beyond - axis, 0.0
-    elif surface in FACED_FROM:
+    elif surface == opposite:
         head, patient, angle = iso - axis, iso + beyond, 180.0
     else:
         raised = axis * sin(radians(tilt_deg)) if surface in ("ceiling", "floor") else 0.0
-        head = iso - raised if leakage_distance_m is None else leakage_distance_m
+        stated = None if side_deg == 0.0 else leakage_distance_m
+        head = iso - raised if stated is None else stated
         patient, angle = iso, 90.0
     if not all(isfinite(each) and each > 0.0 for each in (iso, source, head, patient)):
         raise ValueError("the point beyond the barrier lies before the isocentre, the head or the patient")
@@ -109,8 +111,8 @@ def _check(surface: str, side_deg: float, tilt_deg: float, distances: tuple[floa
         raise OutsideValidity("doors, mazes and penetrations are not computed: survey in the mode")
     if surface not in SURFACES:
         raise ValueError(f"a barrier is one of {', '.join(SURFACES)}, not {surface!r}")
-    if side_deg not in (90.0, 270.0):
-        raise ValueError(f"a beam side is 90 or 270 degrees, not {side_deg:g}")
+    if side_deg not in IN_LINE:
+        raise ValueError(f"a beam side is 90 or 270 degrees, or 0 for a vertical beam, not {side_deg:g}")
     if not 0.0 <= tilt_deg < 90.0:
         raise ValueError(f"a tilt lies from 0 to below 90 degrees, not {tilt_deg:g}")
     for each in distances:

@@ -12,6 +12,7 @@ from readiness.errors import OutsideValidity
 from readiness.quantities import Scalar, Table
 
 BELT_MARGIN_CM = 30.0  # on each side of the beam (ncrp-151, read as quoted)
+VERTICAL_RAYS = ("axis", "edge toward +x", "edge toward -x", "edge toward gantry", "edge away from gantry")
 RAYS = ("axis", "upper edge", "lower edge", "edge toward gantry", "edge away from gantry")
 SPOT_COLUMNS = (
     "field",
@@ -87,15 +88,63 @@ def beam_spots(
     """
     pair = tilted_gantry_angles(side_deg=side_deg, tilt_deg=tilt_deg)
     room = (floor_polygon_cm, isocentre_height_cm, ceiling_height_cm)
-    found: list[tuple[str, float, str, SurfaceHit]] = []
-    for field, gantry in (("head", pair.toward_head_deg), ("feet", pair.toward_feet_deg)):
-        for ray, upward, sideways in _tangents(opening_cm, collimator_angle_deg):
-            hit = _hit(gantry, upward, sideways, source_axis_distance_cm, room)
-            found.append((field, gantry, ray, hit))
+    fields = (("head", pair.toward_head_deg), ("feet", pair.toward_feet_deg))
+    return _traced(fields, RAYS, _tangents(opening_cm, collimator_angle_deg), source_axis_distance_cm, room)
+
+
+def vertical_spots(
+    *,
+    source_axis_distance_cm: float,
+    opening_cm: float,
+    collimator_angle_deg: float,
+    floor_polygon_cm: Sequence[tuple[float, float]],
+    isocentre_height_cm: float,
+    ceiling_height_cm: float,
+) -> BeamSpots:
+    """
+    Return where axis and edges of one vertical field meet the bare room, gantry at 0.
+
+    Args:
+        source_axis_distance_cm: From the source to the isocentre. [cm]
+        opening_cm: Full opening at 100 cm from the source, square. [cm]
+        collimator_angle_deg: Turn of the collimator; a turned field reaches as far as its corners. [deg]
+        floor_polygon_cm: Corners (x, y) of the floor in order, from the isocentre. [cm]
+        isocentre_height_cm: Of the isocentre above the floor. [cm]
+        ceiling_height_cm: Of the ceiling above the floor. [cm]
+
+    Returns:
+        As ``beam_spots``, for the one field that is called ``down``.
+
+    Raises:
+        ValueError: If a length is outside its meaning.
+        OutsideValidity: If the source does not stand in the room that is described.
+
+    Valid for: upright walls, level floor and ceiling; neither couch nor patient stops the beam.
+    Source: derived; signs of iec-61217 (memory).
+    """
+    room = (floor_polygon_cm, isocentre_height_cm, ceiling_height_cm)
+    tangents = _tangents(opening_cm, collimator_angle_deg)
+    return _traced((("down", 0.0),), VERTICAL_RAYS, tangents, source_axis_distance_cm, room)
+
+
+def _traced(
+    fields: tuple[tuple[str, float], ...],
+    rays: tuple[str, ...],
+    tangents: list[tuple[float, float]],
+    axis_cm: float,
+    room: tuple[Sequence[tuple[float, float]], float, float],
+) -> BeamSpots:
+    """Return where axis and edges of some fields, each with its gantry angle, meet the room."""
+    floor_polygon_cm, isocentre_height_cm, _ = room
+    found: list[tuple[str, float, str, SurfaceHit]] = [
+        (field, gantry, ray, _hit(gantry, upward, sideways, axis_cm, room))
+        for field, gantry in fields
+        for ray, (upward, sideways) in zip(rays, tangents, strict=True)
+    ]
     sides = [_surface(hit, floor_polygon_cm) for *_, hit in found]
     axes = [side for side, (_, _, ray, _) in zip(sides, found, strict=True) if ray == "axis"]
     axis_hits = [hit for _, _, ray, hit in found if ray == "axis"]
-    across = [hit.point.y_cm for _, _, ray, hit in found if ray.startswith("edge")]
+    across = [hit.point.y_cm for _, _, ray, hit in found if ray in RAYS[3:]]
     rows: list[tuple[Scalar, ...]] = [
         (
             field,
@@ -178,14 +227,13 @@ def primary_belt(*, opening_cm: float, distance_cm: float, belt_width_cm: float 
     return PrimaryBelt(diagonal, needed, None if belt_width_cm is None else belt_width_cm - needed)
 
 
-def _tangents(opening_cm: float, collimator_angle_deg: float) -> list[tuple[str, float, float]]:
-    """Return name, upward and sideways tangent of axis and edges."""
+def _tangents(opening_cm: float, collimator_angle_deg: float) -> list[tuple[float, float]]:
+    """Return upward and sideways tangent of axis and edges."""
     if not opening_cm > 0.0:
         raise ValueError(f"an opening must be above zero, not {opening_cm:g}")
     turn = radians(collimator_angle_deg)
     reach = opening_cm / 200.0 * (abs(cos(turn)) + abs(sin(turn)))
-    ways = ((0.0, 0.0), (reach, 0.0), (-reach, 0.0), (0.0, reach), (0.0, -reach))
-    return [(ray, upward, sideways) for ray, (upward, sideways) in zip(RAYS, ways, strict=True)]
+    return [(0.0, 0.0), (reach, 0.0), (-reach, 0.0), (0.0, reach), (0.0, -reach)]
 
 
 def _hit(

@@ -35,7 +35,8 @@ class XrayComponent:
 
     ``pair_xray_percent`` is f1 at mid-height at ``pair_depth_mm``. ``composite_xray_percent`` is F, measured
     at ``composite_depth_mm``, or (6/B) f1 if ``composite_is_measured`` is false. Doses per MU of the pair are
-    those of one dual field at mid-height and on the tilted axis, the latter at ``tilted_axis_depth_mm``.
+    those of one dual field at mid-height and on the tilted axis, the latter at ``tilted_axis_depth_mm``,
+    the former at ``mid_height_depth_mm``.
     """
 
     pair_xray_percent: float | None
@@ -44,6 +45,7 @@ class XrayComponent:
     composite_depth_mm: float | None
     composite_is_measured: bool
     mid_height_cgy_per_mu: float | None
+    mid_height_depth_mm: float | None
     tilted_axis_cgy_per_mu: float | None
     tilted_axis_depth_mm: float | None
     axis_over_mid_height: float | None
@@ -132,6 +134,7 @@ def analyse_xray_component(
         composite_depth_mm=composite_depth,
         composite_is_measured=measured is not None,
         mid_height_cgy_per_mu=at_centre,
+        mid_height_depth_mm=centre.depth_mm if centre else None,
         tilted_axis_cgy_per_mu=on_axis,
         tilted_axis_depth_mm=axis.depth_mm if axis else None,
         axis_over_mid_height=on_axis / at_centre if on_axis is not None and at_centre else None,

@@ -120,7 +120,7 @@ def test_nothing_stated(changes):
     ("name", "value"),
     [
         ("surface", "north"),
-        ("side_deg", 0.0),
+        ("side_deg", 45.0),
         ("tilt_deg", 90.0),
         ("isocentre_distance_m", 0.0),
         ("isocentre_distance_m", 2.0),
@@ -131,3 +131,22 @@ def test_impossible(name, value):
     """Unknown words, distances of zero and a wall before the patient are refused."""
     with pytest.raises(ValueError, match=r"a barrier is|90 or 270|tilt|above zero|before"):
         distances(**{name: value})
+
+
+def test_vertical_beam_faces_the_floor_with_the_ceiling_opposite():
+    """Isocentre at 130 cm, 215 + 30 cm: floor 3.75 m and source 4.75 m; the head is a metre nearer to the ceiling."""
+    floor = distances(surface="floor", inner_face_cm=0.0, side_deg=0.0, tilt_deg=0.0, plane_distance_cm=200.0)
+    assert floor.faces_beam
+    assert (4.75, 4.75, 2.75, 0.0) == pytest.approx(
+        (floor.xray_distance_m, floor.head_distance_m, floor.scatter_distance_m, floor.scatter_angle_deg)
+    )
+    ceiling = distances(surface="ceiling", inner_face_cm=300.0, side_deg=0.0, tilt_deg=0.0)
+    assert ceiling.xray_distance_m is None
+    assert (1.7 + 2.45 - 1.0, 180.0) == pytest.approx((ceiling.head_distance_m, ceiling.scatter_angle_deg))
+
+
+def test_walls_are_beside_a_vertical_beam():
+    """The head stands above the isocentre; a distance stated for gantry 90 or 270 does not count."""
+    wall = distances(side_deg=0.0, tilt_deg=0.0, leakage_distance_m=9.0)
+    assert not wall.faces_beam
+    assert (6.1, 90.0) == pytest.approx((wall.head_distance_m, wall.scatter_angle_deg))

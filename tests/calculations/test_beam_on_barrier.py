@@ -4,7 +4,12 @@ from math import cos, radians, sqrt, tan
 
 import pytest
 
-from readiness.calculations.beam_on_barrier import beam_spots, nearest_spot_distance_m, primary_belt
+from readiness.calculations.beam_on_barrier import (
+    beam_spots,
+    nearest_spot_distance_m,
+    primary_belt,
+    vertical_spots,
+)
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
@@ -132,3 +137,16 @@ def test_impossible():
         primary_belt(opening_cm=40.0, distance_cm=100.0, belt_width_cm=0.0)
     with pytest.raises(OutsideValidity, match="no layers"):
         nearest_spot_distance_m(spots=spots().spots, surface="x-min-wall", layers=Table.of(WALL.columns, ()))
+
+
+def test_vertical_field_meets_the_floor():
+    """From 100 cm above an isocentre at 130 cm: axis 230 cm long, edges 46 cm out to all four sides."""
+    found = vertical_spots(**{key: value for key, value in CASE.items() if key not in ("side_deg", "tilt_deg")})
+    assert "floor" == found.all_on
+    assert 92.0 == pytest.approx(found.widest_cm)
+    axis = row(found, "down", "axis")
+    assert (0.0, 0.0, 0.0, 230.0, 0.0) == pytest.approx(
+        (axis["x_cm"], axis["y_cm"], axis["height_above_floor_cm"], axis["path_cm"], axis["obliquity_deg"])
+    )
+    assert 46.0 == pytest.approx(row(found, "down", "edge toward +x")["x_cm"])
+    assert -46.0 == pytest.approx(row(found, "down", "edge toward -x")["x_cm"])

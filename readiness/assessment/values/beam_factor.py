@@ -139,6 +139,11 @@ def _xrays(name: str, meaning: str, part: str) -> Definition:
     )
 
 
+def depth_at_mid_height(*, xrays: XrayComponent) -> float | None:
+    """Return the depth at which the dose per MU at mid-height was measured."""
+    return None if xrays.mid_height_depth_mm is None else xrays.mid_height_depth_mm / 10
+
+
 _F_PLACES = {"pair_xray_percent": "arrangement.pair_xray_percent", "b_factor": "arrangement.b_factor"}
 
 DEFINITIONS: tuple[Definition, ...] = (
@@ -266,6 +271,13 @@ DEFINITIONS: tuple[Definition, ...] = (
         "arrangement.xray_axis_depth_cm",
         "Depth at which the x-ray dose on the tilted axis was measured.",
         measured=Measured(XRAYS, by=depth_on_axis, takes={"xrays": "measurement.xray_readings"}),
+        source="aapm-23",
+        known="memory",
+    ),
+    Definition(
+        "arrangement.xray_mid_height_depth_cm",
+        "Depth at which the x-ray dose at mid-height was measured.",
+        measured=Measured(XRAYS, by=depth_at_mid_height, takes={"xrays": "measurement.xray_readings"}),
         source="aapm-23",
         known="memory",
     ),

@@ -2,12 +2,11 @@
 
 from readiness.assessment.definition import Definition, derived
 from readiness.assessment.values.shielding_places import GEOMETRY
-from readiness.assessment.values.shielding_workload import VERTICAL
+from readiness.assessment.values.shielding_workload import by_technique
 from readiness.calculations.barrier_distances import BarrierDistances, barrier_distances
 from readiness.calculations.barrier_dose import WeeklyDose, weekly_dose
 from readiness.calculations.beam_on_barrier import nearest_spot_distance_m
 from readiness.calculations.dose_limits import goal_margin
-from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 MV_OF_MEV = 1.0  # the end point of the x rays is the energy of the electrons
@@ -24,12 +23,24 @@ def distances(
     side_deg: int, tilt_deg: float, source_axis_distance_cm: float, plane_distance_cm: float,
 ) -> BarrierDistances:  # fmt: skip
     """Return all distances to a barrier; doors, mazes and penetrations are for the survey."""
-    if side_deg not in (90, 270):
-        raise OutsideValidity(VERTICAL)
     return barrier_distances(
         surface=surface, layers=layers, inner_face_cm=inner_face_cm, distance_m=distance_m,
         isocentre_distance_m=isocentre_distance_m, leakage_distance_m=leakage_distance_m,
         isocentre_height_cm=isocentre_height_cm, side_deg=side_deg, tilt_deg=tilt_deg,
+        source_axis_distance_cm=source_axis_distance_cm, plane_distance_cm=plane_distance_cm,
+    )  # fmt: skip
+
+
+def vertical_distances(
+    *, surface: str, layers: Table, inner_face_cm: float | None, distance_m: float | None,
+    isocentre_distance_m: float | None, isocentre_height_cm: float | None, source_axis_distance_cm: float,
+    plane_distance_cm: float,
+) -> BarrierDistances:  # fmt: skip
+    """Return all distances to a barrier of a beam that points straight down at the floor."""
+    return barrier_distances(
+        surface=surface, layers=layers, inner_face_cm=inner_face_cm, distance_m=distance_m,
+        isocentre_distance_m=isocentre_distance_m, leakage_distance_m=None,
+        isocentre_height_cm=isocentre_height_cm, side_deg=0, tilt_deg=0.0,
         source_axis_distance_cm=source_axis_distance_cm, plane_distance_cm=plane_distance_cm,
     )  # fmt: skip
 
@@ -42,7 +53,7 @@ def week(
 ) -> WeeklyDose:  # fmt: skip
     """Return the dose of the busiest week behind a barrier, contribution by contribution."""
     lobe = nearest_spot_distance_m(spots=spots, surface=surface, layers=layers)
-    across = surface in ("ceiling", "floor", "y-min-wall", "y-max-wall")
+    across = not surface.startswith("x-")
     return weekly_dose(
         layers=layers, role=role, occupancy=occupancy, recess_depth_cm=recess_cm or 0.0, existing=existing,
         primary_distance_m=distances.primary_distance_m,
@@ -100,22 +111,35 @@ def _part(name: str, meaning: str, part: str) -> Definition:
     )  # fmt: skip
 
 
+_PLACE = {
+    "surface": "barrier.surface",
+    "layers": "barrier.layers",
+    "inner_face_cm": "barrier.inner_face_cm?",
+    "distance_m": "barrier.distance_m?",
+    "isocentre_distance_m": "barrier.isocentre_distance_m?",
+    "isocentre_height_cm": "room.isocentre_height_cm?",
+    "plane_distance_cm": "arrangement.study_distance_cm",
+}
+
 DEFINITIONS: tuple[Definition, ...] = (
-    Definition(
+    by_technique(
         "exposure.distances",
         "Distances to the barrier from source, head, isocentre and patient.",
+        standing="exposure.level_distances",
+        lying="exposure.vertical_distances",
+    ),
+    Definition(
+        "exposure.level_distances",
+        "Distances to the barrier with the gantry at 90 or 270.",
         by=distances,
-        takes={
-            "surface": "barrier.surface",
-            "layers": "barrier.layers",
-            "inner_face_cm": "barrier.inner_face_cm?",
-            "distance_m": "barrier.distance_m?",
-            "isocentre_distance_m": "barrier.isocentre_distance_m?",
-            "leakage_distance_m": "barrier.leakage_distance_m?",
-            "isocentre_height_cm": "room.isocentre_height_cm?",
-            **GEOMETRY,
-            "plane_distance_cm": "arrangement.study_distance_cm",
-        },
+        takes={**_PLACE, "leakage_distance_m": "barrier.leakage_distance_m?", **GEOMETRY},
+        internal=True,
+    ),
+    Definition(
+        "exposure.vertical_distances",
+        "Distances to the barrier with the gantry at 0.",
+        by=vertical_distances,
+        takes={**_PLACE, "source_axis_distance_cm": "machine.source_axis_distance_cm"},
         internal=True,
     ),
     Definition(
@@ -136,7 +160,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             "leakage_percent": "beam.leakage_percent",
             "plane_distance_cm": "arrangement.study_distance_cm",
             "patient_area_m2": "criterion.patient_area_m2",
-            "spots": "arrangement.beam_spots",
+            "spots": "arrangement.field_spots",
         },
         model=True,
         internal=True,
@@ -152,7 +176,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         {"contributions": "exposure.contributions"},
     ),
     _part("largest_contribution", "The largest contribution.", "largest_contribution"),
-    _part("beam_on_secondary", "The tilted fields meet a barrier built as secondary.", "beam_on_secondary"),
+    _part("beam_on_secondary", "The fields meet a barrier built as secondary.", "beam_on_secondary"),
     Definition(
         "exposure.goal_ratio",
         "Dose of the busiest week as a part of the design goal.",

@@ -1,17 +1,26 @@
 """A place to protect by itself, and how the beam meets it: goal, first layer, opening, spots, belt."""
 
-from readiness.assessment.definition import Definition, derived
+from readiness.assessment.definition import Definition, derived, one_of_techniques
 from readiness.calculations.barrier_distances import BarrierDistances
-from readiness.calculations.beam_on_barrier import beam_spots, primary_belt
+from readiness.calculations.beam_on_barrier import beam_spots, primary_belt, vertical_spots
 from readiness.calculations.electron_side import first_layer, needs_neutron_remark
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
+VERTICAL = "a vertical beam has no tilted fields"
 SURVEY_ONLY = ("door", "maze", "penetration")
 GEOMETRY = {
     "side_deg": "arrangement.side_deg",
     "tilt_deg": "arrangement.room_tilt_deg",
     "source_axis_distance_cm": "machine.source_axis_distance_cm",
+}
+
+ROOM = {
+    "opening_cm": "beam.opening_cm",
+    "collimator_deg": "beam.collimator_deg?",
+    "floor_polygon_cm": "room.floor_polygon_cm",
+    "isocentre_height_cm": "room.isocentre_height_cm",
+    "ceiling_height_cm": "room.ceiling_height_cm",
 }
 
 
@@ -27,10 +36,22 @@ def spots_of_fields(
 ) -> Table:  # fmt: skip
     """Return where axes and edges of both tilted fields meet the room."""
     if side_deg not in (90, 270):
-        raise OutsideValidity("a vertical beam has no tilted fields")
+        raise OutsideValidity(VERTICAL)
     return beam_spots(
         side_deg=side_deg, tilt_deg=tilt_deg, source_axis_distance_cm=source_axis_distance_cm,
         opening_cm=opening_cm, collimator_angle_deg=collimator_deg or 0.0, floor_polygon_cm=floor_polygon_cm,
+        isocentre_height_cm=isocentre_height_cm, ceiling_height_cm=ceiling_height_cm,
+    ).spots  # fmt: skip
+
+
+def spots_of_vertical(
+    *, source_axis_distance_cm: float, opening_cm: float, collimator_deg: float | None,
+    floor_polygon_cm: tuple[tuple[float, float], ...], isocentre_height_cm: float, ceiling_height_cm: float,
+) -> Table:  # fmt: skip
+    """Return where axis and edges of a vertical field meet the room."""
+    return vertical_spots(
+        source_axis_distance_cm=source_axis_distance_cm, opening_cm=opening_cm,
+        collimator_angle_deg=collimator_deg or 0.0, floor_polygon_cm=floor_polygon_cm,
         isocentre_height_cm=isocentre_height_cm, ceiling_height_cm=ceiling_height_cm,
     ).spots  # fmt: skip
 
@@ -90,16 +111,23 @@ DEFINITIONS: tuple[Definition, ...] = (
         "arrangement.beam_spots",
         "Where axes and edges of both tilted fields meet the room.",
         by=spots_of_fields,
-        takes={
-            **GEOMETRY,
-            "opening_cm": "beam.opening_cm",
-            "collimator_deg": "beam.collimator_deg?",
-            "floor_polygon_cm": "room.floor_polygon_cm",
-            "isocentre_height_cm": "room.isocentre_height_cm",
-            "ceiling_height_cm": "room.ceiling_height_cm",
-        },
+        takes={**GEOMETRY, **ROOM},
         source="iec-61217",
         known="derived",
+    ),
+    Definition(
+        "arrangement.vertical_spots",
+        "Where axis and edges of the vertical field meet the room.",
+        by=spots_of_vertical,
+        takes={"source_axis_distance_cm": "machine.source_axis_distance_cm", **ROOM},
+        source="iec-61217",
+        known="derived",
+    ),
+    one_of_techniques(
+        "arrangement.field_spots",
+        "Where axes and edges of the fields meet the room.",
+        standing="arrangement.beam_spots",
+        lying="arrangement.vertical_spots",
     ),
     Definition(
         "arrangement.neutron_remark",

@@ -1,9 +1,12 @@
 """What the program adds to the barriers in its busiest week: x rays of each lobe, and leakage."""
 
-from readiness.assessment.definition import Definition, derived
-from readiness.assessment.values.dose import LYING, PlannedCycles
+from dataclasses import replace
+
+from readiness.assessment.definition import Definition, derived, one_of_techniques
+from readiness.assessment.values.dose import PlannedCycles
 from readiness.calculations import course_consistency
 from readiness.calculations.leakage_workload import LeakageWorkload, leakage_workload
+from readiness.calculations.moving_couch_dose import CouchPass
 from readiness.calculations.xray_workload import (
     XRayWorkload,
     attenuation_basis,
@@ -14,7 +17,6 @@ from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 ONE_DUAL = "one-dual"
-VERTICAL = "a vertical beam meets the floor: its barriers come from the room's own report"
 
 
 def busiest_week_cycles(*, peak_patients: int, courses: Table) -> float:
@@ -49,14 +51,17 @@ def most_mu_per_cycle(*, planned: PlannedCycles) -> int:
     return max(units.cycle_mu for _, _, units in planned.courses)
 
 
+def lying_mu_per_cycle(*, couch: CouchPass, incidences: int) -> int:
+    """Return the monitor units of all incidences of a lying patient; for workloads only, never shown."""
+    return round(couch.incidence_mu * incidences)
+
+
 def xrays(
-    *, technique: str, xray_fraction_percent: float, depth_cm: float, dose_per_cycle_gy: float,
+    *, xray_fraction_percent: float, depth_cm: float, dose_per_cycle_gy: float,
     b_factor: float, plane_distance_cm: float, water_attenuation: float, lobe_allowance: float,
     cycles_per_week: float, extra_mu: float | None, cycle_mu: int, energy_mev: float,
 ) -> XRayWorkload:  # fmt: skip
     """Return the x-ray workload of one lobe spot from f1 and its three factors."""
-    if technique == LYING:
-        raise OutsideValidity(VERTICAL)
     return workload_from_fraction(
         xray_fraction_percent=xray_fraction_percent, fields=ONE_DUAL, depth_cm=depth_cm,
         dose_per_cycle_gy=dose_per_cycle_gy, multiple_field_factor=b_factor,
@@ -67,13 +72,11 @@ def xrays(
 
 
 def xrays_of_pair(
-    *, technique: str, axis_cgy_per_mu: float, mid_height_cgy_per_mu: float | None, depth_cm: float,
+    *, axis_cgy_per_mu: float, mid_height_cgy_per_mu: float | None, depth_cm: float,
     water_attenuation: float, plane_distance_cm: float, cycles_per_week: float, extra_mu: float | None,
     cycle_mu: int, energy_mev: float,
 ) -> XRayWorkload:  # fmt: skip
     """Return the x-ray workload of one lobe spot from the dose per MU of the pair at its larger place."""
-    if technique == LYING:
-        raise OutsideValidity(VERTICAL)
     largest = max(axis_cgy_per_mu, mid_height_cgy_per_mu or 0.0)
     return workload_from_pair_dose(
         pair_cgy_per_mu=largest, plane_distance_cm=plane_distance_cm, cycle_mu=cycle_mu,
@@ -83,18 +86,42 @@ def xrays_of_pair(
     )  # fmt: skip
 
 
+def xrays_of_vertical(
+    *, cgy_per_mu: float, depth_cm: float, water_attenuation: float, plane_distance_cm: float,
+    cycles_per_week: float, extra_mu: float | None, cycle_mu: int, energy_mev: float,
+) -> XRayWorkload:  # fmt: skip
+    """Return the x-ray workload below a vertical field, which stands still while the patient moves."""
+    return xrays_of_pair(
+        axis_cgy_per_mu=cgy_per_mu, mid_height_cgy_per_mu=None, depth_cm=depth_cm,
+        water_attenuation=water_attenuation, plane_distance_cm=plane_distance_cm,
+        cycles_per_week=cycles_per_week, extra_mu=extra_mu, cycle_mu=cycle_mu, energy_mev=energy_mev,
+    )  # fmt: skip
+
+
+def by_technique(name: str, meaning: str, *, standing: str, lying: str) -> Definition:
+    """Return a record that is another one for a standing patient than for a lying one, never shown."""
+    return replace(one_of_techniques(name, meaning, standing=standing, lying=lying), internal=True)
+
+
 def leakage(
-    *, technique: str, cycle_mu: int, dose_per_cycle_gy: float, output_cgy_per_mu: float,
+    *, cycle_mu: int, dose_per_cycle_gy: float, output_cgy_per_mu: float,
     cycles_per_week: float, extra_mu: float | None,
 ) -> LeakageWorkload:  # fmt: skip
     """Return the leakage workload of the busiest week."""
-    if technique == LYING:
-        raise OutsideValidity(VERTICAL)
     return leakage_workload(
         cycle_mu=cycle_mu, dose_per_cycle_gy=dose_per_cycle_gy, output_at_1_m_cgy_per_mu=output_cgy_per_mu,
         cycles_per_week=cycles_per_week, extra_week_mu=extra_mu or 0.0,
     )  # fmt: skip
 
+
+_WEEK = {
+    "water_attenuation": "criterion.water_attenuation_ratio",
+    "plane_distance_cm": "arrangement.study_distance_cm",
+    "cycles_per_week": "program.busiest_week_cycles_per_week",
+    "extra_mu": "protection.qa_mu_per_week_mu?",
+    "cycle_mu": "arrangement.workload_mu",
+    "energy_mev": "beam.energy_at_source_mev",
+}
 
 DEFINITIONS: tuple[Definition, ...] = (
     derived(
@@ -119,27 +146,52 @@ DEFINITIONS: tuple[Definition, ...] = (
         {"sessions": "each course.sessions_per_cycle"},
     ),
     Definition(
-        "arrangement.workload_mu",
-        "Monitor units of a cycle, for workloads only.",
+        "arrangement.standing_workload_mu",
+        "Monitor units of a cycle of a standing patient, for workloads only.",
         by=most_mu_per_cycle,
         takes={"planned": "arrangement.planned_cycles"},
         internal=True,
     ),
     Definition(
+        "arrangement.lying_workload_mu",
+        "Monitor units of a cycle of a lying patient, for workloads only.",
+        by=lying_mu_per_cycle,
+        takes={"couch": "arrangement.couch_pass", "incidences": "program.lying_incidence_count"},
+        internal=True,
+    ),
+    by_technique(
+        "arrangement.workload_mu",
+        "Monitor units of a cycle, for workloads only.",
+        standing="arrangement.standing_workload_mu",
+        lying="arrangement.lying_workload_mu",
+    ),
+    by_technique(
         "arrangement.xray_workload_record",
+        "X-ray workload of one spot that a field meets.",
+        standing="arrangement.xray_workload_of_pair",
+        lying="arrangement.xray_workload_of_vertical",
+    ),
+    Definition(
+        "arrangement.xray_workload_of_vertical",
+        "X-ray workload below a vertical field, from the dose per MU on its axis.",
+        by=xrays_of_vertical,
+        takes={
+            "cgy_per_mu": "arrangement.xray_mid_height_cgy_per_mu",
+            "depth_cm": "arrangement.xray_mid_height_depth_cm",
+            **_WEEK,
+        },
+        model=True,
+        internal=True,
+    ),
+    Definition(
+        "arrangement.xray_workload_of_pair",
         "X-ray workload of one lobe spot: from the dose per MU on the tilted axis, else from f1.",
         by=xrays_of_pair,
         takes={
-            "technique": "arrangement.technique",
             "axis_cgy_per_mu": "arrangement.xray_axis_cgy_per_mu",
             "mid_height_cgy_per_mu": "arrangement.xray_mid_height_cgy_per_mu?",
             "depth_cm": "arrangement.xray_axis_depth_cm",
-            "water_attenuation": "criterion.water_attenuation_ratio",
-            "plane_distance_cm": "arrangement.study_distance_cm",
-            "cycles_per_week": "program.busiest_week_cycles_per_week",
-            "extra_mu": "protection.qa_mu_per_week_mu?",
-            "cycle_mu": "arrangement.workload_mu",
-            "energy_mev": "beam.energy_at_source_mev",
+            **_WEEK,
         },
         otherwise="arrangement.xray_workload_of_fraction",
         model=True,
@@ -150,25 +202,19 @@ DEFINITIONS: tuple[Definition, ...] = (
         "X-ray workload of one lobe spot from f1 and its three factors, with its steps.",
         by=xrays,
         takes={
-            "technique": "arrangement.technique",
             "xray_fraction_percent": "arrangement.pair_xray_percent",
             "depth_cm": "arrangement.pair_xray_depth_cm",
             "dose_per_cycle_gy": "program.largest_dose_per_cycle_gy",
             "b_factor": "arrangement.b_factor",
-            "plane_distance_cm": "arrangement.study_distance_cm",
-            "water_attenuation": "criterion.water_attenuation_ratio",
             "lobe_allowance": "beam.lobe_factor",
-            "cycles_per_week": "program.busiest_week_cycles_per_week",
-            "extra_mu": "protection.qa_mu_per_week_mu?",
-            "cycle_mu": "arrangement.workload_mu",
-            "energy_mev": "beam.energy_at_source_mev",
+            **_WEEK,
         },
         model=True,
         internal=True,
     ),
     Definition(
         "arrangement.xray_workload_gy_m2_per_week",
-        "X rays at 1 m that one lobe spot receives in the busiest week.",
+        "X rays at 1 m that one spot, of a lobe or below a vertical field, receives in the busiest week.",
         of="arrangement.xray_workload_record",
         part="per_week_gy_m2_per_week",
         source="own-arithmetic",
@@ -196,7 +242,6 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Leakage workload of the busiest week.",
         by=leakage,
         takes={
-            "technique": "arrangement.technique",
             "cycle_mu": "arrangement.workload_mu",
             "dose_per_cycle_gy": "program.largest_dose_per_cycle_gy",
             "output_cgy_per_mu": "beam.reference_output_cgy_per_mu",

@@ -237,7 +237,7 @@ def test_mu_set_on_each_beam_are_counted_together() -> None:
 def test_a_fraction_of_4_mev_behind_water_is_not_enough() -> None:
     """The attenuation near 6 MeV would understate it: no workload, with the reason."""
     asked: dict[str, Any] = {
-        "technique": "six-position", "xray_fraction_percent": 0.9, "depth_cm": 10.0, "dose_per_cycle_gy": 2.0,
+        "xray_fraction_percent": 0.9, "depth_cm": 10.0, "dose_per_cycle_gy": 2.0,
         "b_factor": 2.7, "plane_distance_cm": 400.0, "water_attenuation": 0.058, "lobe_allowance": 2.0,
         "cycles_per_week": 4.0, "extra_mu": None, "cycle_mu": 20000,
     }  # fmt: skip
