@@ -197,6 +197,7 @@ class Gap:
     where: Place | None = None
     waits_for: tuple[str, ...] = ()
     earliest: date | None = None
+    progress: str = ""  # actual dates of its task in words
 
 
 @dataclass(frozen=True)
@@ -232,6 +233,7 @@ class ScheduledTask:
     critical: bool
     done: bool
     lead_time: str  # "department's own", or "default, common practice"
+    state: str = ""  # actual dates in words
 
 
 @dataclass(frozen=True)

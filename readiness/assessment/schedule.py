@@ -5,7 +5,7 @@ Beside values/ this is the other place that calls calculations: a schedule needs
 cannot know.
 """
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Collection, Iterator, Mapping, Sequence
 from dataclasses import replace
 from datetime import date
 from functools import cache
@@ -78,15 +78,12 @@ def plan_road(
     own_times = {item.id for item in program.of_kind("task") if item.get("working_days") is not None}
     wanted = {gap.task for gap in gaps} | own | {"release-program"}
     tasks = reduced_network(tasks=tasks, keep={task.id for task in tasks if task.id in wanted})
-    progress = tuple(
-        Progress(str(item.get("task")), item.get("started_on"), item.get("finished_on"))  # type: ignore[arg-type]
-        for item in program.of_kind("progress")
-    )
-    progress = tuple(entry for entry in progress if entry.task in {task.id for task in tasks})
+    progress, ahead = actual_dates(program, {task.id for task in tasks}, as_of)
     root = program.find("program", "program")
     target = root.get("target_first_patient_date") if root else None
     target = target if isinstance(target, date) else None
     calendar = working_calendar(program)
+    states = {entry.task: _state(entry) for entry in progress}
     finished = {entry.task for entry in progress if entry.finished}
     work, capacity = commissioning_work(program, [task for task in tasks if task.id not in finished])
     road = road_to_first_patient(
@@ -106,6 +103,7 @@ def plan_road(
             latest_finish=each.latest_finish or each.finish, float_days=float(each.float_working_days or 0),
             critical=each.critical, done=each.state == "finished",
             lead_time="department's own" if each.task.id in own_times else "default, common practice",
+            state=states.get(each.task.id, ""),
         )
         for each in road.tasks
     )  # fmt: skip
@@ -119,7 +117,7 @@ def plan_road(
     by_week = _weeks(road, work, capacity, calendar, as_of) if work.rows else ()
     schedule = Schedule(
         scheduled, road.first_patient, target, road.late_working_days, movers,
-        _remarks(road, by_week), by_week,
+        (*_remarks(road, by_week), *_progress_words(scheduled, ahead)), by_week,
     )  # fmt: skip
     return schedule, tuple(_dated(gap, scheduled) for gap in gaps)
 
@@ -166,13 +164,50 @@ def working_calendar(program: Program) -> WorkingDays:
     )
 
 
+def actual_dates(
+    program: Program, tasks: Collection[str], as_of: date
+) -> tuple[tuple[Progress, ...], tuple[str, ...]]:
+    """Return the actual dates of tasks of the road up to a day, and the tasks that have dates after it."""
+    entries: list[Progress] = []
+    ahead: list[str] = []
+    for item in program.of_kind("progress"):
+        task, started, finished = (item.get(name) for name in ("task", "started_on", "finished_on"))
+        begun, ended = (
+            day if isinstance(day, date) and day <= as_of else None for day in (started, finished)
+        )
+        if (begun, ended) != (started, finished):
+            ahead.append(str(task))
+        if str(task) in tasks and (begun or ended):
+            entries.append(Progress(str(task), begun, ended))
+    return tuple(entries), tuple(ahead)
+
+
+def _state(entry: Progress) -> str:
+    """Return the actual dates of a task in words."""
+    if entry.finished:
+        return f"recorded as done on {entry.finished.isoformat()}"
+    return f"under way since {entry.started.isoformat()}" if entry.started else ""
+
+
+def _progress_words(scheduled: Sequence[ScheduledTask], ahead: Sequence[str]) -> Iterator[str]:
+    """Return what is recorded as done although gaps of it are open, and the dates that lie ahead."""
+    open_ones = [f"{task.title} ({len(task.gaps)})" for task in scheduled if task.done and task.gaps]
+    if open_ones:
+        yield (
+            "Recorded as done in progress.csv, yet gaps of it are open; the date takes the record at its "
+            f"word: {'; '.join(open_ones)}."
+        )
+    if ahead:
+        yield f"Dates in progress.csv after the day of this assessment are left out: {', '.join(ahead)}."
+
+
 def _remarks(road: Road, by_week: tuple[WeekOfWork, ...]) -> tuple[str, ...]:
     remarks = [_NOT_SHARED, _hours_words(by_week)]
     remarks.append(
         "A default lead time is common practice; state the department's own under tasks in program.yaml."
     )
     if road.out_of_order:
-        remarks.append(f"Finished before what they wait for: {', '.join(road.out_of_order)}.")
+        remarks.append(f"Out of order: {'; '.join(road.out_of_order)}.")
     return tuple(remarks)
 
 
@@ -207,4 +242,5 @@ def _dated(gap: Gap, scheduled: tuple[ScheduledTask, ...]) -> Gap:
     task = next((each for each in scheduled if each.id == gap.task), None)
     if task is None:
         return gap
-    return replace(gap, waits_for=task.waits_for, earliest=task.finish)
+    earliest = None if task.done else task.finish  # what is open although its task has ended has no date
+    return replace(gap, waits_for=task.waits_for, earliest=earliest, progress=task.state)

@@ -60,7 +60,8 @@ def remaining_network(
         begun = done.get(task.id)
         early = [other for other in task.waits_for if other not in finished]
         if begun is not None and (begun.started or begun.finished) and early:
-            odd.append(f"{task.id} has begun although {', '.join(early)} has not ended")
+            have = "has" if len(early) == 1 else "have"
+            odd.append(f"{task.id} has begun although {' and '.join(early)} {have} not ended")
         if task.id in finished:
             continue
         if begun is not None and begun.started is not None:

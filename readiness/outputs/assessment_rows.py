@@ -10,10 +10,10 @@ from readiness.assessment.wording import in_words
 from readiness.outputs.documents import RenderedDocument
 from readiness.outputs.words import (
     blocking,
-    date_words,
     item_words,
     known_words,
     outcome_words,
+    when_words,
     with_unit,
 )
 from readiness.sources import HOW_KNOWN, keys_in, publications
@@ -88,7 +88,7 @@ def gaps(assessment: Assessment, blocking_only: bool = False) -> tuple[GapRow, .
 def _gap(gap: Gap, assessment: Assessment) -> GapRow:
     return GapRow(
         id=gap.id, what=gap.what, item=short_item(gap.item, assessment), owner=gap.owner,
-        earliest=date_words(gap.earliest), strength=gap.strength, phase=gap.phase,
+        earliest=when_words(gap), strength=gap.strength, phase=gap.phase,
         when="due later" if gap.due_later else "due now", task=gap.task,
         rules=tuple(dict.fromkeys(rule for rule, _ in gap.findings)),
     )  # fmt: skip
@@ -130,7 +130,7 @@ def tasks(assessment: Assessment) -> tuple[tuple[str, ...], ...]:
             task.title, task.owner, task.phase, printed(task.working_days), task.start.isoformat(),
             task.finish.isoformat(),
             "moves the date" if task.critical else task.latest_finish.isoformat(),
-            "done" if task.done else task.lead_time,
+            task.state or task.lead_time,
         )
         for task in assessment.schedule.tasks
     )  # fmt: skip

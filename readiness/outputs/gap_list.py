@@ -9,10 +9,10 @@ from readiness.outputs.contract import CAUTION, INVENTED
 from readiness.outputs.words import date_words, item_words
 
 HEADINGS = (
-    "Gap", "What is to be done", "Item", "Owner", "Task", "Earliest date", "Strength", "Phase", "When due",
-    "Subject", "Closes rules", "Where",
+    "Gap", "What is to be done", "Item", "Owner", "Task", "Earliest date", "Progress", "Strength", "Phase",
+    "When due", "Subject", "Closes rules", "Where",
 )  # fmt: skip
-_WIDTHS = (34, 70, 26, 20, 24, 13, 10, 12, 12, 18, 36, 22)
+_WIDTHS = (34, 70, 26, 20, 24, 13, 22, 10, 12, 12, 18, 36, 22)
 _RISKY = ("=", "+", "-", "@", "\t", "\r")
 
 
@@ -29,6 +29,7 @@ def _row(gap: Gap) -> tuple[str, ...]:
         gap.owner,
         gap.task,
         date_words(gap.earliest),
+        gap.progress,
         gap.strength,
         gap.phase,
         "due later" if gap.due_later else "due now",

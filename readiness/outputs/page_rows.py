@@ -56,6 +56,7 @@ class GapLine:
     item: str
     owner: str
     earliest: str
+    progress: str
     strength: str
     strength_order: int
     phase: str
@@ -75,6 +76,7 @@ class Bar:
     finish: str
     float: str
     lead_time: str
+    state: str
     critical: bool
     done: bool
     x: str
@@ -149,7 +151,8 @@ def gap_lines(assessment: Assessment) -> tuple[GapLine, ...]:
     return tuple(
         GapLine(
             what=shortened(gap.what, assessment), item=short_item(gap.item, assessment), owner=gap.owner,
-            earliest=gap.earliest.isoformat() if gap.earliest else "", strength=gap.strength,
+            earliest=gap.earliest.isoformat() if gap.earliest else "", progress=gap.progress,
+            strength=gap.strength,
             strength_order=STRENGTHS.index(gap.strength), phase=gap.phase,
             phase_order=PHASES.index(gap.phase),
             due="later" if gap.due_later else "now", subject=gap.topic,
@@ -197,7 +200,7 @@ def road(schedule: Schedule | None) -> Road | None:
     bars = tuple(
         Bar(
             task.title, task.owner, task.start.isoformat(), task.finish.isoformat(),
-            f"{task.float_days:g}", task.lead_time, task.critical, task.done, place(task.start),
+            f"{task.float_days:g}", task.lead_time, task.state, task.critical, task.done, place(task.start),
             f"{max(0.6, 100 * ((task.finish - task.start).days + 1) / days):.2f}",
         )
         for task in sorted(schedule.tasks, key=lambda task: (task.start, task.finish, task.id))

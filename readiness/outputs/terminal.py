@@ -71,6 +71,7 @@ def _arrangement(row: ArrangementRow, width: int) -> list[str]:
 
 def _gap_line(gap: Gap, width: int) -> str:
     when = f"; earliest {date_words(gap.earliest)}" if gap.earliest else ""
+    when += f"; its task is {gap.progress}" if gap.progress else ""
     return _wrapped(f"{gap.what} [{gap.owner}{when}]", width, "    ", "  - ")
 
 

@@ -66,6 +66,13 @@ def date_words(day: date | None) -> str:
     return day.isoformat() if day else "-"
 
 
+def when_words(gap: Gap) -> str:
+    """Return the earliest day of a gap; or what is recorded of its task, though the gap is open."""
+    if gap.earliest is None and gap.progress:
+        return f"task {gap.progress}"
+    return date_words(gap.earliest)
+
+
 def finding_words(finding: Finding) -> str:
     """Return a finding's message; a number that is not measured says so."""
     if not finding.expected:

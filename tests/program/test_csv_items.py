@@ -123,14 +123,14 @@ def test_a_name_that_is_no_id_is_refused():
 
 def test_progress_is_one_item_a_row():
     """Each row of progress.csv is an item named after its task; a blank date is unknown."""
-    program = read("task,started_on,finished_on\norder,2026-10-01,\napprove,2026-09-01,2026-09-15\n", "progress.csv")
-    order, approve = program.of_kind("progress")
-    assert (order.id, order.get("started_on"), order.get("finished_on")) == ("order", date(2026, 10, 1), None)
-    assert (approve.id, approve.get("finished_on")) == ("approve", date(2026, 9, 15))
+    program = read("task,started_on,finished_on\nbuy-stand,2026-10-01,\ndry-run,2026-09-01,2026-09-15\n", "progress.csv")
+    stand, dry_run = program.of_kind("progress")
+    assert (stand.id, stand.get("started_on"), stand.get("finished_on")) == ("buy-stand", date(2026, 10, 1), None)
+    assert (dry_run.id, dry_run.get("finished_on")) == ("dry-run", date(2026, 9, 15))
     assert ("progress", "program") in program.known_lists
 
 
 def test_a_task_has_one_row():
     """A task that stands in two rows is told."""
-    messages = told("task,started_on\norder,2026-10-01\norder,2026-10-02\n", "progress.csv")
-    assert messages == ["3: Progress of a task order is described twice; first at progress.csv:2:1"]
+    messages = told("task,started_on\ndry-run,2026-10-01\ndry-run,2026-10-02\n", "progress.csv")
+    assert messages == ["3: Progress of a task dry-run is described twice; first at progress.csv:2:1"]

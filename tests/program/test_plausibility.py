@@ -45,7 +45,7 @@ SOUND = {
     },
     "a door without layers": {"rooms": room(), "shielding": BARRIER.replace("role: primary", "role: door") + "    layers: []\n"},
     "a limit": {"local_rules": 'limits: [{id: l, rule: r, limit: 0.02, unit: "mSv/week", source: law}]\n'},
-    "tasks in a row": {"program": program(tasks="[{id: a}, {id: b, waits_for: [a]}, {id: c, waits_for: [a, b, tool-task]}]")},
+    "tasks in a row": {"program": program(tasks="[{id: a, working_days: 1}, {id: b, working_days: 2, waits_for: [a]}, {id: dry-run, waits_for: [a, b, train-staff]}]")},
     "a calibration": {"dosimetry": "instruments: [{id: c, calibrated_on: 2026-02-10, calibration_due_on: 2028-02-10}]\n"},
     "costs": {"program": program(costs="[{id: stand, low: 1, likely: 1, high: 3}]")},
     "days off": {"program": program(closed_dates="[2026-12-24]", target_first_patient_date="2027-05-17")},
@@ -130,7 +130,7 @@ REFUSED = {
     },
     "2026-12-24 is written twice": {"program": program(closed_dates="[2026-12-24, 2026-12-24]")},
     "write the two-letter code of the country, not Germany": {"program": program(holidays_country="Germany")},
-    "it waits for itself: a waits for a": {"program": program(tasks="[{id: a, waits_for: [a]}]")},
+    "it waits for itself: a waits for a": {"program": program(tasks="[{id: a, working_days: 1, waits_for: [a]}]")},
     "the low figure 5 exceeds the high one, 3": {"program": program(costs="[{id: stand, low: 5, high: 3}]")},
     "its calibration is due on the day it was made": {
         "dosimetry": "instruments: [{id: c, calibrated_on: 2026-02-10, calibration_due_on: 2026-02-10}]\n"

@@ -1,4 +1,4 @@
-"""The program's own choices: courses, plans, the chosen arrangement, tasks and costs."""
+"""The program's own choices: courses, plans, the chosen arrangement and costs."""
 
 from collections.abc import Iterator, Mapping
 from functools import cache
@@ -14,7 +14,6 @@ from readiness.program.plausibility.stated import (
     question,
     table,
     word,
-    words,
 )
 from readiness.quantities import Scalar
 from readiness.units import printed
@@ -160,32 +159,6 @@ def gaps(program: Program) -> Iterator[Problem]:
             yield impossible(plan, "degrader_gap_cm", message)
 
 
-def task_circles(program: Program) -> Iterator[Problem]:
-    """No task waits, through others, for itself."""
-    waits = {task.id: words(task, "waits_for") or () for task in program.of_kind("task")}
-    told: set[str] = set()
-    for task in program.of_kind("task"):
-        circle = _circle(task.id, waits)
-        if circle and not told & set(circle):
-            told |= set(circle)
-            message = f"it waits for itself: {' waits for '.join(circle)}"
-            yield impossible(task, "waits_for", message)
-
-
-def _circle(start: str, waits: Mapping[str, tuple[str, ...]]) -> list[str]:
-    """Return the shortest way from a task back to itself, or nothing."""
-    paths = [[start]]
-    seen = set()
-    for path in paths:
-        for waited in waits.get(path[-1], ()):
-            if waited == start:
-                return [*path, start]
-            if waited not in seen:
-                seen.add(waited)
-                paths.append([*path, waited])
-    return []
-
-
 def costs(program: Program) -> Iterator[Problem]:
     """A low figure is not above the likely one, nor that above the high one."""
     for cost in program.of_kind("cost"):
@@ -206,6 +179,5 @@ CHECKS: tuple[Check, ...] = (
     countries,
     arrangements,
     gaps,
-    task_circles,
     costs,
 )
