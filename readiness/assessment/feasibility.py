@@ -149,6 +149,8 @@ def _row(
         for name in FIGURES
         if name in graph.catalogue.definitions and isinstance(got := graph.get(name, arrangement), Value)
     )
+    floor = graph.get("room.floor_polygon_cm", arrangement)
+    axis = graph.get("machine.source_axis_distance_cm", arrangement)
     return ArrangementRow(
         arrangement,
         str(item.get("title")),
@@ -159,6 +161,8 @@ def _row(
         chosen,
         figures,
         (),
+        floor.value if isinstance(floor, Value) else (),
+        float(axis.value) if isinstance(axis, Value) else None,
     )
 
 
@@ -171,5 +175,6 @@ def reasons(best: ArrangementRow, second: ArrangementRow | None) -> tuple[str, .
         return (f"It is {best.feasibility}; the next, {second.title}, is {second.feasibility}.",)
     for key, words in _COMPARED:
         if mine[key] != other[key]:
-            return (f"It has {mine[key]} {words}; the next, {second.title}, has {other[key]}.",)
+            said = words.replace("-rules", "-rule") if mine[key] == 1 else words
+            return (f"It has {mine[key]} {said}; the next, {second.title}, has {other[key]}.",)
     return (f"It and the next, {second.title}, stand alike; the folder lists it first.",)

@@ -23,7 +23,6 @@ from readiness.program.measurement_kinds import measurement_kind
 from readiness.quantities import Table, Uncertain
 from readiness.units import unit_of, words_of
 
-
 Memory = dict[Any, Any]
 
 

@@ -202,7 +202,13 @@ class Gap:
 
 @dataclass(frozen=True)
 class ArrangementRow:
-    """One arrangement compared with the others, with the findings that decide its feasibility."""
+    """
+    One arrangement compared with the others, with the findings that decide its feasibility.
+
+    Attributes:
+        floor_cm: Corners of the room's floor from the isocentre, for a small plan; empty if not known.
+        source_axis_distance_cm: From the source to the isocentre, for that plan.
+    """
 
     item: Ref
     title: str
@@ -213,6 +219,8 @@ class ArrangementRow:
     chosen: bool
     figures: tuple[tuple[str, Any, str], ...]  # value name, value, basis
     reasons: tuple[str, ...]
+    floor_cm: tuple[tuple[float, float], ...] = ()
+    source_axis_distance_cm: float | None = None
 
 
 @dataclass(frozen=True)

@@ -18,6 +18,7 @@ from readiness.assessment.records import (
     Value,
 )
 from readiness.outputs.assessment_rows import MatrixRow, SourceRow, matrix, short_item, sources
+from readiness.outputs.thumbnails import thumbnails
 from readiness.outputs.words import chosen_row, finding_words, known_words
 from readiness.quantities import Table
 
@@ -37,6 +38,7 @@ class Arrangement:
     row: ArrangementRow
     deciding: tuple[tuple[str, str], ...]  # sentence; rule, strength, source and how we know it
     more: int
+    plan: Markup
 
 
 @dataclass(frozen=True)
@@ -110,10 +112,14 @@ def possible(assessment: Assessment) -> tuple[Arrangement, ...]:
     rows += [
         row for row in assessment.arrangements if row != chosen and row.feasibility != "not feasible here"
     ]
+    plans = thumbnails(rows)
     return tuple(
-        Arrangement(row, _deciding(assessment, row.deciding[:_DECIDING]), len(row.deciding[_DECIDING:]))
+        Arrangement(
+            row, _deciding(assessment, row.deciding[:_DECIDING]), len(row.deciding[_DECIDING:]),
+            Markup(plans.get(row.item.id, "")),  # noqa: S704 - our own drawing
+        )
         for row in rows
-    )
+    )  # fmt: skip
 
 
 def ruled_out(assessment: Assessment) -> tuple[Group, ...]:
