@@ -109,7 +109,8 @@ def _phase(program: Program) -> str:
 def _work_out(graph: Graph, of_concern: set[Ref], wanted: tuple[str, ...] | None) -> None:
     """Ask for values of the items of concern, so that documents and descents can show them."""
     known = graph.catalogue
-    everything = (*known.definitions, *known.kinds.described.fields, *known.criteria)
+    shown = (name for name, definition in known.definitions.items() if not definition.internal)
+    everything = (*shown, *known.kinds.described.fields, *known.criteria)
     for name in everything if wanted is None else wanted:
         kind = name.partition(".")[0]
         if kind == "criterion":

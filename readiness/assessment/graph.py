@@ -50,6 +50,7 @@ class Graph(ItemIndex):
         self.as_of = as_of
         self._limits = limits
         self._known: dict[tuple[str, Ref], Got] = {}
+        self._asked: dict[tuple[str, Ref], Got] = {}  # the same by who asks, so that owners are found once
         self._choices: dict[str, bool] = {}
         self._sections = catalogue.kinds.sections
         self.assumed_below: dict[tuple[str, Ref], frozenset[Cause]] = {}  # kept by causes.py
@@ -59,9 +60,16 @@ class Graph(ItemIndex):
     def supply(self, name: str, item: Ref, value: Any) -> None:
         """Give a value that only a later step can know (a document's approval)."""
         self._known[(name, item)] = Value(name, item, value, unit_of(name), "stated")
+        self._asked.clear()
 
     def get(self, name: str, asking: Ref) -> Got:
         """Return a value of an item, or of what it belongs to."""
+        known = self._asked.get((name, asking))
+        if known is None:
+            known = self._asked[(name, asking)] = self._found(name, asking)
+        return known
+
+    def _found(self, name: str, asking: Ref) -> Got:
         kind = name.partition(".")[0]
         if kind == "criterion":
             return self._limit(name)
