@@ -30,8 +30,9 @@ def read_measurement(csv: nodes.CsvText, sink: Sink) -> Item | None:
     """
     kind = _kind(csv, sink)
     described = (kind.header, kind.columns) if kind else ({}, {})
-    sink.problems.extend(identifier_problems(csv, *described))
-    if kind is None:
+    identifying = identifier_problems(csv, *described)
+    sink.problems.extend(identifying)
+    if kind is None or identifying:  # what else is wrong would repeat what must not be repeated
         return None
     stem = PurePosixPath(csv.place.file).stem
     item_id = read_id(nodes.Scalar(stem, csv.place), "name of a measurement file", sink) or stem

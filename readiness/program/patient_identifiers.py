@@ -60,8 +60,9 @@ def identifier_problems(
     for key, value in csv.header:
         if key.text not in header:
             found += _field_problems(key)
-        if key.text not in header or header[key.text].type == "text":
-            found += _text_problems(value, alone=key.text not in header or key.text == "note")
+        described = header[key.text].type if key.text in header else ""
+        if described in ("", "text", "word"):
+            found += _text_problems(value, alone=described != "text" or key.text == "note")
     for at, column in enumerate(csv.columns):
         if column.text not in columns:
             found += _field_problems(column)

@@ -1,13 +1,14 @@
 """In-vivo dosimetry: what the plan takes, and what the readings of a cycle say."""
 
 from collections.abc import Sequence
+from dataclasses import replace
 
 from readiness.assessment.definition import Definition, Measured, derived
 from readiness.assessment.values.naming import named
 from readiness.assessment.values.readings import numbers, numbers_or, words
 from readiness.calculations.in_vivo_plan import InVivoPlan, in_vivo_plan
-from readiness.calculations.in_vivo_readings import InVivoResult, evaluate_in_vivo
-from readiness.calculations.in_vivo_sites import in_vivo_sites
+from readiness.calculations.in_vivo_readings import NOT_JUDGED, InVivoResult, evaluate_in_vivo
+from readiness.calculations.in_vivo_sites import PRESCRIPTION_SITE, in_vivo_sites
 from readiness.calculations.reading_uncertainty import mean_sd_percent
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table, Uncertain
@@ -97,17 +98,22 @@ def result_of_readings(
     boost_below_percent: float,
     shield_above_percent: float,
 ) -> InVivoResult:
-    """Return what the first cycle in a file says; deficits are for the longest course."""
+    """Return what the last cycle with readings at the prescription level says; else the first in the file."""
     if not each_cycles or not each_sessions_per_cycle:
         raise OutsideValidity("no course says how many sessions make a cycle")
     cycles = [round(cycle) for cycle in numbers(table, "cycle")]
-    return evaluate_in_vivo(
+    sites = words(table, "site", "")
+    judged = max(
+        (cycle for cycle, site in zip(cycles, sites, strict=True) if site == PRESCRIPTION_SITE),
+        default=min(cycles),
+    )
+    result = evaluate_in_vivo(
         cycles=cycles,
         sessions=[round(day) for day in numbers(table, "day")],
-        sites=words(table, "site", ""),
+        sites=sites,
         points=[round(point) for point in numbers_or(table, "point", 1.0)],
         doses_cgy=numbers(table, "dose_cgy"),
-        cycle=min(cycles),
+        cycle=judged,
         cycles_of_course=max(each_cycles),
         sessions_per_cycle=max(each_sessions_per_cycle),
         dose_per_cycle_gy=prescribed_per_cycle_gy,
@@ -118,6 +124,9 @@ def result_of_readings(
         boost_below_percent=boost_below_percent,
         shield_above_percent=shield_above_percent,
     )
+    others = ", ".join(str(cycle) for cycle in sorted(set(cycles) - {judged}))
+    said = f"Cycle {judged} is judged; the file also holds readings of cycle {others}, which are left aside."
+    return replace(result, remarks=(*result.remarks, said)) if others else result
 
 
 def percent_at_prescription(*, result: InVivoResult) -> Uncertain | None:
@@ -127,8 +136,10 @@ def percent_at_prescription(*, result: InVivoResult) -> Uncertain | None:
     return Uncertain(result.prescription_percent, result.prescription_sd_percent)
 
 
-def deviation(*, result_percent: float) -> float:
-    """Return how far the dose is from the prescription, either way."""
+def deviation(*, result_percent: float, result_action: str) -> float:
+    """Return how far the dose is from the prescription, either way; too few readings are judged by nobody."""
+    if result_action == NOT_JUDGED:
+        raise OutsideValidity(result_action)
     return abs(result_percent - 100)
 
 
@@ -210,7 +221,7 @@ PLAN: tuple[Definition, ...] = (
 RESULT: tuple[Definition, ...] = (
     Definition(
         "in_vivo.result",
-        "What the readings of the first cycle in the latest file say.",
+        "What the readings of the last cycle in the latest file say.",
         measured=Measured(
             READINGS,
             by=result_of_readings,
@@ -238,7 +249,7 @@ RESULT: tuple[Definition, ...] = (
         "in_vivo.result_deviation_percent",
         "How far that dose is from the prescription, either way.",
         deviation,
-        {"result_percent": "in_vivo.result_percent"},
+        {"result_percent": "in_vivo.result_percent", "result_action": "in_vivo.result_action"},
     ),
     _found("result_action", "Action at the prescription level, in words.", "action"),
     _found("site_results", "Dose of each site with its action.", "sites"),

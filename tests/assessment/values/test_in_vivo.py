@@ -166,3 +166,21 @@ def test_without_readings_they_are_asked_for() -> None:
 def test_what_is_missing_is_named(of: Program, name: str, root: str) -> None:
     """The field that is left out is the one cause."""
     assert [root] == [cause.what for cause in got(of, name).causes]
+
+
+def test_too_few_readings_are_judged_by_nobody() -> None:
+    """Two complete readings at the prescription level have a mean, but no deviation that could be met."""
+    few = [row for row in BOTH_DAYS if row[2] != "umbilicus" or row[3] < 3]
+    of = described(readings(few))
+    assert isinstance(got(of, "result_percent"), Value)
+    found = got(of, "result_deviation_percent")
+    assert isinstance(found, Gone)
+    assert any("fewer than three" in cause.words for cause in found.causes)
+
+
+def test_the_last_measured_cycle_is_judged_and_the_others_are_named() -> None:
+    """A good first cycle does not hide a later one that is 10 % higher."""
+    later = [(7, *row[1:4], 1.1 * row[4]) for row in BOTH_DAYS]
+    of = described(readings([*BOTH_DAYS, *later]))
+    assert pytest.approx(113.3) == value(of, "result_percent")
+    assert any("Cycle 7 is judged" in said and "cycle 1," in said for said in value(of, "result_remarks"))
