@@ -83,6 +83,7 @@ def assessment_sheets(assessment: Assessment, rendered: Sequence[RenderedDocumen
         "weeks": rows.commissioning_weeks(assessment),
         "matrix": rows.matrix(assessment),
         "values": rows.values(assessment),
+        "not_printed": rows.values_not_printed(assessment),
         "evidence": rows.evidence(assessment),
         "inputs": assessment.inputs,
         "sources": rows.sources(assessment, rendered),

@@ -1,10 +1,11 @@
 """The lists of the assessment part: gaps, requirements, values, evidence and sources, ready to print."""
 
 import re
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
 from typing import Any
 
+from readiness.assessment.catalogue import catalogue
 from readiness.assessment.records import Assessment, Finding, Gap, Ref, Rule, Value
 from readiness.assessment.wording import in_words
 from readiness.outputs.documents import RenderedDocument
@@ -19,6 +20,7 @@ from readiness.outputs.words import (
 from readiness.sources import HOW_KNOWN, keys_in, publications
 from readiness.units import printed
 
+_MOST_INPUTS = 8  # named in the line of a value; all of them stand in assessment.json
 KNOWN_WORDS = tuple(HOW_KNOWN.items())
 _SOURCE_LINK = re.compile(r'href="binder:source-([a-z0-9.-]+)"')
 
@@ -153,14 +155,45 @@ def commissioning_weeks(assessment: Assessment) -> tuple[tuple[str, str, str, st
 
 
 def values(assessment: Assessment) -> tuple[tuple[str, tuple[tuple[str, str, str, str, str], ...]], ...]:
-    """Return item -> values not merely stated: name, number, basis, descent, method."""
+    """
+    Return item -> values not merely stated: name, number, basis, descent, formula and source.
+
+    Those that a rule judges, a document shows or a formula gives; the others stand in assessment.json.
+    """
     by_item: dict[str, list[tuple[str, str, str, str, str]]] = {}
+    for value in _worth_printing(assessment):
+        line = (value.name.partition(".")[2], _number(value), value.basis, _descent(value), _method(value))
+        by_item.setdefault(short_item(value.item, assessment), []).append(line)
+    return tuple((item, tuple(lines)) for item, lines in by_item.items())
+
+
+def values_not_printed(assessment: Assessment) -> int:
+    """Return how many values that were not merely stated are left to assessment.json."""
+    return sum(1 for _ in _not_merely_stated(assessment)) - sum(1 for _ in _worth_printing(assessment))
+
+
+def _not_merely_stated(assessment: Assessment) -> Iterator[Value]:
     for value in assessment.values:
         if value.item.kind != "criterion" and (value.inputs or value.source or value.basis != "stated"):
-            method = f"{value.source} ({value.known})" if value.source else ""
-            line = (value.name.partition(".")[2], _number(value), value.basis, _descent(value), method)
-            by_item.setdefault(short_item(value.item, assessment), []).append(line)
-    return tuple((item, tuple(lines)) for item, lines in by_item.items())
+            yield value
+
+
+def _worth_printing(assessment: Assessment) -> Iterator[Value]:
+    judged = {rule.subject for rule in assessment.rules}
+    shown = {name for document in assessment.documents for name in document.values}
+    for value in _not_merely_stated(assessment):
+        if value.name in judged or value.name in shown or _formula(value):
+            yield value
+
+
+def _formula(value: Value) -> str:
+    definition = catalogue().definitions.get(value.name)
+    return definition.formula if definition else ""
+
+
+def _method(value: Value) -> str:
+    source = f"{value.source} ({value.known})" if value.source else ""
+    return "; ".join(each for each in (_formula(value), source) if each)
 
 
 def _number(value: Value) -> str:
@@ -172,8 +205,10 @@ def _number(value: Value) -> str:
 
 
 def _descent(value: Value) -> str:
-    names = dict.fromkeys(each.name for each in value.inputs)
-    said = [", ".join(names)] if names else []
+    names = list(dict.fromkeys(each.name for each in value.inputs))
+    said = [", ".join(names[:_MOST_INPUTS])] if names else []
+    if len(names) > _MOST_INPUTS:
+        said = [f"{said[0]} and {len(names) - _MOST_INPUTS} more"]
     if value.where is not None:
         said.append(str(value.where))
     if value.instead_of is not None:

@@ -1,9 +1,9 @@
 """What stands around the body of a document: control block, caution, requirements answered, page heads."""
 
 import re
-from collections.abc import Callable, Mapping
+from collections.abc import Callable, Mapping, Sequence
 
-from readiness.assessment.records import Assessment, DocumentState
+from readiness.assessment.records import Assessment, DocumentState, Rule
 from readiness.outputs.contract import CAUTION, INVENTED
 from readiness.outputs.documents import RenderedDocument
 from readiness.outputs.holes import plain
@@ -119,12 +119,7 @@ def _around(document: RenderedDocument, assessment: Assessment) -> str:
     applying = {each.rule for each in assessment.findings if each.outcome != "not applicable"}
     own = [rule for rule in assessment.rules if document.number in rule.documents]
     rules = [rule for rule in own if rule.id in applying]
-    lines = "; ".join(
-        f'<a href="binder:rule-{plain(rule.id)}">{plain(rule.id)}</a> ({rule.strength}) {plain(rule.title)} '
-        f'<span class="known">[{plain(known_words(rule))}]</span>'
-        for rule in rules
-    )
-    answered = f"<h2>Requirements that this document answers</h2><p>{lines}.</p>" if lines else ""
+    answered = _answered(rules, short=document.kind == "form")
     groups: dict[str, list[str]] = {}
     for blank in document.missing:
         groups.setdefault(blank.group, []).append(plain(blank.words))
@@ -133,3 +128,18 @@ def _around(document: RenderedDocument, assessment: Assessment) -> str:
     )
     still = f"<h2>Blanks in this document, and what fills them</h2>{blanks}" if blanks else ""
     return f'<section class="around">{answered}{still}</section>' if answered or still else ""
+
+
+def _answered(rules: Sequence[Rule], *, short: bool) -> str:
+    """Return the requirements that a document answers; on a form, meant for one sheet, their names alone."""
+    if not rules:
+        return ""
+    links = [f'<a href="binder:rule-{plain(rule.id)}">{plain(rule.id)}</a>' for rule in rules]
+    if short:
+        return f'<p class="answers"><b>Answers</b> {", ".join(links)}.</p>'
+    lines = "; ".join(
+        f"{link} ({rule.strength}) {plain(rule.title)} "
+        f'<span class="known">[{plain(known_words(rule))}]</span>'
+        for link, rule in zip(links, rules, strict=True)
+    )
+    return f"<h2>Requirements that this document answers</h2><p>{lines}.</p>"
