@@ -18,6 +18,16 @@ class Layer(NamedTuple):
     density_g_per_cm3: float | None
 
 
+class LayerStep(NamedTuple):
+    """What one layer takes: its tenth-value layers for its density, and how many of them it is worth."""
+
+    layer: Layer
+    tvl1_cm: float
+    tvle_cm: float
+    in_first_cm: float
+    tenths: float
+
+
 def barrier_layers(*, layers: Table, recess_depth_cm: float) -> tuple[Layer, ...]:
     """
     Return the layers that the radiation meets, thinned by a recess or conduit.
@@ -86,20 +96,49 @@ def layers_transmission(
     Assumes: layers in touch; no shielding by patient or equipment.
     Source: ncrp-151, Eq. 2.2-2.3 (memory), inverted; thin first layers derived.
     """
-    tenths, first_left = 0.0, 1.0
-    for material, thickness_cm, density_g_per_cm3 in layers:
-        layer = tenth_value_layers(
-            material=material,
-            density_g_per_cm3=density_g_per_cm3,
+    steps = transmission_steps(
+        layers=layers, radiation=radiation, energy_mv=energy_mv, angle_deg=angle_deg
+    )
+    return float(10.0 ** -sum(step.tenths for step in steps))
+
+
+def transmission_steps(
+    *, layers: tuple[Layer, ...], radiation: str, energy_mv: float, angle_deg: float | None
+) -> list[LayerStep]:
+    """
+    Return what each layer takes, with the tenth-value layers that it is taken with.
+
+    Args:
+        layers: From inside outwards.
+        radiation: ``primary``, ``leakage`` or ``scatter``.
+        energy_mv: End point of the x rays. [MV]
+        angle_deg: Scattering angle, for ``scatter`` only. [deg]
+
+    Returns:
+        One step for each layer; the transmission is ten to the minus sum of their tenths.
+
+    Raises:
+        ValueError: As ``layers_transmission``.
+        OutsideValidity: As ``layers_transmission``.
+
+    Source: ncrp-151, Eq. 2.2-2.3 (memory), inverted; thin first layers derived.
+    """
+    steps: list[LayerStep] = []
+    first_left = 1.0
+    for layer in layers:
+        taken = tenth_value_layers(
+            material=layer.material,
+            density_g_per_cm3=layer.density_g_per_cm3,
             radiation=radiation,
             energy_mv=energy_mv,
             angle_deg=angle_deg,
         )
-        in_first = min(thickness_cm, first_left * layer.tvl1_cm)
-        spent = in_first / layer.tvl1_cm
+        in_first = min(layer.thickness_cm, first_left * taken.tvl1_cm)
+        spent = in_first / taken.tvl1_cm
         first_left = max(0.0, first_left - spent)
-        tenths += spent + (thickness_cm - in_first) / layer.tvle_cm
-    return float(10.0**-tenths)
+        tenths = spent + (layer.thickness_cm - in_first) / taken.tvle_cm
+        steps.append(LayerStep(layer, taken.tvl1_cm, taken.tvle_cm, in_first, tenths))
+    return steps
 
 
 def barrier_transmission(

@@ -88,12 +88,13 @@ def workload_from_axis_dose(
     """
     _check(above=(plane_distance_cm, cycle_mu), at_least=(axis_cgy_per_mu, double_tilt_cgy_per_mu))
     square = (plane_distance_cm / 100.0) ** 2
-    per_cycle = cycle_mu / 2.0 * (axis_cgy_per_mu + double_tilt_cgy_per_mu) / 100.0 * square
+    at_plane = cycle_mu / 2.0 * (axis_cgy_per_mu + double_tilt_cgy_per_mu) / 100.0
+    per_cycle = at_plane * square
     cycles = _all_cycles(cycles_per_week, extra_week_mu, cycle_mu)
     steps: list[tuple[Scalar, ...]] = [
         ("x rays on the tilted axis", "x(0)", axis_cgy_per_mu, "cGy/MU", "as given", "measurement"),
         ("x rays at twice the tilt", "x(2t)", double_tilt_cgy_per_mu, "cGy/MU", "as given", "measurement"),
-        ("MU of a cycle, both beams", "MU", cycle_mu, "MU", "as given", "program"),
+        ("both fields, over the MU of a cycle", "D_x", at_plane, "Gy", "product", "program"),
         ("distance of the plane, squared", "d^2", square, "m²", "as given", "program"),
     ]
     return _workload(per_cycle, cycles, 1.0, steps)
@@ -138,15 +139,15 @@ def workload_from_pair_dose(
     mu = WATER_ATTENUATION_PER_CM if water_attenuation_per_cm is None else water_attenuation_per_cm
     _check(above=(plane_distance_cm, cycle_mu), at_least=(pair_cgy_per_mu, depth_cm, mu))
     square, water = (plane_distance_cm / 100.0) ** 2, exp(mu * depth_cm)
-    basis = _basis(water_attenuation_per_cm, water_basis)
+    at_plane, basis = cycle_mu * pair_cgy_per_mu / 100.0, _basis(water_attenuation_per_cm, water_basis)
     cycles = _all_cycles(cycles_per_week, extra_week_mu, cycle_mu)
     steps: list[tuple[Scalar, ...]] = [
         ("x rays of the pair", "x", pair_cgy_per_mu, "cGy/MU", "as given", "measurement"),
-        ("MU of a cycle, both beams", "MU", cycle_mu, "MU", "as given", "program"),
+        ("over the MU of a cycle", "D_x", at_plane, "Gy", "product", "program"),
         ("water in front of it", "exp(mu z)", water, "", basis, "derived"),
         ("distance of the plane, squared", "d^2", square, "m²", "as given", "program"),
     ]
-    return _workload(cycle_mu * pair_cgy_per_mu / 100.0 * water * square, cycles, 1.0, steps)
+    return _workload(at_plane * water * square, cycles, 1.0, steps)
 
 
 def workload_from_fraction(

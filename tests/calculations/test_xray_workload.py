@@ -165,3 +165,11 @@ def test_the_steps_say_how_the_attenuation_is_known():
     """A careful attenuation stands as such beside its factor."""
     steps = workload_from_fraction(**{**FRACTION, "water_attenuation_per_cm": 0.058}, water_basis="careful").steps
     assert ["careful"] == [row["basis"] for row in steps.records() if row["symbol"] == "exp(mu z)"]
+
+
+def test_steps_never_hold_the_monitor_units():
+    """The dose at the plane over a cycle stands in their place, with or without both places measured."""
+    pair = {key: value for key, value in AXIS.items() if "cgy" not in key}
+    for steps in (workload_from_axis_dose(**AXIS).steps, workload_from_pair_dose(**pair, pair_cgy_per_mu=1.5e-4).steps):
+        assert AXIS["cycle_mu"] not in steps.column("amount")
+        assert [pytest.approx(0.033)] == [row["amount"] for row in steps.records() if row["symbol"] == "D_x"]

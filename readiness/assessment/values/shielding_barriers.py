@@ -13,7 +13,7 @@ MV_OF_MEV = 1.0  # the end point of the x rays is the energy of the electrons
 WORKED_OUT = ("contribution", "formula", "with_numbers", "dose_usv_per_week", "share_percent", "source")
 BARRIERS = (
     "place", "before_usv_per_week", "after_usv_per_week", "goal_usv_per_week", "in_any_hour_usv", "role",
-    "largest_contribution",
+    "largest_contribution", "remark",
 )  # fmt: skip
 
 
@@ -92,13 +92,13 @@ def worked_out(*, contributions: Table) -> Table:
 def overview(
     *, places: tuple[str, ...], roles: tuple[str, ...], before: tuple[float | None, ...],
     after: tuple[float | None, ...], goals: tuple[float | None, ...], hours: tuple[float | None, ...],
-    largest: tuple[str | None, ...],
+    largest: tuple[str | None, ...], remarks: tuple[str | None, ...],
 ) -> Table:  # fmt: skip
     """Return all barriers of the room, before and after; blank where only a survey can tell."""
     rows = [
-        (place, was, now, None if goal is None else 1000 * goal, in_hour, role, most)
-        for place, role, was, now, goal, in_hour, most in zip(
-            places, roles, before, after, goals, hours, largest, strict=True
+        (place, was, now, None if goal is None else 1000 * goal, in_hour, role, most, remark)
+        for place, role, was, now, goal, in_hour, most, remark in zip(
+            places, roles, before, after, goals, hours, largest, remarks, strict=True
         )
     ]
     return Table(BARRIERS, tuple(rows))
@@ -201,6 +201,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             "goals": "each exposure.goal_msv_per_week?",
             "hours": "each exposure.any_hour_dose_usv?",
             "largest": "each exposure.largest_contribution?",
+            "remarks": "each exposure.remark?",
         },
     ),
 )
