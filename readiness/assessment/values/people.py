@@ -8,7 +8,7 @@ from readiness.assessment.values.naming import named
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
-COUNTED = ("oncologist", "physicist", "therapist", "nurse")
+COUNTED = ("therapist", "nurse")  # the others are judged
 RECORD = "competency-record"
 NOBODY = "nobody"
 
@@ -55,12 +55,52 @@ def _types(papers: object) -> tuple[str, ...]:
     return papers if isinstance(papers, tuple) else ()
 
 
+def undecided(people: Table, professions: Sequence[str]) -> dict[str, float]:
+    """Return the people of whom it is not known whether they are qualified, with their stated time."""
+    return {
+        str(row["person"]): float(row["fte"] or 0.0)
+        for row in people.records()
+        if row["profession"] in professions and row["person"] is not None and row["qualified"] is None
+    }
+
+
+def not_known(people: Sequence[str]) -> OutsideValidity:
+    """Return why nothing can be said while records of these people are missing."""
+    return OutsideValidity(
+        f"It is not known whether {', '.join(people)} can be counted as qualified: state licence, training "
+        "and competency check in staffing.yaml."
+    )
+
+
+def enough(*, known: int, asked: float, open_people: Sequence[str]) -> int:
+    """Return how many are qualified, unless that hangs on people of whom it is not known."""
+    if known < asked <= known + len(open_people):
+        raise not_known(open_people)
+    return known
+
+
+def _count(people: Table, profession: str) -> int:
+    return sum(row["profession"] == profession and row["qualified"] is True for row in people.records())
+
+
 def _qualified_of(profession: str) -> Callable[..., int]:
     def count(*, people: Table) -> int:
         """Return how many of the profession are known to be qualified."""
-        return sum(row["profession"] == profession and row["qualified"] is True for row in people.records())
+        return _count(people, profession)
 
     return count
+
+
+def qualified_oncologists(*, people: Table, asked_persons: float) -> int:
+    """Return how many radiation oncologists are qualified, where that is known."""
+    known = _count(people, "oncologist")
+    return enough(known=known, asked=asked_persons, open_people=list(undecided(people, ["oncologist"])))
+
+
+def qualified_physicists(*, people: Table, asked_persons: float) -> int:
+    """Return how many physicists are qualified, where that is known."""
+    known = _count(people, "physicist")
+    return enough(known=known, asked=asked_persons, open_people=list(undecided(people, ["physicist"])))
 
 
 DEFINITIONS: tuple[Definition, ...] = (
@@ -109,5 +149,17 @@ DEFINITIONS: tuple[Definition, ...] = (
             {"people": "program.people"},
         )
         for profession in COUNTED
+    ),
+    derived(
+        "program.qualified_oncologists",
+        "Number of radiation oncologists who are licensed, trained and have a competency check in force.",
+        qualified_oncologists,
+        {"people": "program.people", "asked_persons": "criterion.oncologists_persons"},
+    ),
+    derived(
+        "program.qualified_physicists",
+        "Number of physicists who are licensed, trained and have a competency check in force.",
+        qualified_physicists,
+        {"people": "program.people", "asked_persons": "criterion.physicists_persons"},
     ),
 )

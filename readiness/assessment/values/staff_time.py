@@ -5,6 +5,7 @@ from datetime import date
 
 from readiness.assessment.definition import Definition, derived
 from readiness.assessment.values.naming import named
+from readiness.assessment.values.people import enough, not_known, undecided
 from readiness.calculations.staff_cover import (
     cover_with_one_away,
     qualified_at_console,
@@ -72,9 +73,25 @@ def cover_of_staff(*, tasks: Table, people: Table, balance: Table) -> Table:
     return cover_with_one_away(tasks=Table(TASKS, tasks.rows), people=people, balance=balance)
 
 
-def professions_without_cover(*, cover: Table) -> str:
-    """Return the professions in which an absence leaves too few qualified people for a session."""
-    return named(str(row["profession"]) for row in cover.records() if row["session_covered"] is not True)
+def professions_without_cover(*, cover: Table, people: Table) -> str:
+    """Return the professions in which an absence leaves too few qualified people, where that is known."""
+    short = dict.fromkeys(
+        str(row["profession"]) for row in cover.records() if row["session_covered"] is not True
+    )
+    open_people = {who: list(undecided(people, [who])) for who in short}
+    known = [who for who in short if not open_people[who]]
+    if short and not known:
+        raise not_known([person for one in open_people.values() for person in one])
+    return named(known)
+
+
+def console_persons(*, people: Table, console_professions: Sequence[str], asked_persons: float) -> int:
+    """Return how many may stand at the console, where that is known."""
+    return enough(
+        known=qualified_at_console(people=people, console_professions=console_professions),
+        asked=asked_persons,
+        open_people=list(undecided(people, console_professions)),
+    )
 
 
 def _has_task(hours: Table, phase: str, profession: str) -> bool:
@@ -122,18 +139,29 @@ def short_of_time(
     *,
     oncologist_needed_fte: float, oncologist_fte: float, physicist_needed_fte: float, physicist_fte: float,
     therapist_needed_fte: float, therapist_fte: float, nurse_needed_fte: float, nurse_fte: float,
+    people: Table,
 ) -> str:  # fmt: skip
-    """Return the professions whose qualified people have less time than the program takes."""
+    """
+    Return the professions whose qualified people have less time than the program takes.
+
+    A profession is short if it would be short even if everybody whose records are missing were qualified;
+    if only those records decide, nothing is known.
+    """
     time = {
         "oncologist": (oncologist_fte, oncologist_needed_fte),
         "physicist": (physicist_fte, physicist_needed_fte),
         "therapist": (therapist_fte, therapist_needed_fte),
         "nurse": (nurse_fte, nurse_needed_fte),
     }
+    open_people = {who: undecided(people, [who]) for who in time}
+    short = {who: there + sum(open_people[who].values()) < needed for who, (there, needed) in time.items()
+             if there < needed}  # fmt: skip
+    if short and not any(short.values()):
+        raise not_known([person for who in short for person in open_people[who]])
     return named(
-        f"{who} ({there:.3g} of {needed:.3g} full-time equivalents)"
-        for who, (there, needed) in time.items()
-        if there < needed
+        f"{who} ({time[who][0]:.3g} of {time[who][1]:.3g} full-time equivalents)"
+        for who, known in short.items()
+        if known
     )
 
 
@@ -229,13 +257,17 @@ DEFINITIONS: tuple[Definition, ...] = (
         "program.professions_without_cover",
         "Professions in which an absence leaves too few qualified people for a session, or none.",
         professions_without_cover,
-        {"cover": "program.staff_cover"},
+        {"cover": "program.staff_cover", "people": "program.people"},
     ),
     derived(
         "program.console_qualified_persons",
         "People who are qualified and of a profession that may stand at the console.",
-        qualified_at_console,
-        {"people": "program.people", "console_professions": "program.console_professions"},
+        console_persons,
+        {
+            "people": "program.people",
+            "console_professions": "program.console_professions",
+            "asked_persons": "criterion.console_persons",
+        },
     ),
     derived(
         "program.console_qualified_with_one_away_persons",
@@ -254,7 +286,8 @@ DEFINITIONS: tuple[Definition, ...] = (
                 (f"{who}_needed_fte", f"program.{who}_needed_fte"),
                 (f"{who}_fte", f"program.{who}_qualified_fte"),
             )
-        },
+        }
+        | {"people": "program.people"},
     ),
     derived(
         "program.commissioning_needed_h",

@@ -21,6 +21,9 @@ def got(of: Program, name: str, ref: Ref = PROGRAM) -> Any:
     return found.value if isinstance(found, Value) else found
 
 
+WHOLE: dict[str, Any] = {"licensed": True, "trained_on": date(2026, 5, 1), "competency_on": date(2026, 6, 1)}
+
+
 def person(name: str, **fields: Any) -> Item:
     """Return a physicist."""
     return item("person", name, {"role": "physicists"}, role="physicists", **fields)
@@ -65,11 +68,26 @@ def test_people_without_a_record_on_file() -> None:
 
 
 def test_qualified_of_a_profession() -> None:
-    """Who lacks licence, training or competency is not counted, also where it is only unknown."""
-    whole = {"licensed": True, "trained_on": date(2026, 5, 1), "competency_on": date(2026, 6, 1)}
-    of = staff(person("P1", **whole), person("P2", **{**whole, "licensed": False}), person("P3", licensed=True))
+    """Who lacks licence, training or competency is not counted."""
+    off = {"licensed": False}
+    of = staff(person("P1", **WHOLE), person("P2", **{**WHOLE, **off}))
     assert 1 == got(of, "program.qualified_physicists")
     assert 0 == got(of, "program.qualified_nurses")
+
+
+def test_a_missing_record_is_not_known_where_it_decides() -> None:
+    """Of two physicists that are asked one is qualified: a third without dates leaves it open, and is named."""
+    of = staff(person("P1", **WHOLE), person("P2", **{**WHOLE, "licensed": False}), person("P3", licensed=True))
+    found = graph(of, *DEFINITIONS).get("program.qualified_physicists", PROGRAM)
+    assert isinstance(found, Gone)
+    assert ["P3 can be counted as qualified" in cause.words for cause in found.causes] == [True]
+
+
+def test_a_missing_record_decides_nothing_where_there_are_enough() -> None:
+    """Two are qualified and two are asked, whatever a third is; none is enough if even all would not do."""
+    enough = staff(person("P1", **WHOLE), person("P2", **WHOLE), person("P3", licensed=True))
+    assert 2 == got(enough, "program.qualified_physicists")
+    assert 0 == got(staff(person("P1", licensed=True)), "program.qualified_physicists")
 
 
 def test_unknown_people_are_asked_for() -> None:

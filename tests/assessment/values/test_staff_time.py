@@ -7,7 +7,10 @@ import pytest
 
 from readiness.assessment.records import PROGRAM, Gone, Ref, Value
 from readiness.assessment.values import patient_flow, staff_time
+from readiness.calculations.staff_hours import PEOPLE
+from readiness.errors import OutsideValidity
 from readiness.program.items import Item, Program
+from readiness.quantities import Table
 from tests.assessment.small import graph, item, program
 
 DEFINITIONS = (*patient_flow.DEFINITIONS, *staff_time.DEFINITIONS)
@@ -140,8 +143,17 @@ def test_the_console_needs_people_who_may_stand_there() -> None:
 def test_cover_is_judged_by_the_qualified_who_are_left() -> None:
     """Two therapists are left for a session of two; a session of three is not covered, and the profession is named."""
     assert "none" == value(described(), "program.professions_without_cover")
+    three = task("session", "therapist", "session", 60.0, 3)
+    unlicensed = person("T4", "therapists", **{**QUALIFIED, "licensed": False})
+    assert "therapist" == value(described(three, unlicensed), "program.professions_without_cover")
+
+
+def test_cover_is_not_known_while_a_record_is_missing_that_decides_it() -> None:
+    """The fourth therapist, of whom dates are missing, could be the third one left."""
     of = described(task("session", "therapist", "session", 60.0, 3))
-    assert "therapist" == value(of, "program.professions_without_cover")
+    found = graph(of, *DEFINITIONS).get("program.professions_without_cover", PROGRAM)
+    assert isinstance(found, Gone)
+    assert any("T4" in cause.words for cause in found.causes)
 
 
 def test_commissioning_hours_stand_against_those_available() -> None:
@@ -192,5 +204,11 @@ def test_professions_short_of_time_are_named_with_both_numbers() -> None:
         "oncologist_needed_fte": 0.05, "oncologist_fte": 0.1, "physicist_needed_fte": 0.156, "physicist_fte": 0.1,
         "therapist_needed_fte": 0.3, "therapist_fte": 0.3, "nurse_needed_fte": 0.0, "nurse_fte": 0.0,
     }  # fmt: skip
-    assert "physicist (0.1 of 0.156 full-time equivalents)" == staff_time.short_of_time(**time)
-    assert "none" == staff_time.short_of_time(**{**time, "physicist_fte": 0.2})
+    nobody = Table(PEOPLE, ())
+    assert "physicist (0.1 of 0.156 full-time equivalents)" == staff_time.short_of_time(**time, people=nobody)
+    assert "none" == staff_time.short_of_time(**{**time, "physicist_fte": 0.2}, people=nobody)
+    newcomer = Table(PEOPLE, (("P2", "physicist", 0.1, None),))
+    with pytest.raises(OutsideValidity, match="P2"):
+        staff_time.short_of_time(**time, people=newcomer)
+    small = Table(PEOPLE, (("P2", "physicist", 0.05, None),))
+    assert staff_time.short_of_time(**time, people=small).startswith("physicist")
