@@ -37,7 +37,7 @@ class ProgramProblems(Exception):
     def __init__(self, problems: list[Problem] | tuple[Problem, ...]) -> None:
         """Keep the problems in the order of their places."""
         self.problems = tuple(sorted(set(problems)))
-        super().__init__(f"{len(self.problems)} problem(s) in the program folder")
+        super().__init__(f"problems in the program folder: {len(self.problems)}")
 
 
 class UsageError(Exception):

@@ -74,7 +74,7 @@ def expected_cost(*, lines: Table, patients_per_year: float, paid: str) -> Uncer
     if not members:
         raise ValueError(f"there is no cost that is paid {paid}")
     if _open(members):
-        raise ValueError(f"{_open(members)} cost(s) have no amount; a sum without them would be too low")
+        raise ValueError(f"costs without an amount: {_open(members)}; a sum without them would be too low")
     mean = variance = 0.0
     for line in members:
         low, likely, high = line.amounts or (0.0, 0.0, 0.0)

@@ -185,7 +185,7 @@ def profession_fte_needed(*, hours: Table, profession: str, hours_per_fte_h: flo
         raise ValueError("a full-time person works some hours a year")
     needed_h, blanks = _hours_by_phase_and_profession(hours).get((OPERATE, profession), (0.0, 0))
     if blanks:
-        raise OutsideValidity(f"minutes or persons of {blanks} task(s) of the {profession} are not stated")
+        raise OutsideValidity(f"minutes or persons are not stated for tasks of the {profession}: {blanks}")
     return needed_h / hours_per_fte_h
 
 

@@ -49,7 +49,7 @@ def read_measurement(csv: nodes.CsvText, sink: Sink) -> Item | None:
     }
     columns = _read_columns(csv, kind.columns, sink)
     if len(csv.rows) < kind.min_rows:
-        message = f"{len(csv.rows)} row(s) of readings are too few: {kind.kind} needs {kind.min_rows} or more"
+        message = f"too few rows of readings, {len(csv.rows)}: {kind.kind} needs {kind.min_rows} or more"
         sink.add(csv.place, message, "missing")
     fields[TABLE] = Stated(_table(kind.columns, columns, len(csv.rows)), csv.place)
     named = {

@@ -174,7 +174,7 @@ def test_minutes_that_nobody_stated_are_never_zero():
     ).records()
     assert row["tasks_without_minutes"] == 1
     assert row["missing_fte"] is None
-    with pytest.raises(OutsideValidity, match=r"1 task\(s\) of the physicist are not stated"):
+    with pytest.raises(OutsideValidity, match="not stated for tasks of the physicist: 1"):
         profession_fte_needed(hours=hours, profession="physicist", hours_per_fte_h=1650)
 
 

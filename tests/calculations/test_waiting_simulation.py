@@ -149,7 +149,7 @@ def test_more_places_shorten_the_wait_and_more_referrals_lengthen_it():
 def test_too_few_places_let_the_wait_grow_without_end():
     """A mean wait is refused with the reason, and no patient is said to start in time."""
     assert share_started_in_time(courses=MIX, places=1, longest_wait_weeks=50) == 0
-    with pytest.raises(OutsideValidity, match=r"1\.13 patients at once exceed 1 place\(s\)"):
+    with pytest.raises(OutsideValidity, match=r"1\.13 patients at once are more than the places \(1\)"):
         wait_for_start(courses=MIX, places=1)
 
 

@@ -82,7 +82,7 @@ ASKED = {
     "its calibration would hold 10 years; check the year": {
         "dosimetry": "instruments: [{id: c, calibrated_on: 2026-02-10, calibration_due_on: 2036-02-10}]\n"
     },
-    "2 full-time equivalents, but 1 person(s) described": {
+    "2 full-time equivalents, but the people described are 1": {
         "staffing": "roles: [{id: physicist, available_fte: 2}]\npeople: [{id: P1, role: physicist}]\n"
     },
     "it is 2150 cm thick; were the layers given in millimetres?": {

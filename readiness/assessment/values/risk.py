@@ -82,7 +82,7 @@ def severe_with_one_control(*, risks: RiskAnalysis) -> str:
     few = [mode.id for mode in risks.modes if mode.id in grave and len(mode.controls) < 2]
     blank = sum(risks.scores.get(mode.id, Scores()).severity is None for mode in risks.modes)
     if blank and not few:
-        raise OutsideValidity(f"Score the severity of {blank} failure mode(s) in risks.yaml.")
+        raise OutsideValidity(f"Score in risks.yaml the severity of failure modes; without one: {blank}.")
     return named(few)
 
 

@@ -30,14 +30,14 @@ def gantry_ranges(program: Program) -> Iterator[Problem]:
         for name in ("gantry_range_deg", "forbidden_photon_gantry_deg"):
             found = numbers(machine, name)
             if found is not None and len(found) != 2:
-                message = f"write the lowest and the highest angle, not {len(found)} number(s)"
+                message = f"write two numbers, the lowest and the highest angle, not {len(found)}"
                 yield impossible(machine, name, message)
             elif found:
                 yield from _rising(machine, name, found)
     for beam in program.of_kind("beam"):
         found = numbers(beam, "mode_gantry_range_deg")
         if found is not None and (len(found) % 2 or not found):
-            message = f"write pairs of lowest and highest angle, not {len(found)} number(s)"
+            message = f"write pairs of lowest and highest angle, an even count of numbers, not {len(found)}"
             yield impossible(beam, "mode_gantry_range_deg", message)
         elif found:
             yield from _rising(beam, "mode_gantry_range_deg", found)

@@ -99,7 +99,7 @@ def people(program: Program) -> Iterator[Problem]:
     for role in program.of_kind("role"):
         fte, count = number(role, "available_fte"), in_role[role.id]
         if fte is not None and count and fte > count:
-            message = f"{printed(fte)} full-time equivalents, but {count} person(s) described"
+            message = f"{printed(fte)} full-time equivalents, but the people described are {count}"
             yield question(role, "available_fte", message)
     for person in program.of_kind("person"):
         if word(person, "cover_for") == person.id:

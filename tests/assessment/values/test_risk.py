@@ -85,7 +85,7 @@ def test_a_severity_that_nobody_scored_may_be_severe() -> None:
     """While a severity is blank it is not known that no severe mode lacks a control."""
     found = got("severe_modes_with_one_control", mode(FIRST, severity=8))
     assert isinstance(found, Gone)
-    assert f"severity of {len(SHIPPED) - 1} failure mode" in found.causes[0].words
+    assert f"severity of failure modes; without one: {len(SHIPPED) - 1}" in found.causes[0].words
 
 
 def test_the_oldest_scores_decide_their_age() -> None:
