@@ -159,7 +159,8 @@ def wait_for_start(*, courses: Table, places: int) -> Uncertain:
     load = patients_under_treatment(courses=courses)
     if load >= places:
         raise OutsideValidity(
-            f"referrals for {load:.2f} patients at once are more than the places ({places}): the wait grows without end"
+            f"referrals for {load:.2f} patients at once are more than the places ({places}): the wait grows "
+            "without end"
         )
     return long_run(courses=courses, places=places).mean_wait_weeks
 
