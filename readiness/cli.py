@@ -142,10 +142,13 @@ def rules(
 @click.argument("value")
 @click.argument("folder", type=_FOLDER)
 @click.option("--item", help="Id of the item, if not the chosen arrangement's.")
+@click.option(
+    "--depth", type=click.IntRange(0, 12), default=3, show_default=True, help="Levels of inputs under it."
+)
 @_as_of
-def explain(value: str, folder: Path, item: str | None, as_of: date | None) -> None:
+def explain(value: str, folder: Path, item: str | None, depth: int, as_of: date | None) -> None:
     """Show how VALUE was found in FOLDER: formula, inputs with their places, sources, basis."""
-    _finish(commands.explain(value, folder, item=item, as_of=_day(as_of), width=_width()))
+    _finish(commands.explain(value, folder, item=item, as_of=_day(as_of), width=_width(), depth=depth))
 
 
 @readiness.command(

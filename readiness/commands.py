@@ -151,13 +151,15 @@ def rules(rule_id: str | None, folder: Path | None, *, as_of: date, as_json: boo
     return Answer(show_rule(rule_id, assessment, width, as_json), NOTHING_OPEN)
 
 
-def explain(name: str, folder: Path, *, item: str | None, as_of: date, width: int) -> Answer:
+def explain(
+    name: str, folder: Path, *, item: str | None, as_of: date, width: int, depth: int
+) -> Answer:
     """Show a value with its descent."""
     from readiness.outputs.explanation import explain_value
 
     assessment = _assessed_or_none(folder, as_of)
     assert assessment is not None  # noqa: S101 - a folder was given
-    return Answer(explain_value(name, assessment, item, width), NOTHING_OPEN)
+    return Answer(explain_value(name, assessment, item, width, depth), NOTHING_OPEN)
 
 
 def review(

@@ -182,7 +182,7 @@ class Graph(ItemIndex):
         own = claim.causes if claim is not None else ()
         if isinstance(stands_in, Gone):
             return Gone(tuple(sorted({*own, *stands_in.causes})))
-        inputs = (Input("otherwise", stands_in.name, stands_in.item),)
+        inputs = self._shown_inputs("otherwise", stands_in)
         return replace(stands_in, name=definition.name, item=ref, inputs=inputs)
 
     def _by_technique(self, definition: Definition, ref: Ref) -> Got:
@@ -193,7 +193,7 @@ class Graph(ItemIndex):
         found = self.get(stands_for, ref) if stands_for else self._no_answer(definition, ref)
         if isinstance(found, Gone):
             return found
-        inputs = (Input("by technique", found.name, found.item),)
+        inputs = self._shown_inputs("by technique", found)
         return replace(found, name=definition.name, item=ref, inputs=inputs, instead_of=None)
 
     def _run(

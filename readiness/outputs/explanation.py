@@ -12,13 +12,16 @@ from readiness.quantities import Table
 from readiness.sources import HOW_KNOWN
 from readiness.units import printed, unit_of, words_of
 
-_DEEPEST = 8
+DEEPEST, USUAL, SHALLOW = 12, 3, 1  # levels of inputs under a value
 _MOST_ROWS = 40
+_CUT = "... not opened:"
 
 
-def explain_value(name: str, assessment: Assessment, item: str | None, width: int) -> str:
+def explain_value(
+    name: str, assessment: Assessment, item: str | None, width: int, depth: int = USUAL
+) -> str:
     """
-    Return a value with its whole descent.
+    Return a value with its descent, so many levels of inputs deep.
 
     Raises:
         UsageError: If there is no such value, with the nearest name.
@@ -33,8 +36,10 @@ def explain_value(name: str, assessment: Assessment, item: str | None, width: in
     if not found:
         lines.append(_not_known(name, assessment, width))
     for value in found:
-        lines += lines_of_value(value, assessment, width)
+        lines += lines_of_value(value, assessment, width, depth)
         lines.append("")
+    if any(_CUT in line for line in lines):
+        lines.append("More levels: --depth N, or explain the value that is not opened.")
     lines.append(textwrap.fill(CAUTION, width))
     return "\n".join(lines) + "\n"
 
@@ -60,25 +65,27 @@ def _not_known(name: str, assessment: Assessment, width: int) -> str:
     return textwrap.fill(text, width)
 
 
-def lines_of_value(value: Value, assessment: Assessment, width: int) -> list[str]:
-    """Return a value and everything it was worked out from, indented by depth, each once."""
+def lines_of_value(value: Value, assessment: Assessment, width: int, depth: int = SHALLOW) -> list[str]:
+    """Return a value and what it was worked out from, indented by level, each once, so many levels deep."""
     known = {(each.name, each.item): each for each in assessment.values}
     lines: list[str] = []
-    _add(value, "", known, lines, set(), width, 0)
+    _add(value, known, lines, set(), width, 0, depth)
     return lines
 
 
 def _add(
-    value: Value, keyword: str, known: dict[tuple[str, Ref], Value], lines: list[str],
-    seen: set[tuple[str, Ref]], width: int, depth: int,
+    value: Value, known: dict[tuple[str, Ref], Value], lines: list[str], seen: set[tuple[str, Ref]],
+    width: int, level: int, depth: int,
 ) -> None:  # fmt: skip
-    indent = "  " * depth
+    indent = "  " * level
     again = (value.name, value.item) in seen
     text = one_line(value) + (" (above)" if again and value.inputs else "")
+    if level >= depth and value.inputs and not again:
+        text += f" {_CUT} {value.name}"
     lines.append(
         textwrap.fill(text, max(40, width), initial_indent=indent, subsequent_indent=indent + "    ")
     )
-    if again or depth >= _DEEPEST:
+    if again or level > depth or (level == depth and value.inputs):
         return
     seen.add((value.name, value.item))
     definition = catalogue().definitions.get(value.name)
@@ -91,7 +98,7 @@ def _add(
     for one in value.inputs:
         source = known.get((one.name, one.item))
         if source is not None:
-            _add(source, one.keyword, known, lines, seen, width, depth + 1)
+            _add(source, known, lines, seen, width, level + 1, depth)
 
 
 def one_line(value: Value) -> str:

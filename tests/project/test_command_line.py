@@ -113,6 +113,21 @@ def test_explain_prints_the_descent(capsys: pytest.CaptureFixture[str]) -> None:
     assert "rooms.yaml:" in printed
 
 
+def test_explain_opens_as_many_levels_as_asked(capsys: pytest.CaptureFixture[str]) -> None:
+    """What is not opened is named, so that it can be explained by itself; every level can be had."""
+    value = ["explain", "exposure.weekly_dose_usv_per_week", str(SAMPLE), "--as-of", "2026-12-01"]
+    lengths = []
+    for depth in ("0", "1", "12"):
+        assert run([*value, "--depth", depth]) == 0
+        lengths.append(len(capsys.readouterr().out.splitlines()))
+    assert sorted(set(lengths)) == lengths
+    assert run(value) == 0
+    printed = capsys.readouterr().out
+    assert "... not opened:" in printed
+    assert "More levels: --depth N" in printed
+    assert run([*value, "--depth", "99"]) == 2
+
+
 def test_a_rule_is_shown_whole(capsys: pytest.CaptureFixture[str]) -> None:
     """Limit, source with how it is known, and the program's own finding."""
     assert run(["rules", "plane-distance", str(SAMPLE), "--as-of", "2026-12-01"]) == 0

@@ -268,3 +268,11 @@ def test_work_at_an_energy_outside_the_tables_leaves_the_wall_not_assessed() -> 
     found = finding(graph(changed("barrier", "a-west", existing_workload=existing)), "weekly-goal")
     assert "not assessed" == found.outcome
     assert any("from 4 to 18, not 25" in cause.words for cause in found.causes)
+
+
+def test_the_workload_shows_what_it_was_worked_out_from() -> None:
+    """However many records stand between, the fraction, its depth and the multiple-field factor are its inputs."""
+    got = graph(read_folder(SAMPLE)).get("arrangement.xray_workload_gy_m2_per_week", ARRANGEMENT)
+    assert isinstance(got, Value)
+    names = {each.name for each in got.inputs}
+    assert {"arrangement.pair_xray_percent", "arrangement.pair_xray_depth_cm", "arrangement.b_factor"} <= names
