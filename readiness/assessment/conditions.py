@@ -65,3 +65,14 @@ def fits(condition: Condition, limit: Any) -> bool:
     if condition.needs == "scalar":
         return limit is not None
     return limit is None
+
+
+def comparable(condition: Condition, value: Any, limit: Any) -> bool:
+    """Return whether a value and a limit are of the kind that the condition compares."""
+    if condition.needs == "number":
+        return all(isinstance(each, (int, float)) and not isinstance(each, bool) for each in (value, limit))
+    if condition.needs == "date":
+        return isinstance(value, date) and isinstance(limit, date)
+    if condition.name == "contains":
+        return isinstance(value, (str, tuple))
+    return True

@@ -10,7 +10,7 @@ from typing import Any
 
 from readiness.assessment.absence import unknown_list
 from readiness.assessment.causes import assumed_roots, why_not_measured
-from readiness.assessment.conditions import CONDITIONS
+from readiness.assessment.conditions import CONDITIONS, comparable
 from readiness.assessment.graph import Graph
 from readiness.assessment.records import Cause, Clause, Finding, Gone, Ref, Rule, Value
 from readiness.assessment.ruleset import is_value_name
@@ -71,6 +71,9 @@ def judge_item(rule: Rule, item: Ref, graph: Graph) -> Finding:
             message=" ".join(dict.fromkeys(cause.words for cause in sorted(set(causes)))),
         )  # fmt: skip
     assert isinstance(observed, Value)  # noqa: S101 - Gone was dealt with above
+    if not comparable(CONDITIONS[rule.condition], observed.value, limit):
+        cause = _unlike(rule.subject, rule.condition, item)
+        return Finding(rule.id, item, "not assessed", limit=limit, causes=(cause,), message=cause.words)
     return _compared(rule, item, observed, limit, graph)
 
 
@@ -84,9 +87,18 @@ def _applies(rule: Rule, item: Ref, graph: Graph) -> tuple[bool, list[Cause]]:
             causes += value.causes
         elif unknown:
             causes += unknown
+        elif not comparable(CONDITIONS[clause.condition], value.value, limit):
+            causes.append(_unlike(clause.subject, clause.condition, item))
         elif not _holds(clause.condition, value.value, limit):
             return False, []
     return True, causes
+
+
+def _unlike(name: str, condition: str, item: Ref) -> Cause:
+    """Return the cause that a local rule compares what is not of one kind."""
+    asked = condition.replace("_", " ")
+    words = f"The local rule cannot compare {name} by {asked}: they are not of one kind."
+    return Cause("contradiction", name, item, words)
 
 
 def _limit(rule: Rule, item: Ref, graph: Graph) -> tuple[Any, list[Cause]]:

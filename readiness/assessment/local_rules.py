@@ -5,21 +5,24 @@ A stricter local limit replaces ours. A looser one leaves ours governing, with a
 exception covers it. Whatever does not fit is a located problem in local_rules.yaml, never a crash.
 """
 
-import difflib
 import json
-from collections.abc import Iterable
 from dataclasses import dataclass
 from typing import Any
 
 from readiness.assessment.catalogue import Catalogue
 from readiness.assessment.conditions import CONDITIONS
 from readiness.assessment.criteria import criteria
+from readiness.assessment.local_fit import misfit, near, near_value, never_together, unfillable
 from readiness.assessment.records import Clause, Ref, Rule, RuleSource, Value
 from readiness.assessment.ruleset import check_rule, with_limit
 from readiness.assessment.schedule import shipped_tasks
 from readiness.errors import CatalogueError, Place, Problem, ProgramProblems
 from readiness.program.items import Item, Program
 from readiness.units import unit_of
+
+MESSAGE = "Found: {observed}. Asked: {limit}."
+DEFAULT_TASK = "describe-program"
+WITHOUT_UNIT = {"", "1", "none"}  # how a department may write that a ratio or count has no unit
 
 
 @dataclass(frozen=True)
@@ -62,11 +65,6 @@ def _with_limits(rules: tuple[Rule, ...], program: Program) -> tuple[LocalRules,
     return LocalRules(tuple(by_id.values()), limits, governs), problems
 
 
-def _near(name: str, names: Iterable[str]) -> str:
-    close = difflib.get_close_matches(name, list(names), n=1, cutoff=0.5)
-    return f"; did you mean {close[0]}?" if close else ""
-
-
 def _place(item: Item, field: str) -> Place:
     stated = item.fields.get(field)
     return stated.place if stated else item.place
@@ -93,7 +91,7 @@ def _take_criterion(
     name = criterion if criterion.startswith("criterion.") else f"criterion.{criterion}"
     ours = criteria().get(name)
     if ours is None:
-        words = f"there is no criterion {criterion}{_near(name, criteria())}"
+        words = f"there is no criterion {criterion}{near(name, criteria())}"
         problems.append(Problem(_place(item, "criterion"), words, "local limit"))
         return
     if not _unit_agrees(item, unit_of(name), problems):
@@ -114,7 +112,7 @@ def _take_rule_limit(
 ) -> None:  # fmt: skip
     rule = by_id.get(rule_id)
     if rule is None:
-        words = f"there is no rule {rule_id}{_near(rule_id, by_id)}"
+        words = f"there is no rule {rule_id}{near(rule_id, by_id)}"
         problems.append(Problem(_place(item, "rule"), words, "local limit"))
         return
     direction = CONDITIONS[rule.condition].stricter
@@ -126,10 +124,13 @@ def _take_rule_limit(
         return
     limit = float(item.get("limit"))  # type: ignore[arg-type]
     ours = rule.limit
-    if isinstance(ours, str):
-        criterion = criteria().get(ours)
-        ours = criterion.value if criterion else None
-    strict = ours is None or _at_least_as_strict(limit, float(ours), direction)
+    if isinstance(ours, str) and ours in criteria():
+        ours = criteria()[ours].value
+    if not isinstance(ours, (int, float)):
+        words = f"the limit of rule {rule_id} is worked out ({ours}); write a local rule beside it"
+        problems.append(Problem(_place(item, "rule"), words, "local limit"))
+        return
+    strict = _at_least_as_strict(limit, float(ours), direction)
     governs[Ref("local_limit", item.id)] = strict
     if strict:
         source = RuleSource(str(item.get("source")), "as cited by the department", "local")
@@ -145,7 +146,11 @@ def _unit_agrees(item: Item, unit: str, problems: list[Problem]) -> bool:
     plain = stated.replace("u", "µ").replace(" ", "").lower()
     if plain in {unit.replace(" ", "").lower(), unit.replace(" ", "").lower().replace("u", "µ")}:
         return True
+    if not unit and plain in WITHOUT_UNIT:
+        return True
     words = f'the limit is given in "{stated}", but what it limits is in "{unit}"; convert it to {unit}'
+    if not unit:
+        words = f'the limit is given in "{stated}", but what it limits has no unit; write unit: "1"'
     problems.append(Problem(_place(item, "unit"), words, "local limit"))
     return False
 
@@ -156,7 +161,8 @@ def _local_rule(item: Item, known: Catalogue, taken: set[str], problems: list[Pr
         words = f"a rule {item.id} ships with the tool; give the local rule another id, or a local limit"
         problems.append(Problem(item.place, words, "local rule"))
     _check_names(item, known, problems)
-    task = str(item.get("task") or "follow-local-rule")
+    if len(problems) == before:
+        _check_fit(item, known, problems)
     if len(problems) > before:
         return None
     rule = Rule(
@@ -167,14 +173,14 @@ def _local_rule(item: Item, known: Catalogue, taken: set[str], problems: list[Pr
         applies_when=_clauses(item),
         subject=str(item.get("subject")),
         condition=str(item.get("condition")),
-        limit=item.get("limit") if item.get("limit") is not None else item.get("limits"),
+        limit=_judged(item).limit,
         basis=str(item.get("basis") or "any"),
         physical=False,
         exceptable=True,
-        message=str(item.get("message") or "Found: {observed}. Asked: {limit}."),
+        message=str(item.get("message") or MESSAGE),
         remedy=str(item.get("remedy") or "Bring it into line with the local rule."),
         owner=str(item.get("owner") or "medical physicist"),
-        task=task if task in shipped_tasks() else "describe-program",
+        task=str(item.get("task") or DEFAULT_TASK),
         phase=str(item.get("phase") or "decide"),
         evidence=(),
         documents=(),
@@ -193,15 +199,44 @@ def _local_rule(item: Item, known: Catalogue, taken: set[str], problems: list[Pr
 def _check_names(item: Item, known: Catalogue, problems: list[Problem]) -> None:
     subject = str(item.get("subject"))
     if not known.has(subject) or (subject in known.definitions and known.definitions[subject].internal):
-        words = f"there is no value {subject}{_near(subject, known.names())}"
+        words = f"there is no value {subject}{near_value(subject, known)}"
         problems.append(Problem(_place(item, "subject"), words, "local rule"))
     for clause in _clauses(item):
         if not known.has(clause.subject):
-            words = f"there is no value {clause.subject}{_near(clause.subject, known.names())}"
+            words = f"there is no value {clause.subject}{near_value(clause.subject, known)}"
             problems.append(Problem(_place(item, "applies_when"), words, "local rule"))
-    for name in _never(_clauses(item)):
-        words = f"its conditions on {name} can never hold together"
-        problems.append(Problem(_place(item, "applies_when"), words, "local rule"))
+    task = item.get("task")
+    if task is not None and task not in shipped_tasks():
+        words = f"there is no task {task}{near(str(task), shipped_tasks())}"
+        problems.append(Problem(_place(item, "task"), words, "local rule"))
+
+
+def _check_fit(item: Item, known: Catalogue, problems: list[Problem]) -> None:
+    """Add what does not fit of a rule whose names all exist."""
+    judged = _judged(item)
+    kind = judged.subject.partition(".")[0]
+    found = [("limit" if item.get("limit") is not None else "condition", misfit(judged, kind, known))]
+    if item.get("limits") is not None:
+        found[0] = ("limits", found[0][1])
+    for clause in _clauses(item):
+        asked = clause.subject.partition(".")[0]
+        words = misfit(clause, kind, known)
+        if asked not in known.kinds.reachable(kind):
+            words = f"{clause.subject} cannot be asked of a {kind}"
+        found.append(("applies_when", words))
+    if not any(words for _, words in found):
+        found += [
+            ("applies_when", f"its conditions on {name} can never hold together")
+            for name in never_together(_clauses(item), known)
+        ]
+    found.append(("message", unfillable(str(item.get("message") or MESSAGE))))
+    problems += [Problem(_place(item, field), words, "local rule") for field, words in found if words]
+
+
+def _judged(item: Item) -> Clause:
+    """Return what a local rule asks of its subject."""
+    limit = item.get("limit") if item.get("limit") is not None else item.get("limits")
+    return Clause(str(item.get("subject")), str(item.get("condition")), limit)
 
 
 def _clauses(item: Item) -> tuple[Clause, ...]:
@@ -220,21 +255,3 @@ def _clauses(item: Item) -> tuple[Clause, ...]:
 def _list_in_row(text: Any) -> Any:
     """Return the list that a table row holds as JSON text."""
     return None if text is None else tuple(json.loads(text))
-
-
-def _never(clauses: tuple[Clause, ...]) -> list[str]:
-    """Return the values whose clauses contradict each other: a floor above a ceiling, two equals."""
-    found = []
-    for name in dict.fromkeys(clause.subject for clause in clauses):
-        own = [clause for clause in clauses if clause.subject == name]
-        floors = [c.limit for c in own if c.condition in {"at_least", "above"} and _is_number(c.limit)]
-        ceilings = [c.limit for c in own if c.condition in {"at_most", "below"} and _is_number(c.limit)]
-        equals = {str(c.limit) for c in own if c.condition == "equals"}
-        answers = {c.condition for c in own if c.condition in {"is_yes", "is_no"}}
-        if (floors and ceilings and max(floors) > min(ceilings)) or len(equals) > 1 or len(answers) > 1:
-            found.append(name)
-    return found
-
-
-def _is_number(limit: Any) -> bool:
-    return isinstance(limit, (int, float)) and not isinstance(limit, bool)
