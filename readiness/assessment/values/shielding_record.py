@@ -13,7 +13,7 @@ from readiness.units import printed
 
 DISTANCES = ("distance", "symbol", "amount_m", "comes_from")
 LAYERS = ("contribution", "layer", "thickness_cm", "density_g_per_cm3", "first_tenth_cm", "later_tenth_cm",
-          "in_first_tenth_cm", "tenths", "transmission_so_far")  # fmt: skip
+          "in_first_tenth_cm", "tenths", "transmission")  # fmt: skip
 JUDGED = ("step", "symbol", "amount", "unit")
 STEPS = ("step", "symbol", "amount", "unit", "basis", "source")
 HOURS = ("place", "photon_hour_usv", "session_usv", "sessions_in_hour", "any_hour_usv", "limit_usv")

@@ -35,7 +35,7 @@ def test_printed_numbers_give_the_printed_dose(sample: Graph, barrier: str) -> N
     lines = table(sample, "exposure.contributions", barrier)
     layers = {row["contribution"]: row for row in table(sample, "exposure.layer_steps", barrier)}
     for row in lines:
-        through = layers[row["contribution"]]["transmission_so_far"]
+        through = layers[row["contribution"]]["transmission"]
         by_hand = row["workload_gy_m2_per_week"] * row["factor"] * row["occupancy"] * through / row["distance_m"] ** 2
         assert by_hand * 1e6 == pytest.approx(row["dose_usv_per_week"], rel=1e-4)
     judged = {row["symbol"]: row["amount"] for row in table(sample, "exposure.judged_steps", barrier)}
