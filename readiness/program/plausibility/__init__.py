@@ -8,7 +8,16 @@ shown but stops nothing.
 from readiness.errors import Problem
 from readiness.program.fields import Schemas
 from readiness.program.items import Program
-from readiness.program.plausibility import courses, equipment, measurements, records, rooms, shielding, tasks
+from readiness.program.plausibility import (
+    course_parts,
+    courses,
+    equipment,
+    measurements,
+    records,
+    rooms,
+    shielding,
+    tasks,
+)
 from readiness.program.plausibility.stated import QUESTION, Check
 from readiness.program.plausibility.units import mistaken_units
 
@@ -18,6 +27,7 @@ CHECKS: tuple[Check, ...] = (
     *rooms.CHECKS,
     *equipment.CHECKS,
     *courses.CHECKS,
+    *course_parts.CHECKS,
     *tasks.CHECKS,
     *records.CHECKS,
     *shielding.CHECKS,
