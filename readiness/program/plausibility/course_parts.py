@@ -1,4 +1,4 @@
-"""What a course names must lie inside it: measured cycles, boosts, shields, and the week that holds a cycle."""
+"""What a course names lies inside it: measured cycles, boosts, shields, and the week that holds a cycle."""
 
 from collections.abc import Iterator
 
@@ -27,7 +27,8 @@ def week_of_a_cycle(program: Program) -> Iterator[Problem]:
             continue
         if week is not None and week < cycle:
             message = (
-                f"a cycle takes {cycle:g} sessions and a week has {week:g}; a cycle is not split over a weekend"
+                f"a cycle takes {cycle:g} sessions and a week has {week:g}; "
+                "a cycle is not split over a weekend"
             )
             yield impossible(course, "sessions_per_week", message)
         elif days is not None and _longest_run(days) < cycle:
@@ -68,7 +69,8 @@ def _rows(course: Item, name: str, what: str, cycles: float) -> Iterator[Problem
             message = f"{row[what]} begins with cycle {first:g} of a course of {cycles:g} cycles"
             yield impossible(course, name, message)
         elif first is not None and last is not None and last < first:
-            yield impossible(course, name, f"{row[what]} ends with cycle {last:g}, before it begins ({first:g})")
+            message = f"{row[what]} ends with cycle {last:g}, before it begins ({first:g})"
+            yield impossible(course, name, message)
 
 
 CHECKS: tuple[Check, ...] = (week_of_a_cycle, cycles_named)
