@@ -112,6 +112,8 @@ def _rule_lines(rule: Rule, assessment: Assessment | None, width: int) -> list[s
         citation = publications()[source.key].citation if source.key in publications() else source.key
         lines.append(wrapped("Source", f"{citation}; {source.at}. {source.known}: {how_known(source.known)}"))
     lines.append(wrapped("If not met", rule.remedy))
+    if rule.would_do:
+        lines.append(wrapped("With numbers", f"{rule.would_do}: {catalogue().meaning(rule.would_do)}"))
     lines.append(wrapped("Owner, task, phase", f"{rule.owner}; {rule.task}; {rule.phase}"))
     lines.append(wrapped("Exception possible", "yes" if rule.exceptable else "no"))
     if rule.documents:

@@ -56,15 +56,18 @@ def remedies(
 
 
 def would_do(
-    *, extra: Table, cycles_per_week: int | None, patients: int | None, arrangement: str, others: Table | None
-) -> str:
+    *, extra: Table, before_usv_per_week: float, goal_msv_per_week: float, cycles_per_week: int | None,
+    patients: int | None, arrangement: str, others: Table | None,
+) -> str:  # fmt: skip
     """Return in words what would keep the weekly goal here: material, a shorter list, another arrangement."""
     (row,) = extra.records()
     if not row["extra_tvl"]:
         return "Nothing is needed: the goal of the week is kept."
     said = [_material(row)]
-    if cycles_per_week == 0:
-        said.append("no shorter list keeps the goal")
+    if before_usv_per_week > 1000 * goal_msv_per_week:
+        said.append("the work that is there already is above the goal without the program")
+    elif cycles_per_week == 0:
+        said.append("not even one cycle a week keeps the goal")
     elif cycles_per_week is not None:
         said.append(f"or at most {cycles_per_week} cycles a week for all patients together")
         said[-1] += f" ({patients} at once)" if patients else " (less than one whole course at a time)"
@@ -173,6 +176,8 @@ DEFINITIONS: tuple[Definition, ...] = (
         would_do,
         {
             "extra": "exposure.extra_thickness",
+            "before_usv_per_week": "exposure.before_usv_per_week",
+            "goal_msv_per_week": "barrier.design_goal_msv_per_week",
             "cycles_per_week": "exposure.cycles_that_fit_per_week?",
             "patients": "exposure.fitting_patients?",
             "arrangement": "arrangement.title",

@@ -151,12 +151,16 @@ def test_what_would_do_elsewhere_names_the_best_arrangement_that_keeps_every_goa
     """The first of the others that stays at or below its goals; none that exceeds one."""
     columns = ("arrangement", "worst_place", "part_of_goal_ratio")
     extra = Table(("extra_tvl", "concrete_cm", "steel_cm", "lead_cm"), ((1.0, 33.0, 10.0, 5.7),))
-    asked: dict[str, Any] = {"extra": extra, "cycles_per_week": 3, "patients": 1, "arrangement": "here"}
+    asked: dict[str, Any] = {
+        "extra": extra, "before_usv_per_week": 2.0, "goal_msv_per_week": 0.02, "cycles_per_week": 3, "patients": 1,
+        "arrangement": "here",
+    }  # fmt: skip
     both = Table(columns, (("here", "wall", 0.1), ("there", "store", 0.4), ("far", "roof", 2.0)))
     assert "there takes at most 0.4 of a goal, at store" in would_do(**asked, others=both)
     none = Table(columns, (("here", "wall", 0.1), ("far", "roof", 2.0)))
     assert "No other arrangement" in would_do(**asked, others=none)
-    assert "no shorter list" in would_do(**{**asked, "cycles_per_week": 0, "patients": 0}, others=None)
+    assert "not even one cycle" in would_do(**{**asked, "cycles_per_week": 0, "patients": 0}, others=None)
+    assert "already is above the goal" in would_do(**{**asked, "before_usv_per_week": 21.0}, others=None)
 
 
 def test_an_hour_that_gives_too_much_says_how_many_sessions_it_may_hold() -> None:
