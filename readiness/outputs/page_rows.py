@@ -265,11 +265,15 @@ def _flat(groups: Iterable[list[str]]) -> tuple[str, ...]:
     return tuple(dict.fromkeys(each for group in groups for each in group))
 
 
+_NOT_ON_THE_PAGE = ("six-positions", "in-vivo-body", "road")  # for the bedside, and drawn again with the road
+
+
 def drawn(pictures: Mapping[str, str]) -> tuple[Picture, ...]:
-    """Return the drawings with the title and description that stand in each."""
+    """Return the drawings for a meeting, with the title and description that stand in each."""
     return tuple(
         Picture(Markup(svg), _inside(svg, "title") or name, _inside(svg, "desc"))  # noqa: S704 - our own
         for name, svg in pictures.items()
+        if name not in _NOT_ON_THE_PAGE
     )
 
 

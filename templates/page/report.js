@@ -69,7 +69,7 @@
   }
   window.addEventListener("hashchange", open);
   window.addEventListener("beforeprint", function () {
-    document.querySelectorAll("details:not([open])").forEach(function (part) {
+    document.querySelectorAll("details:not([open]):not(.many)").forEach(function (part) {
       part.dataset.closed = "";
       part.open = true;
     });
