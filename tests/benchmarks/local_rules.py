@@ -4,6 +4,7 @@ How long local rules take to check, good ones and misspelt ones, in growing numb
 Run: python -m tests.benchmarks.local_rules
 """
 
+import contextlib
 import time
 
 from readiness.assessment.catalogue import catalogue
@@ -24,10 +25,8 @@ def seconds(count: int, subject: str) -> float:
     own = [item("local_rule", f"own-{each}", subject=subject.format(each), **fields) for each in range(count)]
     of, rules, known = program(*own), load_rules(catalogue()), catalogue()
     start = time.perf_counter()
-    try:
+    with contextlib.suppress(ProgramProblems):
         with_local(rules, of, known)
-    except ProgramProblems:
-        pass
     return time.perf_counter() - start
 
 
