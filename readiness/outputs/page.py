@@ -12,6 +12,7 @@ from readiness.assessment.what_if import Variant
 from readiness.outputs import page_rows
 from readiness.outputs.assessment_rows import KNOWN_WORDS, commissioning_weeks, short_item
 from readiness.outputs.contract import CAUTION, INVENTED
+from readiness.outputs.page_tables import people_and_money
 from readiness.outputs.what_if_rows import questions
 from readiness.outputs.words import VERDICT_SENTENCES, blocking, chosen_row, value_title, with_unit
 from readiness.resources import folder, template_file
@@ -52,6 +53,7 @@ def make_page(
         road=page_rows.road(assessment.schedule),
         movers=page_rows.movers(assessment.schedule),
         weeks=commissioning_weeks(assessment),
+        people_and_money=people_and_money(assessment),
         excepted=[finding for finding in assessment.findings if finding.outcome == "excepted"],
         topics=page_rows.requirements(assessment),
         how_known=KNOWN_WORDS,
