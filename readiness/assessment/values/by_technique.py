@@ -1,6 +1,14 @@
 """One question asked of a standing and of a lying technique, each answered by its own value."""
 
-from readiness.assessment.definition import Definition, one_of_techniques
+from readiness.assessment.definition import Definition, derived, one_of_techniques
+
+
+def time_to_spare(
+    *, booked_min: float, taken_min: float, first_booked_min: float, first_taken_min: float
+) -> float:
+    """Return the smaller excess of booked time over a session, with or without detectors."""
+    return min(booked_min - taken_min, first_booked_min - first_taken_min)
+
 
 DEFINITIONS: tuple[Definition, ...] = (
     one_of_techniques(
@@ -62,5 +70,16 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Room time of a session with detectors.",
         standing="arrangement.first_session_min",
         lying="arrangement.lying_first_session_min",
+    ),
+    derived(
+        "arrangement.session_to_spare_min",
+        "By how much the booked time exceeds a session's, with or without detectors, whichever is less.",
+        time_to_spare,
+        {
+            "booked_min": "program.session_room_min",
+            "taken_min": "arrangement.session_taken_min",
+            "first_booked_min": "program.first_cycle_room_min",
+            "first_taken_min": "arrangement.first_session_taken_min",
+        },
     ),
 )

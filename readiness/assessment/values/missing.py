@@ -55,13 +55,19 @@ def control_of_mode(*, own_key: bool, enabled_by: str) -> str:
 
 
 def rules_of_documents(
-    *, review_interval_months: float, longest_months: float, retention_years: float, read_and_understood: bool
+    *,
+    review_interval_months: float,
+    longest_months: float,
+    retention_years: float,
+    read_and_understood: bool,
+    withdrawn_copies_removed: bool,
 ) -> str:
     """Return what is missing in the control of documents; how long records are kept must be known."""
     found = {
         f"review every {longest_months:g} months": review_interval_months <= longest_months,
         "a time for which records are kept": retention_years > 0,
         "signatures that each revision was read": read_and_understood,
+        "removal of superseded copies": withdrawn_copies_removed,
     }
     return ", ".join(words for words, there in found.items() if not there) or NOTHING
 
@@ -116,6 +122,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             "longest_months": "criterion.review_interval_months",
             "retention_years": "document_control.retention_years",
             "read_and_understood": "document_control.read_and_understood",
+            "withdrawn_copies_removed": "document_control.withdrawn_copies_removed",
         },
     ),
     derived(
@@ -133,6 +140,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         "room.safety_devices_missing",
         "Safety devices that the room lacks.",
         {
+            "door_interlock": "a door interlock that was tested in the mode",
             "last_person_out_button": "a search button",
             "emergency_off_reachable": "an emergency off at the stand",
             "beam_on_light": "a beam-on light inside and outside",
@@ -161,6 +169,23 @@ DEFINITIONS: tuple[Definition, ...] = (
         },
     ),
     _missing(
+        "clinical.physicians_part_missing",
+        "What of the physician's part is missing.",
+        {
+            "staging_and_biopsy": "staging and biopsy before the directive",
+            "weekly_review": "a look at the skin every week",
+        },
+    ),
+    _missing(
+        "patient_safety.session_checks_missing",
+        "Checks of a session that are not made.",
+        {
+            "time_out": "a time-out with a written checklist before it",
+            "shields_counted": "shields counted in and out",
+            "return_check": "the machine back in ordinary use, its output checked",
+        },
+    ),
+    _missing(
         "clinical.excluded_or_covered_missing",
         "Written procedures that are missing for pregnancy and implants.",
         {"pregnancy_procedure": "pregnancy is excluded", "device_procedure": "pacemakers and other implants"},
@@ -180,6 +205,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         {
             "referral_agreement": "a written agreement on who takes over a started course",
             "lying_referral_route": "a route for patients who cannot stand",
+            "clinical.anaesthesia_procedure": "children and patients under anaesthesia",
         },
     ),
     _missing(

@@ -4,6 +4,7 @@ from collections.abc import Callable, Collection
 from datetime import date, timedelta
 
 from readiness.assessment.definition import Definition, derived
+from readiness.errors import OutsideValidity
 from readiness.quantities import Scalar, Table
 
 CHAMBERS = ("cylindrical-chamber", "plane-parallel-chamber")
@@ -26,6 +27,7 @@ PHANTOMS = {
     "cylinders": ("cylinders", ("cylinder",)),
     "anthropomorphic_phantoms": ("anthropomorphic phantoms", ("anthropomorphic",)),
 }  # fmt: skip
+LUMINESCENT, DELAYED = ("osld", "tld"), ("film", "osld", "tld")
 IN_VIVO = ("film", "osld", "tld", "diode", "mosfet")
 
 
@@ -69,6 +71,21 @@ def _holds(row: dict[str, Scalar], as_of_date: date) -> bool:
 def in_vivo_detector_types(*, instruments: Table) -> int:
     """Return with how many kinds of detector dose on the skin can be measured."""
     return len({row["type"] for row in instruments.records()} & set(IN_VIVO))
+
+
+def not_characterised(
+    *, type_word: str, response_checked: bool, individual_factors: bool | None, readout_delay_h: float | None
+) -> str:
+    """Return what of a detector for the skin is not characterised; its kind decides what is asked."""
+    if type_word in LUMINESCENT and individual_factors is None:
+        raise OutsideValidity("state whether each of these detectors has its own factor")
+    if type_word in DELAYED and readout_delay_h is None:
+        raise OutsideValidity("state the fixed time from irradiation to read-out")
+    found = {
+        "response in the mode, at the plane and at oblique incidence against a chamber": response_checked,
+        "a factor for each detector": type_word not in LUMINESCENT or individual_factors is True,
+    }
+    return ", ".join(words for words, there in found.items() if not there) or NOTHING
 
 
 def longest_interval(
@@ -159,6 +176,17 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Number of kinds of detector with which dose on the skin can be measured.",
         in_vivo_detector_types,
         {"instruments": "rows instrument: type"},
+    ),
+    derived(
+        "instrument.not_characterised",
+        "What of a detector for the skin is not characterised.",
+        not_characterised,
+        {
+            "type_word": "instrument.type",
+            "response_checked": "instrument.response_checked",
+            "individual_factors": "instrument.individual_factors?",
+            "readout_delay_h": "instrument.readout_delay_h?",
+        },
     ),
     derived(
         "instrument.has_calibration_interval",

@@ -7,6 +7,7 @@ import pytest
 
 from readiness.assessment.records import PROGRAM, Gone, Ref, Value
 from readiness.assessment.values import tools
+from readiness.errors import OutsideValidity
 from readiness.program.items import Item, Program
 from tests.assessment.small import graph, item, program
 
@@ -111,3 +112,15 @@ def test_how_long_a_calibration_may_be_given(kind: str, purpose: str | None, day
     assert got(of, "instrument.has_calibration_interval", ref) is (days is not None)
     found = got(of, "instrument.longest_interval_days", ref)
     assert days == found if days is not None else isinstance(found, Gone)
+
+
+def test_what_of_a_detector_is_not_characterised() -> None:
+    """A luminescent detector needs its own factor, film a fixed delay, a diode neither."""
+    good: dict[str, Any] = {"response_checked": True, "individual_factors": None, "readout_delay_h": None}
+    assert "nothing" == tools.not_characterised(type_word="diode", **good)
+    dated = {**good, "readout_delay_h": 24.0}
+    assert "nothing" == tools.not_characterised(type_word="film", **dated)
+    assert "a factor for each detector" == tools.not_characterised(type_word="osld", **{**dated, "individual_factors": False})
+    for kind, words in (("film", "read-out"), ("tld", "own factor")):
+        with pytest.raises(OutsideValidity, match=words):
+            tools.not_characterised(type_word=kind, **good)
