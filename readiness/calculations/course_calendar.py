@@ -29,6 +29,7 @@ COLUMNS = (
     "completes_cycle",
     "made_up",
     "in_vivo",
+    "hold",
     "chart_check",
     "mean_dose_after_gy",
     "complete_cycles_dose_gy",
@@ -226,6 +227,7 @@ def _record(
             session.of_cycle == length,
             session.made_up,
             session.cycle in in_vivo_cycles,
+            _hold(session, in_vivo_cycles),
             _chart_check(index, given, days),
             dose_per_cycle_gy * (index + 1) / length,
             dose_per_cycle_gy * ((index + 1) // length),
@@ -242,6 +244,13 @@ def _record(
         made_up_sessions=sum(session.made_up for session in given),
         longest_gap_days=max(gaps, default=0),
     )
+
+
+def _hold(session: Session, in_vivo_cycles: frozenset[int]) -> str:
+    """Return what must be seen and signed before a session begins: the readings of the cycle before."""
+    if session.of_cycle > 1 or session.cycle - 1 not in in_vivo_cycles:
+        return ""
+    return f"until the readings of cycle {session.cycle - 1} are seen and signed"
 
 
 def _chart_check(index: int, given: list[Session], days: TreatmentDays) -> str:

@@ -62,6 +62,7 @@ def _session(assessment: Assessment, course: str, row: dict[str, Any], caution: 
         *([f"chart check: {row['chart_check']}"] if row["chart_check"] else []),
     ]
     lines = [
+        *([f"HOLD {row['hold']}"] if row["hold"] else []),
         f"Fields: {row['fields']}",
         *(["; ".join(marks)] if marks else []),
         f"Prescribed skin dose in complete cycles after this session: "

@@ -262,3 +262,10 @@ def test_whatever_is_missed_the_course_stays_whole(missed: frozenset[date]) -> N
     assert max(Counter(day.isocalendar()[:2] for day in dates(course)).values()) <= 4
     assert 10.0 == course.total_dose_gy
     assert course.end_date >= planned(cycles=5).end_date
+
+
+def test_the_cycle_after_a_measured_one_is_held() -> None:
+    """With cycles 1 and 10 measured, cycles 2 and 11 begin only when the readings are signed."""
+    rows = list(planned(in_vivo_cycles=(1, 10)).sessions.records())
+    assert [(2, 1), (11, 1)] == [(row["cycle"], row["session_of_cycle"]) for row in rows if row["hold"]]
+    assert "until the readings of cycle 10 are seen and signed" == rows[20]["hold"]

@@ -49,6 +49,12 @@ def test_an_event_says_fields_checks_and_dose(sample: Assessment) -> None:
     assert "complete cycles after this session: 2 Gy" in words
 
 
+def test_a_measured_cycle_holds_the_next(sample: Assessment) -> None:
+    """Cycle 1 is measured: the first session of cycle 2 waits for its readings, and no other does."""
+    found = [str(each["DESCRIPTION"]) for each in events(calendar_files(sample)["calendar-low-dose.ics"])]
+    assert [2] == [at for at, words in enumerate(found) if "HOLD until the readings of cycle 1" in words]
+
+
 def test_boosts_stand_on_their_days(sample: Assessment) -> None:
     """The first boost session of the standard course is on 2027-05-25, both sites in one event."""
     boosts = [each for each in events(calendar_files(sample)["calendar-standard.ics"]) if "Boosts" in str(each["SUMMARY"])]
