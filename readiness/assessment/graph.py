@@ -52,6 +52,7 @@ class Graph(ItemIndex):
         self._known: dict[tuple[str, Ref], Got] = {}
         self._asked: dict[tuple[str, Ref], Got] = {}  # the same by who asks, so that owners are found once
         self._choices: dict[str, bool] = {}
+        self._internal = {name for name, each in catalogue.definitions.items() if each.internal}
         self._sections = catalogue.kinds.sections
         self.assumed_below: dict[tuple[str, Ref], frozenset[Cause]] = {}  # kept by causes.py
 
@@ -100,8 +101,7 @@ class Graph(ItemIndex):
         return known
 
     def _is_internal(self, name: str) -> bool:
-        definition = self.catalogue.definitions.get(name)
-        return bool(definition and definition.internal)
+        return name in self._internal
 
     def _limit(self, name: str) -> Value:
         if name in self._limits:

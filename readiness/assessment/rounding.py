@@ -5,10 +5,15 @@ from typing import Any
 from readiness.quantities import Table
 from readiness.units import rounded
 
+_AS_THEY_ARE = frozenset((str, int, bool, type(None)))
+
 
 def settled(value: Any) -> Any:
     """Return a result with every floating number in it rounded."""
-    if isinstance(value, bool) or value is None:
+    kind = type(value)
+    if kind is float:
+        return rounded(value)
+    if kind in _AS_THEY_ARE:
         return value
     if hasattr(value, "item") and not isinstance(value, (str, bytes)):
         value = value.item()  # a NumPy scalar

@@ -1,6 +1,7 @@
 """A barrier seen from an arrangement against other limits: hour, year, dose rate, commissioning week."""
 
 from readiness.assessment.definition import Definition, derived, one_of_techniques
+from readiness.assessment.values.shielding_places import LEVEL
 from readiness.calculations.barrier_dose import WeeklyDose
 from readiness.calculations.dose_limits import (
     AnyHourDose,
@@ -49,9 +50,12 @@ def commissioning_week(
 
 
 def rate_of_vertical(
-    *, dose: WeeklyDose, cycles_per_week: float, cycle_mu: int, qa_mu: float | None, rate_mu_per_min: float
-) -> float:
+    *, side_deg: int, dose: WeeklyDose, cycles_per_week: float, cycle_mu: int, qa_mu: float | None,
+    rate_mu_per_min: float,
+) -> float:  # fmt: skip
     """Return the dose rate behind a barrier while the one vertical beam is on: an hour of beam."""
+    if side_deg:
+        raise OutsideValidity(LEVEL)
     return week_of_tests_usv(
         before_usv_per_week=0.0, added_usv_per_week=dose.added_rate_usv_per_week,
         added_mu=cycles_per_week * cycle_mu + (qa_mu or 0.0), tests_mu=60 * rate_mu_per_min,
@@ -168,6 +172,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Dose rate while the vertical beam is on; no occupancy counted.",
         by=rate_of_vertical,
         takes={
+            "side_deg": "arrangement.side_deg",
             "dose": "exposure.week",
             "cycles_per_week": "program.busiest_week_cycles_per_week",
             "cycle_mu": "arrangement.workload_mu",

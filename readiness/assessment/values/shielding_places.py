@@ -8,6 +8,7 @@ from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 VERTICAL = "a vertical beam has no tilted fields"
+LEVEL = "a beam from the side is not vertical"
 SURVEY_ONLY = ("door", "maze", "penetration")
 GEOMETRY = {
     "side_deg": "arrangement.side_deg",
@@ -45,10 +46,12 @@ def spots_of_fields(
 
 
 def spots_of_vertical(
-    *, source_axis_distance_cm: float, opening_cm: float, collimator_deg: float | None,
+    *, side_deg: int, source_axis_distance_cm: float, opening_cm: float, collimator_deg: float | None,
     floor_polygon_cm: tuple[tuple[float, float], ...], isocentre_height_cm: float, ceiling_height_cm: float,
 ) -> Table:  # fmt: skip
     """Return where axis and edges of a vertical field meet the room."""
+    if side_deg:
+        raise OutsideValidity(LEVEL)
     return vertical_spots(
         source_axis_distance_cm=source_axis_distance_cm, opening_cm=opening_cm,
         collimator_angle_deg=collimator_deg or 0.0, floor_polygon_cm=floor_polygon_cm,
@@ -119,7 +122,11 @@ DEFINITIONS: tuple[Definition, ...] = (
         "arrangement.vertical_spots",
         "Where axis and edges of the vertical field meet the room.",
         by=spots_of_vertical,
-        takes={"source_axis_distance_cm": "machine.source_axis_distance_cm", **ROOM},
+        takes={
+            "side_deg": "arrangement.side_deg",
+            "source_axis_distance_cm": "machine.source_axis_distance_cm",
+            **ROOM,
+        },
         source="iec-61217",
         known="derived",
     ),

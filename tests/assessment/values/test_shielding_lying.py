@@ -13,7 +13,7 @@ from readiness.errors import Place
 from readiness.program.items import Item, Stated
 from readiness.program.reading import read_folder
 from readiness.quantities import Table
-from tests.assessment.values.test_shielding import SAMPLE
+from tests.assessment.values.test_shielding import CHOSEN, SAMPLE
 from tests.assessment.values.test_shielding_limits import graph
 
 PLACE = Place("shielding.yaml", 1, 1)
@@ -127,3 +127,10 @@ def test_without_x_rays_on_the_axis_nothing_is_calculated(lying: tuple[Graph, st
     got = less.get("exposure.weekly_dose_usv_per_week", Ref("exposure", f"Store below from {lying[1]}"))
     assert isinstance(got, Gone)
     assert {"measurement"} == {cause.kind for cause in got.causes}
+
+
+def test_a_standing_arrangement_has_no_vertical_field() -> None:
+    """Spots and dose rate of a vertical beam are not shown for a beam from the side."""
+    found = graph(read_folder(SAMPLE))
+    assert isinstance(found.get("arrangement.vertical_spots", Ref("arrangement", CHOSEN)), Gone)
+    assert isinstance(found.get("exposure.vertical_rate_usv_per_h", Ref("exposure", f"a-west from {CHOSEN}")), Gone)
