@@ -36,6 +36,28 @@ def monitor_faults(
     )
 
 
+def calibration_faults(*, names_beam: bool, age_days: float, longest_days: float) -> str:
+    """Return why a reference calibration does not stand for a beam."""
+    faults = [] if names_beam else ["done for another machine or beam"]
+    if age_days > longest_days:
+        faults.append(f"{age_days:g} days old ({longest_days:g})")
+    return ", ".join(faults) or NOTHING
+
+
+def too_few(
+    *, physicists: int, oncologists: int, physicists_persons: float, oncologists_persons: float
+) -> str:  # fmt: skip
+    """Return the professions of which too few people are qualified, with how many there are."""
+    found = {
+        "physicists": (physicists, physicists_persons),
+        "radiation oncologists": (oncologists, oncologists_persons),
+    }
+    return (
+        ", ".join(f"{who} ({there} of {asked:g})" for who, (there, asked) in found.items() if there < asked)
+        or NOTHING
+    )
+
+
 DEFINITIONS: tuple[Definition, ...] = (
     derived(
         "arrangement.energy_outside_mev",
@@ -70,6 +92,33 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Clearance of the treatment head above the floor or below the ceiling, whichever is less.",
         smaller,
         {"one_cm": "arrangement.head_above_floor_cm", "other_cm": "arrangement.head_below_ceiling_cm"},
+    ),
+    derived(
+        "arrangement.couch_to_spare_cm",
+        "What the couch has beyond what it needs, of clear run in the room as it is or of travel.",
+        smaller,
+        {"one_cm": "arrangement.couch_run_to_spare_cm", "other_cm": "arrangement.couch_travel_to_spare_cm"},
+    ),
+    derived(
+        "arrangement.reference_calibration_faults",
+        "Why the reference calibration does not stand for the beam of the arrangement.",
+        calibration_faults,
+        {
+            "names_beam": "arrangement.reference_calibration_names_beam",
+            "age_days": "reference_dosimetry.days_since_calibration_days",
+            "longest_days": "criterion.yearly_interval_days",
+        },
+    ),
+    derived(
+        "program.professions_too_few",
+        "Professions of which too few people are qualified.",
+        too_few,
+        {
+            "physicists": "program.qualified_physicists",
+            "oncologists": "program.qualified_oncologists",
+            "physicists_persons": "criterion.physicists_persons",
+            "oncologists_persons": "criterion.oncologists_persons",
+        },
     ),
     derived(
         "beam.mode_monitor_faults",

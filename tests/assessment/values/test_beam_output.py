@@ -168,16 +168,17 @@ def test_the_protocol_edition_decides_on_the_chamber(protocol: str, due: date, o
 
 def test_the_calibration_of_another_beam_is_not_that_of_this_one() -> None:
     """A calibration of e6 in another mode names another beam."""
-    other = department(item("reference_dosimetry", beam_calibrated="linac e9"))
-    own = department(item("reference_dosimetry", beam_calibrated="linac e6"))
-    assert "not met" == finding(other, "reference-calibration-of-this-beam").outcome
-    assert "met" == finding(own, "reference-calibration-of-this-beam").outcome
+    done = date(2026, 2, 12)
+    other = department(item("reference_dosimetry", beam_calibrated="linac e9", last_done_on=done))
+    own = department(item("reference_dosimetry", beam_calibrated="linac e6", last_done_on=done))
+    assert "not met" == finding(other, "reference-calibration-current").outcome
+    assert "met" == finding(own, "reference-calibration-current").outcome
 
 
 def test_a_calibration_grows_old() -> None:
     """On 1 December 2026 a calibration of 12 February is current, one of November 2025 is not."""
     for done, outcome in ((date(2026, 2, 12), "met"), (date(2025, 11, 20), "not met")):
-        of = department(item("reference_dosimetry", last_done_on=done))
+        of = department(item("reference_dosimetry", beam_calibrated="linac e6", last_done_on=done))
         assert outcome == finding(of, "reference-calibration-current").outcome
 
 

@@ -23,3 +23,19 @@ def test_what_of_the_monitor_departs_is_named_with_its_limit() -> None:
     good = worst_of.monitor_faults(linearity_percent=2.0, repeat_percent=1.0, backup_percent=2.0, **limits)
     bad = worst_of.monitor_faults(linearity_percent=0.5, repeat_percent=1.8, backup_percent=0.0, **limits)
     assert ("nothing", "repeated exposures by 1.8 % (1 %)") == (good, bad)
+
+
+@pytest.mark.parametrize(
+    ("names_beam", "age", "faults"),
+    [(True, 366, "nothing"), (True, 367, "367 days old (366)"), (False, 20, "done for another machine or beam")],
+)
+def test_why_a_reference_calibration_does_not_stand(names_beam: bool, age: int, faults: str) -> None:
+    """A calibration of a year ago still stands; one day more, or another beam, does not."""
+    assert faults == worst_of.calibration_faults(names_beam=names_beam, age_days=age, longest_days=366)
+
+
+def test_too_few_of_a_profession_is_told_with_both_numbers() -> None:
+    """One physicist of two is too few; one oncologist of one is enough."""
+    asked = {"physicists_persons": 2.0, "oncologists_persons": 1.0}
+    assert "physicists (1 of 2)" == worst_of.too_few(physicists=1, oncologists=1, **asked)
+    assert "nothing" == worst_of.too_few(physicists=2, oncologists=1, **asked)
