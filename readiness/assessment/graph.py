@@ -10,7 +10,13 @@ from dataclasses import replace
 from datetime import date
 from typing import Any
 
-from readiness.assessment.absence import unknown_field, unknown_list
+from readiness.assessment.absence import (
+    for_standing_only,
+    is_for_standing_only,
+    unknown_field,
+    unknown_list,
+    unknown_owner,
+)
 from readiness.assessment.catalogue import Catalogue
 from readiness.assessment.definition import Definition, Measured, Take
 from readiness.assessment.item_index import ItemIndex
@@ -21,7 +27,7 @@ from readiness.errors import OutsideValidity
 from readiness.program.items import Item, Program
 from readiness.program.measurement_kinds import measurement_kind
 from readiness.quantities import Table, Uncertain
-from readiness.units import unit_of, words_of
+from readiness.units import unit_of
 
 Memory = dict[Any, Any]
 
@@ -74,10 +80,10 @@ class Graph(ItemIndex):
         kind = name.partition(".")[0]
         if kind == "criterion":
             return self._limit(name)
-        owner = self.owners(asking).get(kind) or (kind if kind in self._sections else None)
+        owners = self.owners(asking)
+        owner = owners.get(kind) or (kind if kind in self._sections else None)
         if owner is None:
-            words = f"{words_of(kind)} for {asking}"
-            return Gone((Cause("item", kind, asking, f"Describe or choose a {words}."),))
+            return Gone((unknown_owner(kind, asking, owners),))
         ref = Ref(kind, owner)
         key = (name, ref)
         known = self._known.get(key)
@@ -154,6 +160,9 @@ class Graph(ItemIndex):
         )
 
     def _absent(self, name: str, ref: Ref) -> Gone:
+        item = self.item(ref)
+        if item is not None and is_for_standing_only(name, item):
+            return Gone((for_standing_only(ref),))
         return Gone((unknown_field(name, ref, self.catalogue.kinds),))
 
     # -- calculations --------------------------------------------------------------------------
