@@ -112,7 +112,12 @@ def assess(folder: Path, as_of: date | None, as_json: bool) -> None:
 @click.option("--no-cache", is_flag=True, help="Lay out every page, also those printed before.")
 @_as_of
 def binder(folder: Path, out: Path, no_cache: bool, as_of: date | None) -> None:
-    """Write the binder, report page, gap list and assessment of FOLDER."""
+    """
+    Write the binder, report page, gap list and assessment of FOLDER.
+
+    The page says what would be with another plane distance, beam or number of patients: a whole assessment
+    each, made in advance.
+    """
     day = _day(as_of)
     _finish(
         commands.binder(folder, out, as_of=day, width=_width(), say=_progress, use_cache=not no_cache)

@@ -28,6 +28,8 @@ FIGURES = (
     "arrangement.later_session_min",
     "program.busiest_room_hours_per_week_h",
     "program.wait_weeks",
+    "program.started_in_time_percent",
+    "program.places_needed",
     "arrangement.worst_goal_ratio",
 )
 _WANTED = ("arrangement.plane_distance_cm", *FIGURES)

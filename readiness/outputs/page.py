@@ -13,7 +13,7 @@ from readiness.outputs import page_rows
 from readiness.outputs.assessment_rows import KNOWN_WORDS, commissioning_weeks, short_item
 from readiness.outputs.contract import CAUTION, INVENTED
 from readiness.outputs.page_tables import people_and_money
-from readiness.outputs.what_if_rows import questions
+from readiness.outputs.what_if_rows import FIRST_PATIENT, questions
 from readiness.outputs.words import VERDICT_SENTENCES, blocking, chosen_row, value_title, with_unit
 from readiness.resources import folder, template_file
 from readiness.units import printed, unit_of, words_of
@@ -46,6 +46,7 @@ def make_page(
         ruled_out=page_rows.ruled_out(assessment),
         pictures=page_rows.drawn(pictures),
         what_if=questions(variants),
+        first_patient=FIRST_PATIENT,
         blocking=blocking(assessment),
         gaps=gaps,
         filters=page_rows.choices(gaps),

@@ -13,7 +13,13 @@
     const shown = rows.filter(function (row) { return !row.hidden; }).length;
     said.textContent = shown + " of " + rows.length + " gaps shown" + order;
   }
+  function mark() { // on paper only what was chosen
+    form.parentElement.classList.toggle("filtered", Array.from(form.elements).some(function (choice) {
+      return choice.name && choice.value;
+    }));
+  }
   function filter() {
+    mark();
     rows.forEach(function (row) {
       row.hidden = Array.from(form.elements).some(function (choice) {
         return choice.name && choice.value && row.dataset[choice.name] !== choice.value;
@@ -51,12 +57,25 @@
   form.addEventListener("reset", function () {
     heads.forEach(function (head) { head.removeAttribute("aria-sort"); });
     rows.forEach(function (row) { row.hidden = false; body.appendChild(row); });
+    form.parentElement.classList.remove("filtered");
     order = "";
     count();
   });
   form.reset();
   form.hidden = false;
 }());
+// Shows one variant of a what-if beside the present choice; all were made before the page was written.
+document.querySelectorAll("form.what-if").forEach(function (form) {
+  const rows = Array.from(form.nextElementSibling.querySelector("tbody").rows);
+  const choice = form.querySelector("select");
+  form.addEventListener("change", function () {
+    rows.forEach(function (row, index) {
+      row.hidden = index > 0 && choice.value !== "" && choice.value !== String(index);
+    });
+  });
+  form.reset();
+  form.hidden = false;
+});
 (function () {
   function open() {
     const id = decodeURIComponent(window.location.hash.slice(1));

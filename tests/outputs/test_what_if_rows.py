@@ -1,5 +1,6 @@
 """What-if tables of the report page: every number with its basis, what is not known said so, no script needed."""
 
+from dataclasses import replace
 from datetime import date
 
 from readiness.assessment.difference import TurnedFinding
@@ -20,12 +21,21 @@ NEARER = Variant(
 
 
 def test_numbers_carry_their_basis_and_blanks_say_so() -> None:
-    """A figure that only one variant has is a column for all."""
+    """A figure that only one variant has is a column for all; what is the same in all has none."""
     (question,) = questions((PRESENT, NEARER))
-    assert "Wait for a start" in question.heads
+    assert ("First patient not before", "Uniformity along the height", "Mean wait for a start") == question.heads
+    assert ("verdict: ready when gaps close", "feasibility: feasible") == question.alike
     first, second = question.lines
-    assert ("feasible", "2027-06-09", "4.8 % (measured)", "not known") == first.cells
-    assert ("feasible", "-", "6.2 % (predicted)", "2 weeks (predicted)") == second.cells
+    assert ("2027-06-09", "4.8 % (measured)", "not known") == first.cells
+    assert ("-", "6.2 % (predicted)", "2 weeks (predicted)") == second.cells
+
+
+def test_a_wait_without_end_is_not_called_unknown() -> None:
+    """Nobody starts in time because more are referred than there are places."""
+    figures = (("program.started_in_time_percent", 0.0, "predicted"),)
+    crowded = replace(NEARER, figures=figures)
+    (question,) = questions((NEARER, crowded))
+    assert "grows without end" in question.lines[1].cells
 
 
 def test_what_turns_is_listed_and_the_rest_counted() -> None:
@@ -41,7 +51,7 @@ def test_the_page_shows_every_variant_without_script() -> None:
     part = page[page.index('<section aria-labelledby="what-if">') :]
     part = part[: part.index("</section>")]
     assert "350 cm" in part
-    assert '<span class="mark">as it is</span>' in part
+    assert '<span class="mark date">as it is</span>' in part
     assert "14 findings" in part
     assert "<script" not in part
-    assert "what-if" not in make_page(fakes.empty(), {}).decode()
+    assert 'id="what-if"' not in make_page(fakes.empty(), {}).decode()
