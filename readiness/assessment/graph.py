@@ -14,25 +14,22 @@ from readiness.assessment.absence import (
     for_standing_only,
     is_for_standing_only,
     unknown_field,
-    unknown_list,
     unknown_owner,
 )
 from readiness.assessment.catalogue import Catalogue
 from readiness.assessment.definition import Definition, Measured, Take
-from readiness.assessment.item_index import ItemIndex
-from readiness.assessment.matching import disagreements, void
+from readiness.assessment.measurement_search import MeasurementSearch
 from readiness.assessment.records import Cause, Gone, Got, Input, Ref, Value, weakest
 from readiness.assessment.rounding import settled
 from readiness.errors import OutsideValidity
 from readiness.program.items import Item, Program
-from readiness.program.measurement_kinds import measurement_kind
-from readiness.quantities import Table, Uncertain
+from readiness.quantities import Uncertain
 from readiness.units import unit_of
 
 Memory = dict[Any, Any]
 
 
-class Graph(ItemIndex):
+class Graph(MeasurementSearch):
     """All values of one program on one day."""
 
     def __init__(
@@ -51,14 +48,11 @@ class Graph(ItemIndex):
         share it.
         """
         self._memory = memory
-        super().__init__(program, made, catalogue.kinds)
-        self.catalogue = catalogue
+        super().__init__(program, made, catalogue)
         self.as_of = as_of
         self._limits = limits
         self._known: dict[tuple[str, Ref], Got] = {}
         self._asked: dict[tuple[str, Ref], Got] = {}  # the same by who asks, so that owners are found once
-        self._choices: dict[str, bool] = {}
-        self._internal = {name for name, each in catalogue.definitions.items() if each.internal}
         self._sections = catalogue.kinds.sections
         self.assumed_below: dict[tuple[str, Ref], frozenset[Cause]] = {}  # kept by causes.py
 
@@ -99,15 +93,6 @@ class Graph(ItemIndex):
             if isinstance(value, Value) and not self._is_internal(name)
         ]
         return tuple(sorted(shown, key=lambda value: (value.name, value.item)))
-
-    def _is_choice(self, name: str) -> bool:
-        known = self._choices.get(name)
-        if known is None:
-            known = self._choices[name] = self.catalogue.is_choice(name)
-        return known
-
-    def _is_internal(self, name: str) -> bool:
-        return name in self._internal
 
     def _limit(self, name: str) -> Value:
         if name in self._limits:
@@ -242,76 +227,6 @@ class Graph(ItemIndex):
         except TypeError:  # an input that has no hash
             return by(**given)
 
-    def _gather(
-        self, takes: tuple[tuple[str, Take], ...], ref: Ref, measurement: Ref | None
-    ) -> tuple[dict[str, Any], tuple[Input, ...], list[str], list[Cause]]:
-        given: dict[str, Any] = {}
-        inputs: list[Input] = []
-        bases: list[str] = []
-        causes: list[Cause] = []
-        for keyword, take in takes:
-            asking = measurement if measurement is not None and take.kind == "measurement" else ref
-            if take.form == "one":
-                got = self.get(take.name, asking)
-                given[keyword] = self._taken(keyword, take, got, inputs, bases, causes)
-            elif take.form == "each":
-                given[keyword] = self._each(keyword, take, asking, inputs, bases, causes)
-            else:
-                given[keyword] = self._rows(keyword, take, asking, inputs, bases, causes)
-        return given, tuple(dict.fromkeys(inputs)), bases, causes
-
-    def _taken(
-        self, keyword: str, take: Take, got: Got, inputs: list[Input], bases: list[str], causes: list[Cause]
-    ) -> Any:
-        if isinstance(got, Gone):
-            if not take.optional:
-                causes.extend(got.causes)
-            return None
-        inputs.extend(self._shown_inputs(keyword, got))
-        if not self._is_choice(got.name):
-            bases.append(got.basis)
-        return got.value
-
-    def _shown_inputs(self, keyword: str, got: Value) -> tuple[Input, ...]:
-        """Return a value as an input; of a record that is never shown, what it was worked out from."""
-        return got.inputs if self._is_internal(got.name) else (Input(keyword, got.name, got.item),)
-
-    def _listed(self, kind: str, ref: Ref) -> tuple[list[Ref], Cause | None]:
-        anchor = self.catalogue.kinds.anchor(ref.kind, kind)
-        owner = Ref(anchor or "program", self.owners(ref).get(anchor or "program", "program"))
-        found = self.children(kind, owner)
-        if found or self.list_is_known(kind, owner):
-            return found, None
-        return [], unknown_list(kind, owner, self.catalogue.kinds)
-
-    def _each(
-        self, keyword: str, take: Take, ref: Ref, inputs: list[Input], bases: list[str], causes: list[Cause]
-    ) -> tuple[Any, ...]:
-        found, unknown = self._listed(take.kind, ref)
-        if unknown:
-            causes.append(unknown)
-        return tuple(
-            self._taken(keyword, take, self.get(take.name, each), inputs, bases, causes) for each in found
-        )
-
-    def _rows(
-        self, keyword: str, take: Take, ref: Ref, inputs: list[Input], bases: list[str], causes: list[Cause]
-    ) -> Table:
-        found, unknown = self._listed(take.name, ref)
-        if unknown:
-            causes.append(unknown)
-        columns = [
-            (column, Take("one", f"{take.name}.{column}", optional)) for column, optional in take.columns
-        ]
-        rows = [
-            tuple(
-                self._taken(keyword, column, self.get(column.name, each), inputs, bases, causes)
-                for _, column in columns
-            )
-            for each in found
-        ]
-        return Table(tuple(name for name, _ in columns), tuple(rows))
-
     def _value(
         self,
         definition: Definition,
@@ -331,8 +246,6 @@ class Graph(ItemIndex):
             definition.name, ref, result, unit_of(definition.name), basis, sd, inputs,
             item.place if item else None, definition.source, definition.known,
         )  # fmt: skip
-
-    # -- measurements --------------------------------------------------------------------------
 
     def _measured(self, definition: Definition, measured: Measured, ref: Ref, claim: Got | None) -> Got:
         found, near = self.measurements(measured, ref)
@@ -360,32 +273,3 @@ class Graph(ItemIndex):
             return self._no_answer(definition, ref)
         inputs = self._shown_inputs("measurement", got)
         return self._value(definition, ref, value, inputs, "measured", measurement)
-
-    def measurements(self, measured: Measured, ref: Ref) -> tuple[list[Ref], tuple[Cause, ...]]:
-        """Return the measurements that stand for an item, oldest first, and why others do not."""
-        found: list[tuple[date, Ref]] = []
-        near: list[Cause] = []
-        owners = self.owners(ref)
-        for candidate in self.refs("measurement"):
-            item = self._items[candidate]
-            if item.get("kind") != measured.kind:
-                continue
-            reasons = list(disagreements(item, owners, ref, self.get, measured.ignores))
-            invalid = void(item, self.program)
-            if invalid:
-                reasons.append(invalid)
-            done = item.get("date")
-            if not reasons and isinstance(done, date):
-                found.append((done, candidate))
-            elif len(reasons) <= 2:
-                words = f"{item.place.file} does not count for {ref}: {'; '.join(reasons)}."
-                near.append(Cause("measurement", measured.kind, ref, words))
-        found.sort()
-        return [candidate for _, candidate in found], tuple(near)
-
-    def wanted(self, measured: Measured, ref: Ref, near: tuple[Cause, ...]) -> tuple[Cause, ...]:
-        """Return the measurement that is asked for, and why those at hand do not count."""
-        kind = measurement_kind(measured.kind).attaches_to
-        whole = Ref(kind, self.owners(ref).get(kind, ref.id))
-        words = f"Measure {measured.kind.replace('-', ' ')} for {whole}."
-        return tuple(sorted({Cause("measurement", measured.kind, whole, words), *near}))
