@@ -1,7 +1,7 @@
 """What stands around the body of a document: control block, caution, requirements answered, page heads."""
 
 import re
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Mapping
 
 from readiness.assessment.records import Assessment, DocumentState, Rule
 from readiness.outputs.contract import CAUTION, INVENTED
@@ -102,8 +102,10 @@ def _control(document: RenderedDocument, state: DocumentState | None, assessment
         "Approvals": f"{approvals}. {RECORD}" if approvals else "none",
     }
     if document.kind == "form":
-        said = ". ".join(f"<b>{key}</b> {plain(text)}" for key, text in rows.items())
-        return f'<p class="control-line">{said}.</p>'
+        said = [f"<b>{key}</b> {plain(text)}" for key, text in rows.items()]
+        links = ", ".join(map(_link, _own_rules(document, assessment)))
+        said += [f"<b>Answers</b> {links}"] if links else []
+        return f'<p class="control-line">{". ".join(said)}.</p>'
     lines = "".join(
         f'<tr><th scope="row">{key}</th><td>{plain(text)}</td></tr>' for key, text in rows.items()
     )
@@ -115,11 +117,26 @@ def _invented(assessment: Assessment) -> str:
     return " (invented)" if needed else ""
 
 
-def _around(document: RenderedDocument, assessment: Assessment) -> str:
+def _own_rules(document: RenderedDocument, assessment: Assessment) -> list[Rule]:
+    """Return the rules that name the document and apply here."""
     applying = {each.rule for each in assessment.findings if each.outcome != "not applicable"}
-    own = [rule for rule in assessment.rules if document.number in rule.documents]
-    rules = [rule for rule in own if rule.id in applying]
-    answered = _answered(rules, short=document.kind == "form")
+    own = (rule for rule in assessment.rules if document.number in rule.documents)
+    return [rule for rule in own if rule.id in applying]
+
+
+def _link(rule: Rule) -> str:
+    return f'<a href="binder:rule-{plain(rule.id)}">{plain(rule.id)}</a>'
+
+
+def _around(document: RenderedDocument, assessment: Assessment) -> str:
+    """Return what stands below a document; a form, meant for one sheet, says at its head what it answers."""
+    rules = _own_rules(document, assessment) if document.kind != "form" else []
+    lines = "; ".join(
+        f"{_link(rule)} ({rule.strength}) {plain(rule.title)} "
+        f'<span class="known">[{plain(known_words(rule))}]</span>'
+        for rule in rules
+    )
+    answered = f"<h2>Requirements that this document answers</h2><p>{lines}.</p>" if lines else ""
     groups: dict[str, list[str]] = {}
     for blank in document.missing:
         groups.setdefault(blank.group, []).append(plain(blank.words))
@@ -128,18 +145,3 @@ def _around(document: RenderedDocument, assessment: Assessment) -> str:
     )
     still = f"<h2>Blanks in this document, and what fills them</h2>{blanks}" if blanks else ""
     return f'<section class="around">{answered}{still}</section>' if answered or still else ""
-
-
-def _answered(rules: Sequence[Rule], *, short: bool) -> str:
-    """Return the requirements that a document answers; on a form, meant for one sheet, their names alone."""
-    if not rules:
-        return ""
-    links = [f'<a href="binder:rule-{plain(rule.id)}">{plain(rule.id)}</a>' for rule in rules]
-    if short:
-        return f'<p class="answers"><b>Answers</b> {", ".join(links)}.</p>'
-    lines = "; ".join(
-        f"{link} ({rule.strength}) {plain(rule.title)} "
-        f'<span class="known">[{plain(known_words(rule))}]</span>'
-        for link, rule in zip(links, rules, strict=True)
-    )
-    return f"<h2>Requirements that this document answers</h2><p>{lines}.</p>"

@@ -109,6 +109,23 @@ def test_pdfinfo_sees_a_tagged_document_with_fixed_dates(files: dict[str, bytes]
     assert "no" == said["Encrypted"]
 
 
+@pytest.mark.parametrize("name", ["documents/6.1-treatment-directive.pdf", "documents/6.4-in-vivo-record.pdf"])
+def test_a_whole_form_is_filled_saved_and_read_back(files: dict[str, bytes], name: str) -> None:
+    """Every line takes its own words and every box its tick; none of them fills another."""
+    writer = PdfWriter(clone_from=io.BytesIO(files[name]))
+    fields = PdfReader(io.BytesIO(files[name])).get_fields() or {}
+    texts = {field: f"entry {place}" for place, (field, each) in enumerate(fields.items()) if each["/FT"] == "/Tx"}
+    boxes = [field for field, each in fields.items() if each["/FT"] == "/Btn"]
+    assert texts
+    assert boxes
+    ticked = {field: next(state for state in fields[field]["/_States_"] if state != "/Off") for field in boxes}
+    writer.update_page_form_field_values(None, {**texts, **ticked}, auto_regenerate=False)
+    stream = io.BytesIO()
+    writer.write(stream)
+    again = PdfReader(stream).get_fields() or {}
+    assert {**texts, **ticked} == {field: str(again[field]["/V"]) for field in (*texts, *ticked)}
+
+
 @pytest.mark.parametrize("name", ["binder.pdf", "documents/6.4-in-vivo-record.pdf", "documents/1.1-program-charter-and-scope.pdf"])
 def test_a_checker_of_accessible_pdf_finds_nothing(files: dict[str, bytes], tmp_path: Path, name: str) -> None:
     """
