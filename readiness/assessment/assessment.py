@@ -13,10 +13,11 @@ from datetime import date
 from readiness import __version__
 from readiness.assessment.candidates import arrangements, exposures, measurements
 from readiness.assessment.catalogue import catalogue
+from readiness.assessment.comparison import ordered
 from readiness.assessment.document_heads import document_heads
 from readiness.assessment.documents import document_items, document_states, is_shown
 from readiness.assessment.exceptions import excepted, may_be_granted
-from readiness.assessment.feasibility import compare, reasons
+from readiness.assessment.feasibility import rows as arrangement_rows
 from readiness.assessment.gaps import find_gaps
 from readiness.assessment.graph import Graph, Memory
 from readiness.assessment.judge import judge
@@ -73,8 +74,8 @@ def assess(
     graph = Graph(program, items, known, as_of, local.limits, memory)
     early = judge((rule for rule in local.rules if rule.kind not in _LATE), graph)
     early, answers = excepted(early, by_id, program, as_of)
-    rows = compare(early, by_id, graph)
-    chosen, rows = _choose(rows)
+    rows = ordered(arrangement_rows(early, by_id, graph), by_id, graph)
+    chosen = _choose(rows)
     of_concern = concerned(chosen.item if chosen else None, graph)
     _work_out(graph, of_concern, wanted)
     shown = tuple(finding for finding in early if _concerns(finding, of_concern))
@@ -90,15 +91,11 @@ def assess(
     return replace(first, findings=findings, gaps=gaps, schedule=schedule, documents=states, verdict=verdict)
 
 
-def _choose(rows: tuple[ArrangementRow, ...]) -> tuple[ArrangementRow | None, tuple[ArrangementRow, ...]]:
+def _choose(rows: tuple[ArrangementRow, ...]) -> ArrangementRow | None:
     """Return the department's arrangement, else the first of the compared ones that is possible."""
-    if not rows:
-        return None, rows
-    second = rows[1] if len(rows) > 1 else None
-    rows = (replace(rows[0], reasons=reasons(rows[0], second)), *rows[1:])
     stated = next((row for row in rows if row.chosen), None)
-    possible = rows[0] if rows[0].feasibility != "not feasible here" else None
-    return stated or possible, rows
+    possible = next((row for row in rows[:1] if row.feasibility != "not feasible here"), None)
+    return stated or possible
 
 
 def _phase(program: Program) -> str:

@@ -1,16 +1,18 @@
-"""Which arrangements are possible, in words, and which one is recommended and why."""
+"""Which arrangements are possible, in words, and what decides that."""
 
 from collections import Counter
 from collections.abc import Iterable, Mapping
 from dataclasses import replace
 
+from readiness.assessment.comparison import telling
 from readiness.assessment.graph import Graph
 from readiness.assessment.kinds import PARTS
-from readiness.assessment.records import FEASIBILITIES, PHASES, ArrangementRow, Finding, Ref, Rule, Value
+from readiness.assessment.records import PHASES, ArrangementRow, Finding, Ref, Rule, Value
 
 # what is shown when arrangements are compared, where it is known
 FIGURES = (
     "arrangement.farthest_plane_distance_cm",
+    "arrangement.farthest_when_cleared_cm",
     "arrangement.plane_distance_cm",
     "arrangement.ceiling_clearance_cm",
     "arrangement.best_tilt_deg",
@@ -69,37 +71,15 @@ def feasibility(findings: Iterable[Finding], rules: Mapping[str, Rule]) -> tuple
     return "feasible", ()
 
 
-# counts by which arrangements are ordered, with their words
-_COMPARED = (
-    ("must against it", "must-rules that the arrangement itself does not meet or is not expected to meet"),
-    (
-        "should against it",
-        "should-rules that the arrangement itself does not meet or is not expected to meet",
-    ),
-    ("must open", "must-rules not met or not assessed"),
-)
-
-
-def compare(
-    findings: Iterable[Finding], rules: Mapping[str, Rule], graph: Graph
-) -> tuple[ArrangementRow, ...]:
-    """
-    Return all arrangements, the best first.
-
-    Order: feasibility; fewest must-rules, then should-rules, that the arrangement itself or a barrier seen
-    from it does not meet or is not expected to meet (what belongs to a part of it can be bought or repaired);
-    fewest must-rules open at all, so that silence is no advantage; the order in which the folder lists them.
-    No score is formed.
-    """
-    rows = []
-    for place, (arrangement, own) in enumerate(by_arrangement(findings, graph).items()):
+def rows(findings: Iterable[Finding], rules: Mapping[str, Rule], graph: Graph) -> tuple[ArrangementRow, ...]:
+    """Return a row for each arrangement, in the order of the folder."""
+    made = []
+    for arrangement, own in by_arrangement(findings, graph).items():
         words, deciding = feasibility(own, rules)
-        counts = _counts(own, rules)
-        order = (
-            FEASIBILITIES.index(words), *(counts[key] for key, _ in _COMPARED), place,
-        )  # fmt: skip
-        rows.append((order, _row(arrangement, words, deciding, counts, graph)))
-    return _own_first(tuple(row for _, row in sorted(rows, key=lambda pair: pair[0])))
+        row = _row(arrangement, words, deciding, _counts(own, rules), graph)
+        against, unanswered = telling(own, rules)
+        made.append(replace(row, against=against, unanswered=unanswered))
+    return _own_first(tuple(made))
 
 
 def _own_first(rows: tuple[ArrangementRow, ...]) -> tuple[ArrangementRow, ...]:
@@ -117,23 +97,12 @@ def _rank(finding: Finding, shared: Counter[tuple[str, str]]) -> tuple[bool, int
 
 
 def _counts(findings: Iterable[Finding], rules: Mapping[str, Rule]) -> dict[str, int]:
-    counts = dict.fromkeys(
-        (
-            *(key for key, _ in _COMPARED),
-            "must not met", "should not met", "must not assessed", "should not assessed",
-        ),
-        0,
-    )  # fmt: skip
-    for finding in findings:
-        strength = rules[finding.rule].strength
-        key = f"{strength} {finding.outcome}"
-        if key in counts:
-            counts[key] += 1
-        against = finding.outcome == "not met" or finding.expected == "not met"
-        if against and finding.item.kind in {"arrangement", "exposure"} and strength != "consider":
-            counts[f"{strength} against it"] += 1
-    counts["must open"] = counts["must not met"] + counts["must not assessed"]
-    return counts
+    counts = Counter(f"{rules[finding.rule].strength} {finding.outcome}" for finding in findings)
+    return {
+        f"{strength} {outcome}": counts[f"{strength} {outcome}"]
+        for outcome in ("not met", "not assessed")
+        for strength in ("must", "should")
+    }
 
 
 def _row(
@@ -160,21 +129,6 @@ def _row(
         tuple(counts.items()),
         chosen,
         figures,
-        (),
-        floor.value if isinstance(floor, Value) else (),
-        float(axis.value) if isinstance(axis, Value) else None,
+        floor_cm=floor.value if isinstance(floor, Value) else (),
+        source_axis_distance_cm=float(axis.value) if isinstance(axis, Value) else None,
     )
-
-
-def reasons(best: ArrangementRow, second: ArrangementRow | None) -> tuple[str, ...]:
-    """Return in sentences why the first of the compared arrangements stands before the second."""
-    if second is None:
-        return ("It is the only arrangement described.",)
-    mine, other = dict(best.counts), dict(second.counts)
-    if best.feasibility != second.feasibility:
-        return (f"It is {best.feasibility}; the next, {second.title}, is {second.feasibility}.",)
-    for key, words in _COMPARED:
-        if mine[key] != other[key]:
-            said = words.replace("-rules", "-rule") if mine[key] == 1 else words
-            return (f"It has {mine[key]} {said}; the next, {second.title}, has {other[key]}.",)
-    return (f"It and the next, {second.title}, stand alike; the folder lists it first.",)

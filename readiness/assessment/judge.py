@@ -46,10 +46,11 @@ def _without_items(rule: Rule, kind: str, graph: Graph) -> Finding:
         words = f"There is no {title} in this program."
         return Finding(rule.id, Ref(kind, "none"), "not applicable", message=words)
     if made:
+        what = "arrangement"
         words = "Describe rooms, machines with beams, degraders, stands and techniques, so that there is one."
         if kind == "exposure" and graph.refs("arrangement"):
-            words = "List the barriers of each room in shielding.yaml."
-        cause = Cause("list", kind, whole, words)
+            what, words = "exposure", "List the barriers of each room in shielding.yaml."
+        cause = Cause("list", what, whole, words)
     else:
         cause = unknown_list(kind, whole, graph.catalogue.kinds)
     return Finding(rule.id, Ref(kind, "all"), "not assessed", causes=(cause,), message=cause.words)

@@ -118,6 +118,8 @@ class Rule:
     One requirement.
 
     Attributes:
+        tells_apart: Whether arrangements are compared by it: another beam, side, degrader or room would
+            answer otherwise.
         would_do: Value in words, of the same item, that follows the message where the rule is not met: what
             would do instead, with numbers. "" where the remedy says it all.
     """
@@ -145,6 +147,7 @@ class Rule:
     origin: str = "shipped"
     where: Place | None = None
     would_do: str = ""
+    tells_apart: bool = False
 
     @property
     def kind(self) -> str:
@@ -206,6 +209,9 @@ class ArrangementRow:
     One arrangement compared with the others, with the findings that decide its feasibility.
 
     Attributes:
+        reasons: Why it stands first, or why the chosen one does not.
+        against: Rules that tell arrangements apart and that it does not keep or is not expected to keep.
+        unanswered: Such rules without an answer yet.
         floor_cm: Corners of the room's floor from the isocentre, for a small plan; empty if not known.
         source_axis_distance_cm: From the source to the isocentre, for that plan.
     """
@@ -218,7 +224,9 @@ class ArrangementRow:
     counts: tuple[tuple[str, int], ...]
     chosen: bool
     figures: tuple[tuple[str, Any, str], ...]  # value name, value, basis
-    reasons: tuple[str, ...]
+    reasons: tuple[str, ...] = ()
+    against: tuple[str, ...] = ()
+    unanswered: tuple[str, ...] = ()
     floor_cm: tuple[tuple[float, float], ...] = ()
     source_axis_distance_cm: float | None = None
 

@@ -25,10 +25,11 @@ _KNOWN = ("read", "memory", "practice", "derived")
 _KEYS = {
     "id", "title", "strength", "sources", "applies_when", "subject", "condition", "limit", "basis",
     "physical", "exceptable", "message", "remedy", "evidence", "owner", "task", "phase", "documents", "cases",
-    "would_do",
+    "would_do", "tells_apart",
 }  # fmt: skip
 _REQUIRED = _KEYS - {
     "applies_when", "limit", "basis", "physical", "exceptable", "evidence", "documents", "would_do",
+    "tells_apart",
 }  # fmt: skip
 
 
@@ -74,6 +75,7 @@ def _rule(entry: Mapping[str, Any], topic: str, file: str) -> Rule:
         topic=topic,
         cases=_tupled(entry["cases"]),
         would_do=entry.get("would_do", ""),
+        tells_apart=entry.get("tells_apart", False),
     )
 
 

@@ -4,9 +4,24 @@ import textwrap
 
 from readiness.assessment.records import ArrangementRow, Assessment, Gap
 from readiness.outputs.contract import CAUTION, INVENTED
-from readiness.outputs.words import VERDICT_SENTENCES, blocking, date_words, value_title, with_unit
+from readiness.outputs.words import (
+    VERDICT_SENTENCES,
+    blocking,
+    comparison_words,
+    date_words,
+    short_titles,
+    with_unit,
+)
 
 _MOST = 12
+_MOST_ARRANGEMENTS = 4
+_FIGURES = {
+    "arrangement.plane_distance_cm": "plane planned at",
+    "arrangement.farthest_plane_distance_cm": "farthest plane as the room is",
+    "arrangement.farthest_when_cleared_cm": "with movable things out of the way",
+    "arrangement.ceiling_clearance_cm": "raised hands under the ceiling by",
+    "arrangement.best_tilt_deg": "evenest at a tilt of",
+}
 
 
 def summary(assessment: Assessment, width: int = 100) -> str:
@@ -34,39 +49,54 @@ def _head(assessment: Assessment, width: int) -> str:
 
 
 def _arrangements(assessment: Assessment, width: int) -> str:
-    if not assessment.arrangements:
-        return ""
-    lines = ["ARRANGEMENTS COMPARED"]
     rows = assessment.arrangements
-    shown = [row for row in rows if row.feasibility != "not feasible here"][:6]
-    shown += [row for row in rows if row not in shown and row.chosen]
+    if not rows:
+        return ""
+    common, titles = short_titles(rows)
+    possible = [row for row in rows if row.feasibility != "not feasible here"]
+    chosen = [row for row in rows if row.chosen]
+    shown = chosen + [row for row in possible if row not in chosen][: _MOST_ARRANGEMENTS - len(chosen)]
+    heading = "ARRANGEMENTS COMPARED, the best first"
+    if chosen and chosen[0] != rows[0]:
+        heading += " after the one that the department chose"
+    lines = [_wrapped(f"{heading}{f'; all: {common}' if common else ''}", width)]
     for row in shown:
-        lines += _arrangement(row, width)
-    failed: dict[str, list[ArrangementRow]] = {}
-    for row in rows:
-        if row.feasibility == "not feasible here" and not row.chosen:
-            failed.setdefault(dict(row.parts)["room"], []).append(row)
-    for room, group in failed.items():
-        said = "; ".join(dict.fromkeys(finding.message for row in group for finding in row.deciding[:1]))
-        lines.append(
-            _wrapped(f"{room}: {len(group)} arrangements not feasible here. {said}", width, "    ", "  ")
-        )
-    left = len(rows) - len(shown) - sum(len(group) for group in failed.values())
+        lines += _arrangement(row, titles[row.item], width)
+    left = len(possible) - len([row for row in shown if row in possible])
     if left > 0:
-        lines.append(f"  and {left} more that are possible (assessment.json lists them all)")
-    return "\n".join(lines)
+        lines.append(f"  {left} more are possible; the report page and assessment.json list them.")
+    return "\n".join(lines + _not_feasible(assessment, width))
 
 
-def _arrangement(row: ArrangementRow, width: int) -> list[str]:
+def _not_feasible(assessment: Assessment, width: int) -> list[str]:
+    """Return each room in which arrangements fail, with what they fail by and what would have to change."""
+    rules = {rule.id: rule for rule in assessment.rules}
+    failed: dict[tuple[str, tuple[str, ...]], int] = {}
+    for row in assessment.arrangements:
+        if row.feasibility == "not feasible here" and not row.chosen:
+            said = tuple(f"{each.message} {rules[each.rule].remedy}" for each in row.deciding[:1])
+            key = (dict(row.parts)["room"], said)
+            failed[key] = failed.get(key, 0) + 1
+    lines = []
+    for (room, said), number in failed.items():
+        what = "1 arrangement" if number == 1 else f"{number} arrangements"
+        lines.append(_wrapped(f"{room}, {what}: not feasible here. {' '.join(said)}", width, "    ", "  "))
+    return lines
+
+
+def _arrangement(row: ArrangementRow, title: str, width: int) -> list[str]:
     mark = "*" if row.chosen else " "
+    known = {name: (value, basis) for name, value, basis in row.figures}
     figures = "; ".join(
-        f"{value_title(name).lower()} {with_unit(name, value)} ({basis})"
-        for name, value, basis in row.figures[:4]
+        f"{words} {with_unit(name, known[name][0])} ({known[name][1]})"
+        for name, words in _FIGURES.items()
+        if name in known
     )
-    lines = [_wrapped(f"{row.title}: {row.feasibility}", width, "    ", f"{mark} ")]
+    lines = [_wrapped(f"{title}: {row.feasibility}", width, "    ", f"{mark} ")]
     if figures:
         lines.append(_wrapped(figures, width, "    "))
-    return lines + [_wrapped(reason, width, "    ") for reason in row.reasons]
+    said = row.reasons or comparison_words(row)
+    return lines + [_wrapped(words, width, "    ") for words in said]
 
 
 def _gap_line(gap: Gap, width: int) -> str:

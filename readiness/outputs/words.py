@@ -1,5 +1,6 @@
 """How an assessment's pieces read on every output: one wording for terminal, page, workbook and binder."""
 
+from collections.abc import Iterable
 from datetime import date
 from typing import Any
 
@@ -54,6 +55,28 @@ def chosen_row(assessment: Assessment) -> ArrangementRow | None:
     """Return the row of the chosen or recommended arrangement."""
     wanted = assessment.verdict.arrangement
     return next((row for row in assessment.arrangements if row.item.id == wanted), None)
+
+
+def short_titles(rows: Iterable[ArrangementRow]) -> tuple[str, dict[Ref, str]]:
+    """Return what all arrangements have in common, and each one's title without it."""
+    pieces = {row.item: row.title.split(", ") for row in rows}
+    first = next(iter(pieces.values()), [])
+    common = [each for each in first if all(each in others for others in pieces.values())]
+    if len(pieces) < 2 or common == first:
+        return "", {ref: ", ".join(own) for ref, own in pieces.items()}
+    return ", ".join(common), {
+        ref: ", ".join(each for each in own if each not in common) for ref, own in pieces.items()
+    }
+
+
+def comparison_words(row: ArrangementRow) -> tuple[str, ...]:
+    """Return the rules that tell arrangements apart and that one does not keep, or has no answer to."""
+    said = []
+    if row.against:
+        said.append(f"does not keep, or is not expected to keep: {', '.join(row.against)}")
+    if row.unanswered:
+        said.append(f"no answer yet: {', '.join(row.unanswered)}")
+    return tuple(said)
 
 
 def blocking(assessment: Assessment) -> tuple[Gap, ...]:

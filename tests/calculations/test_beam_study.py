@@ -5,7 +5,6 @@ from typing import Any
 import pytest
 from beam_setups import LENGTHS, LIMITS, common_setup
 
-from readiness.calculations.arrangement_choice import Candidate, recommended_arrangement
 from readiness.calculations.beam_study import ArrangementStudy, arrangement_study
 from readiness.errors import OutsideValidity
 
@@ -71,55 +70,3 @@ def test_distances_outside_a_study_are_refused() -> None:
         study(plane_distance_cm=200.0)
     with pytest.raises(ValueError, match="beyond the farthest"):
         study(nearest_reachable_cm=450.0)
-
-
-def candidate(name: str, **changes: Any) -> Candidate:
-    """Return an arrangement that keeps all limits."""
-    given = {"forbidden_by": "", "misses": (), "band_width_deg": 3.0, "output_cgy_per_mu": 0.019, "change": ""}
-    return Candidate(arrangement=name, **{**given, **changes})
-
-
-def test_forbidden_arrangement_is_never_recommended() -> None:
-    """Whatever it predicts, an arrangement that cannot stand in the room comes last and says why."""
-    found = recommended_arrangement(
-        candidates=[candidate("a", forbidden_by="the plane ends at 290 cm", band_width_deg=9.0), candidate("b", misses=("horizontal uniformity",))]
-    )
-    assert (found.recommended, found.runner_up) == ("b", "")
-    assert "cannot be used: the plane ends at 290 cm" in found.because
-
-
-def test_fewer_missed_limits_decide_before_band_and_output() -> None:
-    """A wide band does not make up for a missed limit."""
-    found = recommended_arrangement(candidates=[candidate("wide", misses=("dose at 4 mm",), band_width_deg=6.0), candidate("narrow")])
-    assert (found.recommended, found.runner_up) == ("narrow", "wide")
-    assert found.because == "narrow is predicted to keep all limits; fewer than the next (dose at 4 mm)."
-
-
-def test_wider_band_then_output_then_name_decide() -> None:
-    """What is equal in limits is told apart by band, then output, then name, and the reason is given."""
-    band = recommended_arrangement(candidates=[candidate("a"), candidate("b", band_width_deg=4.0)])
-    assert (band.recommended, "band of tilts is wider, 4.0 against 3.0" in band.because) == ("b", True)
-    output = recommended_arrangement(candidates=[candidate("a"), candidate("b", output_cgy_per_mu=0.03)])
-    assert (output.recommended, "output is higher" in output.because) == ("b", True)
-    equal = recommended_arrangement(candidates=[candidate("b"), candidate("a", band_width_deg=3.1)])
-    assert (equal.recommended, "ordered by name" in equal.because) == ("a", True)
-
-
-def test_order_of_description_does_not_matter() -> None:
-    """The same arrangements in another order give the same recommendation."""
-    some = [candidate("a", misses=("x",)), candidate("b"), candidate("c", forbidden_by="no reach"), candidate("d", output_cgy_per_mu=None)]
-    assert recommended_arrangement(candidates=some) == recommended_arrangement(candidates=some[::-1])
-
-
-def test_nothing_possible_is_said_with_every_reason() -> None:
-    """If every arrangement is forbidden the reasons are listed; if there is none, that is said."""
-    none = recommended_arrangement(candidates=[candidate("a", forbidden_by="ceiling 230 cm"), candidate("b", forbidden_by="no reach")])
-    assert none.recommended == ""
-    assert none.because == "No arrangement is possible. a: ceiling 230 cm; b: no reach."
-    assert recommended_arrangement(candidates=[]).because == "No arrangement has been described."
-
-
-def test_arrangement_named_twice_is_refused() -> None:
-    """Two arrangements of one name cannot be told apart."""
-    with pytest.raises(ValueError, match="stands twice"):
-        recommended_arrangement(candidates=[candidate("a"), candidate("a")])

@@ -50,6 +50,17 @@ def tallest_under_ceiling(
     return (ceiling_height_cm - stand_height_cm) / coverage_ratio
 
 
+def under_ceiling_in_words(
+    *, tallest_under_ceiling_cm: float, stand_height_cm: float, ceiling_clearance_cm: float
+) -> str:
+    """Return who would fit under the ceiling on this stand, and how high a stand may be for everybody."""
+    who = f"On this stand patients up to {tallest_under_ceiling_cm:.0f} cm fit"
+    height = stand_height_cm + ceiling_clearance_cm
+    if height < 0:
+        return f"{who}; the tallest would not fit even without a stand."
+    return f"{who}; the tallest would fit on a stand of at most {height:.0f} cm."
+
+
 def caution(*, stand_height_cm: float, step_height_cm: float) -> str:
     """Return what to heed about climbing the stand."""
     return step_caution(stand_height_cm=stand_height_cm, step_height_cm=step_height_cm) or "nothing"
@@ -127,6 +138,16 @@ DEFINITIONS: tuple[Definition, ...] = (
             **_STAND,
             "ceiling_height_cm": "room.ceiling_height_cm",
             "coverage_ratio": "criterion.coverage_ratio",
+        },
+    ),
+    _made(
+        "arrangement.ceiling_would_do",
+        "Who fits under the ceiling on this stand, and what stand the tallest would need.",
+        under_ceiling_in_words,
+        {
+            **_STAND,
+            "tallest_under_ceiling_cm": "arrangement.tallest_under_ceiling_cm",
+            "ceiling_clearance_cm": "arrangement.ceiling_clearance_cm",
         },
     ),
     _made("stand.steps_needed", "Number of steps that lead up to its surface.", steps_needed, _STEP),
