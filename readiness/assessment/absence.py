@@ -3,14 +3,14 @@
 from collections.abc import Mapping
 
 from readiness.assessment.kinds import WRITTEN_BY_THE_TOOL, Kinds
-from readiness.assessment.records import Cause, Ref
+from readiness.assessment.records import PROGRAM, Cause, Ref
 from readiness.program.items import Item
 from readiness.units import unit_of, words_of
 
 LYING = "moving-couch"
 STANDING_ONLY = frozenset(
     f"plan.{name}"
-    for name in ("plane_distance_cm", "tilt_deg", "degrader_gap_cm", "mu_convention", "mu_share_upper",
+    for name in ("plane_distance_cm", "tilt_deg", "mu_convention", "mu_share_upper",
                  "pair_output_cgy_per_mu", "b_factor")
 )  # fmt: skip
 
@@ -20,16 +20,16 @@ def is_for_standing_only(name: str, item: Item) -> bool:
     return name in STANDING_ONLY and (item.get("technique") == LYING or item.get("couch") is not None)
 
 
-def for_standing_only(ref: Ref) -> Cause:
-    """Return why nothing is worked out that only a standing patient has."""
-    words = f"Worked out for a standing patient only; for the lying one of {ref} it is measured."
-    return Cause("validity", "standing patient", ref, words)
+def for_standing_only() -> Cause:
+    """Return why nothing is worked out that only a standing patient has: one cause for all of it."""
+    words = "Worked out for a standing patient only; for one who lies on a moving couch it is measured."
+    return Cause("validity", "standing patient", PROGRAM, words)
 
 
 def unknown_owner(kind: str, asking: Ref, owners: Mapping[str, str]) -> Cause:
     """Return the cause for something that an item does not have."""
     if kind == "stand" and "couch" in owners:
-        return for_standing_only(asking)
+        return for_standing_only()
     return Cause("item", kind, asking, f"Describe or choose a {words_of(kind)} for {asking}.")
 
 

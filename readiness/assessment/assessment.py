@@ -22,6 +22,7 @@ from readiness.assessment.gaps import find_gaps
 from readiness.assessment.graph import Graph, Memory
 from readiness.assessment.judge import judge
 from readiness.assessment.local_rules import LocalRules, with_local
+from readiness.assessment.measurement_use import measurement_uses
 from readiness.assessment.records import (
     PROGRAM,
     ArrangementRow,
@@ -80,6 +81,8 @@ def assess(
     _work_out(graph, of_concern, wanted)
     shown = tuple(finding for finding in early if _concerns(finding, of_concern))
     first = _assemble(program, as_of, graph, local, rows, shown, of_concern)
+    used = measurement_uses(graph, chosen.item if chosen else None, first.values)
+    first = replace(first, measurements=used)
     states = document_states(program, chosen, local.rules, bodies(first) if bodies else {})
     _supply_late(graph, states, chosen, answers, local)
     late = judge((rule for rule in local.rules if rule.kind in _LATE), graph)

@@ -250,6 +250,6 @@ def _elsewhere(first: Assessment, second: Assessment) -> tuple[str, ...]:
     """Return the parts that differ in details, such as places or descent, though no result does."""
     parts = (
         "program", "invented", "phase", "verdict", "arrangements", "values", "findings", "gaps", "schedule",
-        "documents", "rules", "remarks",
+        "documents", "rules", "measurements",
     )  # fmt: skip
     return tuple(part for part in parts if getattr(first, part) != getattr(second, part))

@@ -16,8 +16,8 @@ FIGURES = (
     "arrangement.plane_distance_cm",
     "arrangement.ceiling_clearance_cm",
     "arrangement.best_tilt_deg",
-    "arrangement.vertical_half_range_percent",
-    "arrangement.horizontal_half_range_percent",
+    "arrangement.vertical_uniformity_percent",
+    "arrangement.horizontal_uniformity_percent",
     "arrangement.r80_mm",
 )
 _OWN = {"arrangement", "exposure", *PARTS}

@@ -147,7 +147,7 @@ class Graph(MeasurementSearch):
     def _absent(self, name: str, ref: Ref) -> Gone:
         item = self.item(ref)
         if item is not None and is_for_standing_only(name, item):
-            return Gone((for_standing_only(ref),))
+            return Gone((for_standing_only(),))
         return Gone((unknown_field(name, ref, self.catalogue.kinds),))
 
     # -- calculations --------------------------------------------------------------------------

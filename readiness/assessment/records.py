@@ -301,6 +301,27 @@ class DocumentState:
 
 
 @dataclass(frozen=True)
+class MeasurementUse:
+    """
+    One measurement file: what it gives, or why it does not count, and what must be said about it.
+
+    Attributes:
+        kind: What was measured, in words.
+        gives: Names of the values that are measured through it.
+        why_not: Every reason for which it does not count for the arrangement; empty if it does.
+        remarks: What the analysis says beside the numbers.
+    """
+
+    item: Ref
+    file: str
+    kind: str
+    done_on: date | None
+    gives: tuple[str, ...]
+    why_not: tuple[str, ...]
+    remarks: tuple[str, ...]
+
+
+@dataclass(frozen=True)
 class Verdict:
     """The answer in words."""
 
@@ -337,7 +358,7 @@ class Assessment:
     documents: tuple[DocumentState, ...]
     rules: tuple[Rule, ...]
     inputs: tuple[tuple[str, str, int], ...]
-    remarks: tuple[str, ...] = ()
+    measurements: tuple[MeasurementUse, ...] = ()
 
 
 def weakest(bases: list[str]) -> str:

@@ -14,6 +14,7 @@ from readiness.outputs.contract import CAUTION, INVENTED
 from readiness.outputs.documents import RenderedDocument
 from readiness.outputs.frame import SAFETY, foot_words
 from readiness.outputs.frame import anchor as place
+from readiness.outputs.measurement_rows import measurement_rows
 from readiness.outputs.words import VERDICT_SENTENCES, chosen_row
 from readiness.resources import folder
 
@@ -46,6 +47,7 @@ SHEETS = (
     ("road", "The road to the first patient", "road.html.j2"),
     ("matrix", "Requirements and what was found", "matrix.html.j2"),
     ("values", "Values, their basis and their descent", "values.html.j2"),
+    ("measurements", "Measurements: what each file gives", "measurements.html.j2"),
     ("evidence", "Evidence and input files", "evidence.html.j2"),
     ("sources", "Sources, and how we know them", "sources.html.j2"),
     ("words", "Words used in this binder", "words.html.j2"),
@@ -84,6 +86,7 @@ def assessment_sheets(assessment: Assessment, rendered: Sequence[RenderedDocumen
         "matrix": rows.matrix(assessment),
         "values": rows.values(assessment),
         "not_printed": rows.values_not_printed(assessment),
+        "measurements": measurement_rows(assessment),
         "evidence": rows.evidence(assessment),
         "inputs": assessment.inputs,
         "sources": rows.sources(assessment, rendered),

@@ -7,6 +7,7 @@ from typing import Any
 from readiness.assessment.records import Assessment, Value
 from readiness.outputs.chart_making import figure_of, svg_of
 from readiness.outputs.lookup import Lookup
+from readiness.outputs.plane_charts import draw_couch_field, draw_plane_map
 from readiness.outputs.session_chart import draw_session
 from readiness.outputs.words import with_unit
 from readiness.quantities import Table
@@ -21,6 +22,8 @@ def make_charts(assessment: Assessment) -> dict[str, str]:
         "profile-over-height": _profile_over_height,
         "profile-across": _profile_across,
         "distance-and-tilt": _distance_and_tilt,
+        "plane-map": draw_plane_map,
+        "couch-field": draw_couch_field,
         "session-timeline": draw_session,
         "road": _road,
     }

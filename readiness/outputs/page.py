@@ -12,9 +12,18 @@ from readiness.assessment.what_if import Variant
 from readiness.outputs import page_rows
 from readiness.outputs.assessment_rows import KNOWN_WORDS, commissioning_weeks, short_item
 from readiness.outputs.contract import CAUTION, INVENTED
+from readiness.outputs.measurement_rows import measurement_rows
 from readiness.outputs.page_tables import people_and_money
+from readiness.outputs.study_rows import study_rows
 from readiness.outputs.what_if_rows import FIRST_PATIENT, questions
-from readiness.outputs.words import VERDICT_SENTENCES, blocking, chosen_row, value_title, with_unit
+from readiness.outputs.words import (
+    VERDICT_SENTENCES,
+    blocking,
+    chosen_row,
+    comparison_words,
+    value_title,
+    with_unit,
+)
 from readiness.resources import folder, template_file
 from readiness.units import printed, unit_of, words_of
 
@@ -45,6 +54,8 @@ def make_page(
         arrangements=page_rows.possible(assessment),
         ruled_out=page_rows.ruled_out(assessment),
         pictures=page_rows.drawn(pictures),
+        study=study_rows(assessment),
+        measurements=measurement_rows(assessment),
         what_if=questions(variants),
         first_patient=FIRST_PATIENT,
         blocking=blocking(assessment),
@@ -70,7 +81,8 @@ def _environment(assessment: Assessment) -> Environment:
     )  # fmt: skip
     environment.filters.update(
         title_of=value_title, with_unit=with_unit, column_title=_column_title, cell=_cell,
-        outcomes=page_rows.outcomes, item_words=lambda item: short_item(item, assessment),
+        compared=comparison_words, outcomes=page_rows.outcomes,
+        item_words=lambda item: short_item(item, assessment),
         short=lambda text: page_rows.shortened(text, assessment),
     )  # fmt: skip
     return environment

@@ -75,7 +75,7 @@ def comparison_words(row: ArrangementRow) -> tuple[str, ...]:
     if row.against:
         said.append(f"does not keep, or is not expected to keep: {', '.join(row.against)}")
     if row.unanswered:
-        said.append(f"no answer yet: {', '.join(row.unanswered)}")
+        said.append(f"has no answer yet to: {', '.join(row.unanswered)}")
     return tuple(said)
 
 

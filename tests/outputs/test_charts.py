@@ -30,7 +30,7 @@ def charts(sample: Assessment) -> dict[str, str]:
 
 def test_every_chart_is_drawn_and_described(charts: dict[str, str]) -> None:
     """Profiles, map and road, each with title and description, nothing from outside."""
-    assert {"profile-over-height", "profile-across", "distance-and-tilt", "road", "session-timeline"} == set(charts)
+    assert {"profile-over-height", "profile-across", "distance-and-tilt", "plane-map", "road", "session-timeline"} == set(charts)
     for svg in charts.values():
         root = ElementTree.fromstring(svg)
         assert root.find("{http://www.w3.org/2000/svg}title").text  # type: ignore[union-attr]

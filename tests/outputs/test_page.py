@@ -222,7 +222,10 @@ def test_hostile_words_stay_text(sample: Assessment) -> None:
     assert sample.schedule is not None
     hostile = replace(
         sample,
-        program=HOSTILE, remarks=(HOSTILE,),
+        program=HOSTILE,
+        measurements=tuple(
+            replace(each, file=HOSTILE, why_not=(HOSTILE,), remarks=(HOSTILE,)) for each in sample.measurements
+        ),
         verdict=replace(sample.verdict, reasons=(HOSTILE,)),
         arrangements=tuple(replace(row, title=HOSTILE, reasons=(HOSTILE,)) for row in sample.arrangements),
         gaps=tuple(replace(gap, what=HOSTILE, owner=HOSTILE, topic=HOSTILE) for gap in sample.gaps),

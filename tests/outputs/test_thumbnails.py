@@ -11,7 +11,7 @@ from readiness.outputs.thumbnails import thumbnails
 FLOOR = ((-365.0, -420.0), (330.0, -420.0), (330.0, 270.0), (-365.0, 270.0))
 ROW = ArrangementRow(
     Ref("arrangement", "a"), "room a, side 90", (("room", "a"), ("side_deg", "90")), "feasible", (), (), False,
-    (("arrangement.farthest_plane_distance_cm", 385.0, "predicted"),), (), FLOOR, 100.0,
+    (("arrangement.farthest_plane_distance_cm", 385.0, "predicted"),), floor_cm=FLOOR, source_axis_distance_cm=100.0,
 )  # fmt: skip
 
 

@@ -7,6 +7,8 @@ from readiness.assessment.values.beam_field import PREDICTION, upper_share
 from readiness.calculations.commissioning_plan import CommissioningPlan, commissioning_plan, tilts_to_measure
 from readiness.calculations.composite_depth_dose import CompositeDepthDose
 from readiness.calculations.field_setup import FieldSetup
+from readiness.quantities import Table
+from readiness.units import printed
 
 
 @lru_cache(maxsize=32)
@@ -39,6 +41,21 @@ def plan_of_arrangement(
         uniformity_half_width_cm=half_width_cm,
         depth_dose=depth_dose,
     )
+
+
+def sweep_sheet(*, expected_sweep: Table) -> Table:
+    """Return the readings to expect of a sweep with a column for each tilt, in the order to measure."""
+    order, tilt, height, dose = (
+        expected_sweep.columns.index(name) for name in ("order", "tilt_deg", "height_cm", "expected")
+    )
+    tilts = dict(sorted((int(row[order] or 0), float(row[tilt] or 0)) for row in expected_sweep.rows))
+    by_height: dict[float, dict[int, float]] = {}
+    for row in expected_sweep.rows:
+        by_height.setdefault(float(row[height] or 0), {})[int(row[order] or 0)] = float(row[dose] or 0)
+    heads = [f"expected_at_{printed(each)}_deg" for each in tilts.values()]
+    levels = sorted(by_height.items(), reverse=True)
+    rows = [[level, *(found.get(each) for each in tilts)] for level, found in levels]
+    return Table.of(["height_cm", *heads], rows)
 
 
 def _of(name: str, meaning: str, part: str) -> Definition:
@@ -76,6 +93,14 @@ DEFINITIONS: tuple[Definition, ...] = (
     _of("commissioning_plan", "Steps of commissioning in an order that can stop early.", "steps"),
     _of("expected_single_field", "Readings to expect of one field along the height.", "single_field"),
     _of("expected_sweep", "Readings to expect of a sweep of tilts, in the order to measure.", "angle_sweep"),
+    Definition(
+        "arrangement.expected_sweep_sheet",
+        "Readings to expect of a sweep, a column for each tilt in the order to measure.",
+        by=sweep_sheet,
+        takes={"expected_sweep": "arrangement.expected_sweep"},
+        source="own-fit",
+        known="fit",
+    ),
     _of("expected_across", "Readings to expect of the dual field across.", "across"),
     _of("expected_depth_dose", "Composite depth doses to expect.", "depth_dose"),
 )

@@ -16,6 +16,7 @@ from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 MAP_TILT_STEP_DEG = 1.0
+OVERVIEW_STEP_CM = 25.0
 FARTHEST = "arrangement.farthest_when_cleared_cm"
 TRIED_TILTS_DEG = tuple(8.0 + 0.5 * step for step in range(33))
 
@@ -64,6 +65,15 @@ def map_of_study(*, study: ArrangementStudy) -> Table:
     at = whole.columns.index("tilt_deg")
     kept = tuple(row for row in whole.rows if float(row[at] or 0) % MAP_TILT_STEP_DEG == 0)
     return Table(whole.columns, kept)
+
+
+def overview_of_study(*, tilt_band: Table) -> Table:
+    """Return what the study found at every quarter of a metre, with the columns that a reader compares."""
+    columns = ("distance_cm", "best_tilt_deg", "lowest_passing_tilt_deg", "highest_passing_tilt_deg",
+               "vertical_percent", "horizontal_percent", "map_half_range_percent")  # fmt: skip
+    at = [tilt_band.columns.index(name) for name in columns]
+    rows = (row for row in tilt_band.rows if float(row[0] or 0) % OVERVIEW_STEP_CM == 0)
+    return Table.of(columns, [[row[place] for place in at] for row in rows])
 
 
 def remedy_in_words(*, study: ArrangementStudy, farthest_cm: float | None) -> str:
@@ -137,6 +147,14 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Best tilt and the tilts that keep the vertical limit at every distance, as predicted.",
         "study",
         "by_distance",
+    ),
+    Definition(
+        "arrangement.tilt_overview",
+        "Best tilt, tilts that keep the vertical limit, and evenness at the best tilt, as predicted.",
+        by=overview_of_study,
+        takes={"tilt_band": "arrangement.tilt_band"},
+        source="own-fit",
+        known="fit",
     ),
     Definition(
         "arrangement.uniformity_map",
