@@ -7,7 +7,8 @@ One value in one entry: its name, its meaning, the calculation and what that tak
 - ``"room.ceiling_height_cm?"``: the same, None if it cannot be had,
 - ``"each instrument.calibration_age_days"``: a tuple over the items listed nearest to this one,
 - ``"each instrument.calibration_age_days?"``: the same, None for each that cannot be had,
-- ``"rows obstruction: id x_min_cm x_max_cm movable?"``: a table, one row for each such item.
+- ``"rows obstruction: id x_min_cm x_max_cm movable?"``: a table, one row for each such item,
+- ``"rows? earlier_calibration: calibrated_on?"``: the same, without a row where the list is not there.
 """
 
 from collections.abc import Callable, Mapping
@@ -106,10 +107,11 @@ class Take:
 
 def parse_take(text: str) -> Take:
     """Return what an entry of ``takes`` asks for."""
-    if text.startswith("rows "):
-        kind, _, columns = text.removeprefix("rows ").partition(":")
+    if text.startswith(("rows ", "rows? ")):
+        form, _, rest = text.partition(" ")
+        kind, _, columns = rest.partition(":")
         parsed = tuple((column.rstrip("?"), column.endswith("?")) for column in columns.split())
-        return Take("rows", kind.strip(), optional=False, columns=parsed)
+        return Take("rows", kind.strip(), optional=form.endswith("?"), columns=parsed)
     if text.startswith("each "):
         name = text.removeprefix("each ").strip()
         return Take("each", name.rstrip("?"), optional=name.endswith("?"))

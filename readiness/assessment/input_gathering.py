@@ -91,7 +91,7 @@ class InputGathering(ItemIndex):
         self, keyword: str, take: Take, ref: Ref, inputs: list[Input], bases: list[str], causes: list[Cause]
     ) -> Table:
         found, unknown = self._listed(take.name, ref)
-        if unknown:
+        if unknown and not take.optional:
             causes.append(unknown)
         columns = [
             (column, Take("one", f"{take.name}.{column}", optional)) for column, optional in take.columns

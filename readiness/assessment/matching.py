@@ -11,6 +11,7 @@ from datetime import date
 from typing import Any
 
 from readiness.assessment.records import Ref, Value
+from readiness.program.calibration import calibration_fault
 from readiness.program.items import Item, Program
 from readiness.program.measurement_kinds import measurement_kind
 from readiness.units import printed, unit_of, words_of
@@ -96,7 +97,7 @@ def void(measurement: Item, program: Program) -> str:
         return "it has no date"
     instrument = program.find("instrument", measurement.owners.get("instrument", ""))
     if instrument is not None:
-        reason = _calibration(instrument, done)
+        reason = calibration_fault(instrument, program, done)
         if reason:
             return reason
     for kind in ("room", "machine", "stand"):
@@ -114,13 +115,4 @@ def _outdated(measurement: Item, program: Program, done: date) -> str:
         changed = section.get(field) if section else None
         if isinstance(changed, date) and changed > done:
             return f"{words_of(name)} {changed} is later than the measurement of {done}"
-    return ""
-
-
-def _calibration(instrument: Item, done: date) -> str:
-    calibrated, due = instrument.get("calibrated_on"), instrument.get("calibration_due_on")
-    if isinstance(due, date) and done > due:
-        return f"instrument {instrument.id} was out of calibration on {done} (due {due})"
-    if isinstance(calibrated, date) and done < calibrated and not isinstance(due, date):
-        return f"instrument {instrument.id} was calibrated only on {calibrated}, after {done}"
     return ""

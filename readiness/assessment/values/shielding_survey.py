@@ -4,6 +4,7 @@ from datetime import date
 
 from readiness.assessment.definition import Definition, derived
 from readiness.errors import OutsideValidity
+from readiness.program.calibration import complete_periods, holds_on
 from readiness.quantities import Table
 
 
@@ -31,23 +32,16 @@ def is_newer(
     return all(change is None or surveyed >= change for change in changes)
 
 
-def meter_valid(*, done: date, calibrated: date, due: date) -> bool:
-    """Return whether the meter was in calibration on the day of the survey."""
-    return calibrated <= done <= due
-
-
 def meter_of_survey(
-    *, instrument: str, done: date, meters: tuple[str, ...], calibrated: tuple[date | None, ...],
-    due: tuple[date | None, ...],
+    *, instrument: str, done: date, meters: tuple[str, ...], periods: tuple[Table, ...]
 ) -> bool:  # fmt: skip
     """Return whether the survey's meter was in calibration that day."""
     if instrument not in meters:
         raise OutsideValidity(f"instrument {instrument} is not in the list of instruments")
-    place = meters.index(instrument)
-    first, last = calibrated[place], due[place]
-    if first is None or last is None:
+    known = complete_periods(periods[meters.index(instrument)].rows)  # type: ignore[arg-type]
+    if not known:
         raise OutsideValidity(f"the calibration dates of instrument {instrument} are not stated")
-    return meter_valid(done=done, calibrated=first, due=last)
+    return holds_on(known, done)
 
 
 def count(*, barriers: tuple[str, ...]) -> int:
@@ -88,8 +82,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             "instrument": "survey.instrument",
             "done": "survey.done_on",
             "meters": "each instrument.id",
-            "calibrated": "each instrument.calibrated_on?",
-            "due": "each instrument.calibration_due_on?",
+            "periods": "each instrument.calibration_periods",
         },
     ),
 )

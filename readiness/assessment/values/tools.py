@@ -36,6 +36,13 @@ def holds_today(*, calibrated_on: date, calibration_due_on: date, as_of_date: da
     return calibrated_on <= as_of_date <= calibration_due_on
 
 
+def periods_of_calibration(
+    *, calibrated_on: date | None, calibration_due_on: date | None, earlier: Table
+) -> Table:
+    """Return the last calibration and the earlier ones: calibrated on, holds until."""
+    return Table(("calibrated_on", "holds_until"), ((calibrated_on, calibration_due_on), *earlier.rows))  # type: ignore[arg-type]
+
+
 def given_for(*, calibrated_on: date, calibration_due_on: date) -> int:
     """Return for how many days a calibration was given."""
     return (calibration_due_on - calibrated_on).days
@@ -137,6 +144,19 @@ _DATED = "rows instrument: type calibrated_on? calibration_due_on?"
 _TODAY = {"as_of_date": "program.as_of_date"}
 
 DEFINITIONS: tuple[Definition, ...] = (
+    Definition(
+        "instrument.calibration_periods",
+        "Its last calibration and the earlier ones that are listed.",
+        by=periods_of_calibration,
+        takes={
+            "calibrated_on": "instrument.calibrated_on?",
+            "calibration_due_on": "instrument.calibration_due_on?",
+            "earlier": "rows? earlier_calibration: calibrated_on? calibration_due_on?",
+        },
+        internal=True,
+        source="definition",
+        known="derived",
+    ),
     derived(
         "instrument.calibration_holds", "Its calibration holds today.", holds_today, {**_DATES, **_TODAY}
     ),

@@ -61,7 +61,8 @@ def department(*more: Item, **changes: dict[str, Any]) -> Program:
         item("stand", "platform", **of("stand", STAND)),
         item("couch", "couch"),
         item("plan", "plan", **of("plan", PLAN)),
-        item("instrument", "film", type="film"),
+        item("instrument", "film", type="film", **of("film", {
+            "calibrated_on": date(2026, 1, 1), "calibration_due_on": date(2027, 1, 1)})),
         item("instrument", "chamber", type="plane-parallel-chamber", **of("chamber", {
             "calibrated_on": date(2024, 9, 16), "calibration_due_on": date(2026, 9, 16)})),
         *more,

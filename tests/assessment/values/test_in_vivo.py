@@ -38,7 +38,11 @@ def readings(rows: list[tuple[Any, ...]], **changes: Any) -> Item:
 def described(*more: Item, instrument: dict[str, Any] | None = None, **changes: Any) -> Program:
     """Return a program with one course, an in-vivo plan and its detectors."""
     plan = {name: value for name, value in {**PLAN, **changes}.items() if value is not None}
-    detector = {"pieces": 60, "single_reading_sd_percent": 4.0, **(instrument or {})}
+    usual = {
+        "pieces": 60, "single_reading_sd_percent": 4.0,
+        "calibrated_on": date(2026, 1, 1), "calibration_due_on": date(2027, 1, 1),
+    }  # fmt: skip
+    detector = {**usual, **(instrument or {})}
     return program(
         item("course", "long", patients_per_year=8.0, cycles=18, sessions_per_cycle=2, sessions_per_week=4, break_weeks=0.0),
         item("instrument", "osl", **{name: value for name, value in detector.items() if value is not None}),
