@@ -43,6 +43,24 @@ def test_plan_is_to_scale(sample: Assessment) -> None:
     assert plane < 0
 
 
+def test_degrader_and_free_space_are_to_scale(sample: Assessment) -> None:
+    """The sheet's exit face is 45 cm from the plane at x -300, toward the source; 20 cm stay free behind the stand."""
+    plan = ElementTree.fromstring(make_pictures(sample)["room-plan"])
+    boxes = [{key: float(each.get(key, "")) for key in ("x", "y", "width", "height")} for each in plan.iter(f"{SVG}rect")]
+    assert {"x": -255.0, "y": -55.0, "width": 3.0, "height": 110.0} in boxes
+    assert {"x": -365.0, "y": -45.0, "width": 20.0, "height": 90.0} in boxes
+    side = ElementTree.fromstring(make_pictures(sample)["room-elevation"])
+    sheets = [(each.get("x"), each.get("y"), each.get("height")) for each in side.iter(f"{SVG}rect") if each.get("width") == "3"]
+    assert [("-255", "-243", "205")] == sheets
+
+
+def test_elevation_names_heights_and_clearance(sample: Assessment) -> None:
+    """Axes, stand and raised hands stand at their heights, with what is left below the ceiling."""
+    words = " ".join(each.text or "" for each in ElementTree.fromstring(make_pictures(sample)["room-elevation"]).iter(f"{SVG}text"))
+    for said in ("277.5 cm; 22.5 cm to the ceiling", "upper axis, 216 cm", "lower axis, 43.98 cm", "stand, 40 cm"):
+        assert said in words
+
+
 def test_barriers_are_to_scale(sample: Assessment) -> None:
     """Walls are as thick as stated, the room as high; spots of the axes lie on the wall of the beam."""
     root = ElementTree.fromstring(make_pictures(sample)["barriers"])
