@@ -38,9 +38,10 @@ class PredictionUncertainty:
     """
     Best tilt with its band, the profile at the chosen tilt with its band, and what contributes most.
 
-    ``profile_band`` has height_cm, relative_dose, sd. ``contributions`` has one row an input: its change of
-    best tilt, vertical and horizontal uniformity for one standard deviation, and the measurement that would
-    reduce it. ``probability_of_passing`` is None until the foil spread is fitted.
+    ``profile_band`` has height_cm, relative_dose, sd; ``band_across`` has across_cm instead.
+    ``contributions`` has one row an input: its change of best tilt, vertical and horizontal uniformity for
+    one standard deviation, and the measurement that would reduce it. ``probability_of_passing`` is None until
+    the foil spread is fitted.
     """
 
     best_tilt_deg: Uncertain
@@ -50,6 +51,7 @@ class PredictionUncertainty:
     horizontal_percent: Uncertain
     probability_of_passing: float | None
     profile_band: Table
+    band_across: Table
     contributions: Table
     measurement_that_helps_most: str
 
@@ -181,7 +183,8 @@ def _propagated(
         vertical_percent=Uncertain(_percent(centre.vertical, metric), float(np.std(vertical))),
         horizontal_percent=Uncertain(_percent(centre.horizontal, metric), float(np.std(horizontal))),
         probability_of_passing=_never_certain(passing) if foil_spread_fitted else None,
-        profile_band=_band(centre.vertical, steps, judged),
+        profile_band=_band("height_cm", judged.half_length_cm, centre.vertical, steps),
+        band_across=_band("across_cm", judged.half_width_cm, centre.horizontal, across),
         contributions=contributions,
         measurement_that_helps_most=_helps_most(contributions),
     )
@@ -264,12 +267,12 @@ def _never_certain(part: float) -> float:
     return min(max(part, 1 / SAMPLES), 1 - 1 / SAMPLES)
 
 
-def _band(profile: Array, steps: Array, judged: _Judged) -> Table:
-    """Return the vertical profile with its standard deviation."""
-    heights = even_grid(half_length_cm=judged.half_length_cm, step_cm=HEIGHT_STEP_CM)
+def _band(name: str, half_cm: float, profile: Array, steps: Array) -> Table:
+    """Return a profile with its standard deviation."""
+    places = even_grid(half_length_cm=half_cm, step_cm=HEIGHT_STEP_CM)
     sds = np.sqrt(np.sum(steps**2, axis=0)) if len(steps) else np.zeros_like(profile)
-    rows = [(float(h), float(d), float(s)) for h, d, s in zip(heights, profile, sds, strict=True)]
-    return Table.of(["height_cm", "relative_dose", "sd"], rows)
+    rows = [(float(at), float(dose), float(sd)) for at, dose, sd in zip(places, profile, sds, strict=True)]
+    return Table.of([name, "relative_dose", "sd"], rows)
 
 
 def _contributions(centre: _Outcome, moves: dict[str, tuple[_Outcome, _Outcome]], metric: str) -> Table:

@@ -13,6 +13,7 @@ from readiness.outputs.words import with_unit
 from readiness.quantities import Table
 
 _HEIGHT_IN = 3.6
+_BELOW = 0.2  # room for the legend below a profile
 
 
 def make_charts(assessment: Assessment) -> dict[str, str]:
@@ -57,27 +58,31 @@ def _measured(axes: Any, table: Table | None, place: str) -> None:
         axes.plot(table.column(place), table.column("relative_dose"), "ko", markersize=4, label="measured")
 
 
+def _profile(axes: Any, table: Table, place: str, half_cm: float | None, percent: float | None) -> None:
+    """Draw a predicted profile with its band and the limits about the middle."""
+    rows = [row for row in table.records() if row["predicted"] is not None]
+    axes.plot([r[place] for r in rows], [r["predicted"] for r in rows], "k-", label="predicted")
+    band = [r for r in rows if r["low"] is not None and r["high"] is not None]
+    if band:
+        axes.fill_between(
+            [r[place] for r in band], [r["low"] for r in band], [r["high"] for r in band],
+            color="0.8", label="band of the prediction",
+        )  # fmt: skip
+    if half_cm and percent:
+        _limits(axes, half_cm, percent, 1.0)
+    lowest = min(float(r["predicted"] or 0) for r in rows)
+    axes.set(ylabel="relative dose", ylim=(max(0.0, lowest - _BELOW), None))
+
+
 def _profile_over_height(lookup: Lookup) -> str | None:
     table = _table(lookup, "arrangement.profile_height")
     if table is None:
         return None
-    rows = [row for row in table.records() if row["predicted"] is not None]
     figure, axes = _figure()
-    axes.plot([r["height_cm"] for r in rows], [r["predicted"] for r in rows], "k-", label="predicted")
-    band = [r for r in rows if r["low"] is not None and r["high"] is not None]
-    if band:
-        axes.fill_between(
-            [r["height_cm"] for r in band], [r["low"] for r in band], [r["high"] for r in band],
-            color="0.8", label="band of the prediction",
-        )  # fmt: skip
-    half, percent = (
-        _number(lookup, "criterion.uniformity_half_length_cm"),
-        _number(lookup, "criterion.vertical_uniformity_percent"),
-    )
-    if half and percent:
-        _limits(axes, half, percent, 1.0)
+    half = _number(lookup, "criterion.uniformity_half_length_cm")
+    _profile(axes, table, "height_cm", half, _number(lookup, "criterion.vertical_uniformity_percent"))
     _measured(axes, _table(lookup, "arrangement.measured_profile_height"), "height_cm")
-    axes.set(xlabel="height above the isocentre [cm]", ylabel="relative dose", ylim=(0, None))
+    axes.set(xlabel="height above the isocentre [cm]")
     axes.legend(loc="lower center", frameon=False)
     words = (
         f"Dual field over height at {_said(lookup, 'arrangement.study_distance_cm')} and tilt "
@@ -97,18 +102,14 @@ def _profile_across(lookup: Lookup) -> str | None:
     if table is None:
         return None
     figure, axes = _figure()
-    axes.plot(table.column("across_cm"), table.column("relative_dose"), "k-", label="predicted")
-    half, percent = (
-        _number(lookup, "criterion.uniformity_half_width_cm"),
-        _number(lookup, "criterion.horizontal_uniformity_percent"),
-    )
-    if half and percent:
-        _limits(axes, half, percent, 1.0)
+    half = _number(lookup, "criterion.uniformity_half_width_cm")
+    _profile(axes, table, "across_cm", half, _number(lookup, "criterion.horizontal_uniformity_percent"))
     _measured(axes, _table(lookup, "arrangement.measured_profile_width"), "across_cm")
-    axes.set(xlabel="across the patient [cm]", ylabel="relative dose", ylim=(0, None))
+    axes.set(xlabel="across the patient [cm]")
     axes.legend(loc="lower center", frameon=False)
     words = (
-        "Dual field across the patient; dashed lines are the limits. Distance, not tilt, evens it. Predicted."
+        "Dual field across the patient; dashed lines are the limits. Distance, not tilt, evens it. "
+        "Curve and band are predicted."
     )
     return svg_of(figure, "profile-across", "Dual field across the patient", words)
 

@@ -125,3 +125,13 @@ def test_samples_are_normal_and_the_same_every_time() -> None:
     assert (samples == normal_samples(inputs=5)).all()
     with pytest.raises(ValueError, match="at least one input"):
         normal_samples(inputs=0)
+
+
+def test_the_profile_across_has_a_band_of_its_own() -> None:
+    """Sure in the middle, least sure at the ends, wider with more uncertain inputs; as wide as it is judged."""
+    places, sds = (np.array(USUAL.band_across.column(name), dtype=float) for name in ("across_cm", "sd"))
+    assert (-30.0, 30.0) == (places[0], places[-1])
+    assert sds[len(sds) // 2] == pytest.approx(0, abs=1e-12)
+    assert sds[0] == max(sds) > 0.001
+    wider = np.array(found(energy_sd_mev=0.6, foil_spread_sd=0.06).band_across.column("sd"), dtype=float)
+    assert wider[0] > sds[0]

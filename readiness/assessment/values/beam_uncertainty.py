@@ -2,6 +2,8 @@
 
 from functools import lru_cache
 
+import numpy as np
+
 from readiness.assessment.definition import Definition
 from readiness.assessment.values.beam_field import LIMITS, PREDICTION, upper_share
 from readiness.calculations.field_setup import FieldSetup
@@ -13,6 +15,8 @@ from readiness.calculations.prediction_uncertainty import (
     prediction_uncertainty,
 )
 from readiness.quantities import Scalar, Table
+
+HALF_MM_CM = 0.05
 
 
 @lru_cache(maxsize=32)
@@ -55,17 +59,26 @@ def uncertainty_of_arrangement(
 
 def profile_with_band(*, plane: PredictedPlane, uncertainty: PredictionUncertainty) -> Table:
     """Return the predicted vertical profile, with two standard deviations either way where they are known."""
-    sds = {
-        round(float(row["height_cm"] or 0), 3): float(row["sd"] or 0)
-        for row in uncertainty.profile_band.records()
-    }
+    return _with_band("height_cm", plane.vertical_profile, uncertainty.profile_band)
+
+
+def profile_across_with_band(*, plane: PredictedPlane, uncertainty: PredictionUncertainty) -> Table:
+    """Return the predicted horizontal profile, with two standard deviations either way."""
+    return _with_band("across_cm", plane.horizontal_profile, uncertainty.band_across)
+
+
+def _with_band(place: str, profile: Table, band: Table) -> Table:
+    """Return a profile with low and high; blank where the band was not worked out."""
+    at = np.array(band.column(place), dtype=float)
+    sds = np.array(band.column("sd"), dtype=float)
     rows: list[tuple[Scalar, ...]] = []
-    for row in plane.vertical_profile.records():
-        height, dose = float(row["height_cm"] or 0), float(row["relative_dose"] or 0)
-        sd = sds.get(round(height, 3))
-        either_way = (None, None) if sd is None else (dose - BAND_COVERAGE * sd, dose + BAND_COVERAGE * sd)
-        rows.append((height, dose, *either_way))
-    return Table(("height_cm", "predicted", "low", "high"), tuple(rows))
+    for row in profile.records():
+        where, dose = float(row[place] or 0), float(row["relative_dose"] or 0)
+        sd = float(np.interp(where, at, sds))
+        known = at[0] - HALF_MM_CM <= where <= at[-1] + HALF_MM_CM
+        either_way = (dose - BAND_COVERAGE * sd, dose + BAND_COVERAGE * sd) if known else (None, None)
+        rows.append((where, dose, *either_way))
+    return Table((place, "predicted", "low", "high"), tuple(rows))
 
 
 def sd_of_best_tilt(*, uncertainty: PredictionUncertainty) -> float:
@@ -155,11 +168,16 @@ DEFINITIONS: tuple[Definition, ...] = (
         source="own-fit",
         known="fit",
     ),
-    _of(
-        "profile_width",
-        "Predicted horizontal profile of the dual field through the middle.",
-        "horizontal_profile",
-        of="predicted_plane",
+    Definition(
+        "arrangement.profile_width",
+        "Predicted horizontal profile of the dual field; low and high lie two standard deviations away.",
+        by=profile_across_with_band,
+        takes={
+            "plane": "arrangement.predicted_plane",
+            "uncertainty": "arrangement.prediction_uncertainty",
+        },
+        source="own-fit",
+        known="fit",
     ),
     _of(
         "plane_map",
