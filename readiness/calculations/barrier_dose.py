@@ -143,47 +143,6 @@ def weekly_dose(
     return _added_up(sources, met, occupancy, role == "secondary" and xray_distance_m is not None)
 
 
-def existing_dose(
-    *,
-    layers: Table,
-    role: str,
-    occupancy: float,
-    recess_depth_cm: float,
-    existing: Table,
-    primary_distance_m: float | None,
-    isocentre_distance_m: float | None,
-) -> WeeklyDose:
-    """
-    Return the weekly dose behind a barrier from the work that is there already.
-
-    Args:
-        layers: From inside outwards: material, thickness_cm, density_g_per_cm3 (blank for steel or lead).
-        role: What the barrier was built for: ``primary`` or ``secondary``; others are for the survey.
-        occupancy: Part of the time that a person is beyond it, T. [1]
-        recess_depth_cm: Material missing along the beam: laser recess, niche, conduits. [cm]
-        existing: Workloads: energy_mv, kind (primary or leakage), workload_gy_per_week at 1 m, use_factor
-            (blank for leakage), distance_m (blank unless it has its own).
-        primary_distance_m: From the source of existing primary beams to 0.3 m beyond; None without any. [m]
-        isocentre_distance_m: From the isocentre to 0.3 m beyond, for existing leakage; None without any. [m]
-
-    Returns:
-        As ``weekly_dose``, with nothing added.
-
-    Raises:
-        ValueError: If a number is outside its meaning or a word is none of those listed.
-        OutsideValidity: As ``weekly_dose``.
-
-    Valid for: as ``weekly_dose``.
-    Source: ncrp-151, Eq. 2.1, 2.8 (memory).
-    """
-    _check_barrier(role, occupancy)
-    sources = existing_sources(
-        existing=existing, primary_distance_m=primary_distance_m, isocentre_distance_m=isocentre_distance_m
-    )
-    met = barrier_layers(layers=layers, recess_depth_cm=recess_depth_cm)
-    return _added_up(sources, met, occupancy, False)
-
-
 def _check_barrier(role: str, occupancy: float) -> None:
     """Refuse what is no barrier that can be computed."""
     if role not in ROLES:
