@@ -15,7 +15,7 @@ from readiness.outputs.documents import RenderedDocument
 from readiness.outputs.frame import SAFETY, foot_words
 from readiness.outputs.frame import anchor as place
 from readiness.outputs.measurement_rows import measurement_rows
-from readiness.outputs.words import VERDICT_SENTENCES, chosen_row
+from readiness.outputs.words import VERDICT_SENTENCES, chosen_row, reason_words
 from readiness.resources import folder
 
 
@@ -72,6 +72,8 @@ def assessment_sheets(assessment: Assessment, rendered: Sequence[RenderedDocumen
         "chosen": chosen_row(assessment),
         "chosen_by": assessment.verdict.chosen_by,
         "arrangements": chief.arrangements(assessment),
+        "shared": chief.shared_by_all(assessment),
+        "why_chosen": _why_chosen(assessment),
         "not_listed": chief.arrangements_not_listed(assessment),
         "blocking": rows.gaps(assessment, blocking_only=True),
         "gaps": rows.gaps(assessment),
@@ -94,6 +96,11 @@ def assessment_sheets(assessment: Assessment, rendered: Sequence[RenderedDocumen
         "versions": assessment.versions,
     }
     return tuple(_sheet(*each, assessment, context) for each in SHEETS)
+
+
+def _why_chosen(assessment: Assessment) -> tuple[str, ...]:
+    chosen = chosen_row(assessment)
+    return reason_words(chosen, assessment.arrangements) if chosen else ()
 
 
 def cover_sheet(assessment: Assessment, unprintable: Sequence[str]) -> Sheet:

@@ -2,12 +2,23 @@
 
 from readiness.assessment.records import ArrangementRow, Assessment, Value, weakest
 from readiness.outputs.assessment_rows import short_item
-from readiness.outputs.words import chosen_row, finding_words, value_title, with_unit
+from readiness.outputs.words import (
+    chosen_row,
+    comparison_words,
+    finding_words,
+    short_titles,
+    value_title,
+    with_unit,
+)
 from readiness.quantities import Table
 
 MOST_ARRANGEMENTS = 3
-_MOST_FIGURES = 2
+_FIGURE_WORDS = {
+    "arrangement.farthest_when_cleared_cm": "farthest plane",
+    "arrangement.horizontal_uniformity_percent": "unevenness across",
+}
 _MOST_MOVERS = 3
+_MOST_RULES = 2
 FIGURES = (
     ("program.expected_patients_per_year",),
     ("program.sessions_per_year",),
@@ -27,19 +38,35 @@ FIGURES = (
 
 
 def arrangements(assessment: Assessment) -> tuple[tuple[str, str, str, str], ...]:
-    """Return the best arrangements: title, feasibility, what decides, figures."""
+    """Return the best arrangements: title, feasibility, what tells them apart, figures."""
+    _, titles = short_titles(assessment.arrangements)
     return tuple(
         (
-            row.title,
+            titles[row.item],
             row.feasibility,
-            finding_words(row.deciding[0]) if row.deciding else "",
+            _apart(row),
             "; ".join(
-                f"{value_title(name).lower()} {with_unit(name, value)} ({basis})"
-                for name, value, basis in row.figures[:_MOST_FIGURES]
+                f"{words} {with_unit(name, value)} ({basis})"
+                for name, value, basis in row.figures
+                if (words := _FIGURE_WORDS.get(name))
             ),
         )
         for row in _listed(assessment)
     )
+
+
+def _apart(row: ArrangementRow) -> str:
+    """Return what fails physically; of the others which rules that tell arrangements apart are not kept."""
+    if row.feasibility == "not feasible here" and row.deciding:
+        return finding_words(row.deciding[0])
+    words = "; ".join(comparison_words(row, _MOST_RULES))
+    return f"{words[:1].upper()}{words[1:]}." if words else "Keeps, or is expected to keep, all of them."
+
+
+def shared_by_all(assessment: Assessment) -> str:
+    """Return what all arrangements have in common, "" where there is only one."""
+    common, _ = short_titles(assessment.arrangements)
+    return common
 
 
 def arrangements_not_listed(assessment: Assessment) -> int:

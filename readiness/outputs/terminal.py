@@ -9,6 +9,7 @@ from readiness.outputs.words import (
     blocking,
     comparison_words,
     date_words,
+    reason_words,
     short_titles,
     with_unit,
 )
@@ -37,7 +38,8 @@ def _wrapped(text: str, width: int, indent: str = "", first: str = "") -> str:
 
 
 def _head(assessment: Assessment, width: int) -> str:
-    lines = [f"{assessment.program}, as of {assessment.as_of.isoformat()}, phase {assessment.phase}"]
+    head = f"{assessment.program}, as of {assessment.as_of.isoformat()}, phase {assessment.phase}"
+    lines = [_wrapped(head, width)]
     if assessment.invented:
         lines.append(_wrapped(INVENTED, width))
     lines += ["", _wrapped(f"VERDICT: {VERDICT_SENTENCES[assessment.verdict.words]}", width)]
@@ -61,10 +63,11 @@ def _arrangements(assessment: Assessment, width: int) -> str:
         heading += " after the one that the department chose"
     lines = [_wrapped(f"{heading}{f'; all: {common}' if common else ''}", width)]
     for row in shown:
-        lines += _arrangement(row, titles[row.item], width)
+        lines += _arrangement(row, titles[row.item], reason_words(row, rows), width)
     left = len(possible) - len([row for row in shown if row in possible])
     if left > 0:
-        lines.append(f"  {left} more are possible; the report page and assessment.json list them.")
+        words = f"{left} more are possible; the report page and assessment.json list them."
+        lines.append(_wrapped(words, width, "  "))
     return "\n".join(lines + _not_feasible(assessment, width))
 
 
@@ -84,7 +87,7 @@ def _not_feasible(assessment: Assessment, width: int) -> list[str]:
     return lines
 
 
-def _arrangement(row: ArrangementRow, title: str, width: int) -> list[str]:
+def _arrangement(row: ArrangementRow, title: str, reasons: tuple[str, ...], width: int) -> list[str]:
     mark = "*" if row.chosen else " "
     known = {name: (value, basis) for name, value, basis in row.figures}
     figures = "; ".join(
@@ -95,7 +98,7 @@ def _arrangement(row: ArrangementRow, title: str, width: int) -> list[str]:
     lines = [_wrapped(f"{title}: {row.feasibility}", width, "    ", f"{mark} ")]
     if figures:
         lines.append(_wrapped(figures, width, "    "))
-    said = row.reasons or comparison_words(row)
+    said = reasons or comparison_words(row)
     return lines + [_wrapped(words, width, "    ") for words in said]
 
 
@@ -111,7 +114,8 @@ def _blocking(assessment: Assessment, width: int) -> str:
     others = len(assessment.gaps) - len(gaps) - later
     if not assessment.gaps:
         return "No open gaps."
-    lines = [f"WHAT BLOCKS NOW ({len(gaps)} must-gaps due in this phase; {later} due later; {others} others)"]
+    counts = f"{len(gaps)} must-gaps due in this phase; {later} due later; {others} others"
+    lines = [_wrapped(f"WHAT BLOCKS NOW ({counts})", width)]
     lines += [_gap_line(gap, width) for gap in gaps[:_MOST]]
     if len(gaps) > _MOST:
         lines.append(f"  and {len(gaps) - _MOST} more in the gap list")
@@ -162,7 +166,7 @@ def _road(assessment: Assessment, width: int) -> str:
         late = schedule.working_days_late or 0
         text += f"; wanted {schedule.target.isoformat()}"
         text += f", {late} working days too late" if late > 0 else ", which the plan keeps"
-    lines = [text]
+    lines = [_wrapped(text, width)]
     titles = {task.id: task.title for task in schedule.tasks}
     for task, gain in schedule.movers[:3]:
         words = f"{titles.get(task, task)}: its time moves the date by up to {gain:g} working days"

@@ -1,6 +1,6 @@
 """How an assessment's pieces read on every output: one wording for terminal, page, workbook and binder."""
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 from datetime import date
 from typing import Any
 
@@ -69,14 +69,31 @@ def short_titles(rows: Iterable[ArrangementRow]) -> tuple[str, dict[Ref, str]]:
     }
 
 
-def comparison_words(row: ArrangementRow) -> tuple[str, ...]:
+def reason_words(row: ArrangementRow, rows: Sequence[ArrangementRow]) -> tuple[str, ...]:
+    """Return why an arrangement stands where it stands, the others named by what tells them apart."""
+    _, titles = short_titles(rows)
+    said = []
+    for reason in row.reasons:
+        for other in rows:
+            reason = reason.replace(other.title, titles[other.item])
+        said.append(reason)
+    return tuple(said)
+
+
+def comparison_words(row: ArrangementRow, most: int | None = None) -> tuple[str, ...]:
     """Return the rules that tell arrangements apart and that one does not keep, or has no answer to."""
     said = []
     if row.against:
-        said.append(f"does not keep, or is not expected to keep: {', '.join(row.against)}")
+        said.append(f"does not keep, or is not expected to keep: {_first_of(row.against, most)}")
     if row.unanswered:
-        said.append(f"has no answer yet to: {', '.join(row.unanswered)}")
+        said.append(f"has no answer yet to: {_first_of(row.unanswered, most)}")
     return tuple(said)
+
+
+def _first_of(rules: Sequence[str], most: int | None) -> str:
+    named = ", ".join(rules[:most])
+    left = len(rules) - len(rules[:most])
+    return f"{named} and {left} more" if left else named
 
 
 def blocking(assessment: Assessment) -> tuple[Gap, ...]:
