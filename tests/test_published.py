@@ -26,8 +26,8 @@ def test_published_value(case: dict[str, Any]) -> None:
     module, function = case["function"].split(":")
     calculation = getattr(importlib.import_module(f"readiness.calculations.{module}"), function)
     result = calculation(**{key: _tupled(value) for key, value in case["inputs"].items()})
-    if "attribute" in case:
-        result = getattr(result, case["attribute"])
+    for attribute in filter(None, case.get("attribute", "").split(".")):
+        result = getattr(result, attribute)
     (kind, amount), = case["tolerance"].items()
     allowed = {"absolute": amount, "relative": amount * abs(case["expected"])}[kind]
     assert abs(result - case["expected"]) <= allowed, f"expected {case['expected']}, got {result}"

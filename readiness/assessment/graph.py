@@ -48,8 +48,7 @@ class Graph(MeasurementSearch):
         share it.
         """
         self._memory = memory
-        super().__init__(program, made, catalogue)
-        self.as_of = as_of
+        super().__init__(program, made, catalogue, as_of)
         self._limits = limits
         self._known: dict[tuple[str, Ref], Got] = {}
         self._asked: dict[tuple[str, Ref], Got] = {}  # the same by who asks, so that owners are found once

@@ -1,6 +1,7 @@
 """What a calculation takes, gathered from the values of items: one, each of a list, or rows of a table."""
 
 from abc import abstractmethod
+from datetime import date
 from typing import Any
 
 from readiness.assessment.absence import unknown_list
@@ -15,10 +16,13 @@ from readiness.quantities import Table
 class InputGathering(ItemIndex):
     """Finds inputs with their bases, and the causes of those that cannot be had."""
 
-    def __init__(self, program: Program, made: tuple[Item, ...], catalogue: Catalogue) -> None:
-        """Take the program, the items that the assessment made, and what each value means."""
+    def __init__(
+        self, program: Program, made: tuple[Item, ...], catalogue: Catalogue, as_of: date
+    ) -> None:  # fmt: skip
+        """Take the program, the items that the assessment made, what each value means, and the day."""
         super().__init__(program, made, catalogue.kinds)
         self.catalogue = catalogue
+        self.as_of = as_of
         self._choices: dict[str, bool] = {}
         self._internal = {name for name, each in catalogue.definitions.items() if each.internal}
 

@@ -90,11 +90,13 @@ def required_header(kind: str) -> tuple[str, ...]:
     return tuple(key for key, field in measurement_kind(kind).header.items() if field.required)
 
 
-def void(measurement: Item, program: Program) -> str:
-    """Return why a measurement does not count at all, or "" if it does."""
+def void(measurement: Item, program: Program, as_of: date) -> str:
+    """Return why a measurement does not count at all on a day, or "" if it does."""
     done = measurement.get("date")
     if not isinstance(done, date):
         return "it has no date"
+    if done > as_of:
+        return f"it is dated {done}, later than {as_of}"
     instrument = program.find("instrument", measurement.owners.get("instrument", ""))
     if instrument is not None:
         reason = calibration_fault(instrument, program, done)

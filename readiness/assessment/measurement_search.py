@@ -22,7 +22,7 @@ class MeasurementSearch(InputGathering):
             if item.get("kind") != measured.kind:
                 continue
             reasons = list(disagreements(item, owners, ref, self.get, measured.ignores))
-            invalid = void(item, self.program)
+            invalid = void(item, self.program, self.as_of)
             if invalid:
                 reasons.append(invalid)
             done = item.get("date")

@@ -59,7 +59,7 @@ def _use(item: Item, why_not: tuple[str, ...], through: list[Value], graph: Grap
 
 def _why_not(item: Item, arrangement: Ref | None, graph: Graph) -> tuple[str, ...]:
     """Return every reason for which a file does not count for the arrangement or what belongs to it."""
-    found = [reason for reason in (void(item, graph.program),) if reason]
+    found = [reason for reason in (void(item, graph.program, graph.as_of),) if reason]
     if arrangement is not None:
         owners = graph.owners(arrangement)
         kind = measurement_kind(str(item.get("kind"))).attaches_to

@@ -67,7 +67,8 @@ def beam_behind_degrader(
         ValueError: If the thickness is negative or a material is missing.
         OutsideValidity: If the degrader stops the beam or its material is unknown.
 
-    Valid for: light materials and 3 to 10 MeV; energy within 0.10 MeV behind 1 cm of PMMA at 6 MeV.
+    Valid for: light materials and 3 to 10 MeV; energy within 0.10 MeV where the slab is less than half of the
+        range; where it is six tenths, 0.2 MeV too low, because the slow electrons are gone.
     Assumes: Fermi-Eyges angle in the slab with its own self-consistent cut, at most 0.6 rad.
     Source: eyges-1948, icru-35 (memory); ebert-1969 (memory) for the transmission; the cap is own-fit (fit).
     """

@@ -197,6 +197,16 @@ def test_a_measurement_with_an_expired_instrument_does_not_count() -> None:
     assert any("out of calibration on 2026-10-01" in cause.words for cause in causes)
 
 
+def test_a_measurement_of_a_day_to_come_does_not_count() -> None:
+    """Readings dated after the day of the assessment are none yet."""
+    of = _of_measurements(_measurement("one", date=date(2026, 12, 2)))
+    got = of.get("beam.foil_spread", Ref("beam", "m/e6"))  # type: ignore[attr-defined]
+    assert isinstance(got, Value)
+    assert "stated" == got.basis
+    causes = why_not_measured(of, "beam.foil_spread", Ref("beam", "m/e6"))  # type: ignore[attr-defined]
+    assert any("it is dated 2026-12-02, later than 2026-12-01" in cause.words for cause in causes)
+
+
 def test_a_measurement_older_than_a_change_does_not_count() -> None:
     """The room changed after the measurement, so that the claim stays."""
     got = _of_measurements(_measurement("one", date=date(2024, 1, 1))).get(  # type: ignore[attr-defined]

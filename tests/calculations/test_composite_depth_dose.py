@@ -15,27 +15,12 @@ from readiness.calculations.degrader_choice import (
     depth_rules_in_words,
     pmma_equivalent_cm,
 )
-from readiness.calculations.published_tables import published_table
 from readiness.errors import OutsideValidity
-
-ROWS = list(published_table("composite_depth_dose").records())
 
 
 def found(energy: float, pmma: float) -> CompositeDepthDose:
     """Return the depth dose."""
     return composite_depth_dose(energy_at_source_mev=energy, pmma_cm=pmma)
-
-
-@pytest.mark.parametrize("row", ROWS, ids=lambda row: f"{row['energy_at_source_mev']} MeV {row['pmma_cm']} cm")
-def test_rows_of_the_table_are_reproduced(row: dict[str, float]) -> None:
-    """At the energies and thicknesses of the table its own numbers are given."""
-    one = found(row["energy_at_source_mev"], row["pmma_cm"])
-    assert one.r80_mm.value == pytest.approx(row["r80_mm"])
-    assert one.dose_at_4_mm_percent.value == pytest.approx(100 * row["dose_at_4_mm"])
-    assert one.dose_at_10_mm_percent.value == pytest.approx(100 * row["dose_at_10_mm"])
-    assert one.dose_at_20_mm_percent.value == pytest.approx(100 * row["dose_at_20_mm"], abs=1e-9)
-    assert one.b_factor.value == pytest.approx(row["b_factor"])
-    assert (one.energy_at_plane_mev, one.r50_at_plane_cm) == pytest.approx((row["energy_at_plane_mev"], row["slab_r50_cm"]))
 
 
 def test_row_left_out_is_found_between_the_others() -> None:

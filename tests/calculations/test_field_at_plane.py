@@ -38,6 +38,20 @@ def test_doses_are_one_at_mid_height() -> None:
         assert dual(mid_height)[20] == pytest.approx(1.0)
 
 
+def test_ten_centimetres_off_the_axis_are_harmless_and_twenty_five_are_not() -> None:
+    """At 400 cm and 16 degrees patients 10 cm off the axis keep 8 % of mid-height over +-80 cm, 25 cm off do not."""
+    judged = np.abs(HEIGHTS) <= 80
+
+    def departure(mid_height: float) -> float:
+        """Return the largest departure from mid-height in per cent."""
+        return float(100 * np.max(np.abs(dual(mid_height)[judged] - 1)))
+
+    assert departure(10.0) < 5
+    assert departure(-10.0) < 5
+    assert departure(25.0) > 8
+    assert departure(-25.0) > 8
+
+
 def test_mid_height_above_the_isocentre_starves_the_head() -> None:
     """A patient who stands 10 cm too high gets less at the head than at the feet, and the mirror image if too low."""
     high = dual(10.0)

@@ -117,6 +117,14 @@ ASKED = {
     },
 }
 
+PLAN = "[{id: p, room: vault-a, plane_distance_cm: 400, tilt_deg: 18}]"
+ASKED |= {
+    "goes into the floor at 400 cm and 18°, 2.476 cm below it": {"rooms": room(isocentre_height_cm=95), "program": program(plans=PLAN)},
+    "goes into the ceiling at 400 cm and 18°, 17.48 cm above it": {
+        "rooms": room(isocentre_height_cm=150, ceiling_height_cm=230), "program": program(plans=PLAN)
+    },
+}
+
 REFUSED = {
     "corner 2 is written twice in a row": {"rooms": room(floor_polygon_cm="[[-9, -300], [300, -300], [300, -300], [0, 300]]")},
     "the corners lie on one line": {"rooms": room(floor_polygon_cm="[[-300, 0], [0, 0], [300, 0]]")},
