@@ -5,6 +5,7 @@ from dataclasses import dataclass
 from readiness.assessment.records import Assessment, MeasurementUse
 from readiness.outputs.words import value_title
 
+_IN_SWEEP, _POINTS = "_in_sweep", "measured "  # a value and its points as the sweep has them
 NOTHING_ASKED = "Counts; no value that is worked out here takes it."
 
 
@@ -35,8 +36,8 @@ def measurement_rows(assessment: Assessment) -> tuple[MeasurementRow, ...]:
 
 def _use(measurement: MeasurementUse) -> str:
     if measurement.gives:
-        titles = dict.fromkeys(value_title(name).lower() for name in measurement.gives)
-        return f"Gives {', '.join(titles)}."
+        titles = dict.fromkeys(value_title(name.replace(_IN_SWEEP, "")).lower() for name in measurement.gives)
+        return f"Gives {', '.join(title for title in titles if not title.startswith(_POINTS))}."
     if measurement.why_not:
         return f"Does not count here: {'; '.join(measurement.why_not)}."
     return NOTHING_ASKED
