@@ -5,7 +5,6 @@ from datetime import date
 from typing import Any, NamedTuple
 
 from readiness.errors import Place
-from readiness.quantities import Table
 
 BASES = ("measured", "stated", "predicted", "assumed")  # from the strongest to the weakest
 STRENGTHS = ("must", "should", "consider")
@@ -364,8 +363,3 @@ class Assessment:
 def weakest(bases: list[str]) -> str:
     """Return the weakest of some bases; nothing at all counts as stated."""
     return max(bases, key=BASES.index) if bases else "stated"
-
-
-def is_table(value: Any) -> bool:
-    """Return whether a value is a table."""
-    return isinstance(value, Table)

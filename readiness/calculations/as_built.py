@@ -85,30 +85,6 @@ def compare_as_built(
     )
 
 
-def compare_shield_thickness(
-    *, chosen_thickness_mm: float | None, found_thickness_mm: Sequence[float], thickness_tolerance_mm: float
-) -> AsBuilt:
-    """
-    Return whether the thickness found of a patient shield agrees with the chosen one.
-
-    Args:
-        chosen_thickness_mm: Chosen thickness of metal, None if none was chosen. [mm]
-        found_thickness_mm: Thicknesses found. [mm]
-        thickness_tolerance_mm: Largest difference that still agrees. [mm]
-
-    Returns:
-        One row, and whether it agrees.
-
-    Raises:
-        ValueError: If the tolerance is not more than 0.
-
-    Valid for: one shield.
-    Assumes: every determination must agree, not only their mean.
-    Source: practice; 0.2 mm is this tool's own tolerance.
-    """
-    return _compared(("thickness", "mm", chosen_thickness_mm, found_thickness_mm, thickness_tolerance_mm))
-
-
 def _compared(*numbers: _Number) -> AsBuilt:
     """Return the comparison of several numbers."""
     if any(not number[-1] > 0 for number in numbers):

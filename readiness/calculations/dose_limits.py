@@ -53,37 +53,6 @@ def goal_margin(
     return GoalMargin(share, share <= 1.0, share > survey_margin_ratio)
 
 
-def sessions_in_any_hour(
-    *, session_room_min: float, session_beam_min: float, sessions_per_day: float
-) -> float:
-    """
-    Return how much beam of how many sessions can fall within any 60 consecutive minutes.
-
-    n = whole turns of the room in 60 min + min(1, rest/beam time): at 40 min each, two fall in one hour
-
-    Args:
-        session_room_min: From one session's start to the next one's. [min]
-        session_beam_min: From first to last beam of a session. [min]
-        sessions_per_day: Most sessions of a day. [per day]
-
-    Returns:
-        Sessions, with a fraction where the last one is cut by the hour. [1]
-
-    Raises:
-        ValueError: If a time is not above zero, the beam longer than the room time, or sessions below zero.
-
-    Assumes: dose spread evenly from first to last beam; sessions back to back.
-    Source: derived.
-    """
-    if not 0.0 < session_beam_min <= session_room_min:
-        raise ValueError("the beam time of a session lies above zero and within its time in the room")
-    if not sessions_per_day >= 0.0:
-        raise ValueError(f"sessions of a day must not be below zero, not {sessions_per_day:g}")
-    whole = 60.0 // session_room_min
-    rest = 60.0 - whole * session_room_min
-    return min(sessions_per_day, whole + min(1.0, rest / session_beam_min))
-
-
 def any_hour_dose(
     *,
     before_rate_usv_per_week: float,
@@ -168,30 +137,6 @@ def annual_dose_msv(
     if cycles_per_year is None:
         return (before + WEEKS_A_YEAR * added_usv_per_week) / 1e3
     return (before + added_usv_per_week / cycles_per_week * cycles_per_year) / 1e3
-
-
-def xray_rate_at_1_m(*, per_cycle_gy_m2: float, cycle_mu: float, rate_mu_per_min: float) -> float:
-    """
-    Return the x-ray dose rate at 1 m of one tilted field, as an upper bound.
-
-    D0 = W_x / (MU/2) x MU per minute x 60, as if all x rays of a spot came while its own field is on
-
-    Args:
-        per_cycle_gy_m2: X rays at 1 m per spot and cycle, W_x. [Gy m²]
-        cycle_mu: All MU of a cycle, both beams of all dual fields. [MU]
-        rate_mu_per_min: Of the mode. [MU/min]
-
-    Returns:
-        Dose rate at 1 m, D0. [Gy m²/h]
-
-    Raises:
-        ValueError: If MU or their rate are not above zero, or the workload below zero.
-
-    Source: derived.
-    """
-    if not (cycle_mu > 0.0 and rate_mu_per_min > 0.0 and per_cycle_gy_m2 >= 0.0):
-        raise ValueError("MU and their rate must be above zero and the workload not below it")
-    return per_cycle_gy_m2 / (cycle_mu / 2.0) * rate_mu_per_min * 60.0
 
 
 def week_of_tests_usv(

@@ -1,7 +1,6 @@
 """What the electrons ask of a barrier: a first layer of low atomic number, and a remark on neutrons."""
 
 from dataclasses import dataclass
-from math import isfinite
 
 from readiness.calculations.tenth_value_layers import material_named
 from readiness.errors import OutsideValidity
@@ -46,31 +45,6 @@ def first_layer(*, layers: Table) -> FirstLayer:
             break
         low += 0.0 if thickness is None or isinstance(thickness, str) else float(thickness)
     return FirstLayer(materials[0], material_named(material=materials[0]).low_atomic_number, low)
-
-
-def radiation_yield(*, energy_mev: float, atomic_number: float) -> float:
-    """
-    Return the part of the energy of stopped electrons that becomes x rays.
-
-    Y = 6e-4 Z T / (1 + 6e-4 Z T)
-
-    Args:
-        energy_mev: Kinetic energy of the electrons, T. [MeV]
-        atomic_number: Of the stopping material, Z. [1]
-
-    Returns:
-        Radiation yield Y. [1]
-
-    Raises:
-        ValueError: If energy or atomic number is not above zero.
-
-    Valid for: thick targets, 1 to 50 MeV.
-    Source: attix-1986 (memory).
-    """
-    if not (isfinite(energy_mev) and energy_mev > 0.0 and atomic_number > 0.0):
-        raise ValueError("energy and atomic number must be above zero")
-    product = YIELD_COEFFICIENT * atomic_number * energy_mev
-    return product / (1.0 + product)
 
 
 def needs_neutron_remark(*, energy_mev: float) -> bool:

@@ -5,7 +5,6 @@ Heights of a single field count from the isocentre; those of a dual field from t
 rarely stands exactly at the isocentre. Doses are relative to the centre of the profile or map.
 """
 
-from collections.abc import Callable
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
@@ -181,42 +180,3 @@ def map_table(*, heights_cm: ArrayLike, across_cm: ArrayLike, doses: ArrayLike) 
         for j, beside in enumerate(across)
     ]
     return Table.of(["height_cm", "across_cm", "relative_dose"], rows)
-
-
-def single_field_model(
-    *, setup: FieldSetup, plane_distance_cm: float, direction: str
-) -> Callable[[Array, float], Array]:
-    """
-    Return the single field at normal incidence as a function of positions and foil spread, for a fit.
-
-    Args:
-        setup: The beam and the room, from field_setup; its foil spread is not used.
-        plane_distance_cm: From the nominal source to the plane. [cm]
-        direction: vertical or horizontal.
-
-    Returns:
-        A function of positions from the axis in cm and the foil spread that gives doses relative to the axis.
-
-    Raises:
-        ValueError: If the direction is neither.
-
-    Valid for: 4 to 12 MeV and 300 to 500 cm: within 0.04 of the centre up to 100 cm from the axis.
-    Assumes: see single_field_doses; lines through the axis.
-    Source: own-fit (fit) to own-monte-carlo on the moments of eyges-1948.
-    """
-    if direction not in ("vertical", "horizontal"):
-        raise ValueError(f"a profile is vertical or horizontal, not {direction!r}")
-    level, middle = np.array([0.0]), np.array([0.0])
-
-    def model(positions_cm: Array, foil_spread: float) -> Array:
-        """Return doses relative to the axis."""
-        spread = setup.but(foil_spread=foil_spread)
-        wanted = np.concatenate([[0.0], np.asarray(positions_cm, dtype=float)])
-        if direction == "vertical":
-            doses = tilted_fields(spread, level, plane_distance_cm, wanted, middle)[0, :, 0]
-        else:
-            doses = tilted_fields(spread, level, plane_distance_cm, level, wanted)[0, 0, :]
-        result: Array = doses[1:] / doses[0]
-        return result
-
-    return model

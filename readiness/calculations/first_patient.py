@@ -183,35 +183,6 @@ def tasks_before_first_patient(*, tasks: Sequence[Task]) -> tuple[Task, ...]:
     return tuple(task for task in tasks if task.phase != OPERATE)
 
 
-def road_table(*, road: Road) -> Table:
-    """
-    Return the road as a table with dates in words (2027-05-17).
-
-    Args:
-        road: The road.
-
-    Returns:
-        One row per task, in the order of the plan; the columns of SCHEDULE.
-
-    Raises:
-        ValueError: Never.
-
-    Valid for: any road.
-    Assumes: nothing.
-    Source: definition (derived).
-    """
-    rows: list[tuple[Scalar, ...]] = []
-    for row in road.tasks:
-        days = (row.start, row.finish, row.latest_start, row.latest_finish)
-        dates = (None if day is None else day.isoformat() for day in days)
-        task = row.task
-        rows.append((
-            task.id, task.title, task.owner, task.phase, row.state, *dates, row.float_working_days,
-            row.critical,
-        ))  # fmt: skip
-    return Table.of(SCHEDULE, rows)
-
-
 def phase_weeks(*, road: Road) -> Table:
     """
     Return how long each phase of the road lasts, from the start of its first task to the end of its last.

@@ -145,29 +145,6 @@ def rotating_mu(
     return _record(stated, pair, mu_share_upper, 1, sessions_per_cycle)
 
 
-def second_check_difference(*, first_mu: float, second_mu: float) -> float:
-    """
-    Return how far the second person's monitor units lie from the first's.
-
-    Args:
-        first_mu: Monitor units of the first calculation. [MU]
-        second_mu: Monitor units of the second, from another detector's data by another person. [MU]
-
-    Returns:
-        Second over first, less one; negative when the second is lower. [%]
-
-    Raises:
-        ValueError: If either is not more than 0.
-
-    Valid for: the same prescription, technique and pair convention.
-    Assumes: that the two calculations share no factor.
-    Source: mppg-11a (memory) for the need; the difference is a definition (derived).
-    """
-    if not first_mu > 0 or not second_mu > 0:
-        raise ValueError(f"monitor units are more than 0, not {first_mu} and {second_mu}")
-    return 100 * (second_mu / first_mu - 1)
-
-
 def beam_against_limit(*, largest_beam_mu: float, mode_limit_mu: float) -> BeamLimit:
     """
     Return how the largest beam stands against the highest number of MU that the mode allows in one beam.

@@ -4,7 +4,7 @@ from collections.abc import Iterator, Sequence
 from datetime import date, timedelta
 
 from readiness.calculations.first_patient import FINISHED, Road, ScheduledTask
-from readiness.calculations.levelling import CAPACITY, WORK
+from readiness.calculations.levelling import WORK
 from readiness.calculations.task_network import Task
 from readiness.calculations.working_days import WorkingDays
 from readiness.quantities import Scalar, Table
@@ -41,37 +41,6 @@ def work_of_phase(*, tasks: Sequence[Task], phase: str, hours: Table) -> Table:
         total = float(entry["work_h"] or 0.0)
         rows += [(task.id, entry["who"], total * task.working_days / days) for task in members]
     return Table.of(WORK, rows)
-
-
-def daily_capacity(*, people: Table, hours_per_fte_h: float, working_days_per_year: float) -> Table:
-    """
-    Return the hours that each profession has for the program in a working day.
-
-    h = FTE * hours per FTE and year / working days a year
-
-    Args:
-        people: Who there is; columns of staff_hours.PEOPLE. People without a stated time add nothing.
-        hours_per_fte_h: Hours that one full-time person works in a year. [h]
-        working_days_per_year: Days on which the department works. [per year]
-
-    Returns:
-        Hours a day by profession; columns of levelling.CAPACITY.
-
-    Raises:
-        ValueError: If hours or days of a year are not positive.
-
-    Valid for: time that is spread evenly over the year.
-    Assumes: that everybody listed works in the project, qualified for treatments or not.
-    Source: definition (derived).
-    """
-    if hours_per_fte_h <= 0 or working_days_per_year <= 0:
-        raise ValueError("a year has working hours and working days")
-    sums: dict[str, float] = {}
-    for row in people.records():
-        name = str(row["profession"])
-        sums[name] = sums.get(name, 0.0) + float(row["fte"] or 0.0)
-    each = hours_per_fte_h / working_days_per_year
-    return Table.of(CAPACITY, [(name, fte * each) for name, fte in sums.items()])
 
 
 def hours_by_week(*, road: Road, work: Table, capacity: Table, calendar: WorkingDays, as_of: date) -> Table:

@@ -29,23 +29,6 @@ def published_table(name: str) -> Table:
     return Table.of(stored["columns"], stored["rows"])
 
 
-@cache
-def origin_of_table(name: str) -> str:
-    """
-    Return where a table comes from and how its numbers are known, in words for a printed record.
-
-    Args:
-        name: Of its file under schemas/tables, without the ending.
-
-    Returns:
-        Source, place in it, and how it is known.
-
-    Source: each file names its own.
-    """
-    stored = yaml.safe_load(schema_file("tables", f"{name}.yaml").read_text(encoding="utf-8"))
-    return f"{stored['source']}, {stored['at']} ({stored['known']})"
-
-
 def interpolated(*, at: float, known_at: Sequence[float], values: Sequence[float], words: str) -> float:
     """
     Return a value between the rows of a table, on the straight line between its two neighbours.

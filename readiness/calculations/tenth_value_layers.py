@@ -118,28 +118,6 @@ def scatter_fraction(*, energy_mv: float, angle_deg: float) -> float:
     return _over_energy_and_angle("scatter_fractions", "scatter_fraction", max(6.0, energy_mv), angle_deg)
 
 
-def occupancy_suggested(*, area: str) -> float:
-    """
-    Return the suggested occupancy factor of an area.
-
-    Args:
-        area: Such as ``office``, ``corridor`` or ``storage``.
-
-    Returns:
-        Occupancy factor T. [1]
-
-    Raises:
-        OutsideValidity: If the table has no such area.
-
-    Source: ncrp-151, Table B.1 (memory; rows seen quoted are marked in the table).
-    """
-    table = published_table("occupancy_factors")
-    known = dict(zip(table.column("area"), table.column("occupancy"), strict=True))
-    if area not in known:
-        raise OutsideValidity(f"no occupancy factor is suggested for {area!r}")
-    return float(cast(float, known[area]))
-
-
 @cache
 def _materials() -> dict[str, Material]:
     """Return the materials by name, in the order of the table."""

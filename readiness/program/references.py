@@ -1,12 +1,12 @@
 """What is named must exist, and nothing may be named twice."""
 
-from collections.abc import Collection, Iterable, Mapping
+from collections.abc import Collection, Iterable
 
 from readiness.errors import Place, Problem
 from readiness.program.entries import Use
 from readiness.program.field_schema import PROGRAM
 from readiness.program.fields import Schemas
-from readiness.program.items import Item, Program
+from readiness.program.items import Item
 from readiness.program.wording import near_miss, shown
 
 EVIDENCE = "evidence/"
@@ -69,22 +69,6 @@ def _is_complete(use: Use, known_lists: Collection[tuple[str, str]], schemas: Sc
     if not owner and described is not None and described.owner != PROGRAM:  # its owner is not named
         return any(kind == use.kind for kind, _ in known_lists)
     return (use.kind, owner or PROGRAM) in known_lists
-
-
-def owner_closure(program: Program, item: Item) -> Mapping[str, str]:
-    """Return kind -> id of everything that an item belongs to, also through others, nearest first."""
-    found: dict[str, str] = {}
-    waiting = list(item.owners.items())
-    while waiting:
-        kind, item_id = waiting.pop(0)
-        if kind not in found:
-            found[kind] = item_id
-            owner = program.find(kind, item_id)
-            waiting.extend(owner.owners.items() if owner is not None else ())
-    if item.kind != PROGRAM:
-        found.pop(PROGRAM, None)
-        found[PROGRAM] = PROGRAM
-    return found
 
 
 def _not_there(use: Use, known: list[str], schemas: Schemas) -> str:

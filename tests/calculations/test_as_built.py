@@ -2,7 +2,7 @@
 
 import pytest
 
-from readiness.calculations.as_built import AsBuilt, compare_as_built, compare_shield_thickness
+from readiness.calculations.as_built import AsBuilt, compare_as_built
 
 CHOSEN = {"plane_distance_cm": 400.0, "degrader_gap_cm": 45.0, "tilt_deg": 16.0, "degrader_thickness_mm": 6.0}
 
@@ -70,18 +70,3 @@ def test_another_unit_is_suspected() -> None:
     """A thickness in centimetres under millimetres is suspected to be so."""
     assert any("0.1 times the chosen one" in said for said in compared(degrader_thickness_mm=[0.6]).remarks)
     assert any("10 times the chosen one" in said for said in compared(plane_distance_cm=[4000.0]).remarks)
-
-
-def test_shield_is_compared_by_itself() -> None:
-    """A shield of 3.9 mm agrees with 4 mm, one of 3.7 mm does not."""
-    for found, agrees in ((3.9, True), (3.7, False)):
-        result = compare_shield_thickness(
-            chosen_thickness_mm=4.0, found_thickness_mm=[found], thickness_tolerance_mm=0.2
-        )
-        assert result.agrees is agrees
-
-
-def test_tolerance_of_zero_is_impossible() -> None:
-    """Nothing agrees within a tolerance of 0."""
-    with pytest.raises(ValueError, match="a tolerance is more than 0"):
-        compare_shield_thickness(chosen_thickness_mm=4, found_thickness_mm=[4], thickness_tolerance_mm=0)

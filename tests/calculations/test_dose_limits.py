@@ -6,8 +6,6 @@ from readiness.calculations.dose_limits import (
     annual_dose_msv,
     any_hour_dose,
     goal_margin,
-    sessions_in_any_hour,
-    xray_rate_at_1_m,
 )
 
 HOUR = {
@@ -30,29 +28,6 @@ def test_goal_and_factor_of_four(dose, within, named):
     margin = goal_margin(dose_usv_per_week=dose, design_goal_msv_per_week=0.02, survey_margin_ratio=0.25)
     assert (within, named) == (margin.within_goal, margin.margin_is_small)
     assert dose / 20.0 == pytest.approx(margin.share_of_goal)
-
-
-@pytest.mark.parametrize(
-    ("expected", "room", "beam"), [(1.0, 60, 20), (2.0, 40, 10), (1.5, 50, 20), (2.0, 30, 15), (1.0, 90, 30)]
-)
-def test_any_sixty_minutes(expected, room, beam):
-    """Sessions of 40 minutes put two beams into one hour; sessions of 60 only one."""
-    found = sessions_in_any_hour(session_room_min=room, session_beam_min=beam, sessions_per_day=8.0)
-    assert expected == pytest.approx(found)
-
-
-def test_sixty_minutes_agree_with_a_sliding_window():
-    """The formula is what a window of 60 minutes slid over the day finds at most, minute by minute."""
-    for room, beam in ((40, 10), (50, 20), (25, 25), (33, 7), (70, 65)):
-        on = [minute % room < beam for minute in range(24 * 60)]
-        most = max(sum(on[start : start + 60]) for start in range(len(on) - 60)) / beam
-        found = sessions_in_any_hour(session_room_min=room, session_beam_min=beam, sessions_per_day=99.0)
-        assert most == pytest.approx(found)
-
-
-def test_no_more_sessions_than_the_day_has():
-    """One session a day is one in any hour."""
-    assert 1.0 == sessions_in_any_hour(session_room_min=20.0, session_beam_min=10.0, sessions_per_day=1.0)
 
 
 def test_hour_filled_with_sessions():
@@ -86,13 +61,6 @@ def test_year():
     assert 0.1 + 108 * 2e-3 == pytest.approx(annual_dose_msv(**year, cycles_per_year=108.0))
 
 
-def test_rate_while_the_beam_is_on():
-    """0.5 Gy m2 in 10,000 MU at 2,000 MU a minute last 5 minutes: 6 Gy m2 an hour."""
-    assert 6.0 == pytest.approx(
-        xray_rate_at_1_m(per_cycle_gy_m2=0.5, cycle_mu=20000.0, rate_mu_per_min=2000.0)
-    )
-
-
 @pytest.mark.parametrize(
     ("name", "number"),
     [
@@ -109,16 +77,10 @@ def test_impossible_hours(name, number):
 
 
 def test_impossible_others():
-    """A beam longer than its session, a goal of zero, a year below zero and a still beam are refused."""
-    with pytest.raises(ValueError, match="beam time"):
-        sessions_in_any_hour(session_room_min=10.0, session_beam_min=20.0, sessions_per_day=1.0)
-    with pytest.raises(ValueError, match="sessions of a day"):
-        sessions_in_any_hour(session_room_min=10.0, session_beam_min=5.0, sessions_per_day=-1.0)
+    """A goal of zero and a year below zero are refused."""
     with pytest.raises(ValueError, match="design goal"):
         goal_margin(dose_usv_per_week=1.0, design_goal_msv_per_week=0.0, survey_margin_ratio=0.25)
     with pytest.raises(ValueError, match="below zero"):
         annual_dose_msv(
             before_usv_per_week=-1.0, added_usv_per_week=0.0, cycles_per_week=1.0, cycles_per_year=None
         )
-    with pytest.raises(ValueError, match="above zero"):
-        xray_rate_at_1_m(per_cycle_gy_m2=1.0, cycle_mu=0.0, rate_mu_per_min=2000.0)

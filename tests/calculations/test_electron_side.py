@@ -2,7 +2,7 @@
 
 import pytest
 
-from readiness.calculations.electron_side import first_layer, needs_neutron_remark, radiation_yield
+from readiness.calculations.electron_side import first_layer, needs_neutron_remark
 from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
@@ -21,17 +21,6 @@ def test_lead_first():
     assert ("lead", False, 0.0) == (found.material, found.low_atomic_number, found.low_atomic_number_cm)
 
 
-@pytest.mark.parametrize(("expected", "atomic_number"), [(0.045, 13), (0.086, 26), (0.228, 82)])
-def test_radiation_yield_of_6_mev(expected, atomic_number):
-    """6 MeV give 4.5 % of x rays in aluminium, 8.6 % in iron, 22.8 % in lead."""
-    assert expected == pytest.approx(radiation_yield(energy_mev=6.0, atomic_number=atomic_number), abs=0.0006)
-
-
-def test_yield_is_never_all():
-    """However high energy and atomic number, the yield stays below one."""
-    assert radiation_yield(energy_mev=1e6, atomic_number=92) < 1.0
-
-
 @pytest.mark.parametrize(("expected", "energy"), [(False, 6.0), (False, 9.0), (True, 10.0), (True, 12.0)])
 def test_neutron_remark(expected, energy):
     """Neutrons are ignored at 4 to 9 MeV and remarked on from 10 MeV."""
@@ -39,10 +28,8 @@ def test_neutron_remark(expected, energy):
 
 
 def test_refusals():
-    """No layers, no energy and no atomic number are refused."""
+    """No layers and no energy are refused."""
     with pytest.raises(OutsideValidity, match="no layers"):
         first_layer(layers=Table.of(COLUMNS, ()))
-    with pytest.raises(ValueError, match="above zero"):
-        radiation_yield(energy_mev=0.0, atomic_number=82)
     with pytest.raises(ValueError, match="above zero"):
         needs_neutron_remark(energy_mev=0.0)

@@ -10,7 +10,6 @@ from readiness.calculations.field_at_plane import (
     map_table,
     profile_table,
     single_field_doses,
-    single_field_model,
 )
 from readiness.calculations.plane_uniformity import uniformity_of_plane
 from readiness.errors import OutsideValidity
@@ -77,23 +76,6 @@ def test_field_aimed_down_is_the_mirror_image() -> None:
     )
     assert down == pytest.approx(up[::-1])
     assert up[-1] > up[0]
-
-
-def test_model_for_a_fit_follows_the_foil_spread() -> None:
-    """The function for the fit gives the single field, wider for wider foils, one at the axis, both ways alike."""
-    model = single_field_model(setup=common_setup(), plane_distance_cm=400.0, direction="vertical")
-    across = single_field_model(setup=common_setup(), plane_distance_cm=400.0, direction="horizontal")
-    single = single_field_doses(setup=common_setup(), plane_distance_cm=400.0, tilt_deg=0.0, heights_cm=HEIGHTS)
-    assert model(HEIGHTS, 0.20) == pytest.approx(single)
-    assert model(np.array([0.0]), 0.17)[0] == pytest.approx(1)
-    assert model(np.array([90.0]), 0.25)[0] > model(np.array([90.0]), 0.15)[0] + 0.04
-    assert across(np.array([60.0]), 0.2)[0] == pytest.approx(model(np.array([60.0]), 0.2)[0], abs=0.02)
-
-
-def test_direction_of_a_profile_is_vertical_or_horizontal() -> None:
-    """Another word is refused."""
-    with pytest.raises(ValueError, match="vertical or horizontal, not 'sideways'"):
-        single_field_model(setup=common_setup(), plane_distance_cm=400.0, direction="sideways")
 
 
 @pytest.mark.parametrize(("tilts", "share", "words"), [((16.0, -16.0), 0.5, "positive angles"), ((16.0, 16.0), 1.0, "between 0 and 1")])

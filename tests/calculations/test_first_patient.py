@@ -8,7 +8,6 @@ from sample_networks import random_network, sample
 
 from readiness.calculations.first_patient import (
     phase_weeks,
-    road_table,
     road_to_first_patient,
     tasks_before_first_patient,
     what_moves_first_patient,
@@ -152,15 +151,6 @@ def test_what_is_finished_moves_nothing():
     )
     assert "approve" not in table.column("task")
     assert table.column("task")[0] == "buy-stand"
-
-
-def test_schedule_as_a_table_has_dates_in_words():
-    """Dates are written year, month, day; blanks stay blanks."""
-    done = [Progress("order", None, AS_OF - timedelta(1))]
-    table = road_table(road=road_to_first_patient(tasks=SMALL, **PLAN | {"progress": done}))
-    order, install, _ = table.records()
-    assert (order["start"], order["finish"], order["latest_finish"]) == (None, "2026-11-30", None)
-    assert (install["start"], install["state"]) == ("2026-12-01", "to do")
 
 
 def test_phases_last_from_their_first_to_their_last_day():

@@ -11,7 +11,6 @@ from readiness.calculations.monitor_units import (
     dual_field_mu,
     output_plausibility,
     rotating_mu,
-    second_check_difference,
 )
 from readiness.errors import OutsideValidity
 
@@ -130,12 +129,6 @@ def test_output_far_from_the_prediction(output: float, convention: str, agrees: 
     assert suggestion in found.suggestion
 
 
-def test_second_check_difference_has_a_sign() -> None:
-    """A second result two per cent lower is -2 %; equal results are 0."""
-    assert -2.0 == pytest.approx(second_check_difference(first_mu=1900.0, second_mu=1862.0))
-    assert second_check_difference(first_mu=1900.0, second_mu=1900.0) == 0
-
-
 @pytest.mark.parametrize(
     ("changes", "error", "message"),
     [
@@ -169,7 +162,6 @@ def test_sessions_that_do_not_share_six_positions() -> None:
     ("call", "arguments"),
     [
         (beam_against_limit, {"largest_beam_mu": 1.0, "mode_limit_mu": 0.0}),
-        (second_check_difference, {"first_mu": 0.0, "second_mu": 1.0}),
         (rotating_factor, {"b_factor": -1.0}),
         (
             output_plausibility,

@@ -6,8 +6,7 @@ import pytest
 
 from readiness.calculations.first_patient import road_to_first_patient
 from readiness.calculations.levelling import CAPACITY, WORK
-from readiness.calculations.project_hours import daily_capacity, hours_by_week, work_of_phase
-from readiness.calculations.staff_hours import PEOPLE as STAFF
+from readiness.calculations.project_hours import hours_by_week, work_of_phase
 from readiness.calculations.task_network import Task
 from readiness.calculations.task_progress import Progress
 from readiness.calculations.working_days import working_days
@@ -86,16 +85,6 @@ def test_hours_of_a_phase_without_tasks_are_refused():
     """Hours cannot be laid on a phase that takes no time."""
     with pytest.raises(ValueError, match="'build' has no task that takes time"):
         work_of_phase(tasks=TASKS, phase="build", hours=Table.of(("who", "work_h"), [("physicist", 1)]))
-
-
-def test_capacity_of_a_day():
-    """0.15 FTE of 1,650 h in 250 days are 0.99 h a day, trained or not; a blank adds nothing."""
-    staff = Table.of(STAFF, [("P1", "physicist", 0.10, True), ("P2", "physicist", 0.05, False),
-                             ("N1", "nurse", None, True)])  # fmt: skip
-    found = dict(daily_capacity(people=staff, hours_per_fte_h=1650, working_days_per_year=250).rows)
-    assert found == {"physicist": pytest.approx(0.99), "nurse": 0}
-    with pytest.raises(ValueError, match="working hours and working days"):
-        daily_capacity(people=staff, hours_per_fte_h=1650, working_days_per_year=0)
 
 
 def test_impossible_work_is_refused():

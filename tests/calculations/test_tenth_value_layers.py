@@ -3,10 +3,9 @@
 import pytest
 import yaml
 
-from readiness.calculations.published_tables import interpolated, origin_of_table, published_table
+from readiness.calculations.published_tables import interpolated, published_table
 from readiness.calculations.tenth_value_layers import (
     material_named,
-    occupancy_suggested,
     scatter_fraction,
     tenth_value_layers,
 )
@@ -129,13 +128,6 @@ def test_scatter_fraction_outside():
             scatter_fraction(energy_mv=energy, angle_deg=angle)
 
 
-def test_occupancy():
-    """A corridor counts a fifth, and an unknown area nothing."""
-    assert 0.2 == occupancy_suggested(area="corridor")
-    with pytest.raises(OutsideValidity, match="no occupancy factor"):
-        occupancy_suggested(area="garden")
-
-
 def test_atomic_numbers():
     """Steel and lead are not of low atomic number, the concretes and earth are."""
     low = {name: material_named(material=name).low_atomic_number for name in ("concrete", "earth", "steel")}
@@ -151,7 +143,6 @@ def test_each_table_says_where_it_comes_from(name):
     assert stored["source"] in sources
     assert stored["title"]
     assert stored["at"]
-    assert "(memory)" in origin_of_table(name)
     for row in published_table(name).records():
         assert row.get("known", "memory") in {"read", "memory"}
         if row.get("seen_in") is not None:

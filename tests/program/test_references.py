@@ -2,8 +2,6 @@
 
 from folder_texts import problems, read, room
 
-from readiness.program.references import owner_closure
-
 MACHINE = "machines:\n  - id: linac-1\n    room: {room}\n    beams: [{{id: e6}}]\n"
 
 
@@ -34,28 +32,3 @@ def test_the_same_id_may_occur_under_two_owners():
 def test_a_room_and_a_stand_may_share_an_id():
     """Ids are unique within their kind only."""
     assert problems(rooms="rooms: [{id: one}]\n", equipment="stands: [{id: one}]\n") == []
-
-
-def test_owners_are_closed_over_others():
-    """A beam belongs to its machine, through it to the room, and to the program."""
-    program = read(rooms=room(), equipment=MACHINE.format(room="vault-a"))
-    beam = program.find("beam", "linac-1/e6")
-    assert beam is not None
-    closed = owner_closure(program, beam)
-    assert closed == {"machine": "linac-1", "room": "vault-a", "program": "program"}
-    assert list(closed) == ["machine", "room", "program"]
-
-
-def test_the_program_has_no_owner():
-    """The program belongs to nothing."""
-    program = read()
-    (item,) = program.of_kind("program")
-    assert owner_closure(program, item) == {}
-
-
-def test_an_owner_that_is_not_described_is_kept_by_name():
-    """A machine in a room of an unknown list still belongs to that room."""
-    program = read(equipment=MACHINE.format(room="vault-a"))
-    beam = program.find("beam", "linac-1/e6")
-    assert beam is not None
-    assert owner_closure(program, beam) == {"machine": "linac-1", "room": "vault-a", "program": "program"}
