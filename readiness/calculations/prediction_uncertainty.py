@@ -12,6 +12,7 @@ from numpy.typing import NDArray
 
 from readiness.calculations.field_at_plane import HEIGHT_STEP_CM, dual_field_doses, even_grid
 from readiness.calculations.field_setup import STEEPEST_TILT_DEG, FieldSetup
+from readiness.calculations.helpful_measurement import measurement_against, measurement_that_helps_most
 from readiness.calculations.normal_samples import SAMPLES, normal_samples
 from readiness.calculations.tilt_study import profile_percents, tilt_study
 from readiness.quantities import Table, Uncertain
@@ -23,14 +24,6 @@ LEAST_BAND_DEG = 2.0
 BAND_COVERAGE = 2.0  # standard deviations
 COARSE_STEP_DEG, FINE_STEP_DEG, FINE_REACH_DEG = 0.5, 0.05, 1.0
 LOWEST_TILT_DEG = 5.0
-
-HELP = {
-    "foil spread": "single-field profile at the plane with the degrader in place",
-    "energy": "depth dose with R50 and Rp in the mode",
-    "scatter model": "dual-field profiles at several angles",
-    "distance": "as-built distance with a calibrated distance meter",
-    "tilt": "gantry angle with a calibrated inclinometer",
-}
 
 
 @dataclass(frozen=True)
@@ -95,6 +88,7 @@ def prediction_uncertainty(
     distance_sd_cm: float,
     tilt_sd_deg: float,
     foil_spread_fitted: bool,
+    energy_measured: bool,
 ) -> PredictionUncertainty:
     """
     Return the uncertainty of a prediction and its sources.
@@ -115,6 +109,7 @@ def prediction_uncertainty(
         distance_sd_cm: Standard deviation of the plane distance. [cm]
         tilt_sd_deg: Standard deviation of the tilt. [°]
         foil_spread_fitted: Whether the foil spread was fitted to a measured profile of this machine.
+        energy_measured: Whether this beam's own depth dose at 100 cm is measured.
 
     Returns:
         Best tilt, uniformity and profile with their bands, contributions, and what helps most.
@@ -146,7 +141,7 @@ def prediction_uncertainty(
     if min(sds.values()) < 0:
         raise ValueError("a standard deviation cannot be negative")
     limits = (vertical_limit_percent, horizontal_limit_percent)
-    return _propagated(setup, judged, sds, foil_spread_fitted, *limits)
+    return _propagated(setup, judged, sds, foil_spread_fitted, energy_measured, *limits)
 
 
 def _propagated(
@@ -154,6 +149,7 @@ def _propagated(
     judged: _Judged,
     sds: dict[str, float],
     foil_spread_fitted: bool,
+    energy_measured: bool,
     vertical_limit: float,
     horizontal_limit: float,
 ) -> PredictionUncertainty:
@@ -175,7 +171,7 @@ def _propagated(
     vertical = _spread(centre.vertical, steps, metric)
     horizontal = _spread(centre.horizontal, across, metric)
     passing = float(np.mean((vertical <= vertical_limit) & (horizontal <= horizontal_limit)))
-    contributions = _contributions(centre, moves, metric)
+    contributions = _contributions(centre, moves, metric, energy_measured)
     return PredictionUncertainty(
         best_tilt_deg=Uncertain(centre.best_tilt_deg, tilt_sd),
         lowest_tilt_of_band_deg=max(0.0, centre.best_tilt_deg - reach),
@@ -186,7 +182,7 @@ def _propagated(
         profile_band=_band("height_cm", judged.half_length_cm, centre.vertical, steps),
         band_across=_band("across_cm", judged.half_width_cm, centre.horizontal, across),
         contributions=contributions,
-        measurement_that_helps_most=_helps_most(contributions),
+        measurement_that_helps_most=measurement_that_helps_most(contributions=contributions),
     )
 
 
@@ -275,7 +271,9 @@ def _band(name: str, half_cm: float, profile: Array, steps: Array) -> Table:
     return Table.of([name, "relative_dose", "sd"], rows)
 
 
-def _contributions(centre: _Outcome, moves: dict[str, tuple[_Outcome, _Outcome]], metric: str) -> Table:
+def _contributions(
+    centre: _Outcome, moves: dict[str, tuple[_Outcome, _Outcome]], metric: str, energy_measured: bool
+) -> Table:
     """Return what one standard deviation of each input changes, the larger of both ways."""
 
     def change(sides: tuple[_Outcome, _Outcome], way: str) -> float:
@@ -286,15 +284,7 @@ def _contributions(centre: _Outcome, moves: dict[str, tuple[_Outcome, _Outcome]]
     rows = []
     for name, sides in moves.items():
         tilt = max(abs(side.best_tilt_deg - centre.best_tilt_deg) for side in sides)
-        rows.append((name, tilt, change(sides, "vertical"), change(sides, "horizontal"), HELP[name]))
+        against = measurement_against(uncertain_input=name, energy_measured=energy_measured)
+        rows.append((name, tilt, change(sides, "vertical"), change(sides, "horizontal"), against))
     changes = ["best_tilt_change_deg", "vertical_change_percent", "horizontal_change_percent"]
     return Table.of(["input", *changes, "measurement"], rows)
-
-
-def _helps_most(contributions: Table) -> str:
-    """Return the measurement that reduces the largest change of the vertical uniformity."""
-    rows = list(contributions.records())
-    if not rows:
-        return ""
-    largest = max(rows, key=lambda row: round(float(row["vertical_change_percent"] or 0), 6))
-    return str(largest["measurement"])

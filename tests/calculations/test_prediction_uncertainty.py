@@ -27,6 +27,7 @@ def found(**changes: Any) -> PredictionUncertainty:
         "distance_sd_cm": 1.0,
         "tilt_sd_deg": 0.2,
         "foil_spread_fitted": False,
+        "energy_measured": False,
         **LIMITS,
     }
     return prediction_uncertainty(**{**given, **changes})
@@ -82,6 +83,14 @@ def test_measurement_that_helps_most_follows_the_largest_contribution() -> None:
     assert "inclinometer" in loose.measurement_that_helps_most
     slow = found(foil_spread_sd=0.001, energy_sd_mev=0.5, tilt_sd_deg=0.1)
     assert "depth dose" in slow.measurement_that_helps_most
+
+
+def test_depth_dose_is_not_asked_for_twice() -> None:
+    """Once it is measured, profiles tell which energy counts; the numbers stay as they are."""
+    slow = {"foil_spread_sd": 0.001, "energy_sd_mev": 0.5, "tilt_sd_deg": 0.1}
+    before, after = found(**slow), found(**slow, energy_measured=True)
+    assert after.measurement_that_helps_most == "dual-field profiles at several angles"
+    assert after.best_tilt_deg == before.best_tilt_deg
 
 
 def test_larger_input_uncertainty_gives_a_wider_band_everywhere() -> None:

@@ -90,6 +90,12 @@ DEFINITIONS: tuple[Definition, ...] = (
         source="tg-25, icru-35",
         known="memory",
     ),
+    Definition(
+        "beam.reference_ranges",
+        "Ranges of this beam's own depth dose at 100 cm.",
+        measured=Measured(SINGLE, by=reference_ranges, takes=_REFERENCE.takes),
+        internal=True,
+    ),
     Definition("beam.r50_cm", "Half-value depth in water at 100 cm.", measured=_REFERENCE),
     Definition(
         "beam.rp_cm",

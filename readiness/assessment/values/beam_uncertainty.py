@@ -5,6 +5,7 @@ from functools import lru_cache
 import numpy as np
 
 from readiness.assessment.definition import Definition
+from readiness.assessment.values.beam_energy import ReferenceRanges
 from readiness.assessment.values.beam_field import LIMITS, PREDICTION, upper_share
 from readiness.calculations.field_setup import FieldSetup
 from readiness.calculations.foil_spread_fit import FoilSpreadFit
@@ -32,6 +33,7 @@ def uncertainty_of_arrangement(
     vertical_limit_percent: float,
     horizontal_limit_percent: float,
     foil_spread_fit: FoilSpreadFit | None,
+    reference_ranges: ReferenceRanges | None,
     unfitted_sd_ratio: float,
     energy_sd_mev: float,
     distance_sd_cm: float,
@@ -54,6 +56,7 @@ def uncertainty_of_arrangement(
         distance_sd_cm=distance_sd_cm,
         tilt_sd_deg=tilt_sd_deg,
         foil_spread_fitted=foil_spread_fit is not None,
+        energy_measured=reference_ranges is not None,
     )
 
 
@@ -104,6 +107,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             "half_length_cm": "criterion.uniformity_half_length_cm",
             "half_width_cm": "criterion.uniformity_half_width_cm",
             "foil_spread_fit": "beam.foil_spread_fit?",
+            "reference_ranges": "beam.reference_ranges?",
             "unfitted_sd_ratio": "criterion.unfitted_foil_spread_sd_ratio",
             "energy_sd_mev": "criterion.energy_sd_mev",
             "distance_sd_cm": "criterion.distance_sd_cm",

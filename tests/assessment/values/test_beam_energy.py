@@ -54,6 +54,20 @@ def test_a_depth_dose_at_100_cm_replaces_the_claimed_ranges() -> None:
     assert 2.40 == found.instead_of.value
 
 
+def test_a_depth_dose_at_100_cm_is_not_asked_for_again() -> None:
+    """The measurement against the energy's uncertainty is the depth dose until there is one, then profiles."""
+
+    def against_energy(*measurements: Item) -> object:
+        """Return what the table of contributions asks for."""
+        table = value(department(*measurements), "arrangement.uncertainty_contributions").value
+        return next(row["measurement"] for row in table.records() if row["input"] == "energy")
+
+    assert "depth dose with R50 and Rp at 100 cm" in str(against_energy())
+    assert "depth dose" in str(against_energy(depth_dose("depth-dose-single")))
+    at_100_cm = depth_dose("depth-dose-single", degrader="none", distance_cm=100.0, gap_cm=0.0)
+    assert "dual-field profiles at several angles" == against_energy(at_100_cm)
+
+
 def test_a_depth_dose_at_the_plane_is_not_that_at_100_cm() -> None:
     """Behind a degrader at 400 cm another beam is measured: the beam's R50 stays, the plane's is known."""
     of = department(depth_dose("depth-dose-single"))
