@@ -50,6 +50,8 @@ class Definition:
         otherwise: Value that stands in, with its own basis, where this one cannot be had: a prediction for
             what is neither measured nor stated.
         by_technique: Technique -> value that this one is, for one question asked of all techniques.
+        complete: Result that stands only if every input is known, such as that nothing is missing; another
+            one stands although some inputs, given as None, cannot be had.
         model: The result is a prediction whatever its inputs.
         critical: A treatment-critical number.
         internal: Holds a record for other values; never shown.
@@ -65,6 +67,7 @@ class Definition:
     part: str = ""
     otherwise: str = ""
     by_technique: Mapping[str, str] = field(default_factory=dict)
+    complete: str = ""
     model: bool = False
     critical: bool = False
     internal: bool = False

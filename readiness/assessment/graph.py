@@ -199,10 +199,12 @@ class Graph(MeasurementSearch):
         part: str = "",
     ) -> Got:
         given, inputs, bases, causes = self._gather(takes, ref, measurement)
-        if causes:
+        if causes and not definition.complete:
             return Gone(tuple(sorted(set(causes))))
         try:
             result = self._worked_out(by, given)
+            if causes and result == definition.complete:
+                return Gone(tuple(sorted(set(causes))))
         except OutsideValidity as outside:
             return Gone((Cause("validity", definition.name, ref, str(outside)),))
         except ValueError as contradiction:

@@ -2,18 +2,32 @@
 
 import inspect
 from collections.abc import Callable, Mapping
+from dataclasses import replace
 
 from readiness.assessment.definition import Definition, derived
 
 NOTHING = "nothing"
+Answer = bool | None  # None: nobody has said
+
+
+def named(answers: Mapping[str, Answer]) -> str:
+    """Return the words whose answer is no, then those without an answer; nothing where no answer is no."""
+    missing = ", ".join(words for words, answer in answers.items() if answer is False)
+    unsaid = ", ".join(words for words, answer in answers.items() if answer is None)
+    return f"{missing}; not stated: {unsaid}" if missing and unsaid else missing or NOTHING
+
+
+def _list(name: str, meaning: str, by: Callable[..., str], takes: Mapping[str, str]) -> Definition:
+    """Return a list of what is not there: a known no decides, whatever else is not stated."""
+    return replace(derived(name, meaning, by, takes), complete=NOTHING)
 
 
 def lacking(words: Mapping[str, str]) -> Callable[..., str]:
     """Return a function that names, of answers by keyword, those that are no."""
 
-    def missing(**answers: bool) -> str:
+    def missing(**answers: Answer) -> str:
         """Return the words of every answer that is no, nothing if there is none."""
-        return ", ".join(words[key] for key, answer in answers.items() if not answer) or NOTHING
+        return named({words[key]: answer for key, answer in answers.items()})
 
     missing.__signature__ = inspect.Signature(  # type: ignore[attr-defined]
         [inspect.Parameter(key, inspect.Parameter.KEYWORD_ONLY, annotation=bool) for key in words]
@@ -26,67 +40,68 @@ def _missing(name: str, meaning: str, words: Mapping[str, str]) -> Definition:
     kind = name.partition(".")[0]
     fields = {entry if "." in entry else f"{kind}.{entry}": said for entry, said in words.items()}
     by_key = {entry.partition(".")[2]: said for entry, said in fields.items()}
-    return derived(name, meaning, lacking(by_key), {entry.partition(".")[2]: entry for entry in fields})
+    return _list(name, meaning, lacking(by_key), {entry.partition(".")[2]: entry for entry in fields})
 
 
-def feet_and_sound(*, camera_shows_feet: bool, intercom: str) -> str:
+def feet_and_sound(*, camera_shows_feet: Answer, intercom: str | None) -> str:
     """Return what is missing, beside two views, to see and hear a patient who is alone in the room."""
-    found = {
-        "a view of the feet": camera_shows_feet,
-        "two-way sound": intercom == "two-way",
-    }
-    return ", ".join(words for words, there in found.items() if not there) or NOTHING
+    two_way = None if intercom is None else intercom == "two-way"
+    return named({"a view of the feet": camera_shows_feet, "two-way sound": two_way})
 
 
-def against_falls(*, rails: bool, grip: bool, non_slip: bool, steps: int, steps_needed: int) -> str:
+def against_falls(
+    *, rails: Answer, grip: Answer, non_slip: Answer, steps: int | None, steps_needed: int | None
+) -> str:
     """Return what a stand lacks of what keeps a patient from falling."""
-    found = {
+    known = steps is not None and steps_needed is not None
+    return named({
         "rails": rails,
         "a grip in every position": grip,
         "a surface that does not slip": non_slip,
-        f"steps ({steps} of {steps_needed})": steps >= steps_needed,
-    }
-    return ", ".join(words for words, there in found.items() if not there) or NOTHING
+        f"steps ({steps} of {steps_needed})" if known else "steps":
+            steps >= steps_needed if steps is not None and steps_needed is not None else None,
+    })  # fmt: skip
 
 
-def control_of_mode(*, own_key: bool, enabled_by: str) -> str:
+def control_of_mode(*, own_key: Answer, enabled_by: str | None) -> str:
     """Return what is missing before the mode can be entered on purpose only; who enables it must be known."""
-    return NOTHING if own_key and enabled_by else "a key or code of its own"
+    who = None if enabled_by is None else True
+    return named({"a key or code of its own": own_key, "who enables it": who})
 
 
 def rules_of_documents(
-    *,
-    review_interval_months: float,
-    longest_months: float,
-    retention_years: float,
-    read_and_understood: bool,
-    withdrawn_copies_removed: bool,
-) -> str:
+    *, review_interval_months: float | None, longest_months: float, retention_years: float | None,
+    read_and_understood: Answer, withdrawn_copies_removed: Answer,
+) -> str:  # fmt: skip
     """Return what is missing in the control of documents; how long records are kept must be known."""
-    found = {
-        f"review every {longest_months:g} months": review_interval_months <= longest_months,
-        "a time for which records are kept": retention_years > 0,
+    return named({
+        f"review every {longest_months:g} months": _holds(
+            review_interval_months, lambda months: months <= longest_months
+        ),
+        "a time for which records are kept": _holds(retention_years, lambda years: years > 0),
         "signatures that each revision was read": read_and_understood,
         "removal of superseded copies": withdrawn_copies_removed,
-    }
-    return ", ".join(words for words, there in found.items() if not there) or NOTHING
+    })  # fmt: skip
+
+
+def _holds(number: float | None, condition: Callable[[float], bool]) -> Answer:
+    return None if number is None else condition(number)
 
 
 def rules_when_something_fails(
-    *, interrupted_cycle: bool, machine_down: bool, physicist_absent: bool, lapse_days: float
+    *, interrupted_cycle: Answer, machine_down: Answer, physicist_absent: Answer, lapse_days: float | None
 ) -> str:
     """Return which rules for the day when something fails are missing; the days of a lapse must be known."""
-    found = {
+    return named({
         "an interrupted cycle": interrupted_cycle,
         "a machine that fails between the days of a cycle": machine_down,
         "an absent physicist": physicist_absent,
-        "a lapse": lapse_days > 0,
-    }
-    return ", ".join(words for words, there in found.items() if not there) or NOTHING
+        "a lapse": _holds(lapse_days, lambda days: days > 0),
+    })  # fmt: skip
 
 
 DEFINITIONS: tuple[Definition, ...] = (
-    derived(
+    _list(
         "stand.fall_protection_missing",
         "What it lacks of what keeps a patient from falling.",
         against_falls,
@@ -98,7 +113,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             "steps_needed": "stand.steps_needed",
         },
     ),
-    derived(
+    _list(
         "room.watching_missing",
         "What is missing, beside two camera views, to see and hear the patient.",
         feet_and_sound,
@@ -107,13 +122,13 @@ DEFINITIONS: tuple[Definition, ...] = (
             "intercom": "room.intercom",
         },
     ),
-    derived(
+    _list(
         "beam.mode_control_missing",
         "What is missing before the mode can be entered on purpose only.",
         control_of_mode,
         {"own_key": "beam.mode_own_key", "enabled_by": "beam.mode_enabled_by"},
     ),
-    derived(
+    _list(
         "document_control.rules_missing",
         "What is missing in the control of documents.",
         rules_of_documents,
@@ -125,7 +140,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             "withdrawn_copies_removed": "document_control.withdrawn_copies_removed",
         },
     ),
-    derived(
+    _list(
         "contingency.rules_missing",
         "Rules that are missing for the day when something fails.",
         rules_when_something_fails,

@@ -34,16 +34,25 @@ FLAGS = [
 
 @pytest.mark.parametrize("name", FLAGS)
 def test_each_no_is_named_and_each_gap_is_a_cause(name: str) -> None:
-    """All yes is nothing missing; one no gives one phrase; one left out is unknown and named."""
+    """All yes is nothing missing; one no gives one phrase; one left out beside yes is unknown and named."""
     kind, fields = name.partition(".")[0], yes_or_no(name)
     assert "nothing" == got(program(item(kind, **dict.fromkeys(fields, True))), name)
     phrases = {got(program(item(kind, **{**dict.fromkeys(fields, True), field: False})), name) for field in fields}
     assert len(fields) == len(phrases)
     for field in fields:
-        rest = {each: False for each in fields if each != field}
+        rest = {each: True for each in fields if each != field}
         found = got(program(item(kind, **rest)), name)
         assert isinstance(found, Gone)
         assert [f"{kind}.{field}"] == [cause.what for cause in found.causes]
+
+
+@pytest.mark.parametrize("name", FLAGS)
+def test_a_known_no_decides_and_what_is_not_stated_is_said(name: str) -> None:
+    """What is known to be missing is not met, whatever else nobody has stated; nothing turns to met."""
+    kind, (first, *others) = name.partition(".")[0], yes_or_no(name)
+    alone = got(program(item(kind, **{first: False})), name)
+    complete = got(program(item(kind, **{first: False, **dict.fromkeys(others, True)})), name)
+    assert alone.startswith(f"{complete}; not stated: ")
 
 
 def test_a_stand_against_falls() -> None:
@@ -60,6 +69,10 @@ def test_the_rules_for_the_day_when_something_fails() -> None:
     assert "a machine that fails between the days of a cycle" == got(
         program(item("contingency", **rules), lapse_days=60.0), name
     )
+    assert "a machine that fails between the days of a cycle; not stated: a lapse" == got(
+        program(item("contingency", **rules)), name
+    )
+    rules["machine_down_rule"] = True
     assert isinstance(got(program(item("contingency", **rules)), name), Gone)
 
 
