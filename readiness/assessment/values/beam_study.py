@@ -79,12 +79,12 @@ def overview_of_study(*, tilt_band: Table) -> Table:
 def remedy_in_words(*, study: ArrangementStudy, farthest_cm: float | None) -> str:
     """Return what would have to change for both profiles to keep their limits."""
     if not study.remedy:
-        return "Both profiles are predicted to keep their limits at this plane."
+        return "At the evenest tilt both profiles are predicted to keep their limits at this plane."
     needed = study.distance_for_both_limits_cm
     if farthest_cm is None and needed is not None:
         return (
-            f"Both profiles are predicted to keep their limits with the plane at {needed:.0f} cm; how far the"
-            " room reaches is not known."
+            "At the evenest tilt both profiles are predicted to keep their limits with the plane at"
+            f" {needed:.0f} cm; how far the room reaches is not known."
         )
     return study.remedy
 
@@ -227,5 +227,17 @@ DEFINITIONS: tuple[Definition, ...] = (
         "Vertical uniformity of that pair, as predicted.",
         "unequal_tilts",
         "vertical_percent",
+    ),
+    _of(
+        "equal_tilt_deg",
+        "Tilt of the evenest pair of equal tilts about the same mid-height, as predicted.",
+        "unequal_tilts",
+        "equal_tilt_deg",
+    ),
+    _of(
+        "equal_vertical_percent",
+        "Vertical uniformity of that pair of equal tilts, as predicted.",
+        "unequal_tilts",
+        "vertical_percent_of_equal",
     ),
 )

@@ -179,3 +179,23 @@ def test_the_descent_of_a_prediction_names_what_decides_the_field() -> None:
         "arrangement.study_tilt_deg",
     } <= names
     assert "arrangement.field_setup" not in names
+
+
+@pytest.mark.parametrize(("stand_cm", "expected"), [(40.0, "met"), (75.0, "not met"), (5.0, "not met")])
+def test_a_stand_that_lifts_patients_off_the_axis_is_named(stand_cm: float, expected: str) -> None:
+    """
+    Patients of 150 to 190 cm on 40 cm have their middles at most 15 cm from an axis at 130 cm.
+
+    On 75 cm it is 75 + 95 - 130 = 40 cm, on 5 cm 130 - 5 - 75 = 50 cm.
+    """
+    of = department(program={"shortest_patient_cm": 150.0}, stand={"height_cm": stand_cm})
+    assert expected == finding(of, "patients-level-with-axis").outcome
+
+
+def test_two_unequal_tilts_are_never_worse_than_two_equal_ones() -> None:
+    """About the same mid-height, off the axis, the evenest pair is at least as even as the evenest equal pair."""
+    of = department(program={"shortest_patient_cm": 150.0}, stand={"height_cm": 60.0})
+    unequal, equal = (value(of, f"arrangement.{name}_vertical_percent").value for name in ("unequal", "equal"))
+    assert unequal < equal
+    head, feet = (value(of, f"arrangement.unequal_tilt_toward_{end}_deg").value for end in ("head", "feet"))
+    assert head > value(of, "arrangement.equal_tilt_deg").value > feet
