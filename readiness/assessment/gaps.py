@@ -55,11 +55,21 @@ def _mend(finding: Finding, rule: Rule, phase: str) -> Gap:
     )
 
 
+def _askers(kind: str, concerned: list[Rule]) -> list[Rule]:
+    """
+    Return the rules that say who supplies something and when.
+
+    A measurement is due when a rule asks for it as measured, not when an earlier rule could use it as well.
+    """
+    measured = [rule for rule in concerned if rule.basis == "measured"]
+    return measured if kind == "measurement" and measured else concerned
+
+
 def _supply(
     key: tuple[str, str, Ref], entries: list[tuple[Finding, Cause]], rules: Mapping[str, Rule], phase: str
 ) -> Gap:
     kind, what, item = key
-    concerned = [rules[finding.rule] for finding, _ in entries]
+    concerned = _askers(kind, [rules[finding.rule] for finding, _ in entries])
     first = min(concerned, key=lambda rule: (STRENGTHS.index(rule.strength), PHASES.index(rule.phase)))
     earliest = min((rule.phase for rule in concerned), key=PHASES.index)
     words = " ".join(sorted({cause.words for _, cause in entries}))

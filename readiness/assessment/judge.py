@@ -39,21 +39,32 @@ def judge_rule(rule: Rule, graph: Graph) -> Iterator[Finding]:
 
 
 def _without_items(rule: Rule, kind: str, graph: Graph) -> Finding:
-    title = words_of(kind)
-    whole = Ref("program", "program")
+    """Return the finding where no item of a kind is known: what to list, or that there is none."""
+    causes: tuple[Cause, ...]
     made = kind in {"arrangement", "exposure"}
-    if not made and (kind in {"document", "measurement"} or graph.list_is_known(kind, whole)):
-        words = f"There is no {title} in this program."
-        return Finding(rule.id, Ref(kind, "none"), "not applicable", message=words)
-    if made:
-        what = "arrangement"
+    if made and not graph.refs("arrangement"):
         words = "Describe rooms, machines with beams, degraders, stands and techniques, so that there is one."
-        if kind == "exposure" and graph.refs("arrangement"):
-            what, words = "exposure", "List the barriers of each room in shielding.yaml."
-        cause = Cause("list", what, whole, words)
+        causes = (Cause("list", "arrangement", Ref("program", "program"), words),)
     else:
-        cause = unknown_list(kind, whole, graph.catalogue.kinds)
-    return Finding(rule.id, Ref(kind, "all"), "not assessed", causes=(cause,), message=cause.words)
+        causes = _lists_to_write("barrier" if kind == "exposure" else kind, graph)
+    if not causes:
+        words = f"There is no {words_of(kind)} in this program."
+        return Finding(rule.id, Ref(kind, "none"), "not applicable", message=words)
+    words = " ".join(cause.words for cause in causes)
+    return Finding(rule.id, Ref(kind, "all"), "not assessed", causes=causes, message=words)
+
+
+def _lists_to_write(kind: str, graph: Graph) -> tuple[Cause, ...]:
+    """Return the lists that nobody has written yet: of each item they belong to, else of the whole program."""
+    if kind in {"document", "measurement"}:
+        return ()
+    within = [owner for owner in graph.catalogue.kinds.owners(kind) if owner != "program"]
+    owners = [ref for owner in within for ref in graph.refs(owner)] or [Ref("program", "program")]
+    return tuple(
+        unknown_list(kind, owner, graph.catalogue.kinds)
+        for owner in owners
+        if not graph.list_is_known(kind, owner)
+    )
 
 
 def judge_item(rule: Rule, item: Ref, graph: Graph) -> Finding:

@@ -5,6 +5,8 @@ from collections.abc import Mapping
 from readiness.assessment.records import ArrangementRow, Finding, Rule, Verdict
 from readiness.program.items import Program
 
+MOST_ASKED = 8
+
 
 def give_verdict(
     program: Program, rows: tuple[ArrangementRow, ...], chosen: ArrangementRow | None,
@@ -28,9 +30,15 @@ def give_verdict(
         said = tuple(f"The chosen arrangement is not feasible: {f.message}" for f in chosen.deciding)
         return Verdict("no feasible arrangement", arrangement, chosen_by, said)
     if chosen.feasibility == "not enough described":
-        said = tuple(dict.fromkeys(finding.message for finding in chosen.deciding))[:5]
-        return Verdict("not enough described", arrangement, chosen_by, said)
+        return Verdict("not enough described", arrangement, chosen_by, _unknown(chosen))
     return _possible(program, arrangement, chosen_by, findings, rules)
+
+
+def _unknown(chosen: ArrangementRow) -> tuple[str, ...]:
+    """Return what has to be supplied before it can be said whether the arrangement is possible, each once."""
+    asked = tuple(dict.fromkeys(cause.words for finding in chosen.deciding for cause in finding.causes))
+    left = len(asked) - len(asked[:MOST_ASKED])
+    return (*asked[:MOST_ASKED], f"And {left} more; the gap list names them.") if left else asked
 
 
 def _possible(

@@ -15,7 +15,7 @@ from readiness.outputs.documents import RenderedDocument
 from readiness.outputs.frame import SAFETY, foot_words
 from readiness.outputs.frame import anchor as place
 from readiness.outputs.measurement_rows import measurement_rows
-from readiness.outputs.words import VERDICT_SENTENCES, chosen_row, reason_words
+from readiness.outputs.words import VERDICT_SENTENCES, chosen_by_words, chosen_row, reason_words
 from readiness.resources import folder
 
 
@@ -70,7 +70,7 @@ def assessment_sheets(assessment: Assessment, rendered: Sequence[RenderedDocumen
         "verdict": VERDICT_SENTENCES[assessment.verdict.words],
         "verdict_reasons": assessment.verdict.reasons,
         "chosen": chosen_row(assessment),
-        "chosen_by": assessment.verdict.chosen_by,
+        "chosen_by": chosen_by_words(assessment),
         "arrangements": chief.arrangements(assessment),
         "shared": chief.shared_by_all(assessment),
         "why_chosen": _why_chosen(assessment),
@@ -111,7 +111,7 @@ def cover_sheet(assessment: Assessment, unprintable: Sequence[str]) -> Sheet:
         "phase": assessment.phase,
         "verdict": VERDICT_SENTENCES[assessment.verdict.words],
         "chosen": chosen_row(assessment),
-        "chosen_by": assessment.verdict.chosen_by,
+        "chosen_by": chosen_by_words(assessment),
         "caution": f"{CAUTION} {SAFETY}",
         "invented": INVENTED if assessment.invented else "",
         "versions": assessment.versions,

@@ -7,7 +7,7 @@ from readiness.assessment.records import Assessment, DocumentState, Rule
 from readiness.outputs.contract import CAUTION, INVENTED
 from readiness.outputs.documents import RenderedDocument
 from readiness.outputs.holes import plain
-from readiness.outputs.words import chosen_row, known_words
+from readiness.outputs.words import chosen_by_words, chosen_row, known_words
 from readiness.resources import template_file
 
 SAFETY = (
@@ -90,9 +90,8 @@ def article(document: RenderedDocument, assessment: Assessment, first: bool = Tr
 
 def _control(document: RenderedDocument, state: DocumentState | None, assessment: Assessment) -> str:
     row = chosen_row(assessment)
-    chosen_by = assessment.verdict.chosen_by
-    chosen = {"department": "", "recommendation": " (recommended here; the department has not chosen)"}
-    arrangement = f"{row.title}{chosen.get(chosen_by, '')}" if row else "none chosen"
+    by = "" if row is None or row.chosen else f" ({chosen_by_words(assessment)})"
+    arrangement = f"{row.title}{by}" if row else "none chosen"
     approvals = "; ".join(f"{role}: {who}, {day}" for role, who, day in state.approvals) if state else ""
     rows: Mapping[str, str] = {
         "Department": assessment.program + _invented(assessment),

@@ -19,6 +19,7 @@ from readiness.outputs.what_if_rows import FIRST_PATIENT, questions
 from readiness.outputs.words import (
     VERDICT_SENTENCES,
     blocking,
+    chosen_by_words,
     chosen_row,
     comparison_words,
     value_title,
@@ -50,6 +51,7 @@ def make_page(
         invented=INVENTED,
         verdict=VERDICT_SENTENCES[assessment.verdict.words],
         chosen=chosen_row(assessment),
+        chosen_by=chosen_by_words(assessment),
         schedule=assessment.schedule,
         arrangements=page_rows.possible(assessment),
         ruled_out=page_rows.ruled_out(assessment),

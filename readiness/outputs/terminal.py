@@ -7,6 +7,7 @@ from readiness.outputs.contract import CAUTION, INVENTED
 from readiness.outputs.words import (
     VERDICT_SENTENCES,
     blocking,
+    chosen_by_words,
     comparison_words,
     date_words,
     reason_words,
@@ -44,7 +45,7 @@ def _head(assessment: Assessment, width: int) -> str:
         lines.append(_wrapped(INVENTED, width))
     lines += ["", _wrapped(f"VERDICT: {VERDICT_SENTENCES[assessment.verdict.words]}", width)]
     if assessment.verdict.arrangement:
-        who = "chosen by the department" if assessment.verdict.chosen_by == "department" else "recommended"
+        who = chosen_by_words(assessment)
         lines.append(_wrapped(f"Arrangement ({who}): {assessment.verdict.arrangement}", width))
     lines += [_wrapped(reason, width, "  ", "- ") for reason in assessment.verdict.reasons]
     return "\n".join(lines)

@@ -96,6 +96,15 @@ def _first_of(rules: Sequence[str], most: int | None) -> str:
     return f"{named} and {left} more" if left else named
 
 
+def chosen_by_words(assessment: Assessment) -> str:
+    """Return by whom the arrangement of the documents was chosen; too little known is no recommendation."""
+    if assessment.verdict.chosen_by == "department":
+        return "chosen by the department"
+    if assessment.verdict.words == "not enough described":
+        return "the first that was described; too little is known to recommend one"
+    return "recommended here; the department has not chosen"
+
+
 def blocking(assessment: Assessment) -> tuple[Gap, ...]:
     """Return the must-gaps that are due in the phase where the program stands."""
     return tuple(gap for gap in assessment.gaps if gap.strength == "must" and not gap.due_later)
