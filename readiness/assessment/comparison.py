@@ -121,7 +121,7 @@ def _against(row: ArrangementRow, following: ArrangementRow, answers: Mapping[Re
     mine, other = _first_difference(row, following, answers)
     if not mine:
         return f"It and the next, {following.title}, stand alike; the folder lists it first."
-    return f"It stands first: it {mine}. The next, {following.title}, {other}."
+    return f"It stands first. It {mine}; the next, {following.title}, {other}."
 
 
 def _chosen_behind(row: ArrangementRow, best: ArrangementRow, answers: Mapping[Ref, _Answers]) -> str:

@@ -55,7 +55,7 @@ def _without_items(rule: Rule, kind: str, graph: Graph) -> Finding:
 
 
 def _lists_to_write(kind: str, graph: Graph) -> tuple[Cause, ...]:
-    """Return the lists that nobody has written yet: of each item they belong to, else of the whole program."""
+    """Return the lists that nobody has written yet: of each item they belong to, else of the program."""
     if kind in {"document", "measurement"}:
         return ()
     within = [owner for owner in graph.catalogue.kinds.owners(kind) if owner != "program"]

@@ -89,8 +89,8 @@ def test_silence_is_no_advantage() -> None:
     )
     assert names(rows) == ["known", "silent"]
     assert rows[0].reasons == (
-        "It stands first: it does not keep, or is not expected to keep, deep. The next, vault, silent, has no"
-        " answer yet to deep, uniform.",
+        "It stands first. It does not keep, or is not expected to keep, deep; the next, vault, silent, has no answer"
+        " yet to deep, uniform.",
     )
 
 

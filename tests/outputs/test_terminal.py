@@ -30,7 +30,7 @@ def test_the_chosen_arrangement_stands_first_with_its_reasons(sample: Assessment
     """What all share is said once; the reason names rules and the next one by what tells it apart."""
     said = flat(sample)
     assert "ARRANGEMENTS COMPARED, the best first; all: six-position, turntable-1 * vault-a" in said
-    assert "horizontal-uniformity. The next, vault-a, linac-1, e6-high-rate, side 90, sheet-10, does not keep" in said
+    assert "horizontal-uniformity; the next, vault-a, linac-1, e6-high-rate, side 90, sheet-10, does not keep" in said
 
 
 def test_a_room_that_fails_says_by_what_and_what_would_do(sample: Assessment) -> None:
