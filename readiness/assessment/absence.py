@@ -22,7 +22,10 @@ def is_for_standing_only(name: str, item: Item) -> bool:
 
 def for_standing_only() -> Cause:
     """Return why nothing is worked out that only a standing patient has: one cause for all of it."""
-    words = "Worked out for a standing patient only; for one who lies on a moving couch it is measured."
+    words = (
+        "Measure for a patient on a moving couch what is worked out for a standing one only; the requirements"
+        " that wait for this say what."
+    )
     return Cause("validity", "standing patient", PROGRAM, words)
 
 
