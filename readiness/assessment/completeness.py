@@ -138,7 +138,7 @@ def _looks(program: Program, assessment: Assessment, register: Register, lines: 
     yield Look("Must-rules of later phases", False, _later(lines))
     yield Look("Exceptions", False, tuple(_exceptions(program, assessment)))
     yield Look("Met on a statement alone, without the paper that shows it", False, _unproven(lines))
-    yield Look("Predicted where a measurement is asked", False, _predicted(lines))
+    yield Look("Predicted, stated or assumed where that is not enough", False, _predicted(lines))
     yield Look(
         "Evidence to watch",
         False,
@@ -215,7 +215,7 @@ def _predicted(lines: list[Line]) -> tuple[str, ...]:
     found = [line for line in lines if line.outcome == "not assessed" and line.expected]
     found.sort(key=lambda line: (line.expected == "met", STRENGTHS.index(line.strength)))
     return tuple(
-        f"{line.rule} ({line.strength}): {line.message} Expected by calculation: {line.expected}."
+        f"{line.rule} ({line.strength}): {line.message} That is {line.basis}; expected: {line.expected}."
         for line in found
     )
 

@@ -129,13 +129,13 @@ def test_drafts_are_told() -> None:
 def test_a_prediction_expected_to_fail_stands_before_one_expected_to_hold() -> None:
     """And neither is called met."""
     other = replace(RULE, id="lift")
-    good = Finding("ceiling", ROOM, "not assessed", expected="met", message="High.")
-    bad = Finding("lift", ROOM, "not assessed", expected="not met", message="Narrow.")
+    good = Finding("ceiling", ROOM, "not assessed", expected="met", message="High.", basis="predicted")
+    bad = Finding("lift", ROOM, "not assessed", expected="not met", message="Narrow.", basis="assumed")
     found = reviewed(judged(good, bad, rules=(RULE, other)))
     look = next(each for each in found.looks if each.heading.startswith("Predicted"))
     assert (
-        "lift (must): Narrow. Expected by calculation: not met.",
-        "ceiling (must): High. Expected by calculation: met.",
+        "lift (must): Narrow. That is assumed; expected: not met.",
+        "ceiling (must): High. That is predicted; expected: met.",
     ) == look.lines
 
 
