@@ -7,6 +7,7 @@ Heavy layers are imported inside the functions, so that ``check`` stays quick.
 from collections.abc import Callable
 from dataclasses import dataclass
 from datetime import date
+from functools import partial
 from pathlib import Path
 
 from readiness.errors import Problem, UsageError
@@ -155,11 +156,14 @@ def explain(
     name: str, folder: Path, *, item: str | None, as_of: date, width: int, depth: int
 ) -> Answer:
     """Show a value with its descent."""
+    from readiness.assessment.assessment import why_absent
     from readiness.outputs.explanation import explain_value
+    from readiness.program.reading import read_folder
 
     assessment = _assessed_or_none(folder, as_of)
     assert assessment is not None  # noqa: S101 - a folder was given
-    return Answer(explain_value(name, assessment, item, width, depth), NOTHING_OPEN)
+    why = partial(why_absent, read_folder(folder), as_of)
+    return Answer(explain_value(name, assessment, item, width, why, depth), NOTHING_OPEN)
 
 
 def review(

@@ -29,6 +29,7 @@ from readiness.assessment.records import (
     Assessment,
     DocumentState,
     Finding,
+    Gone,
     Ref,
     Rule,
     Value,
@@ -70,9 +71,7 @@ def assess(
     known = catalogue()
     local = with_local(load_rules(known), program, known)
     by_id = {rule.id: rule for rule in local.rules}
-    made = arrangements(program)
-    items = (*made, *exposures(program, made), *measurements(program), *document_items())
-    graph = Graph(program, items, known, as_of, local.limits, memory)
+    graph = new_graph(program, as_of, local.limits, memory)
     early = judge((rule for rule in local.rules if rule.kind not in _LATE), graph)
     early, answers = excepted(early, by_id, program, as_of)
     rows = ordered(arrangement_rows(early, by_id, graph), by_id, graph)
@@ -92,6 +91,32 @@ def assess(
     verdict = give_verdict(program, rows, chosen, findings, by_id)
     schedule, gaps = plan_road(program, gaps, as_of, possible=verdict.words in DATED_VERDICTS)
     return replace(first, findings=findings, gaps=gaps, schedule=schedule, documents=states, verdict=verdict)
+
+
+def new_graph(
+    program: Program, as_of: date, limits: Mapping[str, Value], memory: Memory | None = None
+) -> Graph:
+    """Return the graph of a program, with the items that are made from what the folder describes."""
+    made = arrangements(program)
+    items = (*made, *exposures(program, made), *measurements(program), *document_items())
+    return Graph(program, items, catalogue(), as_of, limits, memory)
+
+
+def why_absent(program: Program, as_of: date, name: str, item: Ref | None) -> tuple[str, ...]:
+    """
+    Return in words why a value of an item is not known, each cause once.
+
+    Args:
+        program: What the folder says.
+        as_of: The day of the assessment.
+        name: Name of the value.
+        item: Whose value; None asks every item of its kind.
+    """
+    known = catalogue()
+    graph = new_graph(program, as_of, with_local(load_rules(known), program, known).limits)
+    asked = (item,) if item is not None else graph.refs(name.partition(".")[0])
+    found = (graph.get(name, each) for each in asked)
+    return tuple(dict.fromkeys(cause.words for got in found if isinstance(got, Gone) for cause in got.causes))
 
 
 def _choose(rows: tuple[ArrangementRow, ...]) -> ArrangementRow | None:

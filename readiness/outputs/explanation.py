@@ -2,6 +2,7 @@
 
 import difflib
 import textwrap
+from collections.abc import Callable
 
 from readiness.assessment.catalogue import catalogue
 from readiness.assessment.records import Assessment, Ref, Value
@@ -14,14 +15,23 @@ from readiness.units import printed, unit_of, words_of
 
 DEEPEST, USUAL, SHALLOW = 12, 3, 1  # levels of inputs under a value
 _MOST_ROWS = 40
+WhyAbsent = Callable[[str, Ref | None], tuple[str, ...]]
 _CUT = "... not opened:"
 
 
 def explain_value(
-    name: str, assessment: Assessment, item: str | None, width: int, depth: int = USUAL
+    name: str, assessment: Assessment, item: str | None, width: int, why_absent: WhyAbsent, depth: int = USUAL
 ) -> str:
     """
     Return a value with its descent, so many levels of inputs deep.
+
+    Args:
+        name: Name of the value.
+        assessment: Where it is looked for.
+        item: Id of the item whose value is wanted; None for the chosen arrangement's, or of all items.
+        width: Of the lines.
+        why_absent: Says for a name and an item, None for all of its kind, why the value is not known.
+        depth: Levels of inputs.
 
     Raises:
         UsageError: If there is no such value, with the nearest name.
@@ -34,7 +44,7 @@ def explain_value(
     found = _values(name, assessment, item)
     lines = [name, textwrap.fill(known.meaning(name), width), ""]
     if not found:
-        lines.append(_not_known(name, assessment, width))
+        lines += [_not_known(why_absent(name, _asked(name, assessment, item)), width), ""]
     for value in found:
         lines += lines_of_value(value, assessment, width, depth)
         lines.append("")
@@ -54,15 +64,21 @@ def _values(name: str, assessment: Assessment, item: str | None) -> list[Value]:
     return named
 
 
-def _not_known(name: str, assessment: Assessment, width: int) -> str:
-    causes = dict.fromkeys(
-        cause.words
-        for finding in assessment.findings
-        for cause in finding.causes
-        if any(rule.id == finding.rule and rule.subject == name for rule in assessment.rules)
-    )
-    text = "Not known. " + (" ".join(causes) or "Something it needs is missing; see the gap list.")
+def _asked(name: str, assessment: Assessment, item: str | None) -> Ref | None:
+    kind = name.partition(".")[0]
+    row = chosen_row(assessment)
+    if item is None:
+        return row.item if row is not None and kind == "arrangement" else None
+    return Ref(kind, item)
+
+
+def _not_known(causes: tuple[str, ...], width: int) -> str:
+    text = "Not known. " + (" ".join(map(_sentence, causes)) or "Nothing that it describes is in the folder.")
     return textwrap.fill(text, width)
+
+
+def _sentence(cause: str) -> str:
+    return cause[:1].upper() + cause[1:].removesuffix(".") + "."
 
 
 def lines_of_value(value: Value, assessment: Assessment, width: int, depth: int = SHALLOW) -> list[str]:

@@ -113,6 +113,18 @@ def test_explain_prints_the_descent(capsys: pytest.CaptureFixture[str]) -> None:
     assert "rooms.yaml:" in printed
 
 
+def test_explain_says_why_a_value_is_not_known(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    """What no rule asks for is not in the gap list: the cause itself is said, for the chosen arrangement and by item."""
+    folder = tmp_path / "program"
+    shutil.copytree(SAMPLE, folder)
+    rooms = (folder / "rooms.yaml").read_text(encoding="utf-8")
+    (folder / "rooms.yaml").write_text(rooms.replace("    temperature_celsius: 21\n", ""), encoding="utf-8")
+    assert run(["explain", "arrangement.study_reason", str(folder), "--as-of", "2026-12-01"]) == 0
+    assert "Not known. State temperature" in capsys.readouterr().out
+    assert run(["explain", "room.temperature_celsius", str(folder), "--item", "vault-b", "--as-of", "2026-12-01"]) == 0
+    assert "State temperature (°C) of room vault-b" in capsys.readouterr().out
+
+
 def test_explain_opens_as_many_levels_as_asked(capsys: pytest.CaptureFixture[str]) -> None:
     """What is not opened is named, so that it can be explained by itself; every level can be had."""
     value = ["explain", "exposure.weekly_dose_usv_per_week", str(SAMPLE), "--as-of", "2026-12-01"]
