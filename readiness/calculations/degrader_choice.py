@@ -57,7 +57,7 @@ def degraders_by_depth_rules(
     Args:
         energy_at_source_mev: Most probable energy at the source, for a plane at 400 cm. [MeV]
         least_at_4_mm_percent: Smallest dose at 4 mm as a part of the skin dose. [%]
-        most_at_20_mm_percent: Largest dose at 20 mm as a part of the skin dose. [%]
+        most_at_20_mm_percent: Dose at 20 mm, as a part of the skin dose, that must not be reached. [%]
 
     Returns:
         Columns pmma_cm, r80_mm, dose_at_4_mm_percent, dose_at_20_mm_percent, b_factor, keeps_both.
@@ -77,7 +77,7 @@ def degraders_by_depth_rules(
         pmma = min(max(round(index * THICKNESS_STEP_CM, 6), low), high)
         found = composite_depth_dose(energy_at_source_mev=energy_at_source_mev, pmma_cm=pmma)
         at4, at20 = found.dose_at_4_mm_percent.value, found.dose_at_20_mm_percent.value
-        keeps = at4 >= least_at_4_mm_percent and at20 <= most_at_20_mm_percent
+        keeps = at4 >= least_at_4_mm_percent and at20 < most_at_20_mm_percent
         rows.append((pmma, found.r80_mm.value, at4, at20, found.b_factor.value, keeps))
     names = ["pmma_cm", "r80_mm", "dose_at_4_mm_percent", "dose_at_20_mm_percent", "b_factor", "keeps_both"]
     return Table.of(names, rows)

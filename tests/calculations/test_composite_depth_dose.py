@@ -138,3 +138,12 @@ def test_energy_that_cannot_keep_both_rules_is_said_so() -> None:
         "No thickness of PMMA from 1.50 to 2.00 cm is predicted to keep both depth rules at this energy: "
         "another energy is needed."
     )
+
+
+def test_dose_at_20_mm_must_stay_under_its_limit_and_that_at_4_mm_may_equal_it() -> None:
+    """Without a degrader 6 MeV give 26 % at 20 mm and 96 % at 4 mm: "under 26 %" is missed, "96 % or more" kept."""
+    for most, keeps in ((26.0, False), (26.5, True)):
+        table = degraders_by_depth_rules(
+            energy_at_source_mev=6.0, least_at_4_mm_percent=96.0, most_at_20_mm_percent=most
+        )
+        assert next(row["keeps_both"] for row in table.records() if row["pmma_cm"] == 0) is keeps
