@@ -77,9 +77,14 @@ def _beam(
         "x": x, "y1": -half - 20, "y2": half + 20, "source": source, "mid": (source + x) / 2, "line": line,
         "fan": points([(source, 0.0), (x, -half), (x, half)]), "stand": _stand(lookup, x, toward),
         "degrader": _degrader(lookup, x, toward),
-        "words": f"plane distance {said(lookup, 'arrangement.study_distance_cm')}, plan, not as built",
+        "words": f"plane distance {said(lookup, 'arrangement.study_distance_cm')}, {_how_chosen(lookup)}",
         "axis_x": -toward * got["sad"] / 2, "axis_words": said(lookup, "machine.source_axis_distance_cm"),
     }  # fmt: skip
+
+
+def _how_chosen(lookup: Lookup) -> str:
+    planned = lookup.get("arrangement.plane_distance_cm")
+    return "plan, not as built" if isinstance(planned, Value) else "the farthest as the room is"
 
 
 def _free_line(
