@@ -56,6 +56,6 @@ def unknown_field(name: str, ref: Ref, known: Kinds) -> Cause:
         return Cause("item", name, ref, f"Supply {words_of(name)}{unit} of {ref}.")
     file = known.described.kinds[field.kind].file
     meaning = field.meaning
-    if meaning[1:2].islower():
+    if meaning[1:2].islower() or meaning.startswith("A "):
         meaning = meaning[0].lower() + meaning[1:]
     return Cause("field", name, ref, f"State {words_of(name)}{unit} of {ref} in {file}: {meaning}")

@@ -5,7 +5,7 @@ from datetime import date
 from readiness.assessment.definition import Measured
 from readiness.assessment.input_gathering import InputGathering
 from readiness.assessment.matching import disagreements, void
-from readiness.assessment.records import Cause, Ref
+from readiness.assessment.records import PROGRAM, Cause, Ref
 from readiness.program.measurement_kinds import measurement_kind
 
 
@@ -36,7 +36,10 @@ class MeasurementSearch(InputGathering):
 
     def wanted(self, measured: Measured, ref: Ref, near: tuple[Cause, ...]) -> tuple[Cause, ...]:
         """Return the measurement that is asked for, and why those at hand do not count."""
-        kind = measurement_kind(measured.kind).attaches_to
+        asked = measurement_kind(measured.kind)
+        kind = asked.attaches_to
         whole = Ref(kind, self.owners(ref).get(kind, ref.id))
-        words = f"Measure {measured.kind.replace('-', ' ')} for {whole}."
+        of = "" if whole == PROGRAM else f" for {whole}"
+        title = asked.title[0].lower() + asked.title[1:]
+        words = f"Measure {title}{of} (a file of the kind {measured.kind})."
         return tuple(sorted({Cause("measurement", measured.kind, whole, words), *near}))

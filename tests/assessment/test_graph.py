@@ -322,7 +322,7 @@ def test_what_is_worked_out_from_a_prediction_asks_for_the_measurement_of_what_i
         made=(made,),
     )
     causes = why_not_measured(of, "arrangement.between_axes_deg", Ref("arrangement", "x"))
-    assert ["Measure angle sweep for arrangement x."] == [cause.words for cause in causes]
+    assert ["Measure profiles at several tilts for arrangement x (a file of the kind angle-sweep)."] == [cause.words for cause in causes]
 
 
 def test_one_question_is_answered_by_the_technique_of_each_arrangement() -> None:

@@ -134,7 +134,7 @@ def test_a_lying_technique_has_no_predicted_depth_dose() -> None:
     graph = graph_of(department(program={"techniques": ("moving-couch",)}))
     found = graph.get("arrangement.r80_mm", arrangement("thin", technique="moving-couch"))
     assert isinstance(found, Gone)
-    assert any("Measure depth dose composite" in cause.words for cause in found.causes)
+    assert any("Measure depth dose of all dual fields together" in cause.words for cause in found.causes)
 
 
 def test_a_beam_outside_the_table_is_to_be_measured() -> None:

@@ -88,7 +88,7 @@ def test_the_prediction_finds_a_mixed_up_convention() -> None:
 
 def test_a_prediction_never_becomes_the_output() -> None:
     """Where nothing was measured or stated there is no output, though one is predicted."""
-    assert "Measure output pair" in words(department(), "arrangement.pair_output_cgy_per_mu")
+    assert "Measure output of the dual field" in words(department(), "arrangement.pair_output_cgy_per_mu")
 
 
 def test_the_factor_is_predicted_until_it_is_measured() -> None:

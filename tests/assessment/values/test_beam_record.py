@@ -66,7 +66,7 @@ def test_a_number_left_out_of_the_record_is_named() -> None:
 
 def test_choices_without_a_record_are_not_as_built() -> None:
     """Without a record the rule waits for one."""
-    assert "Measure as built" in words(department(), "arrangement.as_built_agrees")
+    assert "Measure distance, gap, tilt and degrader as built" in words(department(), "arrangement.as_built_agrees")
     assert "not assessed" == finding(department(), "as-built-record").outcome
 
 
