@@ -103,9 +103,9 @@ def beams_in_air(*, energy_at_source_mev: ArrayLike, path_cm: ArrayLike, density
     if (path > LONGEST_PATH_CM).any():
         raise OutsideValidity(f"the beam model reaches {LONGEST_PATH_CM:g} cm of air")
     if (energy < LOWEST_MEV).any() or (energy > HIGHEST_MEV).any():
+        asked = " to ".join(dict.fromkeys(f"{one:.3g}" for one in (energy.min(), energy.max())))
         raise OutsideValidity(
-            f"the beam model holds for {LOWEST_MEV:g} to {HIGHEST_MEV:g} MeV at the source, not "
-            f"{float(energy.min()):.3g} to {float(energy.max()):.3g} MeV"
+            f"the beam model holds for {LOWEST_MEV:g} to {HIGHEST_MEV:g} MeV at the source, not {asked} MeV"
         )
     cut = np.full(energy.shape, FIRST_CUT_RAD)
     for _ in range(CUT_ITERATIONS):

@@ -11,7 +11,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from readiness.calculations.field_at_plane import HEIGHT_STEP_CM, dual_field_doses, even_grid
-from readiness.calculations.field_setup import STEEPEST_TILT_DEG, FieldSetup
+from readiness.calculations.field_setup import NARROWEST_SPREAD, STEEPEST_TILT_DEG, FieldSetup
 from readiness.calculations.helpful_measurement import measurement_against, measurement_that_helps_most
 from readiness.calculations.normal_samples import SAMPLES, normal_samples
 from readiness.calculations.tilt_study import profile_percents, tilt_study
@@ -187,10 +187,10 @@ def _propagated(
 
 
 def _moved(setup: FieldSetup, judged: _Judged, name: str, by: float) -> tuple[FieldSetup, _Judged]:
-    """Return setup and geometry with one input moved."""
+    """Return setup and geometry with one input moved, as far as it has a meaning."""
     numbers = dict(judged.__dict__)
     if name == "foil spread":
-        setup = setup.but(foil_spread=setup.foil_spread + by)
+        setup = setup.but(foil_spread=max(NARROWEST_SPREAD, setup.foil_spread + by))
     elif name == "energy":
         setup = setup.but(energy_at_source_mev=setup.energy_at_source_mev + by)
     elif name == "scatter model":
@@ -198,7 +198,7 @@ def _moved(setup: FieldSetup, judged: _Judged, name: str, by: float) -> tuple[Fi
     elif name == "distance":
         numbers["plane_distance_cm"] += by
     else:
-        numbers["tilt_deg"] += by
+        numbers["tilt_deg"] = max(0.0, numbers["tilt_deg"] + by)
     return setup, _Judged(**numbers)
 
 

@@ -124,6 +124,12 @@ def test_input_moved_out_of_the_model_is_refused() -> None:
         found(setup=common_setup(energy_at_source_mev=3.2).without_degrader())
 
 
+def test_inputs_are_not_moved_below_their_meaning() -> None:
+    """Two horizontal fields, and foils narrower than their own uncertainty, still have an uncertainty."""
+    assert found(tilt_deg=0.0).vertical_percent.sd > 0
+    assert found(setup=common_setup(foil_spread=0.04), foil_spread_sd=0.05).best_tilt_deg.sd > 0
+
+
 def test_samples_are_normal_and_the_same_every_time() -> None:
     """Samples have mean 0, standard deviation 1, hardly any correlation, and no chance in them."""
     samples = normal_samples(inputs=5)
