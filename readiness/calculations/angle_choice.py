@@ -236,7 +236,11 @@ def remedy_for_uniformity(*, angles: Table, plane_distance_cm: float, farthest_r
         cure = "Not even the best tilt brings the vertical profile within its limit here, distance does: "
     needed = distance_for_both_limits_cm(angles=angles)
     if needed is None:
-        return "No distance studied brings both profiles within their limits at its best tilt."
+        last = max(rows)
+        return (
+            f"No distance studied, up to {last:.0f} cm, brings both profiles within their limits at its best"
+            " tilt: study another beam, degrader or opening."
+        )
     farther = needed - plane_distance_cm
     if needed <= farthest_reachable_cm:
         way = "farther" if farther > 0 else "nearer"

@@ -191,10 +191,11 @@ def test_nothing_to_remedy_where_both_limits_are_kept() -> None:
 
 
 def test_no_distance_is_said_to_help_if_none_does() -> None:
-    """If no distance studied keeps both limits, that is said."""
+    """If no distance studied keeps both limits, that is said, and what else can be studied."""
     table = angles_by_distance(study=made([12.0, 9.0, 11.0], horizontal=6.0), metric=HALF_RANGE, **LIMITS)
     assert distance_for_both_limits_cm(angles=table) is None
     words = remedy_for_uniformity(angles=table, plane_distance_cm=400, farthest_reachable_cm=500)
-    assert words.startswith("No distance studied")
+    assert words.startswith("No distance studied, up to 400 cm,")
+    assert "study another beam, degrader or opening" in words
     with pytest.raises(OutsideValidity, match="does not hold a distance of 390"):
         remedy_for_uniformity(angles=table, plane_distance_cm=390, farthest_reachable_cm=500)
