@@ -11,7 +11,7 @@ from collections.abc import Collection, Sequence
 from dataclasses import dataclass
 from datetime import date, timedelta
 
-from readiness.calculations.course_consistency import cycles_per_week
+from readiness.calculations.course_numbers import cycles_per_week
 from readiness.calculations.treatment_days import TreatmentDays
 from readiness.calculations.working_days import LONGEST_CLOSURE_DAYS, WEEKDAYS
 from readiness.errors import OutsideValidity

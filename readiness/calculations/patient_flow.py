@@ -7,7 +7,7 @@ sessions, its sessions a week while it runs, and the weeks for which a patient h
 
 import math
 
-from readiness.calculations.course_consistency import undisturbed_weeks
+from readiness.calculations.course_numbers import undisturbed_weeks
 from readiness.quantities import Scalar, Table
 
 WEEKS_PER_YEAR = 365.25 / 7

@@ -6,7 +6,7 @@ from datetime import date
 from readiness.assessment.definition import Definition, derived
 from readiness.calculations.boost_calendar import boost_calendar, last_day
 from readiness.calculations.course_calendar import CourseCalendar, course_calendar, field_sets
-from readiness.calculations.course_consistency import course_dose, cycles_per_week, undisturbed_weeks
+from readiness.calculations.course_numbers import course_dose, cycles_per_week, undisturbed_weeks
 from readiness.calculations.patient_shields import shield_schedule, shield_use
 from readiness.calculations.treatment_days import TreatmentDays, treatment_days
 from readiness.calculations.working_days import working_days, years_without_closed_dates

@@ -4,7 +4,7 @@ from dataclasses import replace
 
 from readiness.assessment.definition import Definition, derived, one_of_techniques
 from readiness.assessment.values.dose import PlannedCycles
-from readiness.calculations import course_consistency
+from readiness.calculations import course_numbers
 from readiness.calculations.leakage_workload import LeakageWorkload, leakage_workload
 from readiness.calculations.moving_couch_dose import CouchPass
 from readiness.calculations.xray_workload import (
@@ -24,7 +24,7 @@ def busiest_week_cycles(*, peak_patients: int, courses: Table) -> float:
     if not courses.rows:
         raise OutsideValidity("there is no course, so that no workload can be formed")
     return peak_patients * max(
-        course_consistency.cycles_per_week(
+        course_numbers.cycles_per_week(
             sessions_per_cycle=int(course["sessions_per_cycle"] or 0),
             sessions_per_week=int(course["sessions_per_week"] or 0),
         )
