@@ -1,4 +1,4 @@
-"""What follows from the numbers of a course: its dose, the cycles of a week, the weeks it takes undisturbed."""
+"""What follows from the numbers of a course: its dose, cycles of a week, and weeks if nothing disturbs it."""
 
 import math
 
