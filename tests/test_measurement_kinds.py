@@ -47,7 +47,7 @@ def test_every_kind_the_design_names_is_described() -> None:
     expected = {
         "single-profile", "dual-profile", "angle-sweep", "depth-dose-single", "depth-dose-composite",
         "xray-component", "output-pair", "b-factor", "as-built", "survey", "in-vivo-readings", "end-to-end",
-        "shield-transmission", "mode-check", "couch-dose-rate",
+        "shield-transmission", "mode-check", "couch-dose-rate", "couch-profile",
     }  # fmt: skip
     assert expected == KINDS.keys()
     assert all(kind == described["kind"] for kind, described in KINDS.items())

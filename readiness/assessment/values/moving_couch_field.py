@@ -2,11 +2,17 @@
 
 from functools import lru_cache
 
-from readiness.assessment.definition import Definition
+from readiness.assessment.definition import Definition, Measured
+from readiness.assessment.values.beam_evenness import judged
+from readiness.assessment.values.beam_profiles import METRICS
+from readiness.assessment.values.readings import numbers
 from readiness.calculations.couch_field import CouchField, couch_field
 from readiness.calculations.field_setup import FieldSetup
 from readiness.calculations.moving_couch_dose import couch_pass, couch_speed_needed
+from readiness.calculations.profile_analysis import ProfileEvaluation, evaluate_profile
 from readiness.quantities import Table
+
+COUCH_PROFILE = "couch-profile"
 
 
 @lru_cache(maxsize=64)
@@ -47,6 +53,23 @@ def speed_for_dose(*, rate_profile: Table, incidence_dose_wanted_cgy: float, lyi
     )
 
 
+@lru_cache(maxsize=64)
+def measured_across(
+    *, kind: str, table: Table, half_width_cm: float, metric: str, normalisation: str, smoothing: str
+) -> ProfileEvaluation | None:
+    """Return how even a measured pass is across; None for another kind of measurement."""
+    if kind != COUCH_PROFILE:
+        return None
+    return evaluate_profile(
+        positions_cm=numbers(table, "across_cm"),
+        readings=numbers(table, "relative_dose"),
+        half_length_cm=half_width_cm,
+        metric=METRICS.get(metric, metric),
+        normalisation=normalisation,
+        smoothing=smoothing,
+    )
+
+
 def _part(name: str, meaning: str, part: str) -> Definition:
     """Return a part of the predicted field."""
     return Definition(
@@ -80,6 +103,40 @@ DEFINITIONS: tuple[Definition, ...] = (
         "couch_across_deviation_percent",
         "Largest deviation of a pass's dose across a lying patient from the middle, as predicted.",
         "across_deviation_percent",
+    ),
+    Definition(
+        "arrangement.predicted_couch_across_percent",
+        "Unevenness of a pass across a lying patient in the metric by which it is judged, as predicted.",
+        by=judged,
+        takes={
+            "half_range_percent": "arrangement.couch_across_half_range_percent",
+            "deviation_percent": "arrangement.couch_across_deviation_percent",
+            "metric": "program.uniformity_metric",
+        },
+        source="own-fit",
+        known="fit",
+    ),
+    Definition(
+        "measurement.couch_profile",
+        "Evenness of a measured pass across a moving couch.",
+        by=measured_across,
+        takes={
+            "kind": "measurement.kind",
+            "table": "measurement.table",
+            "normalisation": "measurement.normalisation",
+            "smoothing": "measurement.smoothing",
+            "metric": "program.uniformity_metric",
+            "half_width_cm": "criterion.uniformity_half_width_cm",
+        },
+        internal=True,
+    ),
+    Definition(
+        "arrangement.couch_across_percent",
+        "Unevenness of a pass across a lying patient in the metric by which it is judged.",
+        otherwise="arrangement.predicted_couch_across_percent",
+        measured=Measured(
+            COUCH_PROFILE, takes={"profile": "measurement.couch_profile"}, part="judged_percent"
+        ),
     ),
     _part("couch_profile_across", "Dose of a pass across a lying patient, as predicted.", "across_profile"),
     _part(

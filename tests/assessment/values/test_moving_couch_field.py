@@ -1,6 +1,7 @@
 """The predicted field over a lying patient: evenness across, speed and dose in either direction."""
 
 from dataclasses import replace
+from datetime import date
 
 import pytest
 from scipy.integrate import simpson
@@ -8,12 +9,14 @@ from scipy.integrate import simpson
 from readiness.assessment.graph import Graph
 from readiness.assessment.records import Ref, Value
 from readiness.assessment.values import ALL
+from readiness.program.items import Item
+from readiness.quantities import Table
 from tests.assessment.small import graph, item, program
 
 COUCH = Ref("arrangement", "lying")
 
 
-def lying(**plan: float) -> Graph:
+def lying(*more: Item, **plan: float) -> Graph:
     """Return a couch 170 cm below the source of a 6 MeV beam."""
     whole = {"room": "a", "machine": "l", "beam": "e6", "degrader": "s", "couch": "c", "plan": "p"}
     of = program(
@@ -27,9 +30,9 @@ def lying(**plan: float) -> Graph:
         item("plan", "p", whole, technique="moving-couch", degrader_gap_cm=30.0, **plan),
         tallest_patient_cm=180.0,
     )  # fmt: skip
-    made = item("arrangement", "lying", whole, technique="moving-couch", side_deg=0)
+    made = (item("arrangement", "lying", whole, technique="moving-couch", side_deg=0), *more)
     empty_room = replace(of, known_lists=of.known_lists | {("obstruction", "a")})
-    return graph(empty_room, *ALL, made=(made,))
+    return graph(empty_room, *ALL, made=made)
 
 
 def number(of: Graph, name: str) -> float:
@@ -63,3 +66,18 @@ def test_a_short_distance_is_uneven_across() -> None:
     of = lying()
     assert number(of, "couch_across_half_range_percent") > 15
     assert number(of, "couch_across_deviation_percent") > number(of, "couch_across_half_range_percent")
+
+
+def test_a_measured_pass_replaces_the_predicted_one() -> None:
+    """5 % lower at 30 cm than in the middle is a largest deviation of 5 %, whatever was predicted."""
+    table = Table.of(["across_cm", "relative_dose"], [(float(at), 1 - 0.05 * abs(at) / 30) for at in range(-40, 41, 5)])
+    owners = {"room": "a", "machine": "l", "beam": "e6", "degrader": "s", "couch": "c"}
+    profile = item("measurement", "across", owners, **owners, kind="couch-profile", date=date(2026, 11, 20), table=table,
+                   normalisation="beam-axis", smoothing="none")  # fmt: skip
+    got = lying(profile).get("arrangement.couch_across_percent", COUCH)
+    assert isinstance(got, Value)
+    assert ("measured", pytest.approx(5.0)) == (got.basis, got.value)
+    before = lying().get("arrangement.couch_across_percent", COUCH)
+    assert isinstance(before, Value)
+    assert "predicted" == before.basis
+    assert before.value == number(lying(), "couch_across_deviation_percent")
