@@ -3,7 +3,7 @@ Which measurement stands for which item, and why another one does not.
 
 A measurement attaches only when what it was made with agrees with the choices: ids exactly, distance and
 gap within 1 cm, tilt within 0.2 degrees, opening and collimator angle, MU ratio; when it is newer than the
-last change of room, machine or stand; and when its instrument was in calibration that day.
+last change of room, machine or stand; and when its instrument can measure it and was in calibration that day.
 """
 
 from collections.abc import Callable, Mapping
@@ -60,6 +60,8 @@ def _disagreement(
         return (
             [] if given == wanted else [f"measured with {key} {_short(given)}, the plan is {_short(wanted)}"]
         )
+    if key == "mode":
+        return _other_mode(stated, item, owners, get)
     if key not in _COMPARED or stated is None:
         return []
     name, allowed = _COMPARED[key]
@@ -81,6 +83,19 @@ def _disagreement(
     ]
 
 
+def _other_mode(stated: object, item: Ref, owners: Mapping[str, str], get: Lookup) -> list[str]:
+    """Return that a measurement was made in another mode than the one that the beam is."""
+    value = get("beam.high_rate", item) if "beam" in {item.kind, *owners} else None
+    if stated is None or not isinstance(value, Value):
+        return []
+    planned = "high-rate" if value.value else "ordinary"
+    return (
+        []
+        if stated == planned
+        else [f"measured in the {stated} mode, not in the {planned} mode of this beam"]
+    )
+
+
 def _short(item_id: str) -> str:
     return item_id.rpartition("/")[2]
 
@@ -99,6 +114,9 @@ def void(measurement: Item, program: Program, as_of: date) -> str:
         return f"it is dated {done}, later than {as_of}"
     instrument = program.find("instrument", measurement.owners.get("instrument", ""))
     if instrument is not None:
+        types, given = measurement_kind(str(measurement.get("kind"))).instruments, instrument.get("type")
+        if types and given is not None and given not in types:
+            return f"instrument {instrument.id} is of type {given}, not {' or '.join(types)}"
         reason = calibration_fault(instrument, program, done)
         if reason:
             return reason

@@ -10,12 +10,13 @@ from readiness.quantities import Table
 
 NAME = "survey-to-fill.csv"
 _KIND = "survey"
+_CHOICES = ("degrader", "side_deg")  # what the readings depend on, written in if the plan states it
 
 
 def survey_sheet(assessment: Assessment) -> bytes | None:
     """Return the file, or None if no place to survey is known; readings and conditions are left blank."""
     lookup = Lookup(assessment)
-    spots = lookup.get("arrangement.beam_spots")
+    spots = lookup.get("arrangement.field_spots")
     row = lookup.row
     if row is None or not isinstance(spots, Value) or not isinstance(spots.value, Table):
         return None
@@ -28,11 +29,13 @@ def survey_sheet(assessment: Assessment) -> bytes | None:
     if not places:
         return None
     gantries = dict.fromkeys(entry["gantry_deg"] for entry in spots.value.records())
+    side = lookup.get("arrangement.side_deg")
     known = {kind: item.rpartition("/")[2] for kind, item in row.parts} | {"kind": _KIND}
+    if isinstance(side, Value):
+        known["side_deg"] = str(side.value)
     stream = io.StringIO()
-    for key in required_header(_KIND):
+    for key in (*required_header(_KIND), *(each for each in _CHOICES if each in known)):
         stream.write(f"# {key}: {known.get(key, '')}".rstrip() + "\n")
-    stream.write("# phantom:\n# note:\n")
     writer = csv.writer(stream, lineterminator="\n")
     writer.writerow(("barrier", "gantry_deg", "reading_usv_per_h", "place"))
     for barrier, title in places:

@@ -11,7 +11,7 @@ from readiness.program.field_schema import FieldSchema
 from readiness.program.fields import Schemas, check_references, schemas
 from readiness.resources import schema_file
 
-_OPTIONAL_KEYS: Mapping[str, tuple[str, ...]] = {"outdated_by": ()}
+_OPTIONAL_KEYS: Mapping[str, tuple[str, ...]] = {"outdated_by": (), "instruments": ()}
 _NEEDED_KEYS = {"kind", "title", "meaning", "attaches_to", "agrees_on", "min_rows", "header", "columns"}
 _KEYS = _NEEDED_KEYS | set(_OPTIONAL_KEYS)
 _COLUMN_TYPES = {"text", "word", "number", "whole number", "date", "yes or no", "reference"}
@@ -27,6 +27,7 @@ class MeasurementKind:
         attaches_to: Kind of item whose claims it replaces.
         agrees_on: Header keys that must agree with that item's choices before it attaches.
         outdated_by: Dates of the program (value names) after which a measurement no longer counts.
+        instruments: Types of instrument that can measure it; any, if none is named.
         min_rows: Fewest rows with which the file can be used at all.
         header: Key -> field, in the order in which people write them.
         columns: Name -> field.
@@ -38,6 +39,7 @@ class MeasurementKind:
     attaches_to: str
     agrees_on: tuple[str, ...]
     outdated_by: tuple[str, ...]
+    instruments: tuple[str, ...]
     min_rows: int
     header: Mapping[str, FieldSchema]
     columns: Mapping[str, FieldSchema]
@@ -70,6 +72,7 @@ def load_measurement_kind(path: Path, known: Schemas) -> MeasurementKind:
         attaches_to=description["attaches_to"],
         agrees_on=tuple(description["agrees_on"]),
         outdated_by=tuple(description["outdated_by"]),
+        instruments=tuple(description["instruments"]),
         min_rows=description["min_rows"],
         header=_fields(description["header"], known),
         columns=_fields(description["columns"], known),
@@ -104,6 +107,11 @@ def _check(kind: MeasurementKind, where: str, known: Schemas) -> None:
         dated = known.field(name)
         if dated is None or dated.type != "date":
             raise CatalogueError(f"{where}: outdated by {name!r}, which is no date of the program folder")
+    type_of_instrument = known.field("instrument.type")
+    types = type_of_instrument.words if type_of_instrument is not None else ()
+    unknown = [name for name in kind.instruments if name not in types]
+    if unknown:
+        raise CatalogueError(f"{where}: {unknown[0]!r} is no type of instrument")
     missing = [name for name in kind.agrees_on if name not in kind.header]
     if missing:
         raise CatalogueError(f"{where}: agrees on {missing[0]!r}, which the header does not hold")

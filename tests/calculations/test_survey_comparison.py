@@ -6,8 +6,10 @@ from readiness.calculations.barrier_dose import weekly_dose
 from readiness.calculations.survey_comparison import (
     compare_survey,
     predicted_readings,
+    readings_of_fields,
     weekly_dose_from_survey,
 )
+from readiness.errors import OutsideValidity
 from readiness.quantities import Table
 
 DOSE = weekly_dose(
@@ -36,8 +38,7 @@ CASE = {
     "contributions": DOSE.contributions,
     "occupancy": 0.2,
     "spot": "head",
-    "toward_head_deg": 254.0,
-    "toward_feet_deg": 286.0,
+    "fields": Table.of(("field", "gantry_deg"), [("head", 254.0), ("feet", 286.0)]),
     "own_field_share": 0.75,
     "mu_per_week": 80000.0,
     "rate_mu_per_min": 1000.0,
@@ -85,8 +86,7 @@ def test_a_survey_as_predicted_gives_the_weekly_dose_back():
     """Readings as predicted, both fields, empty and summed over the week, are the added weekly dose."""
     table = predict()
     back = weekly_dose_from_survey(
-        head_usv_per_h=reading(table, "head", "empty"),
-        feet_usv_per_h=reading(table, "feet", "empty"),
+        readings_usv_per_h=(reading(table, "head", "empty"), reading(table, "feet", "empty")),
         mu_per_week=80000.0,
         rate_mu_per_min=1000.0,
         occupancy=0.2,
@@ -138,16 +138,59 @@ def test_missing_and_unknown_places():
     assert (None, None, 0) == (found.largest_ratio, found.largest_reading_usv_per_h, found.compared_readings)
 
 
-def test_below_background_counts_as_zero():
-    """A reading below the background is no negative dose."""
-    found = compare(measured(("east wall", 254.0, 0.05)))
+def test_barely_below_background_counts_as_zero():
+    """A reading that scatters below the background is no negative dose."""
+    found = compare(measured(("east wall", 254.0, 0.09)))
     assert 0.0 == found.largest_ratio
 
 
+@pytest.mark.parametrize("given", [0.0, 0.05])
+def test_a_reading_without_its_background_is_no_zero(given):
+    """A reading clearly below the one without beam has lost its background, or the meter was off."""
+    with pytest.raises(OutsideValidity, match="taken off already"):
+        compare(measured(("east wall", 254.0, given)))
+    with pytest.raises(OutsideValidity, match="taken off already"):
+        of_fields(("east wall", 254.0, given), ("east wall", 286.0, 5.0))
+
+
+def of_fields(*rows, fields=CASE["fields"]):
+    return readings_of_fields(
+        measured=measured(*rows), barrier="east wall", background_usv_per_h=0.1, fields=fields
+    )
+
+
+def test_the_highest_of_several_readings_counts():
+    """A joint that leaks decides, in the comparison and in the dose."""
+    rows = (("east wall", 254.0, 0.3), ("east wall", 254.5, 9.1), ("east wall", 286.0, 0.3))
+    found = compare(measured(*rows))
+    assert 9.0 == pytest.approx(found.largest_reading_usv_per_h)
+    assert (9.0, 0.2) == pytest.approx(of_fields(*rows))
+
+
+def test_readings_at_other_angles_are_named():
+    """Angles of the other beam side are told beside those that are missing."""
+    with pytest.raises(OutsideValidity, match="at gantry 254 .its readings there are at 74, 106."):
+        of_fields(("east wall", 74.0, 0.3), ("east wall", 106.0, 0.3))
+
+
+DOWN = Table.of(("field", "gantry_deg"), [("down", 0.0)])
+
+
+def test_one_vertical_field_has_all_x_rays_and_all_mu():
+    """Its readings over the week give the added dose back; 359.5 degrees is straight down too."""
+    table = predict(spot="down", fields=DOWN, own_field_share=None)
+    expected = LINES["added x rays"] * PER_H + LINES["added leakage"] * PER_H
+    assert expected == pytest.approx(reading(table, "down", "empty"))
+    assert {""} == set(table.column("remark"))
+    (net,) = of_fields(("east wall", 359.5, expected + 0.1), fields=DOWN)
+    week = weekly_dose_from_survey(
+        readings_usv_per_h=(net,), mu_per_week=80000.0, rate_mu_per_min=1000.0, occupancy=0.2
+    )
+    assert 0.2 * (LINES["added x rays"] + LINES["added leakage"]) == pytest.approx(week)
+
+
 def test_impossible():
-    """The same place twice, unknown words and impossible numbers are refused."""
-    with pytest.raises(ValueError, match="measured twice"):
-        compare(measured(("east wall", 254.0, 1.0), ("east wall", 254.5, 1.0)))
+    """Unknown words and impossible numbers are refused."""
     with pytest.raises(ValueError, match="empty or occupied"):
         compare(measured(), patient="phantom")
     with pytest.raises(ValueError, match="background"):
@@ -160,11 +203,11 @@ def test_impossible():
         predict(own_field_share=1.5)
     with pytest.raises(ValueError, match="above zero"):
         predict(mu_per_week=0.0)
-    with pytest.raises(ValueError, match="readings and MU"):
+    with pytest.raises(ValueError, match="readings and MU must not"):
         weekly_dose_from_survey(
-            head_usv_per_h=-1.0, feet_usv_per_h=0.0, mu_per_week=1.0, rate_mu_per_min=1.0, occupancy=1.0
+            readings_usv_per_h=(-1.0, 0.0), mu_per_week=1.0, rate_mu_per_min=1.0, occupancy=1.0
         )
     with pytest.raises(ValueError, match="MU rate and occupancy"):
         weekly_dose_from_survey(
-            head_usv_per_h=1.0, feet_usv_per_h=0.0, mu_per_week=1.0, rate_mu_per_min=1.0, occupancy=0.0
+            readings_usv_per_h=(1.0, 0.0), mu_per_week=1.0, rate_mu_per_min=1.0, occupancy=0.0
         )

@@ -1,7 +1,6 @@
 """A barrier seen from an arrangement against other limits: hour, year, dose rate, commissioning week."""
 
-from readiness.assessment.definition import Definition, derived, one_of_techniques
-from readiness.assessment.values.shielding_places import LEVEL
+from readiness.assessment.definition import Definition, derived
 from readiness.calculations.barrier_dose import WeeklyDose
 from readiness.calculations.dose_limits import (
     AnyHourDose,
@@ -46,19 +45,6 @@ def commissioning_week(
     return week_of_tests_usv(
         before_usv_per_week=dose.before_usv_per_week, added_usv_per_week=dose.added_usv_per_week,
         added_mu=cycles_per_week * cycle_mu + (qa_mu or 0.0), tests_mu=commissioning_mu,
-    )  # fmt: skip
-
-
-def rate_of_vertical(
-    *, side_deg: int, dose: WeeklyDose, cycles_per_week: float, cycle_mu: int, qa_mu: float | None,
-    rate_mu_per_min: float,
-) -> float:  # fmt: skip
-    """Return the dose rate behind a barrier while the one vertical beam is on: an hour of beam."""
-    if side_deg:
-        raise OutsideValidity(LEVEL)
-    return week_of_tests_usv(
-        before_usv_per_week=0.0, added_usv_per_week=dose.added_rate_usv_per_week,
-        added_mu=cycles_per_week * cycle_mu + (qa_mu or 0.0), tests_mu=60 * rate_mu_per_min,
     )  # fmt: skip
 
 
@@ -161,31 +147,9 @@ DEFINITIONS: tuple[Definition, ...] = (
         source="own-arithmetic",
         known="derived",
     ),
-    one_of_techniques(
+    Definition(
         "exposure.instantaneous_usv_per_h",
         "Largest dose rate while one beam of the mode is on, patient in place; no occupancy counted.",
-        standing="exposure.tilted_rate_usv_per_h",
-        lying="exposure.vertical_rate_usv_per_h",
-    ),
-    Definition(
-        "exposure.vertical_rate_usv_per_h",
-        "Dose rate while the vertical beam is on; no occupancy counted.",
-        by=rate_of_vertical,
-        takes={
-            "side_deg": "arrangement.side_deg",
-            "dose": "exposure.week",
-            "cycles_per_week": "program.busiest_week_cycles_per_week",
-            "cycle_mu": "arrangement.workload_mu",
-            "qa_mu": "protection.qa_mu_per_week_mu?",
-            "rate_mu_per_min": "beam.rate_mu_per_min",
-        },
-        source="own-arithmetic",
-        known="derived",
-        formula="R = dose of the week / (T MU of the week) x MU an hour",
-    ),
-    Definition(
-        "exposure.tilted_rate_usv_per_h",
-        "Largest dose rate while one tilted beam is on, patient in place; no occupancy counted.",
         by=highest_reading,
         takes={"readings": "exposure.predicted_readings"},
         source="own-arithmetic",

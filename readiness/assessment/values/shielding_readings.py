@@ -6,6 +6,7 @@ from readiness.calculations.survey_comparison import (
     compare_survey,
     predicted_readings,
     readings_of_fields,
+    same_gantry,
     weekly_dose_from_survey,
 )
 from readiness.errors import OutsideValidity
@@ -15,35 +16,38 @@ WORKSHEET = ("place", "gantry_deg", "aimed_at", "empty_usv_per_h", "occupied_usv
 COMPARED = ("place", "gantry_deg", "patient_place", "predicted_usv_per_h", "measured_usv_per_h",
             "measured_over_predicted")  # fmt: skip
 SURVEY = "no prediction: measure"
+OCCUPIED = "occupied"
 _READ = {
     "readings": "measurement.table",
     "rate_mu_per_min": "measurement.rate_mu_per_min",
     "background_usv_per_h": "measurement.background_usv_per_h",
-    "phantom": "measurement.phantom?",
+    "patient_place": "measurement.patient_place",
     "barrier": "barrier.id",
 }
 
 
 def axis_spot(*, surface: str, spots: Table) -> str:
-    """Return the field whose axis meets a surface: head, feet, both or neither."""
+    """Return the field whose axis meets a surface, both or neither."""
     met = {str(row["field"]) for row in spots.records() if row["ray"] == "axis" and row["surface"] == surface}
     return "both" if len(met) == 2 else next(iter(met), "neither")
 
 
-def gantry_of(spots: Table, field: str) -> float:
-    """Return the gantry angle of a field."""
-    return float(str(next(row["gantry_deg"] for row in spots.records() if row["field"] == field)))
+def fields_of(spots: Table) -> Table:
+    """Return each field and its gantry angle."""
+    return Table(
+        ("field", "gantry_deg"),
+        tuple(dict.fromkeys((row["field"], row["gantry_deg"]) for row in spots.records())),
+    )
 
 
 def readings(
     *, barrier: str, contributions: Table, occupancy: float, surface: str, spots: Table,
     cycles_per_week: float, cycle_mu: int, qa_mu: float | None, rate_mu_per_min: float,
 ) -> Table:  # fmt: skip
-    """Return the readings to expect behind a barrier, both fields, patient's place empty and occupied."""
+    """Return the readings to expect behind a barrier, each field, patient's place empty and occupied."""
     return predicted_readings(
         barrier=barrier, contributions=contributions, occupancy=occupancy,
-        spot=axis_spot(surface=surface, spots=spots), toward_head_deg=gantry_of(spots, "head"),
-        toward_feet_deg=gantry_of(spots, "feet"), own_field_share=None,
+        spot=axis_spot(surface=surface, spots=spots), fields=fields_of(spots), own_field_share=None,
         mu_per_week=cycles_per_week * cycle_mu + (qa_mu or 0.0), rate_mu_per_min=rate_mu_per_min,
     )  # fmt: skip
 
@@ -52,7 +56,7 @@ def worksheet(*, places: tuple[str, ...], readings: tuple[Table | None, ...], sp
     """Return every place to survey with the reading to expect; none where only a reading can tell."""
     rows: list[tuple[Scalar, ...]] = []
     for place, expected in zip(places, readings, strict=True):
-        for field in ("head", "feet"):
+        for field, gantry in fields_of(spots).rows:
             rates = (
                 {row["patient"]: row for row in expected.records() if row["field"] == field}
                 if expected is not None
@@ -61,50 +65,44 @@ def worksheet(*, places: tuple[str, ...], readings: tuple[Table | None, ...], sp
             empty, occupied = rates.get("empty", {}), rates.get("occupied", {})
             remark = occupied.get("remark", SURVEY)
             rates_expected = (empty.get("predicted_usv_per_h"), occupied.get("predicted_usv_per_h"))
-            rows.append((place, gantry_of(spots, field), field, *rates_expected, remark))
+            rows.append((place, gantry, field, *rates_expected, remark))
     return Table(WORKSHEET, tuple(rows))
 
 
 def compared(
     *, expected: Table, expected_mu_per_min: float, readings: Table, rate_mu_per_min: float,
-    background_usv_per_h: float, phantom: str | None, barrier: str,
+    background_usv_per_h: float, patient_place: str, barrier: str, limit_ratio: float,
 ) -> SurveyComparison:  # fmt: skip
-    """Return how the readings behind one barrier stand to those expected."""
+    """Return how the readings behind one barrier stand to those expected; one too high needs no other."""
     here = Table(readings.columns, tuple(row for row in readings.rows if row[0] == barrier))
     found = compare_survey(
         predicted=expected, predicted_at_mu_per_min=expected_mu_per_min, measured=here,
         measured_at_mu_per_min=rate_mu_per_min,
-        background_usv_per_h=background_usv_per_h, patient="occupied" if phantom else "empty",
+        background_usv_per_h=background_usv_per_h, patient=patient_place,
     )  # fmt: skip
-    if found.missing:
-        raise OutsideValidity(f"the survey has no reading of {', '.join(found.missing)}")
+    if found.missing and not (found.largest_ratio or 0.0) > limit_ratio:
+        others = f" (but of {', '.join(found.not_predicted)})" if found.not_predicted else ""
+        raise OutsideValidity(f"the survey has no reading of {', '.join(found.missing)}{others}")
     return found
 
 
 def surveyed_week(
-    *, readings: Table, rate_mu_per_min: float, background_usv_per_h: float, phantom: str | None,
+    *, readings: Table, rate_mu_per_min: float, background_usv_per_h: float, patient_place: str,
     barrier: str, spots: Table, cycles_per_week: float, cycle_mu: int, qa_mu: float | None, occupancy: float,
 ) -> float:  # fmt: skip
     """Return what the program adds in the busiest week according to the survey."""
-    if not phantom:
+    if patient_place != OCCUPIED:
         raise OutsideValidity(
             "the survey was made without a scattering body at the plane; the patient's scatter is not in it"
         )
-    head, feet = readings_of_fields(
+    net = readings_of_fields(
         measured=readings, barrier=barrier, background_usv_per_h=background_usv_per_h,
-        toward_head_deg=gantry_of(spots, "head"), toward_feet_deg=gantry_of(spots, "feet"),
+        fields=fields_of(spots),
     )  # fmt: skip
     return weekly_dose_from_survey(
-        head_usv_per_h=head, feet_usv_per_h=feet, rate_mu_per_min=rate_mu_per_min, occupancy=occupancy,
+        readings_usv_per_h=net, rate_mu_per_min=rate_mu_per_min, occupancy=occupancy,
         mu_per_week=cycles_per_week * cycle_mu + (qa_mu or 0.0),
     )  # fmt: skip
-
-
-def part_of_goal(
-    *, added_usv_per_week: float, before_usv_per_week: float | None, goal_msv_per_week: float
-) -> float:
-    """Return existing dose and surveyed addition as a part of the goal; the addition alone at a door."""
-    return (added_usv_per_week + (before_usv_per_week or 0.0)) / (1000 * goal_msv_per_week)
 
 
 def comparison(*, places: tuple[str, ...], compared: tuple[Table | None, ...]) -> Table:
@@ -126,27 +124,27 @@ def places_missing(
     """Return the places and fields without a reading, or "none"."""
     missing = []
     for barrier, title in zip(barriers, titles, strict=True):
-        for field in ("head", "feet"):
-            gantry = gantry_of(spots, field)
+        for gantry in fields_of(spots).column("gantry_deg"):
+            angle = float(str(gantry))
             if not any(
-                row["barrier"] == barrier and abs(float(str(row["gantry_deg"])) - gantry) <= 1.0
+                row["barrier"] == barrier and same_gantry(row=row, gantry_deg=angle)
                 for row in readings.records()
             ):
-                missing.append(f"{title or barrier} with the gantry at {gantry:g} degrees")
+                missing.append(f"{title or barrier} with the gantry at {angle:g} degrees")
     return "; ".join(missing) or "none"
 
 
 DEFINITIONS: tuple[Definition, ...] = (
     Definition(
         "exposure.predicted_readings",
-        "Dose rates to expect behind the barrier: both fields, patient's place empty and occupied.",
+        "Dose rates to expect behind the barrier: each field, patient's place empty and occupied.",
         by=readings,
         takes={
             "barrier": "barrier.id",
             "contributions": "exposure.contributions",
             "occupancy": "barrier.occupancy",
             "surface": "barrier.surface",
-            "spots": "arrangement.beam_spots",
+            "spots": "arrangement.field_spots",
             "cycles_per_week": "program.busiest_week_cycles_per_week",
             "cycle_mu": "arrangement.workload_mu",
             "qa_mu": "protection.qa_mu_per_week_mu?",
@@ -164,7 +162,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         {
             "places": "each exposure.title",
             "readings": "each exposure.predicted_readings?",
-            "spots": "arrangement.beam_spots",
+            "spots": "arrangement.field_spots",
         },
     ),
     Definition(
@@ -176,6 +174,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             {
                 "expected": "exposure.predicted_readings",
                 "expected_mu_per_min": "beam.rate_mu_per_min",
+                "limit_ratio": "criterion.survey_over_predicted_ratio",
                 **_READ,
             },
             part="rows",
@@ -192,6 +191,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             {
                 "expected": "exposure.predicted_readings",
                 "expected_mu_per_min": "beam.rate_mu_per_min",
+                "limit_ratio": "criterion.survey_over_predicted_ratio",
                 **_READ,
             },
             part="largest_ratio",
@@ -207,7 +207,7 @@ DEFINITIONS: tuple[Definition, ...] = (
             surveyed_week,
             {
                 **_READ,
-                "spots": "arrangement.beam_spots",
+                "spots": "arrangement.field_spots",
                 "cycles_per_week": "program.busiest_week_cycles_per_week",
                 "cycle_mu": "arrangement.workload_mu",
                 "qa_mu": "protection.qa_mu_per_week_mu?",
@@ -216,17 +216,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         ),
         source="own-arithmetic",
         known="derived",
-        formula="H = T (R_head + R_feet)/2 x MU of the week / MU an hour",
-    ),
-    derived(
-        "exposure.surveyed_goal_ratio",
-        "Existing dose and surveyed addition as a part of the weekly goal; at a door the addition alone.",
-        part_of_goal,
-        {
-            "added_usv_per_week": "exposure.surveyed_added_usv_per_week",
-            "before_usv_per_week": "exposure.before_usv_per_week?",
-            "goal_msv_per_week": "barrier.design_goal_msv_per_week",
-        },
+        formula="H = T x mean of the readings of all fields x MU of the week / MU an hour",
     ),
     derived(
         "arrangement.survey_compared",
@@ -244,7 +234,7 @@ DEFINITIONS: tuple[Definition, ...] = (
                 "readings": "measurement.table",
                 "barriers": "each barrier.id",
                 "titles": "each barrier.title?",
-                "spots": "arrangement.beam_spots",
+                "spots": "arrangement.field_spots",
             },
         ),
         source="own-arithmetic",

@@ -1,21 +1,45 @@
-"""Surveys of a room: done in the mode, newer than the last change, with a meter in calibration."""
+"""Surveys of a room: in the mode, newer than the last change, meter in calibration; week and hour by them."""
 
 from datetime import date
 
 from readiness.assessment.definition import Definition, derived
+from readiness.calculations.dose_limits import any_hour_dose
 from readiness.errors import OutsideValidity
 from readiness.program.calibration import complete_periods, holds_on
 from readiness.quantities import Table
+from readiness.units import printed
+
+METER = "survey-meter"
+UNKNOWN = (
+    "what the work already there gives is not known: state existing_usv_per_week of the barrier in"
+    " shielding.yaml, from the room's own survey or report"
+)
+_SURVEYS = {
+    "days": "each survey.done_on?",
+    "in_mode": "each survey.in_mode?",
+    "as_of_date": "program.as_of_date",
+}
+_EXISTING = {
+    "added_usv_per_week": "exposure.surveyed_added_usv_per_week",
+    "before_usv_per_week": "exposure.before_usv_per_week?",
+    "existing_usv_per_week": "barrier.existing_usv_per_week?",
+}
 
 
-def surveys_in_mode(*, surveys: Table) -> int:
-    """Return how many surveys were done in the mode."""
-    return sum(1 for survey in surveys.records() if survey["in_mode"] is True)
+def surveys_in_mode(
+    *, days: tuple[date | None, ...], in_mode: tuple[bool | None, ...], as_of_date: date
+) -> int:
+    """Return how many surveys were done in the mode; one of a day to come is none."""
+    found = zip(days, in_mode, strict=True)
+    return sum(1 for day, mode in found if mode is True and (day is None or day <= as_of_date))
 
 
-def latest_in_mode(*, days: tuple[date | None, ...], in_mode: tuple[bool | None, ...]) -> date:
+def latest_in_mode(
+    *, days: tuple[date | None, ...], in_mode: tuple[bool | None, ...], as_of_date: date
+) -> date:
     """Return the day of the latest survey in the mode."""
-    found = [day for day, mode in zip(days, in_mode, strict=True) if mode is True and day is not None]
+    dated = [day for day, mode in zip(days, in_mode, strict=True) if mode is True and day is not None]
+    found = [day for day in dated if day <= as_of_date]
     if not found:
         raise OutsideValidity(
             "no survey in the mode has been done; survey the room in the mode at both tilts"
@@ -33,15 +57,57 @@ def is_newer(
 
 
 def meter_of_survey(
-    *, instrument: str, done: date, meters: tuple[str, ...], periods: tuple[Table, ...]
+    *, instrument: str, done: date, meters: tuple[str, ...], types: tuple[str | None, ...],
+    periods: tuple[Table, ...],
 ) -> bool:  # fmt: skip
-    """Return whether the survey's meter was in calibration that day."""
+    """Return whether the survey was done with a survey meter that was in calibration that day."""
     if instrument not in meters:
         raise OutsideValidity(f"instrument {instrument} is not in the list of instruments")
+    if types[meters.index(instrument)] not in (METER, None):
+        return False
     known = complete_periods(periods[meters.index(instrument)].rows)  # type: ignore[arg-type]
     if not known:
         raise OutsideValidity(f"the calibration dates of instrument {instrument} are not stated")
     return holds_on(known, done)
+
+
+def part_of_goal(
+    *, added_usv_per_week: float, before_usv_per_week: float | None, existing_usv_per_week: float | None,
+    goal_msv_per_week: float,
+) -> float:  # fmt: skip
+    """Return existing dose and surveyed addition as a part of the goal; the addition alone if too large."""
+    existing = _existing(before_usv_per_week, existing_usv_per_week)
+    ratio = (added_usv_per_week + (existing or 0.0)) / (1000 * goal_msv_per_week)
+    if existing is None and ratio <= 1.0:
+        raise OutsideValidity(
+            f"the program alone adds {printed(ratio)} times the goal by the survey; {UNKNOWN}"
+        )
+    return ratio
+
+
+def hour(
+    *, added_usv_per_week: float, before_usv_per_week: float | None, existing_usv_per_week: float | None,
+    occupancy: float, cycles_per_week: float, sessions_per_cycle: int, sessions_in_hour: int,
+    busiest_photon_hour: float, limit_usv: float,
+) -> float:  # fmt: skip
+    """Return the largest dose in any 60 consecutive minutes by the survey, no occupancy counted."""
+    existing = _existing(before_usv_per_week, existing_usv_per_week)
+    dose = any_hour_dose(
+        before_rate_usv_per_week=(existing or 0.0) / occupancy,
+        added_rate_usv_per_week=added_usv_per_week / occupancy, cycles_per_week=cycles_per_week,
+        sessions_per_cycle=sessions_per_cycle, sessions_in_hour=sessions_in_hour, session_room_min=None,
+        busiest_hour_ratio=busiest_photon_hour,
+    ).usv_in_any_hour  # fmt: skip
+    if existing is None and dose <= limit_usv:
+        raise OutsideValidity(
+            f"the program alone gives {printed(dose)} µSv in an hour by the survey; {UNKNOWN}"
+        )
+    return dose
+
+
+def _existing(before_usv_per_week: float | None, existing_usv_per_week: float | None) -> float | None:
+    """Return the dose of the work already there: as calculated, else as stated."""
+    return before_usv_per_week if before_usv_per_week is not None else existing_usv_per_week
 
 
 def count(*, barriers: tuple[str, ...]) -> int:
@@ -55,13 +121,13 @@ DEFINITIONS: tuple[Definition, ...] = (
         "room.surveys_in_mode",
         "Surveys of the room in the mode.",
         surveys_in_mode,
-        {"surveys": "rows survey: in_mode"},
+        _SURVEYS,
     ),
     derived(
         "room.surveyed_in_mode_on",
         "Day of the latest survey in the mode.",
         latest_in_mode,
-        {"days": "each survey.done_on?", "in_mode": "each survey.in_mode?"},
+        _SURVEYS,
     ),
     derived(
         "room.survey_is_current",
@@ -75,13 +141,37 @@ DEFINITIONS: tuple[Definition, ...] = (
         },
     ),
     derived(
+        "exposure.surveyed_goal_ratio",
+        "Existing dose and surveyed addition as a part of the weekly goal.",
+        part_of_goal,
+        {**_EXISTING, "goal_msv_per_week": "barrier.design_goal_msv_per_week"},
+    ),
+    Definition(
+        "exposure.surveyed_hour_usv",
+        "Largest dose in any 60 consecutive minutes by the survey, existing work beside it; no occupancy.",
+        by=hour,
+        takes={
+            **_EXISTING,
+            "occupancy": "barrier.occupancy",
+            "cycles_per_week": "program.busiest_week_cycles_per_week",
+            "sessions_per_cycle": "program.fewest_sessions_per_cycle",
+            "sessions_in_hour": "program.sessions_in_busiest_hour",
+            "busiest_photon_hour": "protection.busiest_photon_hour",
+            "limit_usv": "criterion.any_hour_limit_usv",
+        },
+        source="ncrp-151",
+        known="memory",
+        formula="R_h = larger of (M/40) R_w and n H_session + (M/40) R_w; without occupancy",
+    ),
+    derived(
         "survey.meter_was_in_calibration",
-        "The survey meter was in calibration on that day.",
+        "It was done with a survey meter, in calibration on that day.",
         meter_of_survey,
         {
             "instrument": "survey.instrument",
             "done": "survey.done_on",
             "meters": "each instrument.id",
+            "types": "each instrument.type?",
             "periods": "each instrument.calibration_periods",
         },
     ),

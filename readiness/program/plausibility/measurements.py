@@ -11,6 +11,7 @@ from readiness.units import printed
 MEASUREMENT = "measurement"
 _PROFILES = {"angle-sweep", "dual-profile", "single-profile", "depth-dose-single", "depth-dose-composite"}
 _HUNDREDTH = 0.03  # readings below this part of the prescription were read in another unit
+_FASTER = 1.1  # practice: rates differ by less from pulse to pulse
 _POSITIONS = ("tilt_deg", "height_cm", "across_cm", "depth_mm", "angle_deg")
 
 
@@ -94,4 +95,39 @@ def in_vivo_units(program: Program) -> Iterator[Problem]:
             yield impossible(item, "table", f"{said}; is their unit smaller than cGy?")
 
 
-CHECKS: tuple[Check, ...] = (gaps, media, rooms, positions, spans, in_vivo_units)
+def surveyed_barriers(program: Program) -> Iterator[Problem]:
+    """A survey of a room has readings behind the barriers of that room."""
+    for item in program.of_kind(MEASUREMENT):
+        readings, room = table(item, "table"), word(item, "room")
+        if word(item, "kind") != "survey" or readings is None:
+            continue
+        for name in dict.fromkeys(map(str, readings.column("barrier"))):
+            barrier = program.find("barrier", name)
+            belongs = barrier.owners.get("room") if barrier is not None else None
+            if belongs is not None and belongs != room:
+                yield impossible(item, "table", f"{name} is a barrier of {belongs}, the survey is of {room}")
+
+
+def survey_rates(program: Program) -> Iterator[Problem]:
+    """A survey is not done at a higher rate than its beam has: its dose of a week would come out too low."""
+    for item in program.of_kind(MEASUREMENT):
+        rate = number(item, "rate_mu_per_min")
+        beam = program.find("beam", item.owners.get("beam", ""))
+        most = number(beam, "rate_mu_per_min") if beam is not None else None
+        if word(item, "kind") == "survey" and rate and most and rate > _FASTER * most:
+            message = (
+                f"surveyed at {printed(rate)} MU/min, the beam gives {printed(most)} MU/min; which is right?"
+            )
+            yield question(item, "rate_mu_per_min", message)
+
+
+CHECKS: tuple[Check, ...] = (
+    gaps,
+    media,
+    rooms,
+    positions,
+    spans,
+    in_vivo_units,
+    surveyed_barriers,
+    survey_rates,
+)

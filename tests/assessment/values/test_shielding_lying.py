@@ -130,7 +130,41 @@ def test_without_x_rays_on_the_axis_nothing_is_calculated(lying: tuple[Graph, st
 
 
 def test_a_standing_arrangement_has_no_vertical_field() -> None:
-    """Spots and dose rate of a vertical beam are not shown for a beam from the side."""
+    """Spots of a vertical beam are not shown for a beam from the side."""
     found = graph(read_folder(SAMPLE))
     assert isinstance(found.get("arrangement.vertical_spots", Ref("arrangement", CHOSEN)), Gone)
-    assert isinstance(found.get("exposure.vertical_rate_usv_per_h", Ref("exposure", f"a-west from {CHOSEN}")), Gone)
+
+
+def surveyed(lying: tuple[Graph, str], *rows: tuple[str, float, float]) -> tuple[Graph, str]:
+    """Return the same with a survey (invented readings, background 0.1)."""
+    columns = ("barrier", "gantry_deg", "reading_usv_per_h", "place")
+    done = readings(
+        "survey", side_deg=0, mode="high-rate", rate_mu_per_min=2000.0, background_usv_per_h=0.1,
+        instrument="survey-meter", patient_place="occupied", table=Table(columns, tuple((*row, None) for row in rows)),
+    )  # fmt: skip
+    done = replace(done, owners={**done.owners, "instrument": "survey-meter"})
+    program = lying[0].program
+    return graph(replace(program, items=(*program.items, done))), lying[1]
+
+
+def test_a_survey_under_a_vertical_beam_has_its_expectations(lying: tuple[Graph, str]) -> None:
+    """One field straight down; below the floor it is x rays and leakage of all MU."""
+    rows = {row["place"]: row for row in value(lying, "arrangement.survey_worksheet").records()}
+    below = rows["Store below"]
+    assert (0.0, "down", "") == (below["gantry_deg"], below["aimed_at"], below["remark"])
+    weeks = value(lying, "arrangement.leakage_workload_gy_m2_per_week") * 100
+    lines = value(lying, "exposure.contributions", "Store below").records()
+    added = sum(row["dose_usv_per_week"] for row in lines if row["added"] and row["radiation"] != "scatter")
+    assert added / weeks * 120000 == pytest.approx(below["empty_usv_per_h"], rel=1e-4)
+
+
+def test_a_survey_under_a_vertical_beam_gives_the_week(lying: tuple[Graph, str]) -> None:
+    """The net reading times the hours of beam; a place without a reading is named once."""
+    expected = value(lying, "exposure.instantaneous_usv_per_h", "Store below")
+    found = surveyed(lying, ("Store below", 360.0, expected + 0.1), ("Roof", 0.0, 0.1))
+    hours = value(lying, "arrangement.leakage_workload_gy_m2_per_week") * 100 / 120000
+    assert expected * hours == pytest.approx(value(found, "exposure.surveyed_added_usv_per_week", "Store below"), rel=1e-4)
+    assert 1.0 == pytest.approx(value(found, "exposure.survey_over_predicted_ratio", "Store below"), rel=1e-4)
+    missing = value(found, "arrangement.survey_places_missing")
+    assert 1 == missing.count("Office west of vault A with the gantry at 0 degrees")
+    assert "Store below" not in missing
