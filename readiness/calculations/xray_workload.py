@@ -220,7 +220,7 @@ def workload_from_fraction(
     symbol = "f1" if fields == "one-dual" else "F"
     steps: list[tuple[Scalar, ...]] = [
         ("skin dose of a cycle", "D", dose_per_cycle_gy, "Gy", "as given", "program"),
-        ("x-ray fraction", symbol, xray_fraction_percent, "%", "as given", "measurement"),
+        ("x-ray fraction", symbol, xray_fraction_percent, "%", "as given", "stated or measured"),
         ("six dual fields against the skin dose", "6/B", turned, "", "as given", "derived"),
         ("water in front of it", "exp(mu z)", water, "", basis, "derived"),
         ("lobes that miss the body", "L", lobe, "", _basis(lobe_allowance), "derived"),

@@ -10,6 +10,7 @@ from readiness.quantities import Table
 from readiness.units import printed
 
 METER = "survey-meter"
+JUDGED = ("place", "added_usv_per_week", "part_of_goal_ratio", "any_hour_usv")
 UNKNOWN = (
     "what the work already there gives is not known: state existing_usv_per_week of the barrier in"
     " shielding.yaml, from the room's own survey or report"
@@ -110,6 +111,17 @@ def _existing(before_usv_per_week: float | None, existing_usv_per_week: float | 
     return before_usv_per_week if before_usv_per_week is not None else existing_usv_per_week
 
 
+def judged(
+    *, places: tuple[str, ...], added: tuple[float | None, ...], parts: tuple[float | None, ...],
+    hours: tuple[float | None, ...],
+) -> Table:  # fmt: skip
+    """Return what the survey gives of each place; blank where something is missing."""
+    rows = [row for row in zip(places, added, parts, hours, strict=True) if row[1] is not None]
+    if not rows:
+        raise OutsideValidity("no survey in the mode, with a scattering body at the plane, is at hand")
+    return Table(JUDGED, tuple(rows))
+
+
 def count(*, barriers: tuple[str, ...]) -> int:
     """Return how many barriers are listed."""
     return len(barriers)
@@ -162,6 +174,17 @@ DEFINITIONS: tuple[Definition, ...] = (
         source="ncrp-151",
         known="memory",
         formula="R_h = larger of (M/40) R_w and n H_session + (M/40) R_w; without occupancy",
+    ),
+    derived(
+        "arrangement.survey_judged",
+        "What the survey gives in the busiest week and in any 60 minutes, place by place.",
+        judged,
+        {
+            "places": "each exposure.title",
+            "added": "each exposure.surveyed_added_usv_per_week?",
+            "parts": "each exposure.surveyed_goal_ratio?",
+            "hours": "each exposure.surveyed_hour_usv?",
+        },
     ),
     derived(
         "survey.meter_was_in_calibration",
