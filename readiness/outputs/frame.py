@@ -7,7 +7,7 @@ from readiness.assessment.records import Assessment, DocumentState, Rule
 from readiness.outputs.contract import CAUTION, INVENTED
 from readiness.outputs.documents import RenderedDocument
 from readiness.outputs.holes import plain
-from readiness.outputs.words import chosen_by_words, chosen_row, known_words
+from readiness.outputs.words import chosen_by_words, chosen_row, known_words, shortened
 from readiness.resources import template_file
 
 SAFETY = (
@@ -138,9 +138,10 @@ def _around(document: RenderedDocument, assessment: Assessment) -> str:
     answered = f"<h2>Requirements that this document answers</h2><p>{lines}.</p>" if lines else ""
     groups: dict[str, list[str]] = {}
     for blank in document.missing:
-        groups.setdefault(blank.group, []).append(plain(blank.words))
+        words = shortened(blank.words, assessment).removesuffix(".")
+        groups.setdefault(blank.group, []).append(plain(words))
     blanks = "".join(
-        f"<p><b>{group}:</b> {'; '.join(dict.fromkeys(words))}.</p>" for group, words in groups.items()
+        f"<p><b>{group}:</b> {'; '.join(dict.fromkeys(said))}.</p>" for group, said in groups.items()
     )
     still = f"<h2>Blanks in this document, and what fills them</h2>{blanks}" if blanks else ""
     return f'<section class="around">{answered}{still}</section>' if answered or still else ""

@@ -22,11 +22,11 @@ CRITERION = Ref("criterion", "criterion")
 
 @dataclass(frozen=True)
 class Missing:
-    """A value that the assessment does not have, with what to supply where a finding says it."""
+    """A value that the assessment does not have, with what to supply, each once, where a finding says it."""
 
     name: str
     item: Ref
-    words: str
+    causes: tuple[str, ...]
 
     @property
     def unit(self) -> str:
@@ -148,7 +148,6 @@ class Lookup:
                 found.setdefault((rule.subject, finding.item), finding.causes)
         return found
 
-    def _what_to_supply(self, name: str, item: Ref) -> str:
-        """Return the root causes in words, "" where the assessment has not said any."""
-        causes = self._causes.get((name, item), ())
-        return " ".join(dict.fromkeys(cause.words for cause in causes))
+    def _what_to_supply(self, name: str, item: Ref) -> tuple[str, ...]:
+        """Return the root causes in words, none where the assessment has not said any."""
+        return tuple(dict.fromkeys(cause.words for cause in self._causes.get((name, item), ())))

@@ -22,6 +22,7 @@ from readiness.outputs.words import (
     chosen_by_words,
     chosen_row,
     comparison_words,
+    shortened,
     value_title,
     with_unit,
 )
@@ -85,7 +86,7 @@ def _environment(assessment: Assessment) -> Environment:
         title_of=value_title, with_unit=with_unit, column_title=_column_title, cell=_cell,
         compared=comparison_words, outcomes=page_rows.outcomes,
         item_words=lambda item: short_item(item, assessment),
-        short=lambda text: page_rows.shortened(text, assessment),
+        short=lambda text: shortened(text, assessment),
     )  # fmt: skip
     return environment
 

@@ -19,7 +19,7 @@ from readiness.assessment.records import (
 )
 from readiness.outputs.assessment_rows import MatrixRow, SourceRow, matrix, short_item, sources
 from readiness.outputs.thumbnails import thumbnails
-from readiness.outputs.words import chosen_row, finding_words, known_words
+from readiness.outputs.words import chosen_row, finding_words, known_words, shortened
 from readiness.quantities import Table
 
 _DECIDING = 3
@@ -131,14 +131,6 @@ def ruled_out(assessment: Assessment) -> tuple[Group, ...]:
             key = (dict(row.parts).get("room", ""), _deciding(assessment, row.deciding))
             groups.setdefault(key, []).append(row.title)
     return tuple(Group(room, tuple(titles), why) for (room, why), titles in groups.items())
-
-
-def shortened(text: str, assessment: Assessment) -> str:
-    """Return a sentence in which the arrangement that the page is for is not spelled out each time."""
-    chosen = assessment.verdict.arrangement
-    if not chosen:
-        return text
-    return text.replace(f" from {chosen}", "").replace(f"arrangement {chosen}", "this arrangement")
 
 
 def _deciding(assessment: Assessment, findings: Iterable[Finding]) -> tuple[tuple[str, str], ...]:

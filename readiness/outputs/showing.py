@@ -54,7 +54,7 @@ class Showing:
         self._pictures = pictures
         self._holes = holes
         self.shown: dict[str, None] = {}
-        self.missing: dict[str, Blank] = {}
+        self.missing: dict[tuple[str, int], Blank] = {}
 
     def show(self, name: str) -> Markup:
         """Return a value with its unit and basis, or a blank line with what to supply."""
@@ -180,16 +180,17 @@ class Showing:
     def _blank(self, found: Missing) -> str:
         words, kind = words_of(found.name), words_of(found.item.kind)
         is_field = catalogue().kinds.field(found.name) is not None
-        group = CAUSES if found.words else STATE if is_field else WORK_OUT
-        self._note(found.name, group, found.words or f"{words} ({kind})")
+        group = CAUSES if found.causes else STATE if is_field else WORK_OUT
+        for place, said in enumerate(found.causes or (f"{words} ({kind})",)):
+            self._note(found.name, group, said, place)
         need = f"to supply: {words}" if is_field else f"{words} not known yet"
         return (
             f'<span class="blank">{plain(with_unit(BLANK, found.unit))}</span>'
             f'<span class="need"> ({plain(need)})</span>'
         )
 
-    def _note(self, name: str, group: str, words: str) -> None:
-        self.missing.setdefault(name, Blank(name, group, words))
+    def _note(self, name: str, group: str, words: str, place: int = 0) -> None:
+        self.missing.setdefault((name, place), Blank(name, group, words))
 
     def _hole(self, html: str) -> Markup:
         return Markup(self._holes.put(html))  # noqa: S704 - the hole is two characters and a number

@@ -57,6 +57,14 @@ def chosen_row(assessment: Assessment) -> ArrangementRow | None:
     return next((row for row in assessment.arrangements if row.item.id == wanted), None)
 
 
+def shortened(text: str, assessment: Assessment) -> str:
+    """Return a sentence in which the arrangement that an output is for is not spelled out each time."""
+    chosen = assessment.verdict.arrangement
+    if not chosen:
+        return text
+    return text.replace(f" from {chosen}", "").replace(f"arrangement {chosen}", "this arrangement")
+
+
 def short_titles(rows: Iterable[ArrangementRow]) -> tuple[str, dict[Ref, str]]:
     """Return what all arrangements have in common, and each one's title without it."""
     pieces = {row.item: row.title.split(", ") for row in rows}

@@ -15,9 +15,10 @@ from readiness.outputs.critical import CRITICAL
 from readiness.outputs.documents import RenderedDocument, render_bodies, wording_problems
 from readiness.outputs.fonts import missing_characters
 from readiness.outputs.form_fields import FormFields
+from readiness.outputs.frame import article
 from readiness.outputs.holes import Holes, to_html
 from readiness.outputs.lookup import Lookup
-from readiness.outputs.showing import Showing
+from readiness.outputs.showing import CAUSES, Blank, Showing
 from tests.outputs import fakes
 
 _MU_NUMBER = re.compile(r"\d[\d ,.]*\s*MU\b(?!/)")
@@ -353,6 +354,13 @@ def test_a_table_heading_tells_its_direction() -> None:
     html = to_html("| a | b |\n|---|---|\n| 1 | 2 |\n")
     assert 2 == html.count('<th scope="col">')
     assert "<thead>" in html
+
+
+def test_each_thing_that_fills_a_blank_is_said_once(full: dict[str, RenderedDocument]) -> None:
+    """Two blanks that wait for the same measurement name it once; a sentence ends with one full stop."""
+    blanks = (Blank("a", CAUSES, "Measure it."), Blank("b", CAUSES, "Measure it."), Blank("b", CAUSES, "State that."))
+    html = article(replace(full["1.1"], missing=blanks), fakes.full())
+    assert f"<p><b>{CAUSES}:</b> Measure it; State that.</p>" in html
 
 
 def test_a_list_of_items_leaves_out_another_room() -> None:
