@@ -135,7 +135,7 @@ def test_the_hour_by_the_survey_is_worked_by_hand(blank: str, tmp_path: Path) ->
     expected = 2 * week / 0.125 / cycles / 2 + 2 / 40 * 3.5 / 0.125
     assert pytest.approx(expected, rel=1e-4) == values["exposure.surveyed_hour_usv", "a-door"]
     (shown,) = [each.value for each in found.values if each.name == "arrangement.survey_judged"]
-    assert pytest.approx(expected, rel=1e-4) == {row[0]: row[3] for row in shown.rows}["Door of vault A"]
+    assert pytest.approx(expected, rel=1e-4) == {row[0]: row[4] for row in shown.rows}["Door of vault A"]
     assert "a-control" not in findings(found, "survey-any-one-hour")
 
 

@@ -10,7 +10,7 @@ from readiness.quantities import Table
 from readiness.units import printed
 
 METER = "survey-meter"
-JUDGED = ("place", "added_usv_per_week", "part_of_goal_ratio", "any_hour_usv")
+JUDGED = ("place", "already_there_usv_per_week", "added_usv_per_week", "part_of_goal_ratio", "any_hour_usv")
 UNKNOWN = (
     "what the work already there gives is not known: state existing_usv_per_week of the barrier in"
     " shielding.yaml, from the room's own survey or report"
@@ -22,8 +22,7 @@ _SURVEYS = {
 }
 _EXISTING = {
     "added_usv_per_week": "exposure.surveyed_added_usv_per_week",
-    "before_usv_per_week": "exposure.before_usv_per_week?",
-    "existing_usv_per_week": "barrier.existing_usv_per_week?",
+    "existing_usv_per_week": "exposure.already_usv_per_week?",
 }
 
 
@@ -73,13 +72,11 @@ def meter_of_survey(
 
 
 def part_of_goal(
-    *, added_usv_per_week: float, before_usv_per_week: float | None, existing_usv_per_week: float | None,
-    goal_msv_per_week: float,
-) -> float:  # fmt: skip
+    *, added_usv_per_week: float, existing_usv_per_week: float | None, goal_msv_per_week: float
+) -> float:
     """Return existing dose and surveyed addition as a part of the goal; the addition alone if too large."""
-    existing = _existing(before_usv_per_week, existing_usv_per_week)
-    ratio = (added_usv_per_week + (existing or 0.0)) / (1000 * goal_msv_per_week)
-    if existing is None and ratio <= 1.0:
+    ratio = (added_usv_per_week + (existing_usv_per_week or 0.0)) / (1000 * goal_msv_per_week)
+    if existing_usv_per_week is None and ratio <= 1.0:
         raise OutsideValidity(
             f"the program alone adds {printed(ratio)} times the goal by the survey; {UNKNOWN}"
         )
@@ -87,36 +84,38 @@ def part_of_goal(
 
 
 def hour(
-    *, added_usv_per_week: float, before_usv_per_week: float | None, existing_usv_per_week: float | None,
+    *, added_usv_per_week: float, existing_usv_per_week: float | None,
     occupancy: float, cycles_per_week: float, sessions_per_cycle: int, sessions_in_hour: int,
     busiest_photon_hour: float, limit_usv: float,
 ) -> float:  # fmt: skip
     """Return the largest dose in any 60 consecutive minutes by the survey, no occupancy counted."""
-    existing = _existing(before_usv_per_week, existing_usv_per_week)
     dose = any_hour_dose(
-        before_rate_usv_per_week=(existing or 0.0) / occupancy,
+        before_rate_usv_per_week=(existing_usv_per_week or 0.0) / occupancy,
         added_rate_usv_per_week=added_usv_per_week / occupancy, cycles_per_week=cycles_per_week,
         sessions_per_cycle=sessions_per_cycle, sessions_in_hour=sessions_in_hour, session_room_min=None,
         busiest_hour_ratio=busiest_photon_hour,
     ).usv_in_any_hour  # fmt: skip
-    if existing is None and dose <= limit_usv:
+    if existing_usv_per_week is None and dose <= limit_usv:
         raise OutsideValidity(
             f"the program alone gives {printed(dose)} µSv in an hour by the survey; {UNKNOWN}"
         )
     return dose
 
 
-def _existing(before_usv_per_week: float | None, existing_usv_per_week: float | None) -> float | None:
-    """Return the dose of the work already there: as calculated, else as stated."""
-    return before_usv_per_week if before_usv_per_week is not None else existing_usv_per_week
+def already(*, before_usv_per_week: float | None, existing_usv_per_week: float | None) -> float:
+    """Return the weekly dose of the work already there: as calculated, else as stated."""
+    known = before_usv_per_week if before_usv_per_week is not None else existing_usv_per_week
+    if known is None:
+        raise OutsideValidity(UNKNOWN)
+    return known
 
 
 def judged(
-    *, places: tuple[str, ...], added: tuple[float | None, ...], parts: tuple[float | None, ...],
-    hours: tuple[float | None, ...],
+    *, places: tuple[str, ...], already: tuple[float | None, ...], added: tuple[float | None, ...],
+    parts: tuple[float | None, ...], hours: tuple[float | None, ...],
 ) -> Table:  # fmt: skip
     """Return what the survey gives of each place; blank where something is missing."""
-    rows = [row for row in zip(places, added, parts, hours, strict=True) if row[1] is not None]
+    rows = [row for row in zip(places, already, added, parts, hours, strict=True) if row[2] is not None]
     if not rows:
         raise OutsideValidity("no survey in the mode, with a scattering body at the plane, is at hand")
     return Table(JUDGED, tuple(rows))
@@ -153,6 +152,15 @@ DEFINITIONS: tuple[Definition, ...] = (
         },
     ),
     derived(
+        "exposure.already_usv_per_week",
+        "Dose of a week beyond the barrier from the work already there: calculated, else as stated.",
+        already,
+        {
+            "before_usv_per_week": "exposure.before_usv_per_week?",
+            "existing_usv_per_week": "barrier.existing_usv_per_week?",
+        },
+    ),
+    derived(
         "exposure.surveyed_goal_ratio",
         "Existing dose and surveyed addition as a part of the weekly goal.",
         part_of_goal,
@@ -181,6 +189,7 @@ DEFINITIONS: tuple[Definition, ...] = (
         judged,
         {
             "places": "each exposure.title",
+            "already": "each exposure.already_usv_per_week?",
             "added": "each exposure.surveyed_added_usv_per_week?",
             "parts": "each exposure.surveyed_goal_ratio?",
             "hours": "each exposure.surveyed_hour_usv?",
