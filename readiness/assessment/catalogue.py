@@ -55,14 +55,22 @@ class Catalogue:
         return field.meaning if field else words_of(name).capitalize() + "."
 
     def is_choice(self, name: str) -> bool:
-        """Return whether the department sets this value, so that it does not weaken a basis."""
+        """Return whether the department sets this value, or what it follows from: it weakens no basis."""
         if name in self.criteria or self.kinds.is_given(name):
             return True
         field = self.kinds.field(name)
         if field is not None:
             return field.nature in {"choice", "record"}
         definition = self.definitions.get(name)
-        return bool(definition and definition.part == "choice")
+        if definition is None:
+            return False
+        return definition.part == "choice" or self._follows_from_choices(definition)
+
+    def _follows_from_choices(self, definition: Definition) -> bool:
+        """Return whether a value is worked out from nothing but choices, as the dose of a course is."""
+        plain = not (definition.model or definition.measured or definition.otherwise)
+        names = [name for _, take in self.takes.get(definition.name, ()) for name in take.names]
+        return bool(plain and definition.by and names) and all(map(self.is_choice, names))
 
 
 @cache

@@ -107,6 +107,13 @@ class Take:
         """Return the kind of item it is taken from."""
         return self.name.partition(".")[0]
 
+    @property
+    def names(self) -> tuple[str, ...]:
+        """Return the names of the values that are taken; of rows those of their columns, but for the id."""
+        if self.form != "rows":
+            return (self.name,)
+        return tuple(f"{self.name}.{column}" for column, _ in self.columns if column != "id")
+
 
 def parse_take(text: str) -> Take:
     """Return what an entry of ``takes`` asks for."""

@@ -24,7 +24,7 @@ from readiness.assessment.rounding import settled
 from readiness.errors import OutsideValidity
 from readiness.program.items import Item, Program
 from readiness.quantities import Uncertain
-from readiness.units import unit_of
+from readiness.units import unit_of, words_of
 
 Memory = dict[Any, Any]
 
@@ -165,8 +165,12 @@ class Graph(MeasurementSearch):
             return self._value(definition, ref, result, inputs, whole.basis, None)
         return self._run(definition, definition.by, self.catalogue.takes[definition.name], ref, None)
 
-    @staticmethod
-    def _no_answer(definition: Definition, ref: Ref) -> Gone:
+    def _no_answer(self, definition: Definition, ref: Ref, measurement: Ref | None = None) -> Gone:
+        """Return that a value cannot be had from what is there; of a file of readings, that it lacks it."""
+        item = self._items.get(measurement) if measurement else None
+        if definition.measured is not None and item is not None:
+            words = f"{item.place.file} does not give {words_of(definition.name)} of {ref}."
+            return Gone((Cause("measurement", definition.measured.kind, ref, words),))
         words = f"{definition.meaning} It has no answer here."
         return Gone((Cause("validity", definition.name, ref, words),))
 
@@ -212,7 +216,7 @@ class Graph(MeasurementSearch):
         if result is not None and part:
             result = getattr(result, part)
         if result is None:
-            return self._no_answer(definition, ref)
+            return self._no_answer(definition, ref, measurement)
         basis = "measured" if measurement else weakest(bases + (["predicted"] if definition.model else []))
         return self._value(definition, ref, result, inputs, basis, measurement)
 
@@ -271,6 +275,6 @@ class Graph(MeasurementSearch):
             return got
         value = getattr(got.value, measured.part) if measured.part else got.value
         if value is None:
-            return self._no_answer(definition, ref)
+            return self._no_answer(definition, ref, measurement)
         inputs = self._shown_inputs("measurement", got)
         return self._value(definition, ref, value, inputs, "measured", measurement)

@@ -346,3 +346,29 @@ def test_one_question_is_answered_by_the_technique_of_each_arrangement() -> None
     missing = of.get("arrangement.tested_load_kg", Ref("arrangement", "down"))
     assert isinstance(missing, Gone)
     assert ["couch.tested_load_kg"] == [cause.what for cause in missing.causes]
+
+
+def test_what_follows_from_choices_alone_weakens_no_basis() -> None:
+    """The dose of a course is as much a choice as its cycles: with a measured number the result is measured."""
+    dose = Definition("course.dose_from_cycles_gy", "Dose.", by=lambda *, dose_per_cycle_gy, cycles: dose_per_cycle_gy * cycles,
+                      takes={"dose_per_cycle_gy": "course.dose_per_cycle_gy", "cycles": "course.cycles"})  # fmt: skip
+    claim = Definition("beam.rp_doubled_cm", "Twice.", by=lambda *, rp_cm: 2 * rp_cm, takes={"rp_cm": "beam.rp_cm"})
+    known = graph(program(), dose, claim).catalogue
+    assert known.is_choice("course.dose_from_cycles_gy")
+    assert not known.is_choice("beam.rp_doubled_cm")
+    modelled = Definition("course.predicted_gy", "Model.", by=lambda *, cycles: cycles, takes={"cycles": "course.cycles"}, model=True)
+    assert not graph(program(), modelled).catalogue.is_choice("course.predicted_gy")
+
+
+def test_a_file_that_lacks_a_number_is_named_with_it() -> None:
+    """A measurement of the right kind that does not hold what is asked says so, and the kind is asked for again."""
+    parts = (
+        item("room", "a"), item("machine", "m", {"room": "a"}), item("beam", "m/e6", {"machine": "m"}),
+        item("instrument", "film", calibrated_on=date(2026, 1, 1), calibration_due_on=date(2027, 1, 1)),
+    )  # fmt: skip
+    part = Definition("beam.r50_cm", "Depth.",
+                      measured=Measured("single-profile", by=lambda *, day: None, takes={"day": "measurement.date"}))  # fmt: skip
+    of = graph(program(*parts), part, made=(_measurement("one"),))  # type: ignore[arg-type]
+    got = of.get("beam.r50_cm", Ref("beam", "m/e6"))
+    assert isinstance(got, Gone)
+    assert "measurement.yaml does not give r50 of beam m/e6." in [cause.words for cause in got.causes]
