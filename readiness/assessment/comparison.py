@@ -128,7 +128,7 @@ def _chosen_behind(row: ArrangementRow, best: ArrangementRow, answers: Mapping[R
     mine, other = _first_difference(row, best, answers)
     if not mine:
         return f"The department chose it; {best.title} stands alike and is listed first."
-    return f"The department chose it: it {mine}. {best.title} stands before it by comparison: it {other}."
+    return f"The department chose it: it {mine}. Compared, {best.title} comes first: that one {other}."
 
 
 def _first_difference(

@@ -143,8 +143,8 @@ def test_a_chosen_arrangement_that_is_not_the_first_says_what_stands_before_it()
     rows = ordered([row("own", chosen=True, against=("deep",)), row("other")], RULES, graph())
     assert names(rows) == ["other", "own"]
     assert rows[1].reasons == (
-        "The department chose it: it does not keep, or is not expected to keep, deep. vault, other stands before"
-        " it by comparison: it keeps, or is expected to keep, every must-rule compared.",
+        "The department chose it: it does not keep, or is not expected to keep, deep. Compared, vault, other comes"
+        " first: that one keeps, or is expected to keep, every must-rule compared.",
     )
 
 
