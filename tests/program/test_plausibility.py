@@ -202,3 +202,11 @@ def test_a_number_in_a_plan_is_asked_about():
     """A choice outside its plausible range is asked about, at its own place."""
     (problem,) = problems(program="format: 1\nplans:\n  - id: first\n    tilt_deg: 3\n")
     assert problem == "program.yaml:4:15: plan first: tilt of 3 ° is unusual (8 to 25 °); check it [question]"
+
+
+def test_a_number_in_another_unit_is_told_once():
+    """A ceiling of 3.1 is in metres; that isocentre and boxes lie above it is not told beside it."""
+    box = "[{id: s, x_min_cm: 0, x_max_cm: 9, y_min_cm: 0, y_max_cm: 9, bottom_cm: 0, top_cm: 200}]"
+    found = problems(rooms=room(isocentre_height_cm=130, ceiling_height_cm="3.1", obstructions=box))
+    assert 1 == len(found)
+    assert "did you mean 310 (cm)? [unit]" in found[0]

@@ -5,7 +5,9 @@ One subject a module, one fact a function. What cannot be is a problem; what is 
 shown but stops nothing.
 """
 
-from readiness.errors import Problem
+from dataclasses import replace
+
+from readiness.errors import Place, Problem
 from readiness.program.fields import Schemas
 from readiness.program.items import Program
 from readiness.program.plausibility import (
@@ -20,7 +22,7 @@ from readiness.program.plausibility import (
     tasks,
 )
 from readiness.program.plausibility.stated import QUESTION, Check
-from readiness.program.plausibility.units import mistaken_units
+from readiness.program.plausibility.units import MISTAKEN, mistaken_units
 
 JUDGED_WHOLE = frozenset({"local_rule", "local_limit"})  # kinds whose checks ask for what is not there
 
@@ -38,9 +40,26 @@ CHECKS: tuple[Check, ...] = (
 
 
 def implausible(program: Program, schemas: Schemas) -> list[Problem]:
-    """Return everything in a program that cannot be, and everything that is odd."""
-    found = [problem for check in CHECKS for problem in check(program)]
-    return [*found, *mistaken_units(program, schemas)]
+    """
+    Return everything in a program that cannot be, and everything that is odd.
+
+    A number in another unit is told once; what would follow from it elsewhere is not.
+    """
+    mistaken = [*mistaken_units(program, schemas)]
+    usable = _without({problem.place for problem in mistaken if problem.kind == MISTAKEN}, program)
+    found = [problem for check in CHECKS for problem in check(usable)]
+    return [*found, *mistaken]
+
+
+def _without(places: set[Place], program: Program) -> Program:
+    """Return a program without the entries at some places."""
+    if not places:
+        return program
+    kept = []
+    for item in program.items:
+        fields = {name: stated for name, stated in item.fields.items() if stated.place not in places}
+        kept.append(replace(item, fields=fields))
+    return replace(program, items=tuple(kept))
 
 
 def is_question(problem: Problem) -> bool:

@@ -10,6 +10,7 @@ from readiness.program.limits import meant_in_another_unit
 from readiness.program.plausibility.stated import IMPOSSIBLE, cell, impossible, question, table
 from readiness.units import printed
 
+MISTAKEN = "unit"
 FAR = 5  # times beyond the plausible range, a length that fits in another unit is taken for a mistake
 _LENGTHS = {"m", "cm", "mm"}
 
@@ -47,4 +48,4 @@ def _asked(item: Item, name: str, field: FieldSchema, value: object, what: str) 
     far = value * FAR < low or value > high * FAR
     mistaken = meant is not None and far and field.unit in _LENGTHS
     problem = (impossible if mistaken else question)(item, name, message)
-    yield Problem(problem.place, message, "unit") if problem.kind == IMPOSSIBLE else problem
+    yield Problem(problem.place, message, MISTAKEN) if problem.kind == IMPOSSIBLE else problem
