@@ -5,6 +5,7 @@ import os
 import socket
 import subprocess
 import sys
+import tempfile
 from pathlib import Path
 
 import pytest
@@ -240,8 +241,10 @@ def test_unreadable_file_and_folder_are_told(tmp_path):
     )
     (tmp_path / "rooms.yaml").chmod(0)
     (tmp_path / "measurements").chmod(0)
-    for parent in (tmp_path.parent, tmp_path.parent.parent):
-        parent.chmod(0o755)
+    temporary = Path(tempfile.gettempdir())
+    for parent in tmp_path.parents:
+        if parent != temporary and parent.is_relative_to(temporary):
+            parent.chmod(0o755)
     try:
         run = subprocess.run([sys.executable, "-c", program], cwd=tmp_path, capture_output=True, text=True, check=True, env={"PYTHONPATH": str(Path(__file__).parents[2])})
     finally:
