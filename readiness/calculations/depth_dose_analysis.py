@@ -24,6 +24,7 @@ LEAST_R50_MM, LARGEST_R50_MM = 4.0, 120.0  # outside, depths are in another unit
 SURFACE_WITHIN_MM = 1.0  # the first reading may be this deep to reach the surface by a straight line
 TAIL_SLOPE = 0.01  # of the steepest: where the dose falls less, only x rays are left
 TAIL_DOSE = 0.10  # of the highest
+FOOT_TO_TAIL = 2.5  # from R50, in units of the way from R50 to the tangent's foot: erfc(2.2)/2 is 0.001
 WINDOW = 0.12  # of R50 to either side of the place where the slope is taken
 NOT_AT_MAXIMUM = 0.02
 GAP_MM = 3.0
@@ -91,7 +92,7 @@ def analyse_depth_dose(
             "in mm?"
         )
     slope, through = _steepest(depths, values, r50, top)
-    tail, measured_tail = _tail(depths, values, slope)
+    tail, measured_tail = _tail(depths, values, slope, through, r50)
     rp = through[0] + (tail - through[1]) / slope if measured_tail else None
     surface = _surface(depths, values)
     percent = 100 / full
@@ -173,14 +174,23 @@ def _steepest(depths: Array, values: Array, r50_mm: float, top: int) -> tuple[fl
     return steepest, through
 
 
-def _tail(depths: Array, values: Array, slope: float) -> tuple[float, bool]:
-    """Return the mean dose of the x-ray tail, and whether a tail was measured."""
-    falls = np.abs(np.diff(values) / np.diff(depths))
-    steep = np.flatnonzero(falls > TAIL_SLOPE * abs(slope))
-    first = int(steep[-1]) + 1 if len(steep) else 0
-    low = values[first:] <= TAIL_DOSE * values.max()
-    if low.all() and (len(low) >= 2 or values[-1] <= 0.01 * values.max()):
-        return float(values[first:].mean()), True
+def _tail(
+    depths: Array, values: Array, slope: float, through: tuple[float, float], r50_mm: float
+) -> tuple[float, bool]:
+    """
+    Return the mean dose of the x-ray tail, and whether a tail was measured.
+
+    The tail is the longest run of deepest readings, beyond the place where an error function that falls
+    through R50 with this slope has left a thousandth, along which a straight line is flat: the scatter of
+    single readings does not end it.
+    """
+    foot = through[0] + (float(values[-1]) - through[1]) / slope
+    beyond = int(np.searchsorted(depths, r50_mm + FOOT_TO_TAIL * (foot - r50_mm)))
+    for first in range(beyond, len(depths)):
+        tail = values[first:]
+        fall = np.polyfit(depths[first:], tail, 1)[0] if len(tail) > 1 else 0.0
+        if tail.max() <= TAIL_DOSE * values.max() and abs(fall) <= TAIL_SLOPE * abs(slope):
+            return float(tail.mean()), True
     return float(values[-1]), False
 
 

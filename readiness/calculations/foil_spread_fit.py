@@ -9,7 +9,7 @@ from scipy.optimize import least_squares
 
 from readiness.calculations.field_setup import FieldSetup
 from readiness.calculations.tilted_field import tilted_fields
-from readiness.calculations.usable_readings import usable_profile
+from readiness.calculations.usable_readings import plateau_remarks, usable_profile
 from readiness.errors import OutsideValidity
 from readiness.quantities import Uncertain
 from readiness.units import printed
@@ -94,7 +94,12 @@ def fit_foil_spread(
     if min(spread - LOWEST_SPREAD, HIGHEST_SPREAD - spread) < 1e-3:
         raise OutsideValidity(
             f"no foil spread between {LOWEST_SPREAD:g} and {HIGHEST_SPREAD:g} fits the profile: "
-            "are distance, degrader, energy and units those of the measurement?"
+            + " ".join(
+                [
+                    "are distance, degrader, energy and units those of the measurement?",
+                    *plateau_remarks(places, values, "cm"),
+                ]
+            )
         )
     variance = 2 * fit.cost / (len(places) - 3)
     sds = np.sqrt(np.diag(np.linalg.inv(fit.jac.T @ fit.jac) * variance))

@@ -7,6 +7,7 @@ from readiness.outputs.words import value_title
 
 _IN_SWEEP, _POINTS = "_in_sweep", "measured "  # a value and its points as the sweep has them
 NOTHING_ASKED = "Counts; no value that is worked out here takes it."
+ONLY_POINTS = "Gives points for the drawings only."
 
 
 @dataclass(frozen=True)
@@ -37,7 +38,9 @@ def measurement_rows(assessment: Assessment) -> tuple[MeasurementRow, ...]:
 def _use(measurement: MeasurementUse) -> str:
     if measurement.gives:
         titles = dict.fromkeys(value_title(name.replace(_IN_SWEEP, "")).lower() for name in measurement.gives)
-        return f"Gives {', '.join(title for title in titles if not title.startswith(_POINTS))}."
+        kept = [title for title in titles if not title.startswith(_POINTS)]
+        return f"Gives {', '.join(kept)}." if kept else ONLY_POINTS
     if measurement.why_not:
-        return f"Does not count here: {'; '.join(measurement.why_not)}."
+        reasons = "; ".join(measurement.why_not)
+        return f"Does not count here: {reasons}" + ("" if reasons.endswith("?") else ".")
     return NOTHING_ASKED

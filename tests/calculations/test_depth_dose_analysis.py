@@ -148,3 +148,20 @@ def test_small_half_value_depth_has_only_the_formula_for_low_energies() -> None:
 def test_saturated_readings_are_said() -> None:
     """A flat top of equal readings raises the question of saturation."""
     assert any("saturated" in said for said in analysed(readings=np.minimum(fall(DEPTHS), 0.9)).remarks)
+
+
+@pytest.mark.parametrize("seed", range(8))
+def test_scatter_of_the_readings_hides_no_tail(seed: int) -> None:
+    """With 0.3 % scatter a tail of 1 % over 20 mm is found within 0.15 %, never as one reading at the end."""
+    depths = np.arange(0.0, 60.1, 1.0)
+    scatter = 0.003 * np.random.default_rng(seed).standard_normal(len(depths))
+    found = analysed(depths, np.abs(fall(depths) + scatter), normalisation="calibration-point")
+    assert 100 * TAIL == pytest.approx(found.xray_tail_percent, abs=0.15)
+    assert R50_MM + WIDTH_MM * np.sqrt(np.pi / 2) == pytest.approx(found.rp_mm, rel=0.03)
+
+
+def test_readings_that_end_on_the_fall_have_no_tail() -> None:
+    """Readings that end a centimetre behind R50, where electrons are left, give no x-ray dose."""
+    found = analysed(np.arange(0.0, R50_MM + 8.1, 1.0))
+    assert found.xray_tail_percent is None
+    assert found.rp_mm is None

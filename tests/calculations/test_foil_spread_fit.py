@@ -182,3 +182,14 @@ def test_doubtful_profile_is_fitted_and_that_is_said(places: np.ndarray, reading
     """A doubtful profile is fitted, and the doubt stands beside the numbers."""
     remarks = fitted(places, readings).remarks
     assert any(remark in said for said in remarks), remarks
+
+
+def test_a_refused_fit_still_names_a_saturated_detector() -> None:
+    """A profile that is flat where the detector saturates is refused with that suspicion."""
+    places = np.arange(-110.0, 111.0, 10.0)
+    readings = np.minimum(np.exp(-(places**2) / 2 / 68.0**2), 0.7)
+    with pytest.raises(OutsideValidity, match="saturated"):
+        fit_foil_spread(
+            positions_cm=places, readings=readings, normalisation="none",
+            model=lambda at, spread: np.exp(-(at**2) / 2 / (110 * spread) ** 2),
+        )  # fmt: skip

@@ -15,6 +15,7 @@ DUAL_PROFILE, ANGLE_SWEEP = "dual-profile", "angle-sweep"
 ON_LINE_CM = 0.5  # a reading this near to a line lies on it
 FEWEST_ON_LINE = 5
 SAME_TILT_DEG = 0.2
+NO_LINE = "it holds no profile along the"
 METRICS = {"deviation-from-mid-height": "deviation-from-centre"}  # its name in the analyses of readings
 
 
@@ -33,7 +34,7 @@ def rows_on_line(table: Table, constant: str) -> Table:
     kept = tuple(row for row, at in zip(table.rows, beside, strict=True) if abs(at) <= ON_LINE_CM)
     if len(kept) < FEWEST_ON_LINE:
         direction = "height" if constant == "across_cm" else "width"
-        raise OutsideValidity(f"it holds no profile along the {direction} through the middle of the plane")
+        raise OutsideValidity(f"{NO_LINE} {direction} through the middle of the plane")
     return Table(table.columns, kept)
 
 
