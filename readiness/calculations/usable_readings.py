@@ -19,6 +19,7 @@ LARGEST_RELATIVE = 3.0  # a relative profile or depth dose that is normalised an
 FARTHEST_CM = 300.0  # no treatment plane is measured farther from its centre
 NEAREST_CM = 5.0  # a profile that ends this close to its centre is in another unit
 PLATEAU = 3  # neighbouring readings that all equal the highest one
+SATURATED = 6  # so many, and the profile was cut off: it is not used
 SAME = 1e-4  # relative; readings are written to three decimals or more
 NORMALISED_WITHIN = 0.01
 
@@ -48,7 +49,7 @@ def usable_profile(*, positions_cm: ArrayLike, readings: ArrayLike, normalisatio
     Raises:
         ValueError: If the lengths differ or a number is not finite.
         OutsideValidity: If columns look exchanged, positions look like another unit, a reading is negative,
-            or all readings are zero.
+            all readings are zero, or the top of the profile was cut off by a saturated detector.
 
     Valid for: profiles along one line of the plane.
     Assumes: one field or one set of fields throughout.
@@ -70,6 +71,9 @@ def usable_profile(*, positions_cm: ArrayLike, readings: ArrayLike, normalisatio
             f"positions end {printed(reach)} cm from the centre: are they metres under a column in cm?"
         )
     places, values, remarks = in_order(places, values, "cm")
+    if SATURATED <= highest_run(values) < len(values):
+        said = " ".join(plateau_remarks(places, values, "cm"))
+        raise OutsideValidity(f"{said} A cut-off profile shows less unevenness than there is.")
     doubts = plateau_remarks(places, values, "cm") + _normalisation_remarks(places, values, normalisation)
     return UsableReadings(places, values, remarks + doubts)
 
@@ -109,6 +113,13 @@ def in_order(places: Array, readings: Array, unit: str) -> tuple[Array, Array, t
     repeated = ", ".join(printed(float(place)) for place in distinct[counts > 1])
     mean = np.bincount(index, weights=readings) / counts
     return distinct, mean, (f"Readings at the same place were averaged: {repeated} {unit}.",)
+
+
+def highest_run(readings: Array) -> int:
+    """Return the length of the longest row of neighbouring readings that all equal the highest."""
+    top = readings >= readings.max() * (1 - SAME)
+    edges = np.diff(np.concatenate([[0], top.astype(int), [0]]))
+    return int((np.flatnonzero(edges == -1) - np.flatnonzero(edges == 1)).max())
 
 
 def plateau_remarks(places: Array, readings: Array, unit: str) -> tuple[str, ...]:

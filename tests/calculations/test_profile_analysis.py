@@ -87,8 +87,9 @@ def test_normalisation_does_not_change_the_result() -> None:
         (HEIGHTS, 0 * BELL, "all readings are zero"),
         (HEIGHTS[4:-4], BELL[4:-4], "does not reach the limits of -80 to 80 cm"),
         (HEIGHTS[::11], BELL[::11], "has 3 points within"),
+        (HEIGHTS, np.minimum(BELL, BELL[HEIGHTS == 30][0]), r"saturated\? A cut-off profile shows less unevenness"),
     ],
-    ids=["millimetres", "metres", "swapped", "negative", "zero", "short", "few"],
+    ids=["millimetres", "metres", "swapped", "negative", "zero", "short", "few", "saturated"],
 )
 def test_unusable_profile_is_refused_with_the_suspicion(
     positions: np.ndarray, readings: np.ndarray, suspicion: str
@@ -101,7 +102,7 @@ def test_unusable_profile_is_refused_with_the_suspicion(
 @pytest.mark.parametrize(
     ("positions", "readings", "changed", "remark"),
     [
-        (HEIGHTS, np.minimum(BELL, 0.97), {}, "all equal the highest one: is the film or the detector saturated"),
+        (HEIGHTS, np.minimum(BELL, BELL[HEIGHTS == 20][0]), {}, "The 5 readings from -20 to 20 cm all equal the highest"),
         (HEIGHTS[::3], BELL[::3], {}, "Only 6 readings lie within 80 cm"),
         (HEIGHTS, BELL, {"smoothing": "running mean over 5"}, r"smoothed before \(running mean over 5\)"),
         (HEIGHTS, BELL * 0.9, {"normalisation": "mid-height"}, "at position 0 they are 0.9"),
