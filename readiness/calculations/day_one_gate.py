@@ -5,9 +5,9 @@ from statistics import fmean
 
 from readiness.errors import OutsideValidity
 
-LARGEST_FACTOR = 2.0
-GATE_OPEN = "within a factor of two: the second session may be given"
-GATE_SHUT = "outside a factor of two: no further session until it is explained"
+LARGEST_FACTOR = 2**0.5  # halfway, as ratios go, between a dose as meant and one that is doubled
+GATE_OPEN = "nearer to what is expected than to half or twice of it: the second session may be given"
+GATE_SHUT = "nearer to half or twice of what is expected: no further session until it is explained"
 
 
 def day_one_gate(
@@ -15,6 +15,9 @@ def day_one_gate(
 ) -> str:
     """
     Return whether the readings after the first session allow the second, as a gate against a factor of two.
+
+    1/sqrt(2) < r < sqrt(2), r being the mean reading over the expected one: a dose that is doubled or halved
+    reads twice or half give or take its uncertainty, and a gate at exactly two would let half of them pass.
 
     Args:
         prescription_doses_cgy: Readings at the prescription level after day 1 of the first cycle. [cGy]
@@ -30,7 +33,7 @@ def day_one_gate(
 
     Valid for: the first session of a course.
     Assumes: nothing finer than a factor of two is decided here.
-    Source: practice.
+    Source: practice, a gate against a factor of two; its place in the middle is derived.
     """
     if not dose_per_cycle_gy > 0 or not 0 < expected_day_one_percent <= 100:
         raise ValueError("the first session gives a part of the cycle's dose, above 0 and up to 100 %")

@@ -61,7 +61,14 @@ class FormFields:
             f'title="{plain(label)}" aria-label="{plain(label)}" class="rows-{lines}"></textarea></div>'
         )
 
-    def sheet(self, columns: Sequence[str], rows: int | Sequence[str], ticked: Sequence[str] = ()) -> Markup:
+    def sheet(
+        self,
+        columns: Sequence[str],
+        rows: int | Sequence[str],
+        ticked: Sequence[str] = (),
+        *,
+        half: bool = False,
+    ) -> Markup:
         """
         Return a table to fill in.
 
@@ -70,6 +77,7 @@ class FormFields:
                 stands over their names.
             rows: How many blank rows, or the names of the rows.
             ticked: Headings whose cells are boxes to tick.
+            half: Two such sheets, one after the other, stand side by side.
         """
         named = not isinstance(rows, int)
         widths = [_width(each, place, columns, named, ticked) for place, each in enumerate(columns)]
@@ -79,7 +87,7 @@ class FormFields:
         )
         names = [str(count + 1) for count in range(rows)] if isinstance(rows, int) else rows
         body = "".join(self._row(name, columns, named, ticked) for name in names)
-        css = "sheet" if named else "sheet blank-rows"
+        css = ("sheet" if named else "sheet blank-rows") + (" half" if half else "")
         return self._block(
             f'<table class="{css}"><thead><tr>{heads}</tr></thead><tbody>{body}</tbody></table>'
         )

@@ -12,8 +12,10 @@ from readiness.resources import template_file
 
 SAFETY = (
     "A number marked predicted or assumed has not been measured: do not use it on a patient. A number marked "
-    "stated is the department's own statement. This document states no monitor units to deliver."
+    "stated is the department's own statement, one marked limit is what is asked for. This document states "
+    "no monitor units to deliver."
 )
+SHEET = "patient-sheet"
 RECORD = "A record of approval, not a signature."
 _BINDER_LINK = re.compile(r'<a href="binder:([^"]*)">(.*?)</a>', re.DOTALL)
 _NUMBER = re.compile(r"[0-9]+\.[0-9]+")
@@ -84,8 +86,14 @@ def article(document: RenderedDocument, assessment: Assessment, first: bool = Tr
         f'<h1 data-label="{plain(name + approved)}">{plain(name)}</h1>\n'
         f"<p>{plain(document.purpose)}</p>\n{_control(document, state, assessment)}\n"
         f'<p class="caution"><b>Caution.</b> {plain(CAUTION)} {plain(SAFETY)}</p>\n'
-        f"{document.html_body}\n{_around(document, assessment)}</article>"
+        f"{_body_and_around(document, assessment)}</article>"
     )
+
+
+def _body_and_around(document: RenderedDocument, assessment: Assessment) -> str:
+    """Return body and what stands below it; a sheet that a patient takes home comes last, on its own."""
+    body, taken_home, sheet = document.html_body.partition(f'<section id="{anchor(document.number)}-{SHEET}"')
+    return f"{body}\n{_around(document, assessment)}{taken_home}{sheet}"
 
 
 def _control(document: RenderedDocument, state: DocumentState | None, assessment: Assessment) -> str:

@@ -6,6 +6,7 @@ from dataclasses import dataclass
 from markupsafe import Markup
 
 from readiness.assessment.catalogue import catalogue
+from readiness.assessment.criteria import criteria
 from readiness.assessment.records import Ref, Value
 from readiness.assessment.wording import in_words
 from readiness.errors import CatalogueError
@@ -20,6 +21,9 @@ from readiness.units import unit_of, words_of
 BLANK = "________"
 MANY = 9  # columns; from here on they share the width of the page
 LONG = 20  # characters; a longer value may be broken over lines
+LIMIT, CONVENTION = "limit", "convention"  # what stands beside a criterion, where a value has its basis
+KNOWN = "known"  # the column of a table whose rows come from publications
+WRITTEN = {"pmma": "PMMA", "xray dose": "X-ray dose"}  # headings that a capital alone does not make right
 STATE, WORK_OUT, RULES, LISTS, CAUSES = (
     "To state in the program folder",
     "To measure, or to be worked out once its inputs are stated",
@@ -78,7 +82,7 @@ class Showing:
         entries = [found.value.column(column) for column in wanted]
         rows = [[plain(_cell(entry)) for entry in row] for row in zip(*entries, strict=True)]
         table = html_table([_column_words(column) for column in wanted], rows)
-        return self._block(table + f'<p class="basis-line">{plain(found.basis)}</p>')
+        return self._block(table + _basis_line(found, wanted))
 
     def rows(self, name: str) -> tuple[tuple[str, ...], ...]:
         """Return the cells of a table as text, for a form that is filled in beside them; none if missing."""
@@ -104,7 +108,7 @@ class Showing:
                 cells = [[plain(_cell(entry)) for entry in row] for row in entries]
                 parts.append(f"<h3>{plain(self._lookup.text_of(title, item))}</h3>")
                 parts.append(html_table(heads, cells, "list many" if len(heads) >= MANY else "list"))
-                parts.append(f'<p class="basis-line">{plain(found.basis)}</p>')
+                parts.append(_basis_line(found, wanted))
         return self._block("".join(parts) or '<p class="need">Nothing could be calculated yet.</p>')
 
     def listing(self, kind: str, fields: str) -> Markup:
@@ -149,7 +153,7 @@ class Showing:
         if isinstance(found.value, Table):
             raise CatalogueError(f"{name} holds a table: a document asks for it with table()")
         self.shown[name] = None
-        return f'{_value_words(found)}<span class="basis">{plain(found.basis)}</span>'
+        return f'{_value_words(found)}<span class="basis">{_basis_words(found)}</span>'
 
     def _one_in_list(self, name: str, item: Ref) -> str:
         if name in CRITICAL:
@@ -231,10 +235,25 @@ def _value_words(found: Value) -> str:
     return f'<span class="{css}">{plain(with_unit(text, found.unit))}</span>'
 
 
+def _basis_words(found: Value) -> str:
+    """Return the basis of a value; a criterion is asked for, and nobody of the department has stated it."""
+    if found.item.kind == "criterion":
+        ours = criteria().get(found.name)
+        return LIMIT if ours is None or ours.stricter else CONVENTION
+    return plain(found.basis)
+
+
+def _basis_line(found: Value, columns: Sequence[str]) -> str:
+    """Return what stands below a table: its basis, unless each of its rows says how it is known."""
+    return "" if KNOWN in columns else f'<p class="basis-line">{plain(found.basis)}</p>'
+
+
 def _column_words(name: str) -> str:
+    """Return a heading, with its unit unless that is the heading already."""
     unit = unit_of(name)
-    words = words_of(name).capitalize()
-    return f"{words} [{unit}]" if unit else words
+    words = words_of(name).removesuffix(" ratio")
+    words = words[:1].upper() + words[1:] if words not in WRITTEN else WRITTEN[words]
+    return f"{words} [{unit}]" if unit and unit != words.lower() else words
 
 
 def _cell(entry: object) -> str:

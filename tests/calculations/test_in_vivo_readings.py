@@ -190,10 +190,12 @@ def test_impossible_levels_are_our_own_mistake(changed: dict[str, object], messa
 
 
 @pytest.mark.parametrize(
-    ("dose", "gate"), [(74, GATE_OPEN), (38, GATE_OPEN), (147, GATE_OPEN), (37, GATE_SHUT), (148, GATE_SHUT)]
+    ("dose", "gate"),
+    [(74, GATE_OPEN), (54, GATE_OPEN), (103, GATE_OPEN), (52, GATE_SHUT), (105, GATE_SHUT)]
+    + [(37 * 1.1, GATE_SHUT), (148 * 0.9, GATE_SHUT)],
 )
-def test_gate_after_day_one_is_a_factor_of_two(dose: float, gate: str) -> None:
-    """With 37 % expected on day 1 of 2 Gy, 74 cGy are expected; half and twice of it shut the gate."""
+def test_gate_after_day_one_finds_a_factor_of_two(dose: float, gate: str) -> None:
+    """With 37 % expected on day 1 of 2 Gy, 74 cGy are expected; half and twice, read 10 % off, shut the gate."""
     doses = [dose - 3, dose, dose + 3]
     assert gate == day_one_gate(prescription_doses_cgy=doses, dose_per_cycle_gy=2, expected_day_one_percent=37)
 

@@ -321,7 +321,7 @@ def _column(tab: Any, number: int) -> list[str]:
 
 @pytest.mark.parametrize(
     ("name", "column", "choice"),
-    [("owner", 3, "department chief"), ("strength", 5, "should"), ("phase", 6, "build"), ("due", 7, "now"),
+    [("owner", 3, "department head"), ("strength", 5, "should"), ("phase", 6, "build"), ("due", 7, "now"),
      ("subject", 8, "Periodic tests")],
 )  # fmt: skip
 def test_filter_leaves_only_what_was_chosen(opened: Any, sample: Assessment, name: str, column: int, choice: str) -> None:
