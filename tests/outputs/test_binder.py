@@ -17,7 +17,7 @@ from readiness.assessment.records import Assessment, Ref, Value
 from readiness.outputs import binder, press
 from readiness.outputs.assessment_part import SHEETS
 from readiness.outputs.documents import RenderedDocument, render_bodies
-from readiness.outputs.frame import anchor, resolved
+from readiness.outputs.frame import anchor, article, page, resolved, style
 from tests.outputs import fakes
 
 ATTACHED = {"program.yaml": b"format: 1\n", "assessment.json": b"{}\n"}
@@ -185,6 +185,21 @@ def test_each_document_counts_its_own_pages(pages: list[str]) -> None:
     """Page x of y speaks of the document, not of the binder."""
     first = [text for text in pages if "page 1 of " in text]
     assert 2 + len(SHEETS) + len(SOME) == len(first)
+
+
+@pytest.mark.parametrize("technique", ["six-position", "moving-couch"])
+def test_a_form_keeps_to_one_page(technique: str) -> None:
+    """Whoever signs a form sees whose it is: no second page without a name on it."""
+    assessment = fakes.full(technique=technique)
+    forms = [each for each in render_bodies(assessment) if each.kind == "form"]
+    css = style(assessment)
+    counts = {each.number: _pages_of(each, assessment, css) for each in forms}
+    assert dict.fromkeys(counts, 1) == counts
+
+
+def _pages_of(document: RenderedDocument, assessment: Assessment, css: str) -> int:
+    html = resolved(page(document.title, article(document, assessment)), lambda _: None)
+    return press.lay_out(html, [css], document.title).pages
 
 
 def test_every_page_of_a_draft_says_so(files: dict[str, bytes], pages: list[str]) -> None:

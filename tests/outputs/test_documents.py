@@ -19,6 +19,7 @@ from readiness.outputs.frame import article
 from readiness.outputs.holes import Holes, to_html
 from readiness.outputs.lookup import Lookup
 from readiness.outputs.showing import CAUSES, Blank, Showing
+from readiness.quantities import Table
 from tests.outputs import fakes
 
 _MU_NUMBER = re.compile(r"\d[\d ,.]*\s*MU\b(?!/)")
@@ -103,6 +104,74 @@ def test_a_value_stands_with_unit_and_basis(full: dict[str, RenderedDocument]) -
     assert (
         '<span class="value">12.5\u00a0kg</span><span class="basis">measured</span>' in full["1.1"].html_body
     )
+
+
+def test_a_criterion_is_no_statement_of_the_department(full: dict[str, RenderedDocument]) -> None:
+    """A limit is marked as what is asked for, a convention as one; neither is called stated."""
+    assessment = fakes.full()
+    asked = {
+        "criterion.vertical_uniformity_percent": "limit",
+        "criterion.uniformity_half_length_cm": "convention",
+    }
+    for name, mark in asked.items():
+        holes = Holes()
+        said = holes.fill(str(Showing(Lookup(assessment), {}, holes).show(name)))
+        assert f'<span class="basis">{mark}</span>' in said
+    assert 'class="basis">limit<' in full["4.2"].html_body
+
+
+def test_a_table_of_publications_has_no_basis_of_its_own(full: dict[str, RenderedDocument]) -> None:
+    """Where each row says how it is known, nothing below the table calls all of them stated."""
+    assessment = fakes.full()
+    item = Ref("in_vivo", "in_vivo")
+    rows = Table.of(("title", "from_figure", "known"), [("Sole", "low", "read")])
+    others = tuple(each for each in assessment.values if each.name != "in_vivo.expected_doses")
+    changed = replace(assessment, values=(*others, Value("in_vivo.expected_doses", item, rows, "", "stated")))
+    holes = Holes()
+    showing = Showing(Lookup(changed), {}, holes)
+    whole = holes.fill(str(showing.table("in_vivo.expected_doses")))
+    assert "basis-line" not in whole
+    assert "basis-line" in holes.fill(str(showing.table("in_vivo.expected_doses", "title from_figure")))
+
+
+def test_a_heading_says_its_unit_once() -> None:
+    """A column of persons is not headed twice, a ratio has no word for itself, PMMA is written as it is."""
+    assessment = fakes.full()
+    item = Ref("in_vivo", "in_vivo")
+    rows = Table.of(("persons", "part_of_goal_ratio", "pmma_cm", "xray_dose_gy"), [(2, 0.5, 1.0, 0.7)])
+    others = tuple(each for each in assessment.values if each.name != "in_vivo.expected_doses")
+    changed = replace(assessment, values=(*others, Value("in_vivo.expected_doses", item, rows, "", "stated")))
+    holes = Holes()
+    table = holes.fill(str(Showing(Lookup(changed), {}, holes).table("in_vivo.expected_doses")))
+    heads = re.findall(r'<th scope="col">(.*?)</th>', table)
+    assert ["Persons", "Part of goal", "PMMA [cm]", "X-ray dose [Gy]"] == heads
+
+
+def test_nothing_of_ours_stands_on_the_sheet_that_a_patient_takes_home() -> None:
+    """The patient sheet comes after the requirements and blanks of its document."""
+    assessment = fakes.empty()
+    document = _by_number(render_bodies(assessment))["2.2"]
+    whole = article(document, assessment)
+    assert 1 == whole.count('class="part-patient-sheet"')
+    sheet = whole.partition('class="part-patient-sheet"')[2]
+    assert 'class="around"' in whole
+    assert 'class="around"' not in sheet
+
+
+def test_the_gate_after_the_first_session_stops_before_a_factor_of_two(
+    full: dict[str, RenderedDocument],
+) -> None:
+    """Procedure and form hold at the same place, short of a doubled or halved dose."""
+    assert "A mean below 0.7 or above 1.4 times what is expected" in _plain(full["4.4"].html_body)
+    assert "Mean is 0.7 to 1.4 times what is expected" in _plain(full["6.4"].html_body)
+
+
+def test_beyond_tolerance_nobody_is_treated_without_a_release(full: dict[str, RenderedDocument]) -> None:
+    """Charter, procedure and form say the same of a test beyond its tolerance."""
+    assert "Beyond it nobody is treated until" in _plain(full["4.5"].html_body)
+    assert "Output in the mode beyond the daily tolerance" in _plain(full["1.1"].html_body)
+    assert "Beyond tolerance: BEAM HELD" in _plain(full["6.6"].html_body)
+    assert not any("go on today" in _plain(document.html_body) for document in full.values())
 
 
 def test_a_missing_value_is_a_blank_with_its_unit(empty: dict[str, RenderedDocument]) -> None:
