@@ -14,6 +14,7 @@ from readiness.outputs.words import (
     item_words,
     known_words,
     outcome_words,
+    shortened,
     when_words,
     with_unit,
 )
@@ -73,12 +74,7 @@ class SourceRow:
 
 def short_item(item: Ref, assessment: Assessment) -> str:
     """Return an item for people; the arrangement that the binder is for is not spelled out each time."""
-    chosen = assessment.verdict.arrangement
-    if not chosen:
-        return item_words(item)
-    return (
-        item_words(item).replace(f"arrangement {chosen}", "this arrangement").replace(f" from {chosen}", "")
-    )
+    return shortened(item_words(item), assessment)
 
 
 def gaps(assessment: Assessment, blocking_only: bool = False) -> tuple[GapRow, ...]:

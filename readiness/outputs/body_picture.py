@@ -3,11 +3,9 @@
 from collections.abc import Mapping
 from typing import Any
 
-from readiness.assessment.records import Value
 from readiness.assessment.wording import in_words
 from readiness.outputs.drawing import drawn
 from readiness.outputs.lookup import Lookup
-from readiness.quantities import Table
 
 # site -> view and place on our own outline
 _PLACES: Mapping[str, tuple[str, float, float]] = {
@@ -25,10 +23,10 @@ _LINE = 18
 
 def draw_body(lookup: Lookup) -> str | None:
     """Return the drawing as SVG, or None if no sites are planned."""
-    expected = _table(lookup, "in_vivo.expected_doses")
+    expected = lookup.table("in_vivo.expected_doses")
     if expected is None or not expected.rows:
         return None
-    results = _table(lookup, "in_vivo.site_results")
+    results = lookup.table("in_vivo.site_results")
     found = {str(row["site"]): row for row in results.records()} if results is not None else {}
     lines, placed = [], []
     for number, row in enumerate(expected.records(), 1):
@@ -50,11 +48,6 @@ def draw_body(lookup: Lookup) -> str | None:
             for name, x in _VIEWS
         ],
     })  # fmt: skip
-
-
-def _table(lookup: Lookup, name: str) -> Table | None:
-    got = lookup.get(name)
-    return got.value if isinstance(got, Value) and isinstance(got.value, Table) else None
 
 
 def _range(row: Mapping[str, Any]) -> str:

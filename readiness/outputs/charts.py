@@ -32,11 +32,6 @@ def make_charts(assessment: Assessment) -> dict[str, str]:
     return {name: svg for name, svg in drawn.items() if svg is not None}
 
 
-def _table(lookup: Lookup, name: str) -> Table | None:
-    got = lookup.get(name)
-    return got.value if isinstance(got, Value) and isinstance(got.value, Table) else None
-
-
 def _number(lookup: Lookup, name: str) -> float | None:
     got = lookup.get(name)
     return float(got.value) if isinstance(got, Value) and isinstance(got.value, (int, float)) else None
@@ -58,8 +53,10 @@ def _measured(axes: Any, table: Table | None, place: str) -> None:
         axes.plot(table.column(place), table.column("relative_dose"), "ko", markersize=4, label="measured")
 
 
-def _profile(axes: Any, table: Table, place: str, half_cm: float | None, percent: float | None) -> None:
-    """Draw a predicted profile with its band and the limits about the middle."""
+def _profile(
+    axes: Any, table: Table, measured: Table | None, place: str, half_cm: float | None, percent: float | None
+) -> None:
+    """Draw a predicted profile with its band, the limits about the middle, and what was measured."""
     rows = [row for row in table.records() if row["predicted"] is not None]
     axes.plot([r[place] for r in rows], [r["predicted"] for r in rows], "k-", label="predicted")
     band = [r for r in rows if r["low"] is not None and r["high"] is not None]
@@ -71,19 +68,21 @@ def _profile(axes: Any, table: Table, place: str, half_cm: float | None, percent
     if half_cm and percent:
         _limits(axes, half_cm, percent, 1.0)
     lowest = min(float(r["predicted"] or 0) for r in rows)
+    _measured(axes, measured, place)
     axes.set(ylabel="relative dose", ylim=(max(0.0, lowest - _BELOW), None))
+    axes.legend(loc="lower center", frameon=False)
 
 
 def _profile_over_height(lookup: Lookup) -> str | None:
-    table = _table(lookup, "arrangement.profile_height")
+    table = lookup.table("arrangement.profile_height")
     if table is None:
         return None
     figure, axes = _figure()
     half = _number(lookup, "criterion.uniformity_half_length_cm")
-    _profile(axes, table, "height_cm", half, _number(lookup, "criterion.vertical_uniformity_percent"))
-    _measured(axes, _table(lookup, "arrangement.measured_profile_height"), "height_cm")
+    percent = _number(lookup, "criterion.vertical_uniformity_percent")
+    measured = lookup.table("arrangement.measured_profile_height")
+    _profile(axes, table, measured, "height_cm", half, percent)
     axes.set(xlabel="height above the isocentre [cm]")
-    axes.legend(loc="lower center", frameon=False)
     words = (
         f"Dual field over height at {_said(lookup, 'arrangement.study_distance_cm')} and tilt "
         f"{_said(lookup, 'arrangement.study_tilt_deg')}; dashed lines are the limits. "
@@ -98,15 +97,15 @@ def _said(lookup: Lookup, name: str) -> str:
 
 
 def _profile_across(lookup: Lookup) -> str | None:
-    table = _table(lookup, "arrangement.profile_width")
+    table = lookup.table("arrangement.profile_width")
     if table is None:
         return None
     figure, axes = _figure()
     half = _number(lookup, "criterion.uniformity_half_width_cm")
-    _profile(axes, table, "across_cm", half, _number(lookup, "criterion.horizontal_uniformity_percent"))
-    _measured(axes, _table(lookup, "arrangement.measured_profile_width"), "across_cm")
+    percent = _number(lookup, "criterion.horizontal_uniformity_percent")
+    measured = lookup.table("arrangement.measured_profile_width")
+    _profile(axes, table, measured, "across_cm", half, percent)
     axes.set(xlabel="across the patient [cm]")
-    axes.legend(loc="lower center", frameon=False)
     words = (
         "Dual field across the patient; dashed lines are the limits. Distance, not tilt, evens it. "
         "Curve and band are predicted."
@@ -115,7 +114,7 @@ def _profile_across(lookup: Lookup) -> str | None:
 
 
 def _distance_and_tilt(lookup: Lookup) -> str | None:
-    table = _table(lookup, "arrangement.uniformity_map")
+    table = lookup.table("arrangement.uniformity_map")
     limit = _number(lookup, "criterion.vertical_uniformity_percent")
     if table is None or limit is None:
         return None

@@ -15,6 +15,7 @@ from readiness.assessment.records import (
     Value,
 )
 from readiness.outputs.words import chosen_row
+from readiness.quantities import Table
 from readiness.units import unit_of
 
 CRITERION = Ref("criterion", "criterion")
@@ -100,6 +101,11 @@ class Lookup:
         where = item or self.item_of(name)
         found = self._values.get((name, where))
         return found if found is not None else Missing(name, where, self._what_to_supply(name, where))
+
+    def table(self, name: str) -> Table | None:
+        """Return a value that holds a table, or None where it is missing."""
+        found = self.get(name)
+        return found.value if isinstance(found, Value) and isinstance(found.value, Table) else None
 
     def text_of(self, name: str, item: Ref) -> str:
         """Return a value of an item as plain text, "" where it is missing."""

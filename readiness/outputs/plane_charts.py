@@ -5,19 +5,13 @@ from typing import Any
 from readiness.assessment.records import Value
 from readiness.outputs.chart_making import figure_of, svg_of
 from readiness.outputs.lookup import Lookup
-from readiness.quantities import Table
 
 _LEVELS = (50, 60, 70, 80, 85, 90, 92, 94, 96, 98, 100, 102, 104, 106, 108, 110, 115, 120)
 
 
-def _table(lookup: Lookup, name: str) -> Table | None:
-    got = lookup.get(name)
-    return got.value if isinstance(got, Value) and isinstance(got.value, Table) else None
-
-
 def draw_plane_map(lookup: Lookup) -> str | None:
     """Return lines of equal predicted dose over the rectangle of the composite field, mid-height 100."""
-    table = _table(lookup, "arrangement.plane_map")
+    table = lookup.table("arrangement.plane_map")
     if table is None:
         return None
     doses = {(row["height_cm"], row["across_cm"]): row["relative_dose"] for row in table.records()}
@@ -47,8 +41,8 @@ def _rectangle(axes: Any, lookup: Lookup) -> None:
 
 def draw_couch_field(lookup: Lookup) -> str | None:
     """Return the predicted dose across a lying patient, and the dose rate along the travel."""
-    across = _table(lookup, "arrangement.couch_profile_across")
-    along = _table(lookup, "arrangement.couch_rate_profile")
+    across = lookup.table("arrangement.couch_profile_across")
+    along = lookup.table("arrangement.couch_rate_profile")
     if across is None or along is None:
         return None
     figure, (upper, lower) = figure_of(2, height_in=4.4)

@@ -38,6 +38,21 @@ def rows_on_line(table: Table, constant: str) -> Table:
     return Table(table.columns, kept)
 
 
+def evaluated(
+    table: Table, places_cm: list[float], half_length_cm: float, metric: str, normalisation: str,
+    smoothing: str,
+) -> ProfileEvaluation:  # fmt: skip
+    """Return how even the readings of a table are along a line, in the program's metric."""
+    return evaluate_profile(
+        positions_cm=places_cm,
+        readings=numbers(table, "relative_dose"),
+        half_length_cm=half_length_cm,
+        metric=METRICS.get(metric, metric),
+        normalisation=normalisation,
+        smoothing=smoothing,
+    )
+
+
 @lru_cache(maxsize=256)
 def vertical_profile(
     *, kind: str, table: Table, half_length_cm: float, metric: str, normalisation: str, smoothing: str
@@ -46,14 +61,7 @@ def vertical_profile(
     if kind != DUAL_PROFILE:
         return None
     line = rows_on_line(table, "across_cm")
-    return evaluate_profile(
-        positions_cm=numbers(line, "height_cm"),
-        readings=numbers(line, "relative_dose"),
-        half_length_cm=half_length_cm,
-        metric=METRICS.get(metric, metric),
-        normalisation=normalisation,
-        smoothing=smoothing,
-    )
+    return evaluated(line, numbers(line, "height_cm"), half_length_cm, metric, normalisation, smoothing)
 
 
 @lru_cache(maxsize=256)
@@ -64,14 +72,8 @@ def horizontal_profile(
     if kind != DUAL_PROFILE:
         return None
     line = rows_on_line(table, "height_cm")
-    return evaluate_profile(
-        positions_cm=numbers_or(line, "across_cm", 0.0),
-        readings=numbers(line, "relative_dose"),
-        half_length_cm=half_width_cm,
-        metric=METRICS.get(metric, metric),
-        normalisation=normalisation,
-        smoothing=smoothing,
-    )
+    places = numbers_or(line, "across_cm", 0.0)
+    return evaluated(line, places, half_width_cm, metric, normalisation, smoothing)
 
 
 @lru_cache(maxsize=256)

@@ -4,12 +4,12 @@ from functools import lru_cache
 
 from readiness.assessment.definition import Definition, Measured
 from readiness.assessment.values.beam_evenness import judged
-from readiness.assessment.values.beam_profiles import METRICS
+from readiness.assessment.values.beam_profiles import evaluated
 from readiness.assessment.values.readings import numbers
 from readiness.calculations.couch_field import CouchField, couch_field
 from readiness.calculations.field_setup import FieldSetup
 from readiness.calculations.moving_couch_dose import couch_pass, couch_speed_needed
-from readiness.calculations.profile_analysis import ProfileEvaluation, evaluate_profile
+from readiness.calculations.profile_analysis import ProfileEvaluation
 from readiness.quantities import Table
 
 COUCH_PROFILE = "couch-profile"
@@ -60,14 +60,7 @@ def measured_across(
     """Return how even a measured pass is across; None for another kind of measurement."""
     if kind != COUCH_PROFILE:
         return None
-    return evaluate_profile(
-        positions_cm=numbers(table, "across_cm"),
-        readings=numbers(table, "relative_dose"),
-        half_length_cm=half_width_cm,
-        metric=METRICS.get(metric, metric),
-        normalisation=normalisation,
-        smoothing=smoothing,
-    )
+    return evaluated(table, numbers(table, "across_cm"), half_width_cm, metric, normalisation, smoothing)
 
 
 def _part(name: str, meaning: str, part: str) -> Definition:
